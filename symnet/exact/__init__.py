@@ -1,0 +1,1 @@
+"""What the network equals: equations, determinants, H(s), numeric evaluation, roots."""

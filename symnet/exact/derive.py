@@ -1,0 +1,218 @@
+"""From a network to H(s): the one entry to the exact engine."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable
+from dataclasses import replace
+from functools import lru_cache
+
+from symnet.errors import Fault, NotationError, SingularError, WiringError, nearest
+from symnet.exact.confirm import undetermined
+from symnet.exact.determinant import Determinant
+from symnet.exact.modular import PRIME
+from symnet.exact.pieces import Pieces, drive_column, terms_of
+from symnet.exact.transfer import Transfer
+from symnet.exact.trees import Diagram, Piece, build
+from symnet.expressions import Expression, Name, dimension_of, names_in
+from symnet.network.network import Network
+from symnet.network.parts import GROUND, CurrentDrive, Drive
+from symnet.network.wiring import check_wiring
+from symnet.quantities import AMPERE, VOLT, Dimension
+
+__all__ = ["derive", "derive_all", "derive_from"]
+
+
+def derive(
+    network: Network,
+    read: str | None = None,
+    drive: str | None = None,
+    symbols: str | Iterable[str] | None = None,
+) -> Transfer:
+    """The exact transfer function H(s) from a drive to a read, in the names of the parts, in lowest terms.
+
+    H is the read divided by the drive with every other drive at zero: N = -det of the nodal matrix bordered by
+    the drive's column and the read's row, D = its determinant (Cramer's rule), see :mod:`symnet.exact.trees`.
+
+    ``read`` and ``drive`` stand for the sentences of the text: ``read="a"``, ``read="a - b"``,
+    ``read="i_R1"``; ``drive="b"``, ``drive="current into b"``, or the name of a drive that the network has.
+    They are needed only where the text has none or several. ``symbols`` (``"R1 C1"`` or a list) keeps only
+    these names as symbols; every other name that has a value is replaced by its exact number.
+
+    Raises WiringError when the network has no single solution by its wiring, SingularError when the values or
+    gains make it so, NotationError for a read or drive that cannot be read.
+
+    >>> import symnet as sn
+    >>> net = sn.network("in -- R1 -- out -- C1 || RL -- gnd; drive in; read out; R1, RL = 10 kohm")
+    >>> H = sn.derive(net)
+    >>> H.numerator, H.denominator
+    (RL, s*R1*C1*RL + R1 + RL)
+    >>> sn.derive(net, symbols="C1").denominator
+    s*C1*5000 + 1
+    """
+    if drive is not None:
+        network, chosen = _driven_by(network, drive)
+    elif len(network.drives) > 1:
+        names = ", ".join(network.drive_names)
+        raise WiringError(
+            Fault(
+                f"the network has several drives ({names})",
+                "say which: derive(net, drive=...), or derive_all(net) for one H each",
+            )
+        )
+    reads = network.reads if read is None else (_read(network, read),)
+    if len(reads) > 1:
+        raise WiringError(
+            Fault(
+                "the network has several reads", "say which: derive(net, read=...), or derive_all(net) for one H each"
+            )
+        )
+    if not network.drives:
+        raise WiringError(
+            Fault("nothing drives the network", "write for example: drive in   (or drive current into a)")
+        )
+    if not reads:
+        raise WiringError(Fault("nothing is read", "write for example: read out   (or read i_R1)"))
+    if drive is None:
+        chosen = network.drives[0]
+    return derive_from(network, chosen, reads[0], symbols)
+
+
+def derive_all(
+    network: Network,
+    reads: Iterable[str] | None = None,
+    symbols: str | Iterable[str] | None = None,
+) -> tuple[Transfer, ...]:
+    """One H for every drive and every read, drive by drive; the denominator's diagram is built once.
+
+    >>> import symnet as sn
+    >>> net = sn.network("in -- R1 -- a -- C1 -- gnd; a -- R2 -- out -- C2 -- gnd; drive in; read a; read out")
+    >>> [H.label for H in sn.derive_all(net)]
+    ['a/in', 'out/in']
+    """
+    if isinstance(symbols, str):
+        symbols = symbols.replace(",", " ").split()
+    kept = None if symbols is None else frozenset(symbols)
+    wanted = network.reads if reads is None else tuple(_read(network, read) for read in reads)
+    if not network.drives or not wanted:
+        derive(network)  # says what is missing
+    return tuple(derive_from(network, drive, read, kept) for drive in network.drives for read in wanted)
+
+
+def derive_from(
+    network: Network,
+    drive: Drive,
+    read: Expression,
+    symbols: str | Iterable[str] | None = None,
+) -> Transfer:
+    """H from one drive of the network to one linear expression of its voltages and currents."""
+    if isinstance(symbols, str):
+        symbols = symbols.replace(",", " ").split()
+    kept = None if symbols is None else frozenset(symbols)
+    if kept is not None:
+        known = network.symbols()
+        for name in kept:
+            if name not in known:
+                raise network._unknown(name, known, "part or symbol")
+    pieces, diagram = _prepared(network, kept)
+    form = pieces.form(read, "the read")
+    one = pieces.naming.ring.one
+    border = [
+        (Piece(pieces.size, None, plus, minus), weight.numer, weight.denom)
+        for weight, plus, minus in terms_of(form, pieces)
+    ]
+    plus, minus = drive_column(pieces, drive)
+    border.append((Piece(plus, minus, pieces.size, None), -one, one))
+    numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _, _ in border)))
+    factor = one
+    for _, _, leave in border:
+        factor = factor * leave
+    takes = (*pieces.take, *(take for _, take, _ in border))
+    leaves = (*pieces.leave, *(leave for _, _, leave in border))
+    transfer = Transfer(
+        network,
+        drive,
+        read,
+        _label(network, drive, read),
+        _dimension(pieces, drive, read),
+        pieces.naming,
+        (
+            Determinant(numerator, takes, leaves, one),
+            Determinant(diagram, pieces.take, pieces.leave, factor),
+        ),
+    )
+    transfer.confirmation  # noqa: B018 - computed here, so that no H leaves unconfirmed
+    return transfer
+
+
+@lru_cache(maxsize=16)
+def _prepared(network: Network, symbols: frozenset[str] | None) -> tuple[Pieces, Diagram]:
+    """What every drive and read of a network shares: its pieces and its determinant."""
+    check_wiring(network)
+    pieces = Pieces.of(network, symbols)
+    diagram = build(pieces.size, pieces.pieces)
+    determinant = Determinant(diagram, pieces.take, pieces.leave, pieces.naming.ring.one)
+    if diagram.is_zero or _vanishes(determinant):
+        raise SingularError(undetermined(network, pieces.naming))
+    return pieces, diagram
+
+
+def _vanishes(determinant: Determinant) -> bool:
+    """Whether the determinant is zero at two random points: for all purposes, identically."""
+    from random import Random
+
+    random = Random("zero")
+    count = determinant.factor.ring.ngens
+    return not any(
+        determinant.modulo([random.randrange(1, PRIME) for _ in range(count)], PRIME) for _ in range(2)
+    )
+
+
+def _read(network: Network, text: str) -> Expression:
+    from symnet.network.reading import read_expression
+
+    expression = read_expression(text)
+    known = {*network.nodes, *network._electric_names(), *network.symbols(), "s"}
+    for name in names_in(expression):
+        if name.name not in known:
+            close = nearest(name.name, known)
+            hint = f"did you mean {close[0]}?" if close else f"nodes: {', '.join(network.nodes)}"
+            fault = Fault(f"the network has no node or part called {name.name}", hint, span=name.span)
+            raise NotationError(fault, text=text)
+    return expression
+
+
+def _driven_by(network: Network, text: str) -> tuple[Network, Drive]:
+    """The network with the drive that ``text`` names or describes, added if it is not there yet."""
+    from symnet.network.writing import write_drive
+
+    for name, drive in zip(network.drive_names, network.drives, strict=True):
+        if text == name or write_drive(drive) == f"drive {text}":
+            return network, drive
+    driven = replace(network, drives=()).add(f"drive {text}")
+    return driven, driven.drives[0]
+
+
+def _label(network: Network, drive: Drive, read: Expression) -> str:
+    from symnet.network.writing import write_expression
+
+    top = write_expression(read)
+    if not isinstance(read, Name):
+        top = f"({top})"
+    if drive.name:
+        return f"{top}/{drive.name}"
+    if isinstance(drive, CurrentDrive):
+        return f"{top}/i_{network.drive_names[network.drives.index(drive)]}"
+    below = drive.plus if drive.minus == GROUND else f"({drive.plus} - {drive.minus})"
+    return f"{top}/{below}"
+
+
+def _dimension(pieces: Pieces, drive: Drive, read: Expression) -> Dimension:
+    known: dict[str, Dimension] = {
+        name: dimension for name, dimension in pieces.naming.dimensions.items() if dimension is not None
+    }
+    for node in (*pieces.network.nodes, GROUND):
+        known[node] = known[f"v_{node}"] = VOLT
+    for name in (*pieces.network.part_names, *pieces.network.drive_names):
+        known[f"i_{name}"], known[f"v_{name}"] = AMPERE, VOLT
+    top = dimension_of(read, known) or VOLT
+    return top / (AMPERE if isinstance(drive, CurrentDrive) else VOLT)

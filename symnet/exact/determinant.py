@@ -1,0 +1,135 @@
+"""A diagram with the weights of its pieces: written out, modulo a prime, or for given values.
+
+For given values the determinant is a polynomial in s with rational coefficients. Every weight is scaled to
+integer coefficients and s is replaced by a power of two that no coefficient of the result reaches (Kronecker
+substitution): two integer passes over the diagram, one for the bound and one for the value, hold all
+coefficients exactly, whatever the order of the network.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from fractions import Fraction
+from math import lcm, prod
+from typing import TYPE_CHECKING, Any, Final
+
+from symnet.errors import Fault, LimitError
+from symnet.exact.modular import weight_at
+from symnet.exact.polynomials import expand
+from symnet.exact.trees import Diagram
+
+if TYPE_CHECKING:
+    from sympy.polys.rings import PolyElement
+
+__all__ = ["MOST_TERMS", "Determinant", "numeric_pair"]
+
+#: Paths of a diagram that are still written out as terms.
+MOST_TERMS: Final = 500_000
+
+
+@dataclass(frozen=True)
+class Determinant:
+    """``factor`` times the determinant that ``diagram`` is with the weights ``take`` and ``leave``."""
+
+    diagram: Diagram
+    take: tuple[PolyElement, ...]
+    leave: tuple[PolyElement, ...]
+    factor: PolyElement
+
+    def expand(self) -> PolyElement:
+        """Written out in the ring of the weights; LimitError beyond :data:`MOST_TERMS` paths."""
+        paths = self.diagram.count()
+        if paths > MOST_TERMS:
+            raise LimitError(
+                Fault(
+                    f"written out, this determinant has up to {_count(paths)} terms; the limit is {MOST_TERMS}",
+                    "give the parts values and use H.numeric(), or keep only a few names as symbols: "
+                    'derive(net, symbols="R1 C1")',
+                )
+            )
+        ring = self.factor.ring
+        determinant = expand(self.diagram, ring, self.take, self.leave)
+        return determinant if self.factor == ring.one else determinant * self.factor
+
+    def modulo(self, point: Sequence[Any], prime: int) -> Any:
+        """The value at a point (s first, then the names in order), modulo a prime."""
+        take = [weight_at(weight, point, prime) for weight in self.take]
+        leave = [weight_at(weight, point, prime) for weight in self.leave]
+        value = self.diagram.evaluate_modulo(take, leave, prime)
+        return value * weight_at(self.factor, point, prime) % prime
+
+
+def _count(paths: int) -> str:
+    text = str(paths)
+    return text if len(text) < 8 else f"{text[0]}.{text[1]}e{len(text) - 1}"
+
+
+def numeric_pair(n: Determinant, d: Determinant, values: Sequence[Fraction]) -> tuple[list[int], list[int]]:
+    """Integer coefficients, ascending in s, of N and D for these values of the names: N/D is exact.
+
+    D's pieces are the first of N's pieces, so whatever scales one of them scales both; the pieces that only N
+    has (the read) are scaled on both sides.
+    """
+    takes, leaves, scales = [], [], []
+    for take, leave in zip(n.take, n.leave, strict=True):
+        t, l = _coefficients(take, values), _coefficients(leave, values)
+        scale = lcm(*(c.denominator for c in (*t, *l)))
+        takes.append([int(c * scale) for c in t])
+        leaves.append([int(c * scale) for c in l])
+        scales.append(scale)
+    n_factor, d_factor = _coefficients(n.factor, values), _coefficients(d.factor, values)
+    common = lcm(*(c.denominator for c in (*n_factor, *d_factor)))
+    own = len(d.take)
+    extra = prod(scales[own:]) * common
+    top = _polynomial(n.diagram, takes, leaves, [int(c * common) for c in n_factor])
+    bottom = _polynomial(d.diagram, takes[:own], leaves[:own], [int(c * extra) for c in d_factor])
+    return top, bottom
+
+
+def _coefficients(weight: PolyElement, values: Sequence[Fraction]) -> list[Fraction]:
+    """The coefficients, ascending in s, of a weight at these values."""
+    out = [Fraction(0)] * (max((m[0] for m in weight), default=0) + 1)
+    for monomial, coefficient in weight.items():
+        term = Fraction(int(coefficient))
+        for value, exponent in zip(values, monomial[1:], strict=True):
+            if exponent:
+                term *= value**exponent
+        out[monomial[0]] += term
+    return out
+
+
+def _polynomial(
+    diagram: Diagram, takes: Sequence[list[int]], leaves: Sequence[list[int]], factor: list[int]
+) -> list[int]:
+    bound = diagram.bound([_size(t) for t in takes], [_size(l) for l in leaves]) * _size(factor)
+    bits = bound.bit_length() + 2
+    value = diagram.evaluate([_packed(t, bits) for t in takes], [_packed(l, bits) for l in leaves])
+    return _unpacked(value * _packed(factor, bits), bits)
+
+
+def _size(coefficients: list[int]) -> int:
+    return sum(map(abs, coefficients))
+
+
+def _packed(coefficients: list[int], bits: int) -> int:
+    return sum(c << (bits * k) for k, c in enumerate(coefficients))
+
+
+def _unpacked(value: int, bits: int) -> list[int]:
+    """The signed digits of an integer in base 2^bits, each below half the base in magnitude."""
+    if not value:
+        return []
+    count = abs(value).bit_length() // bits + 2
+    half, base = 1 << (bits - 1), 1 << bits
+    shifted = value + sum(half << (bits * k) for k in range(count))
+    size = (bits * count) // 8 + 16
+    data = shifted.to_bytes(size, "little")
+    out = []
+    for k in range(count):
+        start = bits * k
+        chunk = int.from_bytes(data[start // 8 : (start + bits + 15) // 8], "little") >> (start % 8)
+        out.append((chunk & (base - 1)) - half)
+    while out and not out[-1]:
+        out.pop()
+    return out

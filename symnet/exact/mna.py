@@ -1,0 +1,359 @@
+"""The equations as an engineer would set them up: modified nodal analysis, labelled, in sympy.
+
+Unknowns are the node voltages, then the currents of the parts that need one: drives, voltage laws, op amps,
+inductors and impedances (C.-W. Ho, A. E. Ruehli, P. A. Brennan, The modified nodal approach to network
+analysis, IEEE Trans. CAS 22, 1975). Rows are Kirchhoff's current law at each node (currents leaving, equal to
+zero) and the law of each of those parts.
+
+The same stamping serves any arithmetic, so that it can also confirm an H modulo a prime. It shares nothing
+with the determinants: a law is read off by putting single unknowns to one, not by expanding it.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping, Sequence
+from dataclasses import dataclass
+from fractions import Fraction
+from typing import TYPE_CHECKING, Any, Generic, TypeVar
+
+from symnet.expressions import Expression, Name, Number, Product, Sum, evaluate
+from symnet.network.network import Network
+from symnet.network.parts import (
+    GROUND,
+    Branch,
+    CurrentDrive,
+    CurrentLaw,
+    Drive,
+    OpAmp,
+    VoltageDrive,
+    VoltageLaw,
+)
+
+if TYPE_CHECKING:
+    from sympy import Matrix
+
+__all__ = ["Arithmetic", "Equation", "Equations", "Stamped", "equations", "stamp"]
+
+T = TypeVar("T")
+
+
+@dataclass(frozen=True, slots=True)
+class Arithmetic(Generic[T]):
+    """Where the coefficients live: what a number and a name are, and 0 and 1."""
+
+    number: Callable[[Fraction], T]
+    name: Callable[[str], T]
+
+    def of(self, expression: Expression) -> T:
+        """The value of an expression without voltages and currents."""
+        value: T = evaluate(expression, lambda n: self.name(n.name), lambda n: self.number(n.value))
+        return value
+
+
+@dataclass(frozen=True)
+class Stamped(Generic[T]):
+    """``matrix`` times unknowns = ``sources[drive]`` for a drive of value 1; ``rows`` and ``unknowns`` say which."""
+
+    rows: tuple[str, ...]
+    unknowns: tuple[tuple[str, str], ...]
+    matrix: list[list[T]]
+    sources: dict[str, list[T]]
+    _arithmetic: Arithmetic[T]
+    _network: Network
+
+    def weights(self, expression: Expression) -> list[T]:
+        """The factor of each unknown in an expression of voltages and currents (a read, say)."""
+        return _weights(self._network, self._arithmetic, expression, self.unknowns)
+
+
+def stamp(network: Network, arithmetic: Arithmetic[T]) -> Stamped[T]:
+    """The modified nodal equations of a network in this arithmetic."""
+    zero, one = arithmetic.number(Fraction(0)), arithmetic.number(Fraction(1))
+    nodes = network.nodes
+    carriers: list[tuple[str, Any]] = [
+        (name, drive)
+        for name, drive in zip(network.drive_names, network.drives, strict=True)
+        if isinstance(drive, VoltageDrive)
+    ]
+    carriers += [
+        (part.name, part)
+        for part in network.parts
+        if isinstance(part, VoltageLaw | OpAmp) or (isinstance(part, Branch) and _needs_current(part, arithmetic))
+    ]
+    carried = {name for name, _ in carriers}
+    unknowns = tuple([("v", node) for node in nodes] + [("i", name) for name, _ in carriers])
+    place = {unknown: k for k, unknown in enumerate(unknowns)}
+    size = len(unknowns)
+    matrix = [[zero] * size for _ in range(size)]
+
+    def add(row: tuple[str, str], column: tuple[str, str], value: T) -> None:
+        if row in place and column in place:
+            at = matrix[place[row]]
+            at[place[column]] = at[place[column]] + value  # type: ignore[operator]
+
+    def add_law(name: str, plus: str, minus: str) -> None:
+        here = ("i", name)
+        add(("v", plus), here, one)
+        add(("v", minus), here, -one)  # type: ignore[operator]
+        add(here, ("v", plus), one)
+        add(here, ("v", minus), -one)  # type: ignore[operator]
+
+    s = arithmetic.name("s")
+    for name, carrier in carriers:
+        here = ("i", name)
+        match carrier:
+            case OpAmp():
+                add(("v", carrier.out), here, -one)  # type: ignore[operator]
+                add(here, ("v", carrier.plus), one)
+                add(here, ("v", carrier.minus), -one)  # type: ignore[operator]
+            case Branch():
+                add_law(name, carrier.start, carrier.end)
+                value = arithmetic.name(name)
+                add(here, here, -(s * value) if carrier.kind == "L" else -value)  # type: ignore[operator]
+            case VoltageDrive() | VoltageLaw():
+                add_law(name, carrier.plus, carrier.minus)
+    for part in network.parts:
+        if isinstance(part, Branch) and part.name not in carried:
+            value = arithmetic.name(part.name)
+            admittance = {"R": lambda v: one / v, "C": lambda v: s * v, "Y": lambda v: v}[part.kind](value)
+            a, b = ("v", part.start), ("v", part.end)
+            add(a, a, admittance)
+            add(b, b, admittance)
+            add(a, b, -admittance)
+            add(b, a, -admittance)
+    for part in network.parts:
+        if isinstance(part, VoltageLaw | CurrentLaw):
+            weights = _weights(network, arithmetic, part.value, unknowns)
+            for unknown, weight in zip(unknowns, weights, strict=True):
+                if isinstance(part, VoltageLaw):
+                    add(("i", part.name), unknown, -weight)  # type: ignore[operator]
+                else:
+                    add(("v", part.start), unknown, weight)
+                    add(("v", part.end), unknown, -weight)  # type: ignore[operator]
+    sources: dict[str, list[T]] = {}
+    for name, drive in zip(network.drive_names, network.drives, strict=True):
+        column = [zero] * size
+        if isinstance(drive, VoltageDrive):
+            column[place["i", name]] = one
+        else:
+            for node, value in ((drive.end, one), (drive.start, -one)):  # type: ignore[operator]
+                if ("v", node) in place:
+                    at = place["v", node]
+                    column[at] = column[at] + value
+        sources[name] = column
+    rows = tuple(
+        f"KCL at {name}" if kind == "v" else f"law of {name}" for kind, name in unknowns
+    )
+    return Stamped(rows, unknowns, matrix, sources, arithmetic, network)
+
+
+def _needs_current(part: Branch, arithmetic: Arithmetic[T]) -> bool:
+    """Inductors and impedances have a row of their own, and so has a resistance that is exactly zero."""
+    return part.kind in "LZ" or (part.kind == "R" and not arithmetic.name(part.name))
+
+
+def _weights(
+    network: Network, arithmetic: Arithmetic[T], expression: Expression, unknowns: Sequence[tuple[str, str]]
+) -> list[T]:
+    zero, one = arithmetic.number(Fraction(0)), arithmetic.number(Fraction(1))
+    out = []
+    for chosen in unknowns:
+        lookup = _Electric(network, lambda unknown, chosen=chosen: one if unknown == chosen else zero, arithmetic)
+        out.append(evaluate(expression, lookup.value, lambda n: arithmetic.number(n.value)))
+    return out
+
+
+@dataclass(frozen=True)
+class _Electric:
+    """The value of any name in a law, when each unknown has the value that ``unknown`` gives it."""
+
+    network: Network
+    unknown: Callable[[tuple[str, str]], Any]
+    arithmetic: Arithmetic[Any]
+
+    def value(self, name: Name) -> Any:
+        word = name.name
+        if word == GROUND or word in self.network.nodes:
+            return self.voltage(word)
+        if word not in self.network.symbols() and word != "s":
+            kind, _, rest = word.partition("_")
+            if kind == "v" and (rest in self.network.nodes or rest == GROUND):
+                return self.voltage(rest)
+            if kind in ("v", "i"):
+                return self.of_part(kind, rest)
+        return self.arithmetic.name(word)
+
+    def voltage(self, node: str) -> Any:
+        return self.arithmetic.number(Fraction(0)) if node == GROUND else self.unknown(("v", node))
+
+    def of_part(self, kind: str, name: str) -> Any:
+        for known, drive in zip(self.network.drive_names, self.network.drives, strict=True):
+            if known == name:
+                return self.unknown(("i", name)) if kind == "i" else self.across(drive.nodes)
+        part = self.network[name]
+        if kind == "v":
+            return self.across(part.nodes[:2])
+        match part:
+            case VoltageLaw() | OpAmp():
+                return self.unknown(("i", name))
+            case CurrentLaw():
+                return evaluate(part.value, self.value, lambda n: self.arithmetic.number(n.value))
+            case Branch() if _needs_current(part, self.arithmetic):
+                return self.unknown(("i", name))
+            case Branch(kind="R"):
+                return self.across(part.nodes) / self.arithmetic.name(name)
+            case Branch(kind="C"):
+                return self.arithmetic.name("s") * self.arithmetic.name(name) * self.across(part.nodes)
+            case _:
+                return self.arithmetic.name(name) * self.across(part.nodes)
+
+    def across(self, nodes: tuple[str, ...]) -> Any:
+        return self.voltage(nodes[0]) - self.voltage(nodes[1])
+
+
+@dataclass(frozen=True, slots=True)
+class Equation:
+    """One equation as a person writes it: a label such as ``KCL at a``, a left and a right side."""
+
+    label: str
+    left: Expression
+    right: Expression
+
+
+@dataclass(frozen=True)
+class Equations:
+    """The modified nodal equations of a network.
+
+    ``lines`` are the equations as written by hand; ``unknowns`` the names of node voltages (V) and currents (A)
+    in the order of the columns of ``matrix`` (square, sympy, rows in the order of ``lines``); ``sources`` gives
+    the right-hand side for each drive of value 1.
+    """
+
+    network: Network
+    lines: tuple[Equation, ...]
+    unknowns: tuple[str, ...]
+    matrix: Matrix
+    sources: Mapping[str, Matrix]
+
+
+def equations(network: Network) -> Equations:
+    """The modified nodal equations of a network, as lines and as a labelled sympy system.
+
+    Rows: Kirchhoff's current law at each node (sum of the currents that leave, in A), then the law of every
+    part that has a current of its own (in V). Raises WiringError when the network cannot be solved.
+
+    >>> import symnet as sn
+    >>> system = sn.equations(sn.network("in -- R1 -- out -- C1 -- gnd; drive in; read out"))
+    >>> system.matrix[1, :]
+    Matrix([[-1/R1, s*C1 + 1/R1, 0]])
+    """
+    from sympy import Matrix, Rational
+
+    from symnet.exact.naming import Naming
+
+    naming = Naming.of(network)
+    symbols = {str(symbol): symbol for symbol in naming.ring.symbols}
+
+    def name(word: str) -> Any:
+        return symbols[word] if word in symbols else naming.value(word).as_expr()
+
+    system: Stamped[Any] = stamp(
+        network, Arithmetic(lambda number: Rational(number.numerator, number.denominator), name)
+    )
+    return Equations(
+        network,
+        tuple(_lines(network, system)),
+        tuple(unknown_name(unknown) for unknown in system.unknowns),
+        Matrix(system.matrix),
+        {drive: Matrix(column) for drive, column in system.sources.items()},
+    )
+
+
+def unknown_name(unknown: tuple[str, str]) -> str:
+    """How an unknown is written: a node by its name, ``v_1`` for node 1, ``i_L1`` for a current."""
+    kind, name = unknown
+    return f"i_{name}" if kind == "i" else _node(name)
+
+
+def _node(node: str) -> str:
+    return node if node[:1].isalpha() and "+" not in node else f"v_{node}"
+
+
+def _lines(network: Network, system: Stamped[Any]) -> list[Equation]:
+    carried = {name for kind, name in system.unknowns if kind == "i"}
+    lines = []
+    for label, unknown in zip(system.rows, system.unknowns, strict=True):
+        if unknown[0] == "v":
+            lines.append(Equation(label, _leaving(network, unknown[1], carried), Number(Fraction(0))))
+        else:
+            lines.append(_law(network, unknown[1], label))
+    return lines
+
+
+def _difference(plus: str, minus: str) -> Expression:
+    if minus == GROUND:
+        return Name(_node(plus))
+    if plus == GROUND:
+        return Sum(((-1, Name(_node(minus))),))
+    return Sum(((1, Name(_node(plus))), (-1, Name(_node(minus)))))
+
+
+def _leaving(network: Network, node: str, carried: set[str]) -> Expression:
+    terms: list[tuple[int, Expression]] = []
+    for name, drive in zip(network.drive_names, network.drives, strict=True):
+        if isinstance(drive, CurrentDrive):
+            terms += _signed(Name(name), node, drive.start, drive.end)
+        else:
+            terms += _signed(Name(f"i_{name}"), node, drive.plus, drive.minus)
+    for part in network.parts:
+        match part:
+            case Branch() if part.name not in carried and node in part.nodes and part.start != part.end:
+                other = part.end if node == part.start else part.start
+                terms.append((1, _branch_current(part, _difference(node, other))))
+            case Branch():
+                terms += _signed(Name(f"i_{part.name}"), node, part.start, part.end)
+            case VoltageLaw():
+                terms += _signed(Name(f"i_{part.name}"), node, part.plus, part.minus)
+            case CurrentLaw():
+                terms += _signed(part.value, node, part.start, part.end)
+            case OpAmp() if part.out == node:
+                terms.append((-1, Name(f"i_{part.name}")))
+            case _:
+                pass
+    return Sum(tuple(terms)) if terms else Number(Fraction(0))
+
+
+def _signed(current: Expression, node: str, start: str, end: str) -> list[tuple[int, Expression]]:
+    out: list[tuple[int, Expression]] = []
+    if node == start != end:
+        out.append((1, current))
+    if node == end != start:
+        out.append((-1, current))
+    return out
+
+
+def _branch_current(part: Branch, voltage: Expression) -> Expression:
+    value = Name(part.name)
+    match part.kind:
+        case "R":
+            return Product(((1, voltage), (-1, value)))
+        case "C":
+            return Product(((1, Name("s")), (1, value), (1, voltage)))
+        case _:
+            return Product(((1, value), (1, voltage)))
+
+
+def _law(network: Network, name: str, label: str) -> Equation:
+    for known, drive in zip(network.drive_names, network.drives, strict=True):
+        if known == name:
+            return Equation(label, _difference(*drive.nodes), Name(name))
+    part = network[name]
+    match part:
+        case VoltageLaw():
+            return Equation(label, _difference(part.plus, part.minus), part.value)
+        case OpAmp():
+            return Equation(label, _difference(part.plus, part.minus), Number(Fraction(0)))
+        case _:
+            factors = ((1, Name("s")),) if part.name[0] == "L" else ()
+            right = Product((*factors, (1, Name(name)), (1, Name(f"i_{name}"))))
+            return Equation(label, _difference(*part.nodes), right)

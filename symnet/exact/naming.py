@@ -1,0 +1,142 @@
+"""The ring of a network: which names remain after ties, in which order, and what each is worth.
+
+A name whose value has no names in it stays a symbol and has a number (SI). A name whose value has names in
+it is tied: it is replaced everywhere, and only the names it is tied to remain.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from fractions import Fraction
+from types import MappingProxyType
+from typing import TYPE_CHECKING
+
+from symnet.errors import Fault, NotationError, SingularError
+from symnet.exact.linear import fraction_of
+from symnet.exact.polynomials import make_ring
+from symnet.expressions import Expression, Name, Number, evaluate, names_in
+from symnet.network.network import Network
+from symnet.network.parts import Branch
+from symnet.quantities import SECOND, Dimension
+
+if TYPE_CHECKING:
+    from sympy.polys.fields import FracElement, FracField
+    from sympy.polys.rings import PolyRing
+
+__all__ = ["Naming"]
+
+
+@dataclass(frozen=True)
+class Naming:
+    """What the names of a network mean in its ring.
+
+    ``ring`` has s first, then the names that remain, in order of appearance. ``numbers`` are the values (SI)
+    of those that have one.
+    """
+
+    ring: PolyRing
+    field: FracField
+    numbers: Mapping[str, Fraction]
+    dimensions: Mapping[str, Dimension | None]
+    _ties: Mapping[str, FracElement]
+
+    @classmethod
+    def of(cls, network: Network, symbols: frozenset[str] | None = None) -> Naming:
+        """The naming of a network; with ``symbols``, only those names stay symbols beside the free ones.
+
+        Raises NotationError for ties in a circle.
+        """
+        numbers: dict[str, Fraction] = {}
+        ties: dict[str, Expression] = {}
+        for name, value in network.values:
+            if any(True for _ in names_in(value.expression)):
+                ties[name] = value.expression
+            else:
+                numbers[name] = _number(name, value.expression)
+        if symbols is not None:
+            ties |= {n: Number(v) for n, v in numbers.items() if n not in symbols}
+            numbers = {n: v for n, v in numbers.items() if n in symbols}
+        order = _order_of_ties(ties)
+        remaining: dict[str, None] = {}
+        electric = set(network.nodes) | set(network._electric_names())
+
+        def appear(name: str, seen: frozenset[str] = frozenset()) -> None:
+            if name in ties and name not in seen:
+                for inner in names_in(ties[name]):
+                    appear(inner.name, seen | {name})
+            elif name != "s":
+                remaining[name] = None
+
+        for part in network.parts:
+            if isinstance(part, Branch):
+                appear(part.name)
+            elif hasattr(part, "value"):
+                for inner in names_in(part.value):
+                    if inner.name not in electric:
+                        appear(inner.name)
+        for read in network.reads:
+            for inner in names_in(read):
+                if inner.name not in electric:
+                    appear(inner.name)
+        ring = make_ring(remaining)
+        field = ring.to_field()
+        known: dict[str, FracElement] = dict(zip(map(str, ring.symbols), field.gens, strict=True))
+        for name in order:
+            if all(inner.name in known for inner in names_in(ties[name])):
+                known[name] = fraction_of(
+                    ties[name], field, lambda inner: known[inner.name], f"the value of {name}"
+                )
+        from symnet.network.names import dimensions
+
+        found = {**dimensions(network), "s": SECOND**-1}
+        return cls(
+            ring,
+            field,
+            MappingProxyType({name: numbers[name] for name in remaining if name in numbers}),
+            MappingProxyType({str(symbol): found.get(str(symbol)) for symbol in ring.symbols}),
+            MappingProxyType(known),
+        )
+
+    def value(self, name: str) -> FracElement:
+        """What a name stands for, as a fraction of ring elements."""
+        return self._ties[name]
+
+    def fraction(self, name: Name) -> FracElement:
+        """The same for a name in an expression; NotationError when it stands for nothing."""
+        try:
+            return self._ties[name.name]
+        except KeyError:
+            raise NotationError(
+                Fault(f"{name.name} is no part or symbol of this network", span=name.span)
+            ) from None
+
+
+def _number(name: str, expression: Expression) -> Fraction:
+    try:
+        value = evaluate(expression, lambda _: None, lambda number: number.value)
+    except ZeroDivisionError:
+        raise SingularError(Fault(f"the value of {name} divides by zero", span=expression.span)) from None
+    return Fraction(value)
+
+
+def _order_of_ties(ties: Mapping[str, Expression]) -> list[str]:
+    """The tied names, each after those it hangs on; NotationError for a circle."""
+    order: dict[str, None] = {}
+    path: list[str] = []
+
+    def visit(name: str) -> None:
+        if name in order or name not in ties:
+            return
+        if name in path:
+            circle = " -> ".join([*path[path.index(name) :], name])
+            raise NotationError(Fault(f"values are tied in a circle: {circle}", "give one of them a number"))
+        path.append(name)
+        for inner in names_in(ties[name]):
+            visit(inner.name)
+        path.pop()
+        order[name] = None
+
+    for name in ties:
+        visit(name)
+    return list(order)

@@ -1,0 +1,185 @@
+"""H(s) as a value: exact, in lowest terms, in the names of the parts.
+
+A Transfer holds the two determinants as diagrams and writes them out when somebody looks at them; a figure
+that needs numbers only is computed from the diagrams directly, in exact integers.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+from fractions import Fraction
+from functools import cached_property
+from typing import TYPE_CHECKING, Any
+
+from symnet.errors import Fault, MissingValueError, UnknownNameError, nearest
+from symnet.exact.determinant import Determinant, numeric_pair
+from symnet.exact.lowest import LowestTerms, reduce
+from symnet.exact.modular import SMALL_PRIME
+from symnet.exact.ratio import Ratio
+from symnet.network.network import Network
+from symnet.network.parts import Drive
+from symnet.quantities import Dimension
+
+if TYPE_CHECKING:
+    from sympy import Expr
+    from sympy.polys.rings import PolyElement, PolyRing
+
+    from symnet.exact.confirm import Confirmation
+    from symnet.exact.naming import Naming
+    from symnet.expressions import Expression
+
+__all__ = ["Transfer"]
+
+@dataclass(frozen=True, eq=False, repr=False)
+class Transfer:
+    """The exact transfer function H(s) = numerator/denominator from a drive to a read.
+
+    Made by :func:`symnet.derive`. ``numerator`` and ``denominator`` are elements of ``ring`` (integers; the
+    first generator is s in rad/s, then the names in order of appearance), in lowest terms; ``hidden`` are the
+    cancelled factors that hold s: natural frequencies that this H does not show. ``values`` are the numbers
+    (SI) of those names that have one. ``label`` says what over what, ``dimension`` in which unit.
+
+    Two transfers are equal when they are the same function of the same names.
+
+    >>> import symnet as sn
+    >>> H = sn.derive(sn.network("in -- R1 -- out -- C1 -- gnd; drive in; read out"))
+    >>> H.denominator
+    s*R1*C1 + 1
+    """
+
+    network: Network
+    drive: Drive
+    read: Expression
+    label: str
+    dimension: Dimension
+    naming: Naming
+    determinants: tuple[Determinant, Determinant]
+    """Numerator and denominator before anything is cancelled."""
+
+    @property
+    def ring(self) -> PolyRing:
+        """The integer polynomial ring of numerator and denominator."""
+        return self.naming.ring
+
+    @property
+    def names(self) -> tuple[str, ...]:
+        """The names in H's ring, without s, in order of appearance."""
+        return tuple(str(symbol) for symbol in self.ring.symbols[1:])
+
+    @property
+    def values(self) -> Mapping[str, Fraction]:
+        """The numbers (SI units) of the names that have one."""
+        return self.naming.numbers
+
+    @property
+    def dimensions(self) -> Mapping[str, Dimension | None]:
+        """The dimension of s (1/second) and of every name."""
+        return self.naming.dimensions
+
+    @cached_property
+    def _lowest(self) -> LowestTerms:
+        n, d = self.determinants
+        if n.diagram.is_zero:
+            return LowestTerms(self.ring.zero, self.ring.one, ())
+        return reduce(
+            n.expand(),
+            d.expand(),
+            lambda point: (n.modulo(point, SMALL_PRIME), d.modulo(point, SMALL_PRIME)),
+        )
+
+    @property
+    def numerator(self) -> PolyElement:
+        """N of H = N/D, written out, in lowest terms. LimitError when it would be too long."""
+        return self._lowest.numerator
+
+    @property
+    def denominator(self) -> PolyElement:
+        """D of H = N/D, written out, in lowest terms. LimitError when it would be too long."""
+        return self._lowest.denominator
+
+    @property
+    def hidden(self) -> tuple[PolyElement, ...]:
+        """The cancelled factors that hold s: modes of the network that do not show in this H."""
+        return self._lowest.hidden
+
+    @cached_property
+    def confirmation(self) -> Confirmation:
+        """Which independent confirmation this H has had."""
+        from symnet.exact.confirm import confirm
+
+        return confirm(self)
+
+    @property
+    def terms(self) -> tuple[int, int]:
+        """An upper bound of the number of terms of N and D written out, known without expanding."""
+        n, d = self.determinants
+        return n.diagram.count(), d.diagram.count()
+
+    @property
+    def is_numeric(self) -> bool:
+        """Whether every name in H has a number."""
+        return all(name in self.values for name in self.names)
+
+    @property
+    def expr(self) -> Expr:
+        """H as a sympy expression, one fraction of expanded polynomials; symbols are named as the parts."""
+        return self.numerator.as_expr() / self.denominator.as_expr()
+
+    def symbol(self, name: str) -> Expr:
+        """The sympy symbol of a name, ``s`` included; UnknownNameError, with the nearest name, if there is none."""
+        for symbol in self.ring.symbols:
+            if str(symbol) == name:
+                return symbol
+        close = nearest(name, ("s", *self.names))
+        hint = f"did you mean {close[0]}?" if close else "H holds: " + ", ".join(("s", *self.names))
+        raise UnknownNameError(Fault(f"H holds no symbol called {name}", hint))
+
+    def with_values(self, values: Mapping[str, Any] | None = None, /, **named: Any) -> Transfer:
+        """The same transfer of the network with other values; see :meth:`Network.with_values`."""
+        from symnet.exact.derive import derive_from
+
+        return derive_from(self.network.with_values(values, **named), self.drive, self.read)
+
+    @cached_property
+    def _numeric(self) -> Ratio:
+        missing = [name for name in self.names if name not in self.values]
+        if missing:
+            raise MissingValueError(
+                Fault(
+                    f"no value for {', '.join(missing)}",
+                    f'give one: H.with_values({missing[0]}="...")',
+                    parts=tuple(missing),
+                )
+            )
+        n, d = self.determinants
+        return Ratio.of(*numeric_pair(n, d, [self.values[name] for name in self.names]))
+
+    def numeric(self) -> Ratio:
+        """H with every name replaced by its number, exact; MissingValueError when one has none."""
+        return self._numeric
+
+    def __eq__(self, other: object) -> bool:
+        if not isinstance(other, Transfer):
+            return NotImplemented
+        return self._canonical == other._canonical
+
+    def __hash__(self) -> int:
+        return hash(self._canonical)
+
+    @cached_property
+    def _canonical(self) -> tuple[frozenset[Any], frozenset[Any]]:
+        return _named_terms(self.numerator), _named_terms(self.denominator)
+
+    def __repr__(self) -> str:
+        n, d = self.terms
+        shown = f"{n} over {d} terms" if max(n, d) > 1 else "a constant"
+        return f"<Transfer {self.label}: {shown}, {self.confirmation.short}>"
+
+
+def _named_terms(polynomial: PolyElement) -> frozenset[Any]:
+    names = [str(symbol) for symbol in polynomial.ring.symbols]
+    return frozenset(
+        (frozenset((name, e) for name, e in zip(names, monomial, strict=True) if e), int(c))
+        for monomial, c in polynomial.items()
+    )

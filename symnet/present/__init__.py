@@ -1,0 +1,1 @@
+"""What one sees: the brief, and how results show themselves."""

@@ -1,0 +1,1 @@
+"""What H(s) looks like: normal form, sections, families, recognition."""
