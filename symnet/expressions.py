@@ -13,7 +13,7 @@ from fractions import Fraction
 from typing import Any, TypeAlias
 
 from symnet.errors import DimensionError, Fault, Span
-from symnet.quantities import NUMBER, Dimension
+from symnet.quantities import NUMBER, Dimension, in_words
 
 __all__ = [
     "Expression",
@@ -140,9 +140,7 @@ def substitute(expression: Expression, replace: Callable[[Name], Expression]) ->
             return expression
 
 
-def evaluate(
-    expression: Expression, value_of: Callable[[Name], Any], number: Callable[[Number], Any]
-) -> Any:
+def evaluate(expression: Expression, value_of: Callable[[Name], Any], number: Callable[[Number], Any]) -> Any:
     """The value of the expression in whatever arithmetic ``value_of`` and ``number`` bring.
 
     The arithmetic needs ``+ - * /`` and integer powers. ZeroDivisionError is passed on as it comes.
@@ -190,25 +188,22 @@ def dimension_of(expression: Expression, known: Mapping[str, Dimension]) -> Dime
         case Name(name=name):
             return known.get(name)
         case Product(factors=factors):
-            total = NUMBER
-            for power, factor in factors:
-                dimension = dimension_of(factor, known)
-                if dimension is None:
-                    return _none_but_check(factors, known)
-                total = total * dimension**power
-            return total
+            product = NUMBER
+            unknown = False
+            for power, factor in factors:  # every factor is looked at, so that faults inside it are found
+                inner = dimension_of(factor, known)
+                if inner is None:
+                    unknown = True
+                else:
+                    product = product * inner**power
+            return None if unknown else product
         case Power(base=base, exponent=exponent):
-            dimension = dimension_of(base, known)
-            return None if dimension is None else dimension**exponent
+            of_base = dimension_of(base, known)
+            return None if of_base is None else of_base**exponent
         case Sum():
             return _common([term for _, term in expression.terms], known, "added to")
         case Parallel(branches=branches):
             return _common(list(branches), known, "put in parallel with")
-
-
-def _none_but_check(factors: tuple[tuple[int, Expression], ...], known: Mapping[str, Dimension]) -> None:
-    for _, factor in factors:
-        dimension_of(factor, known)
 
 
 def _common(terms: list[Expression], known: Mapping[str, Dimension], verb: str) -> Dimension | None:
@@ -220,5 +215,6 @@ def _common(terms: list[Expression], known: Mapping[str, Dimension], verb: str) 
         if first is None:
             first = dimension
         elif dimension != first:
-            raise DimensionError(Fault(f"{dimension} is {verb} {first}", span=term.span))
+            message = f"{in_words(dimension)} is {verb} {in_words(first)}"
+            raise DimensionError(Fault(message, span=term.span))
     return first

@@ -10,11 +10,13 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 from fractions import Fraction
+from functools import lru_cache
 from math import log10
 from random import Random
 from typing import TYPE_CHECKING, Final
 
 from symnet.errors import Fault, SingularError, SymnetError
+from symnet.exact.determinant import pair_modulo
 from symnet.exact.mna import Arithmetic, Stamped, stamp, unknown_name
 from symnet.exact.modular import PRIME, Residue
 from symnet.exact.polynomials import modulo
@@ -24,15 +26,15 @@ if TYPE_CHECKING:
     from symnet.exact.transfer import Transfer
     from symnet.network.network import Network
 
-__all__ = ["Confirmation", "Unconfirmed", "confirm", "undetermined"]
+__all__ = ["Confirmation", "UnconfirmedError", "confirm", "undetermined"]
 
 _POINTS: Final = 2
 _MOST_TRIES: Final = 20
 #: Terms up to which the polynomials as written out are compared, and not the diagrams they come from.
-_MOST_TERMS_COMPARED: Final = 50_000
+_MOST_TERMS_COMPARED: Final = 5_000
 
 
-class Unconfirmed(SymnetError, AssertionError):
+class UnconfirmedError(SymnetError, AssertionError):
     """Two independent routes to H disagree: a defect of symnet, never of the network."""
 
 
@@ -65,32 +67,35 @@ class Confirmation:
 def confirm(transfer: Transfer) -> Confirmation:
     """Compare H with the solution of the nodal equations at random points modulo a prime.
 
-    Raises :class:`Unconfirmed` when they differ, and SingularError when the equations have no single solution.
+    Raises :class:`UnconfirmedError` when they differ, and SingularError when the equations have no single solution.
     """
     written_out = max(transfer.terms) <= _MOST_TERMS_COMPARED
-    random = Random("|".join(("symnet", transfer.label, *transfer.names)))
-    done = tries = 0
-    while done < _POINTS:
-        tries += 1
-        if tries > _MOST_TRIES:
-            raise SingularError(undetermined(transfer.network, transfer.naming))
-        point = [random.randrange(1, PRIME) for _ in transfer.ring.symbols]
-        try:
-            expected = _solved(transfer, point)
-        except ZeroDivisionError:
+    place = transfer.network.drives.index(transfer.drive)
+    done = 0
+    for trial in range(_MOST_TRIES):
+        point = _point(transfer.naming, trial)
+        solved = _solved(transfer.network, transfer.naming, place, trial)
+        if solved is None:
             continue
+        system, solution = solved
+        weights = system.weights(transfer.read)
+        expected = sum(weight.value * value for weight, value in zip(weights, solution, strict=True))
         if written_out:
             n, d = (modulo(p, point, PRIME) for p in (transfer.numerator, transfer.denominator))
         else:
-            n, d = (det.modulo(point, PRIME) for det in transfer.determinants)
+            n, d = pair_modulo(*transfer.determinants, point, PRIME)
         if (n - expected * d) % PRIME or not d:
-            raise Unconfirmed(
+            raise UnconfirmedError(
                 Fault(
                     f"two independent derivations of {transfer.label} disagree; this result must not be used",
                     "this is a defect of symnet: please report the network",
                 )
             )
         done += 1
+        if done == _POINTS:
+            break
+    else:
+        raise SingularError(undetermined(transfer.network, transfer.naming))
     return Confirmation(_POINTS, _degree(transfer, written_out), written_out)
 
 
@@ -104,7 +109,7 @@ def _degree(transfer: Transfer, written_out: bool) -> int:
     )
 
 
-def _at(network: Network, naming: Naming, point: list[int]) -> Stamped[Residue]:
+def _at(network: Network, naming: Naming, point: list[int]) -> Stamped:
     values = dict(zip(map(str, naming.ring.symbols), map(Residue, point), strict=True))
 
     def name(word: str) -> Residue:
@@ -119,17 +124,25 @@ def _at(network: Network, naming: Naming, point: list[int]) -> Stamped[Residue]:
     return stamp(network, Arithmetic(number, name))
 
 
-def _solved(transfer: Transfer, point: list[int]) -> int:
-    """H at a point, by Gaussian elimination on the nodal equations; ZeroDivisionError where they are singular."""
-    system = _at(transfer.network, transfer.naming, point)
-    drives = transfer.network.drives
-    column = list(system.sources.values())[drives.index(transfer.drive)]
+def _point(naming: Naming, trial: int) -> list[int]:
+    """A random value of s and of every name; the same for every H of a network, so that solutions are shared."""
+    random = Random("|".join(("symnet", str(trial), *map(str, naming.ring.symbols))))
+    return [random.randrange(1, PRIME) for _ in naming.ring.symbols]
+
+
+@lru_cache(maxsize=32)
+def _solved(network: Network, naming: Naming, drive: int, trial: int) -> tuple[Stamped, list[int]] | None:
+    """The equations and their solution for one drive, by Gaussian elimination; None where they are singular."""
+    try:
+        system = _at(network, naming, _point(naming, trial))
+    except ZeroDivisionError:
+        return None
+    column = system.sources[network.drive_names[drive]]
     rows = [[e.value for e in row] + [c.value] for row, c in zip(system.matrix, column, strict=True)]
     pivots = _eliminate(rows)
     if len(pivots) < len(rows):
-        raise ZeroDivisionError
-    weights = system.weights(transfer.read)
-    return sum(weights[column].value * rows[row][-1] for row, column in pivots) % PRIME
+        return None
+    return system, [rows[row][-1] for row, _ in pivots]
 
 
 def _eliminate(rows: list[list[int]]) -> list[tuple[int, int]]:

@@ -12,7 +12,7 @@ from symnet.exact.determinant import Determinant
 from symnet.exact.modular import PRIME
 from symnet.exact.pieces import Pieces, drive_column, terms_of
 from symnet.exact.transfer import Transfer
-from symnet.exact.trees import Diagram, Piece, build
+from symnet.exact.trees import Piece, build
 from symnet.expressions import Expression, Name, dimension_of, names_in
 from symnet.network.network import Network
 from symnet.network.parts import GROUND, CurrentDrive, Drive
@@ -63,7 +63,8 @@ def derive(
     if len(reads) > 1:
         raise WiringError(
             Fault(
-                "the network has several reads", "say which: derive(net, read=...), or derive_all(net) for one H each"
+                "the network has several reads",
+                "say which: derive(net, read=...), or derive_all(net) for one H each",
             )
         )
     if not network.drives:
@@ -112,8 +113,8 @@ def derive_from(
         known = network.symbols()
         for name in kept:
             if name not in known:
-                raise network._unknown(name, known, "part or symbol")
-    pieces, diagram = _prepared(network, kept)
+                raise network.unknown(name, known, "part or symbol")
+    pieces, denominator = _prepared(network, kept)
     form = pieces.form(read, "the read")
     one = pieces.naming.ring.one
     border = [
@@ -137,7 +138,7 @@ def derive_from(
         pieces.naming,
         (
             Determinant(numerator, takes, leaves, one),
-            Determinant(diagram, pieces.take, pieces.leave, factor),
+            denominator if factor == one else replace(denominator, factor=factor),
         ),
     )
     transfer.confirmation  # noqa: B018 - computed here, so that no H leaves unconfirmed
@@ -145,15 +146,16 @@ def derive_from(
 
 
 @lru_cache(maxsize=16)
-def _prepared(network: Network, symbols: frozenset[str] | None) -> tuple[Pieces, Diagram]:
+def _prepared(network: Network, symbols: frozenset[str] | None) -> tuple[Pieces, Determinant]:
     """What every drive and read of a network shares: its pieces and its determinant."""
     check_wiring(network)
     pieces = Pieces.of(network, symbols)
-    diagram = build(pieces.size, pieces.pieces)
-    determinant = Determinant(diagram, pieces.take, pieces.leave, pieces.naming.ring.one)
-    if diagram.is_zero or _vanishes(determinant):
+    determinant = Determinant(
+        build(pieces.size, pieces.pieces), pieces.take, pieces.leave, pieces.naming.ring.one
+    )
+    if determinant.diagram.is_zero or _vanishes(determinant):
         raise SingularError(undetermined(network, pieces.naming))
-    return pieces, diagram
+    return pieces, determinant
 
 
 def _vanishes(determinant: Determinant) -> bool:
@@ -171,7 +173,7 @@ def _read(network: Network, text: str) -> Expression:
     from symnet.network.reading import read_expression
 
     expression = read_expression(text)
-    known = {*network.nodes, *network._electric_names(), *network.symbols(), "s"}
+    known = {*network.nodes, *network.electric_names(), *network.symbols(), "s"}
     for name in names_in(expression):
         if name.name not in known:
             close = nearest(name.name, known)

@@ -11,18 +11,19 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 from fractions import Fraction
+from functools import cached_property
 from math import lcm, prod
 from typing import TYPE_CHECKING, Any, Final
 
 from symnet.errors import Fault, LimitError
+from symnet.exact.expansion import Primitive, expand
 from symnet.exact.modular import weight_at
-from symnet.exact.polynomials import expand
 from symnet.exact.trees import Diagram
 
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement
 
-__all__ = ["MOST_TERMS", "Determinant", "numeric_pair"]
+__all__ = ["MOST_TERMS", "Determinant", "numeric_pair", "pair_modulo"]
 
 #: Paths of a diagram that are still written out as terms.
 MOST_TERMS: Final = 500_000
@@ -37,8 +38,9 @@ class Determinant:
     leave: tuple[PolyElement, ...]
     factor: PolyElement
 
-    def expand(self) -> PolyElement:
-        """Written out in the ring of the weights; LimitError beyond :data:`MOST_TERMS` paths."""
+    @cached_property
+    def primitive(self) -> Primitive:
+        """Written out, its common integer and monomial factors apart; LimitError beyond :data:`MOST_TERMS` paths."""
         paths = self.diagram.count()
         if paths > MOST_TERMS:
             raise LimitError(
@@ -48,9 +50,7 @@ class Determinant:
                     'derive(net, symbols="R1 C1")',
                 )
             )
-        ring = self.factor.ring
-        determinant = expand(self.diagram, ring, self.take, self.leave)
-        return determinant if self.factor == ring.one else determinant * self.factor
+        return Primitive.of(expand(self.diagram, self.factor, self.take, self.leave))
 
     def modulo(self, point: Sequence[Any], prime: int) -> Any:
         """The value at a point (s first, then the names in order), modulo a prime."""
@@ -58,6 +58,17 @@ class Determinant:
         leave = [weight_at(weight, point, prime) for weight in self.leave]
         value = self.diagram.evaluate_modulo(take, leave, prime)
         return value * weight_at(self.factor, point, prime) % prime
+
+
+def pair_modulo(n: Determinant, d: Determinant, point: Sequence[Any], prime: int) -> tuple[Any, Any]:
+    """N and D at a point modulo a prime; D's pieces are the first of N's, so their weights are found once."""
+    take = [weight_at(weight, point, prime) for weight in n.take]
+    leave = [weight_at(weight, point, prime) for weight in n.leave]
+    top, bottom = (
+        det.diagram.evaluate_modulo(take, leave, prime) * weight_at(det.factor, point, prime) % prime
+        for det in (n, d)
+    )
+    return top, bottom
 
 
 def _count(paths: int) -> str:
@@ -73,10 +84,10 @@ def numeric_pair(n: Determinant, d: Determinant, values: Sequence[Fraction]) -> 
     """
     takes, leaves, scales = [], [], []
     for take, leave in zip(n.take, n.leave, strict=True):
-        t, l = _coefficients(take, values), _coefficients(leave, values)
-        scale = lcm(*(c.denominator for c in (*t, *l)))
-        takes.append([int(c * scale) for c in t])
-        leaves.append([int(c * scale) for c in l])
+        taken, left = _coefficients(take, values), _coefficients(leave, values)
+        scale = lcm(*(c.denominator for c in (*taken, *left)))
+        takes.append([int(c * scale) for c in taken])
+        leaves.append([int(c * scale) for c in left])
         scales.append(scale)
     n_factor, d_factor = _coefficients(n.factor, values), _coefficients(d.factor, values)
     common = lcm(*(c.denominator for c in (*n_factor, *d_factor)))
@@ -102,9 +113,9 @@ def _coefficients(weight: PolyElement, values: Sequence[Fraction]) -> list[Fract
 def _polynomial(
     diagram: Diagram, takes: Sequence[list[int]], leaves: Sequence[list[int]], factor: list[int]
 ) -> list[int]:
-    bound = diagram.bound([_size(t) for t in takes], [_size(l) for l in leaves]) * _size(factor)
+    bound = diagram.bound(list(map(_size, takes)), list(map(_size, leaves))) * _size(factor)
     bits = bound.bit_length() + 2
-    value = diagram.evaluate([_packed(t, bits) for t in takes], [_packed(l, bits) for l in leaves])
+    value = diagram.evaluate([_packed(w, bits) for w in takes], [_packed(w, bits) for w in leaves])
     return _unpacked(value * _packed(factor, bits), bits)
 
 

@@ -9,7 +9,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 from fractions import Fraction
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Final
 
 from symnet.errors import NotationError, SingularError, WiringError
 from symnet.exact.derive import derive_from
@@ -26,6 +26,8 @@ if TYPE_CHECKING:
     from symnet.exact.transfer import Transfer
 
 __all__ = ["Limit", "Limits", "limits"]
+
+_MOST_TERMS_CANCELLED: Final = 1000
 
 
 @dataclass(frozen=True, slots=True)
@@ -52,7 +54,7 @@ class Limit:
     @property
     def is_zero(self) -> bool:
         """Whether H tends to zero there."""
-        return not self.numerator or (self.power > 0) == (self.where == "DC") and self.power != 0
+        return not self.numerator or (self.power != 0 and (self.power > 0) == (self.where == "DC"))
 
     @property
     def is_infinite(self) -> bool:
@@ -82,17 +84,20 @@ def limits(transfer: Transfer) -> Limits:
 
 
 def _limit(transfer: Transfer, where: str) -> Limit:
-    pick = min if where == "DC" else max
     n, d = transfer.numerator, transfer.denominator
-    top, n_power = _end(n, pick)
-    bottom, d_power = _end(d, pick)
+    top, n_power = _end(n, where)
+    bottom, d_power = _end(d, where)
+    if top and len(top) + len(bottom) <= _MOST_TERMS_CANCELLED:
+        top, bottom = top.cancel(bottom)
     limit = Limit(where, top, bottom, n_power - d_power if n else 0, "", None)
     resistive, changes = _resistive(transfer.network, where)
     said = ", ".join(changes) or "no part changes"
     if resistive is None:
         return replace(limit, reason=f"{said}; from H alone")
     try:
-        there = derive_from(resistive, transfer.drive, transfer.read, transfer.names)
+        known = set(resistive.symbols())
+        kept = [name for name in transfer.names if name in known]
+        there = derive_from(resistive, transfer.drive, transfer.read, kept)
     except (WiringError, SingularError) as error:
         fault = error.faults[0]
         what = ", ".join(place_of(node) for node in fault.nodes if node) or "the network"
@@ -112,11 +117,12 @@ def _limit(transfer: Transfer, where: str) -> Limit:
     return replace(limit, reason=said, from_network=agrees)
 
 
-def _end(polynomial: PolyElement, pick: type[min] | type[max]) -> tuple[PolyElement, int]:  # type: ignore[valid-type]
-    """The coefficient of the lowest or highest power of s, and that power."""
+def _end(polynomial: PolyElement, where: str) -> tuple[PolyElement, int]:
+    """The coefficient of the power of s that decides at DC (the lowest) or at high frequency, and that power."""
     if not polynomial:
         return polynomial, 0
-    power = pick(monomial[0] for monomial in polynomial)
+    powers = [monomial[0] for monomial in polynomial]
+    power = min(powers) if where == "DC" else max(powers)
     part = {(0, *m[1:]): c for m, c in polynomial.items() if m[0] == power}
     return polynomial.ring.from_dict(part), power
 
@@ -215,8 +221,7 @@ def _holds_s(network: Network, name: str) -> bool:
 def _ends(naming: Naming, part: Branch, where: str) -> tuple[PolyElement, PolyElement]:
     """Numerator and denominator of a part's value at the limit, one of them zero if it is 0 or infinite."""
     value = naming.value(part.name)
-    pick = min if where == "DC" else max
-    (top, n_power), (bottom, d_power) = _end(value.numer, pick), _end(value.denom, pick)
+    (top, n_power), (bottom, d_power) = _end(value.numer, where), _end(value.denom, where)
     zero = naming.ring.zero
     rises = (n_power > d_power) == (where == "DC")
     if n_power == d_power or not value:

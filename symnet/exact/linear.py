@@ -82,26 +82,26 @@ class LinearForm:
         weights = dict(self.weights)
         for unknown, weight in other.weights.items():
             weights[unknown] = weights[unknown] + weight if unknown in weights else weight
-        return LinearForm(
-            self.scalar + other.scalar, {u: w for u, w in weights.items() if w.value}
-        )
+        return LinearForm(self.scalar + other.scalar, {u: w for u, w in weights.items() if w.value})
 
     def __neg__(self) -> LinearForm:
         return LinearForm(-self.scalar, {u: -w for u, w in self.weights.items()})
 
     def __mul__(self, other: LinearForm) -> LinearForm:
         if self.weights and other.weights:
-            raise NotationError(Fault("two voltages or currents are multiplied; a law must be linear in them"))
+            raise NotationError(
+                Fault("two voltages or currents are multiplied; a law must be linear in them")
+            )
         form, factor = (self, other.scalar) if self.weights else (other, self.scalar)
         weights = {u: w * factor for u, w in form.weights.items()} if factor.value else {}
         return LinearForm(form.scalar * factor, weights)
 
     def __truediv__(self, other: LinearForm) -> LinearForm:
         if other.weights:
-            raise NotationError(Fault("a voltage or current stands below a fraction; a law must be linear in them"))
-        return LinearForm(
-            self.scalar / other.scalar, {u: w / other.scalar for u, w in self.weights.items()}
-        )
+            raise NotationError(
+                Fault("a voltage or current stands below a fraction; a law must be linear in them")
+            )
+        return LinearForm(self.scalar / other.scalar, {u: w / other.scalar for u, w in self.weights.items()})
 
     def __pow__(self, exponent: int) -> LinearForm:
         if self.weights and exponent != 1:

@@ -11,16 +11,19 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import dataclass
-from math import gcd
+from fractions import Fraction
+from functools import cached_property
+from operator import sub
 from random import Random
 from typing import TYPE_CHECKING, Any, Final
 
 from symnet.errors import Fault, LimitError
+from symnet.exact.expansion import Expansion, Primitive
 from symnet.exact.modular import SMALL_PRIME, gcd_modulo, interpolate
-from symnet.exact.polynomials import content, degrees, divide_content, primitive
+from symnet.exact.polynomials import begins_negative
 
 if TYPE_CHECKING:
-    from sympy.polys.rings import PolyElement
+    from sympy.polys.rings import PolyElement, PolyRing
 
 __all__ = ["LowestTerms", "reduce"]
 
@@ -33,53 +36,67 @@ _MOST_TERMS_FACTORED: Final = 200
 Evaluator = Callable[[list[Any]], "tuple[Any, Any]"]
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class LowestTerms:
-    """Numerator and denominator without common factor, and the cancelled factors that hold s."""
+    """Numerator and denominator without common factor, and the cancelled factors that hold s.
 
-    numerator: PolyElement
-    denominator: PolyElement
+    ``top`` and ``bottom`` are expansions as long as nobody needed ring elements.
+    """
+
+    ring: PolyRing
+    top: Expansion | PolyElement
+    bottom: Expansion | PolyElement
     hidden: tuple[PolyElement, ...]
 
+    @cached_property
+    def numerator(self) -> PolyElement:
+        """The numerator as a ring element."""
+        return _element(self.top, self.ring)
 
-def reduce(numerator: PolyElement, denominator: PolyElement, at: Evaluator) -> LowestTerms:
+    @cached_property
+    def denominator(self) -> PolyElement:
+        """The denominator as a ring element."""
+        return _element(self.bottom, self.ring)
+
+
+def _element(written: Expansion | PolyElement, ring: PolyRing) -> PolyElement:
+    return written.to_element(ring) if isinstance(written, Expansion) else written
+
+
+def reduce(numerator: Primitive, denominator: Primitive, ring: PolyRing, at: Evaluator) -> LowestTerms:
     """N/D in lowest terms over the integers, the sign such that D's lowest coefficient begins with plus.
 
-    ``at(point)`` gives N and D modulo 2^31 - 1, up to integer and monomial factors, for a point whose
-    coordinates (s first) are int64 arrays; it may be faster than evaluating the expanded polynomials.
-    Raises LimitError when a common factor exists and the polynomials are too large for its gcd.
+    ``at(point)`` gives N and D modulo 2^31 - 1 for a point whose coordinates (s first) are int64 arrays; it
+    may be faster than evaluating the polynomials. Raises LimitError when a common factor exists and the
+    polynomials are too large for its gcd.
     """
-    ring = denominator.ring
-    if not numerator:
-        return LowestTerms(ring.zero, ring.one, ())
-    n_number, n_exponents = content(numerator)
-    d_number, d_exponents = content(denominator)
-    n = divide_content(numerator, n_number, n_exponents)
-    d = divide_content(denominator, d_number, d_exponents)
-    hidden: list[PolyElement] = [ring.gens[0]] * min(n_exponents[0], d_exponents[0])
-    if not _certainly_coprime(n, d, at, n_exponents, d_exponents):
-        if max(len(n), len(d)) > MOST_TERMS_FOR_GCD:
-            raise LimitError(
-                Fault(
-                    f"numerator and denominator have a common factor and {max(len(n), len(d))} terms; "
-                    f"it is looked for up to {MOST_TERMS_FOR_GCD}",
-                    "give some parts numbers: derive(net, symbols=...) keeps only the names that you list",
-                )
+    if not numerator.number:
+        return LowestTerms(ring, ring.zero, ring.one, ())
+    hidden = [ring.gens[0]] * min(numerator.exponents[0], denominator.exponents[0])
+    number = Fraction(numerator.number, denominator.number)
+    shared = tuple(map(min, numerator.exponents, denominator.exponents))
+    n_rest = tuple(map(sub, numerator.exponents, shared))
+    d_rest = tuple(map(sub, denominator.exponents, shared))
+    if _certainly_coprime(numerator, denominator, at):
+        top = numerator.part.times(number.numerator, n_rest)
+        bottom = denominator.part.times(number.denominator, d_rest)
+        return LowestTerms(ring, top, bottom, tuple(hidden))
+    terms = max(len(numerator.part), len(denominator.part))
+    if terms > MOST_TERMS_FOR_GCD:
+        raise LimitError(
+            Fault(
+                f"numerator and denominator have a common factor and up to {terms} terms; "
+                f"it is looked for up to {MOST_TERMS_FOR_GCD}",
+                "give some parts numbers: derive(net, symbols=...) keeps only the names that you list",
             )
-        common, n, d = n.cofactors(d)
-        hidden.extend(_factors_with_s(common))
-    number, rest = _quotient(n_number, d_number)
-    common_exponents = tuple(map(min, n_exponents, d_exponents))
-    n = _times(n, number, tuple(map(int.__sub__, n_exponents, common_exponents)))
-    d = _times(d, rest, tuple(map(int.__sub__, d_exponents, common_exponents)))
-    if _begins_negative(d):
+        )
+    common, n, d = numerator.part.to_element(ring).cofactors(denominator.part.to_element(ring))
+    hidden.extend(_factors_with_s(common))
+    if begins_negative(d):
         n, d = -n, -d
-    return LowestTerms(n, d, tuple(hidden))
-
-
-def _quotient(a: int, b: int) -> tuple[int, int]:
-    common = gcd(a, b) or 1
-    return a // common, b // common
+    n = _times(n, number.numerator, n_rest)
+    d = _times(d, number.denominator, d_rest)
+    return LowestTerms(ring, n, d, tuple(hidden))
 
 
 def _times(polynomial: PolyElement, number: int, exponents: tuple[int, ...]) -> PolyElement:
@@ -88,60 +105,44 @@ def _times(polynomial: PolyElement, number: int, exponents: tuple[int, ...]) -> 
     return polynomial.mul_monom(exponents) if any(exponents) else polynomial
 
 
-def _begins_negative(polynomial: PolyElement) -> bool:
-    """Whether the first term of the lowest power of s is negative."""
-    lowest = min(monomial[0] for monomial in polynomial)
-    first = max(monomial for monomial in polynomial if monomial[0] == lowest)
-    return bool(polynomial[first] < 0)
-
-
 def _factors_with_s(common: PolyElement) -> list[PolyElement]:
     if all(monomial[0] == 0 for monomial in common):
         return []
     if len(common) > _MOST_TERMS_FACTORED:
-        return [primitive(common)]
+        return [common]
     _, factors = common.factor_list()
     return [
-        -factor if _begins_negative(factor) else factor
+        -factor if begins_negative(factor) else factor
         for factor, times in factors
         for _ in range(times)
         if any(monomial[0] for monomial in factor)
     ]
 
 
-def _certainly_coprime(
-    n: PolyElement,
-    d: PolyElement,
-    at: Evaluator,
-    n_exponents: tuple[int, ...],
-    d_exponents: tuple[int, ...],
-) -> bool:
+def _certainly_coprime(numerator: Primitive, denominator: Primitive, at: Evaluator) -> bool:
     import numpy as np
 
-    count = n.ring.ngens
-    n_degrees, d_degrees = degrees(n), degrees(d)
-    shared = [k for k in range(count) if n_degrees[k] and d_degrees[k]]
-    if not shared:
-        return True
     spans = {
-        k: max(n_degrees[k] + n_exponents[k], d_degrees[k] + d_exponents[k]) + 1 for k in shared
+        k: max(n_degree + numerator.exponents[k], d_degree + denominator.exponents[k]) + 1
+        for k, (n_degree, d_degree) in enumerate(zip(numerator.degrees, denominator.degrees, strict=True))
+        if n_degree and d_degree
     }
+    if not spans:
+        return True
     random = Random(20)
-    base = [random.randrange(1, SMALL_PRIME) for _ in range(count)]
     total = sum(spans.values())
-    point = [np.full(total, value, dtype=np.int64) for value in base]
-    offsets, offset = {}, 0
-    for k in shared:
-        point[k][offset : offset + spans[k]] = np.arange(spans[k])
-        offsets[k] = offset
-        offset += spans[k]
-    n_values, d_values = (np.broadcast_to(v, (total,)) for v in at(point))
-    for k in shared:
-        part = slice(offsets[k], offsets[k] + spans[k])
+    point = [np.full(total, random.randrange(1, SMALL_PRIME), dtype=np.int64) for _ in numerator.exponents]
+    parts, offset = {}, 0
+    for k, span in spans.items():
+        parts[k] = slice(offset, offset + span)
+        point[k][parts[k]] = np.arange(span)
+        offset += span
+    n_values, d_values = (np.broadcast_to(values, (total,)) for values in at(point))
+    for k, part in parts.items():
         first = interpolate([int(v) for v in n_values[part]], SMALL_PRIME)
         second = interpolate([int(v) for v in d_values[part]], SMALL_PRIME)
-        # the monomial factors that content() has found are not a common factor of n and d
-        powers = min(n_exponents[k], d_exponents[k])
+        # what the content has taken out already is no factor of what is left
+        powers = min(numerator.exponents[k], denominator.exponents[k])
         if len(gcd_modulo(first, second, SMALL_PRIME)) != powers + 1:
             return False
     return True

@@ -14,7 +14,7 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
-from typing import TYPE_CHECKING, Any, Generic, TypeVar
+from typing import TYPE_CHECKING, Any
 
 from symnet.expressions import Expression, Name, Number, Product, Sum, evaluate
 from symnet.network.network import Network
@@ -23,50 +23,47 @@ from symnet.network.parts import (
     Branch,
     CurrentDrive,
     CurrentLaw,
-    Drive,
     OpAmp,
     VoltageDrive,
     VoltageLaw,
 )
+from symnet.network.wiring import check_wiring
 
 if TYPE_CHECKING:
     from sympy import Matrix
 
 __all__ = ["Arithmetic", "Equation", "Equations", "Stamped", "equations", "stamp"]
 
-T = TypeVar("T")
-
 
 @dataclass(frozen=True, slots=True)
-class Arithmetic(Generic[T]):
+class Arithmetic:
     """Where the coefficients live: what a number and a name are, and 0 and 1."""
 
-    number: Callable[[Fraction], T]
-    name: Callable[[str], T]
+    number: Callable[[Fraction], Any]
+    name: Callable[[str], Any]
 
-    def of(self, expression: Expression) -> T:
+    def of(self, expression: Expression) -> Any:
         """The value of an expression without voltages and currents."""
-        value: T = evaluate(expression, lambda n: self.name(n.name), lambda n: self.number(n.value))
-        return value
+        return evaluate(expression, lambda n: self.name(n.name), lambda n: self.number(n.value))
 
 
 @dataclass(frozen=True)
-class Stamped(Generic[T]):
+class Stamped:
     """``matrix`` times unknowns = ``sources[drive]`` for a drive of value 1; ``rows`` and ``unknowns`` say which."""
 
     rows: tuple[str, ...]
     unknowns: tuple[tuple[str, str], ...]
-    matrix: list[list[T]]
-    sources: dict[str, list[T]]
-    _arithmetic: Arithmetic[T]
+    matrix: list[list[Any]]
+    sources: dict[str, list[Any]]
+    _arithmetic: Arithmetic
     _network: Network
 
-    def weights(self, expression: Expression) -> list[T]:
+    def weights(self, expression: Expression) -> list[Any]:
         """The factor of each unknown in an expression of voltages and currents (a read, say)."""
         return _weights(self._network, self._arithmetic, expression, self.unknowns)
 
 
-def stamp(network: Network, arithmetic: Arithmetic[T]) -> Stamped[T]:
+def stamp(network: Network, arithmetic: Arithmetic) -> Stamped:
     """The modified nodal equations of a network in this arithmetic."""
     zero, one = arithmetic.number(Fraction(0)), arithmetic.number(Fraction(1))
     nodes = network.nodes
@@ -78,7 +75,8 @@ def stamp(network: Network, arithmetic: Arithmetic[T]) -> Stamped[T]:
     carriers += [
         (part.name, part)
         for part in network.parts
-        if isinstance(part, VoltageLaw | OpAmp) or (isinstance(part, Branch) and _needs_current(part, arithmetic))
+        if isinstance(part, VoltageLaw | OpAmp)
+        or (isinstance(part, Branch) and _needs_current(part, arithmetic))
     ]
     carried = {name for name, _ in carriers}
     unknowns = tuple([("v", node) for node in nodes] + [("i", name) for name, _ in carriers])
@@ -86,30 +84,30 @@ def stamp(network: Network, arithmetic: Arithmetic[T]) -> Stamped[T]:
     size = len(unknowns)
     matrix = [[zero] * size for _ in range(size)]
 
-    def add(row: tuple[str, str], column: tuple[str, str], value: T) -> None:
+    def add(row: tuple[str, str], column: tuple[str, str], value: Any) -> None:
         if row in place and column in place:
             at = matrix[place[row]]
-            at[place[column]] = at[place[column]] + value  # type: ignore[operator]
+            at[place[column]] = at[place[column]] + value
 
     def add_law(name: str, plus: str, minus: str) -> None:
         here = ("i", name)
         add(("v", plus), here, one)
-        add(("v", minus), here, -one)  # type: ignore[operator]
+        add(("v", minus), here, -one)
         add(here, ("v", plus), one)
-        add(here, ("v", minus), -one)  # type: ignore[operator]
+        add(here, ("v", minus), -one)
 
     s = arithmetic.name("s")
     for name, carrier in carriers:
         here = ("i", name)
         match carrier:
             case OpAmp():
-                add(("v", carrier.out), here, -one)  # type: ignore[operator]
+                add(("v", carrier.out), here, -one)
                 add(here, ("v", carrier.plus), one)
-                add(here, ("v", carrier.minus), -one)  # type: ignore[operator]
+                add(here, ("v", carrier.minus), -one)
             case Branch():
                 add_law(name, carrier.start, carrier.end)
                 value = arithmetic.name(name)
-                add(here, here, -(s * value) if carrier.kind == "L" else -value)  # type: ignore[operator]
+                add(here, here, -(s * value) if carrier.kind == "L" else -value)
             case VoltageDrive() | VoltageLaw():
                 add_law(name, carrier.plus, carrier.minus)
     for part in network.parts:
@@ -126,50 +124,52 @@ def stamp(network: Network, arithmetic: Arithmetic[T]) -> Stamped[T]:
             weights = _weights(network, arithmetic, part.value, unknowns)
             for unknown, weight in zip(unknowns, weights, strict=True):
                 if isinstance(part, VoltageLaw):
-                    add(("i", part.name), unknown, -weight)  # type: ignore[operator]
+                    add(("i", part.name), unknown, -weight)
                 else:
                     add(("v", part.start), unknown, weight)
-                    add(("v", part.end), unknown, -weight)  # type: ignore[operator]
-    sources: dict[str, list[T]] = {}
+                    add(("v", part.end), unknown, -weight)
+    sources: dict[str, list[Any]] = {}
     for name, drive in zip(network.drive_names, network.drives, strict=True):
         column = [zero] * size
         if isinstance(drive, VoltageDrive):
             column[place["i", name]] = one
         else:
-            for node, value in ((drive.end, one), (drive.start, -one)):  # type: ignore[operator]
+            for node, value in ((drive.end, one), (drive.start, -one)):
                 if ("v", node) in place:
                     at = place["v", node]
                     column[at] = column[at] + value
         sources[name] = column
-    rows = tuple(
-        f"KCL at {name}" if kind == "v" else f"law of {name}" for kind, name in unknowns
-    )
+    rows = tuple(f"KCL at {name}" if kind == "v" else f"law of {name}" for kind, name in unknowns)
     return Stamped(rows, unknowns, matrix, sources, arithmetic, network)
 
 
-def _needs_current(part: Branch, arithmetic: Arithmetic[T]) -> bool:
+def _needs_current(part: Branch, arithmetic: Arithmetic) -> bool:
     """Inductors and impedances have a row of their own, and so has a resistance that is exactly zero."""
     return part.kind in "LZ" or (part.kind == "R" and not arithmetic.name(part.name))
 
 
 def _weights(
-    network: Network, arithmetic: Arithmetic[T], expression: Expression, unknowns: Sequence[tuple[str, str]]
-) -> list[T]:
+    network: Network, arithmetic: Arithmetic, expression: Expression, unknowns: Sequence[tuple[str, str]]
+) -> list[Any]:
     zero, one = arithmetic.number(Fraction(0)), arithmetic.number(Fraction(1))
     out = []
     for chosen in unknowns:
-        lookup = _Electric(network, lambda unknown, chosen=chosen: one if unknown == chosen else zero, arithmetic)
+        lookup = _Electric(network, {chosen: one}, zero, arithmetic)
         out.append(evaluate(expression, lookup.value, lambda n: arithmetic.number(n.value)))
     return out
 
 
 @dataclass(frozen=True)
 class _Electric:
-    """The value of any name in a law, when each unknown has the value that ``unknown`` gives it."""
+    """The value of any name in a law, when the unknowns have these values and all others are zero."""
 
     network: Network
-    unknown: Callable[[tuple[str, str]], Any]
-    arithmetic: Arithmetic[Any]
+    values: Mapping[tuple[str, str], Any]
+    zero: Any
+    arithmetic: Arithmetic
+
+    def unknown(self, unknown: tuple[str, str]) -> Any:
+        return self.values.get(unknown, self.zero)
 
     def value(self, name: Name) -> Any:
         word = name.name
@@ -184,7 +184,7 @@ class _Electric:
         return self.arithmetic.name(word)
 
     def voltage(self, node: str) -> Any:
-        return self.arithmetic.number(Fraction(0)) if node == GROUND else self.unknown(("v", node))
+        return self.zero if node == GROUND else self.unknown(("v", node))
 
     def of_part(self, kind: str, name: str) -> Any:
         for known, drive in zip(self.network.drive_names, self.network.drives, strict=True):
@@ -251,13 +251,14 @@ def equations(network: Network) -> Equations:
 
     from symnet.exact.naming import Naming
 
+    check_wiring(network)
     naming = Naming.of(network)
     symbols = {str(symbol): symbol for symbol in naming.ring.symbols}
 
     def name(word: str) -> Any:
         return symbols[word] if word in symbols else naming.value(word).as_expr()
 
-    system: Stamped[Any] = stamp(
+    system: Stamped = stamp(
         network, Arithmetic(lambda number: Rational(number.numerator, number.denominator), name)
     )
     return Equations(
@@ -279,7 +280,7 @@ def _node(node: str) -> str:
     return node if node[:1].isalpha() and "+" not in node else f"v_{node}"
 
 
-def _lines(network: Network, system: Stamped[Any]) -> list[Equation]:
+def _lines(network: Network, system: Stamped) -> list[Equation]:
     carried = {name for kind, name in system.unknowns if kind == "i"}
     lines = []
     for label, unknown in zip(system.rows, system.unknowns, strict=True):
@@ -288,6 +289,10 @@ def _lines(network: Network, system: Stamped[Any]) -> list[Equation]:
         else:
             lines.append(_law(network, unknown[1], label))
     return lines
+
+
+def _voltage(node: str) -> Expression:
+    return Number(Fraction(0)) if node == GROUND else Name(_node(node))
 
 
 def _difference(plus: str, minus: str) -> Expression:
@@ -300,11 +305,6 @@ def _difference(plus: str, minus: str) -> Expression:
 
 def _leaving(network: Network, node: str, carried: set[str]) -> Expression:
     terms: list[tuple[int, Expression]] = []
-    for name, drive in zip(network.drive_names, network.drives, strict=True):
-        if isinstance(drive, CurrentDrive):
-            terms += _signed(Name(name), node, drive.start, drive.end)
-        else:
-            terms += _signed(Name(f"i_{name}"), node, drive.plus, drive.minus)
     for part in network.parts:
         match part:
             case Branch() if part.name not in carried and node in part.nodes and part.start != part.end:
@@ -320,6 +320,11 @@ def _leaving(network: Network, node: str, carried: set[str]) -> Expression:
                 terms.append((-1, Name(f"i_{part.name}")))
             case _:
                 pass
+    for name, drive in zip(network.drive_names, network.drives, strict=True):
+        if isinstance(drive, CurrentDrive):
+            terms += _signed(Name(name), node, drive.start, drive.end)
+        else:
+            terms += _signed(Name(f"i_{name}"), node, drive.plus, drive.minus)
     return Sum(tuple(terms)) if terms else Number(Fraction(0))
 
 
@@ -352,7 +357,7 @@ def _law(network: Network, name: str, label: str) -> Equation:
         case VoltageLaw():
             return Equation(label, _difference(part.plus, part.minus), part.value)
         case OpAmp():
-            return Equation(label, _difference(part.plus, part.minus), Number(Fraction(0)))
+            return Equation(label, _voltage(part.minus), _voltage(part.plus))
         case _:
             factors = ((1, Name("s")),) if part.name[0] == "L" else ()
             right = Product((*factors, (1, Name(name)), (1, Name(f"i_{name}"))))

@@ -56,6 +56,8 @@ class Residue:
 
 def weight_at(weight: PolyElement, point: Sequence[Any], prime: int) -> Any:
     """A ring element at a point whose coordinates are ints, or int64 arrays if the prime is below 2^31."""
+    if len(weight) == 1 and weight.ring.zero_monom in weight:
+        return int(weight[weight.ring.zero_monom]) % prime
     total: Any = 0
     for monomial, coefficient in weight.items():
         term: Any = int(coefficient) % prime

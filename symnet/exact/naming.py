@@ -27,7 +27,7 @@ if TYPE_CHECKING:
 __all__ = ["Naming"]
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class Naming:
     """What the names of a network mean in its ring.
 
@@ -59,14 +59,18 @@ class Naming:
             numbers = {n: v for n, v in numbers.items() if n in symbols}
         order = _order_of_ties(ties)
         remaining: dict[str, None] = {}
-        electric = set(network.nodes) | set(network._electric_names())
+        electric = set(network.nodes) | set(network.electric_names())
 
-        def appear(name: str, seen: frozenset[str] = frozenset()) -> None:
-            if name in ties and name not in seen:
-                for inner in names_in(ties[name]):
-                    appear(inner.name, seen | {name})
-            elif name != "s":
-                remaining[name] = None
+        def appear(name: str) -> None:
+            waiting, seen = [name], set()
+            while waiting:
+                word = waiting.pop()
+                if word in ties:
+                    if word not in seen:
+                        seen.add(word)
+                        waiting.extend(reversed([inner.name for inner in names_in(ties[word])]))
+                elif word != "s":
+                    remaining[word] = None
 
         for part in network.parts:
             if isinstance(part, Branch):
@@ -123,20 +127,21 @@ def _number(name: str, expression: Expression) -> Fraction:
 def _order_of_ties(ties: Mapping[str, Expression]) -> list[str]:
     """The tied names, each after those it hangs on; NotationError for a circle."""
     order: dict[str, None] = {}
-    path: list[str] = []
-
-    def visit(name: str) -> None:
+    path: dict[str, None] = {}
+    waiting = [(name, False) for name in reversed(list(ties))]
+    while waiting:
+        name, done = waiting.pop()
+        if done:
+            del path[name]
+            order[name] = None
+            continue
         if name in order or name not in ties:
-            return
+            continue
         if name in path:
-            circle = " -> ".join([*path[path.index(name) :], name])
+            names = list(path)
+            circle = " -> ".join([*names[names.index(name) :], name])
             raise NotationError(Fault(f"values are tied in a circle: {circle}", "give one of them a number"))
-        path.append(name)
-        for inner in names_in(ties[name]):
-            visit(inner.name)
-        path.pop()
-        order[name] = None
-
-    for name in ties:
-        visit(name)
+        path[name] = None
+        waiting.append((name, True))
+        waiting.extend((inner.name, False) for inner in names_in(ties[name]))
     return list(order)

@@ -28,7 +28,16 @@ from symnet.exact.naming import Naming
 from symnet.exact.trees import Piece
 from symnet.expressions import Expression, Name
 from symnet.network.network import Network
-from symnet.network.parts import GROUND, Branch, CurrentDrive, CurrentLaw, Drive, OpAmp, VoltageDrive, VoltageLaw
+from symnet.network.parts import (
+    GROUND,
+    Branch,
+    CurrentDrive,
+    CurrentLaw,
+    Drive,
+    OpAmp,
+    VoltageDrive,
+    VoltageLaw,
+)
 
 if TYPE_CHECKING:
     from sympy.polys.fields import FracElement
@@ -91,10 +100,8 @@ class Pieces:
 
     def _i(self, rest: str, name: Name) -> LinearForm:
         if rest in self.currents:
-            return LinearForm(
-                Bounded(self.naming.field.zero), {("i", rest): Bounded(self.naming.field.one)}
-            )
-        part = self.network[rest] if rest in self.network else None
+            return LinearForm(Bounded(self.naming.field.zero), {("i", rest): Bounded(self.naming.field.one)})
+        part = next((part for part in self.network.parts if part.name == rest), None)
         if isinstance(part, Branch):
             admittance = LinearForm(Bounded(_admittance(part, self.naming)), {})
             return admittance * self._v(rest, name)
@@ -106,7 +113,7 @@ class Pieces:
         for known, drive in zip(self.network.drive_names, self.network.drives, strict=True):
             if known == rest:
                 return drive.nodes
-        part = self.network[rest] if rest in self.network else None
+        part = next((part for part in self.network.parts if part.name == rest), None)
         if part is None or isinstance(part, OpAmp):
             raise self._stands_for_nothing(name)
         return part.nodes
@@ -170,9 +177,7 @@ class _Stamping:
         self.leave: list[PolyElement] = []
 
     def result(self) -> Pieces:
-        frame = Pieces(
-            self.network, self.naming, self.size, (), (), (), self.nodes, self.currents
-        )
+        frame = Pieces(self.network, self.naming, self.size, (), (), (), self.nodes, self.currents)
         for name, drive in zip(self.network.drive_names, self.network.drives, strict=True):
             if isinstance(drive, VoltageDrive):
                 self._voltage_source(name, drive.plus, drive.minus)
@@ -185,16 +190,16 @@ class _Stamping:
                     row = self.currents[part.name]
                     form = frame.form(part.value, f"the law {part.name}")
                     for fraction, plus, minus in terms_of(form, frame):
-                        self._add(row, None, plus, minus, -fraction)
+                        self._add(Piece(row, None, plus, minus), -fraction.numer, fraction.denom)
                 case CurrentLaw():
                     form = frame.form(part.value, f"the law {part.name}")
                     start, end = self.nodes.get(part.start), self.nodes.get(part.end)
                     for fraction, plus, minus in terms_of(form, frame):
-                        self._add(start, end, plus, minus, fraction)
+                        self._add(Piece(start, end, plus, minus), fraction.numer, fraction.denom)
                 case OpAmp():
                     at = self.currents[part.name]
-                    self._add(None, self.nodes.get(part.out), at, None)
-                    self._add(at, None, self.nodes.get(part.plus), self.nodes.get(part.minus))
+                    self._add(Piece(None, self.nodes.get(part.out), at, None))
+                    self._add(Piece(at, None, self.nodes.get(part.plus), self.nodes.get(part.minus)))
         return Pieces(
             self.network,
             self.naming,
@@ -208,8 +213,8 @@ class _Stamping:
 
     def _voltage_source(self, name: str, plus: str, minus: str) -> None:
         at, a, b = self.currents[name], self.nodes.get(plus), self.nodes.get(minus)
-        self._add(a, b, at, None)
-        self._add(at, None, a, b)
+        self._add(Piece(a, b, at, None))
+        self._add(Piece(at, None, a, b))
 
     def _branch(self, part: Branch) -> None:
         value = self.naming.value(part.name)
@@ -225,27 +230,13 @@ class _Stamping:
                 take, leave = s * value.numer, value.denom
             case _:
                 take, leave = value.numer, value.denom
-        self._add(a, b, a, b, take * one, leave * one)
+        self._add(Piece(a, b, a, b), take * one, leave * one)
 
-    def _add(
-        self,
-        row_plus: int | None,
-        row_minus: int | None,
-        column_plus: int | None,
-        column_minus: int | None,
-        weight: FracElement | PolyElement | None = None,
-        leave: PolyElement | None = None,
-    ) -> None:
+    def _add(self, piece: Piece, take: PolyElement | None = None, leave: PolyElement | None = None) -> None:
         one = self.naming.ring.one
-        if weight is None:
-            take, leave = one, one
-        elif leave is None:
-            take, leave = weight.numer, weight.denom
-        else:
-            take = weight
-        self.pieces.append(Piece(row_plus, row_minus, column_plus, column_minus))
-        self.take.append(take)
-        self.leave.append(leave)
+        self.pieces.append(piece)
+        self.take.append(one if take is None else take)
+        self.leave.append(one if leave is None else leave)
 
 
 def terms_of(form: LinearForm, frame: Pieces) -> list[tuple[FracElement, int | None, int | None]]:

@@ -13,7 +13,7 @@ from functools import cached_property
 from typing import TYPE_CHECKING, Any
 
 from symnet.errors import Fault, MissingValueError, UnknownNameError, nearest
-from symnet.exact.determinant import Determinant, numeric_pair
+from symnet.exact.determinant import Determinant, numeric_pair, pair_modulo
 from symnet.exact.lowest import LowestTerms, reduce
 from symnet.exact.modular import SMALL_PRIME
 from symnet.exact.ratio import Ratio
@@ -30,6 +30,7 @@ if TYPE_CHECKING:
     from symnet.expressions import Expression
 
 __all__ = ["Transfer"]
+
 
 @dataclass(frozen=True, eq=False, repr=False)
 class Transfer:
@@ -81,11 +82,12 @@ class Transfer:
     def _lowest(self) -> LowestTerms:
         n, d = self.determinants
         if n.diagram.is_zero:
-            return LowestTerms(self.ring.zero, self.ring.one, ())
+            return LowestTerms(self.ring, self.ring.zero, self.ring.one, ())
         return reduce(
-            n.expand(),
-            d.expand(),
-            lambda point: (n.modulo(point, SMALL_PRIME), d.modulo(point, SMALL_PRIME)),
+            n.primitive,
+            d.primitive,
+            self.ring,
+            lambda point: pair_modulo(n, d, point, SMALL_PRIME),
         )
 
     @property

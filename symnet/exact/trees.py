@@ -186,9 +186,7 @@ def build(size: int, pieces: Sequence[Piece], order: Sequence[int] | None = None
     return _pruned(piece, leave, take, sign, rows.parity * columns.parity)
 
 
-def _pruned(
-    piece: list[int], leave: list[int], take: list[int], sign: list[int], overall: int
-) -> Diagram:
+def _pruned(piece: list[int], leave: list[int], take: list[int], sign: list[int], overall: int) -> Diagram:
     """The diagram without the nodes from which the end cannot be reached."""
     count = len(piece)
     number = [_DEAD] * (count + 1)
@@ -233,9 +231,7 @@ class _Side:
         number = {end: n for n, end in enumerate(by_leaving)}
         self.parity = _parity(by_leaving)
         self.ground = size
-        self._ends = [
-            tuple(size if end is None else number[end] for end in pair) for pair in ends
-        ]
+        self._ends = [tuple(size if end is None else number[end] for end in pair) for pair in ends]
         self._first = [first[end] for end in by_leaving]
         self._last = [last[end] for end in by_leaving]
         self._waiting = list(range(size))  # numbers that no piece has touched yet, ascending
@@ -313,12 +309,12 @@ def frontier_order(size: int, pieces: Sequence[Piece]) -> list[int]:
         sites += [size + end for end in (piece.column_plus, piece.column_minus) if end is not None]
         touched.append(tuple(dict.fromkeys(sites)))
     remaining: list[set[int]] = [set() for _ in range(2 * size)]
-    for index, sites in enumerate(touched):
-        for site in sites:
+    for index, touching in enumerate(touched):
+        for site in touching:
             remaining[site].add(index)
     is_open = [False] * (2 * size)
     todo = {site for site in range(2 * size) if remaining[site]}
-    order: list[int] = [index for index, sites in enumerate(touched) if not sites]
+    order = [index for index, touching in enumerate(touched) if not touching]
 
     def price(site: int) -> tuple[int, int, bool, int]:
         opened = {other for index in remaining[site] for other in touched[index]}

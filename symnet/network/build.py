@@ -40,6 +40,14 @@ __all__ = [
 
 _LARGEST_FILE: Final = 4_000_000
 
+_WORDS: Final = {
+    "a resistor": "R",
+    "an inductor": "L",
+    "a capacitor": "C",
+    "an impedance": "Z",
+    "an admittance": "Y",
+}
+
 
 def network(*pieces: str | Network) -> Network:
     """A network from text in symnet's notation, from named constructors, or from several of both.
@@ -72,7 +80,9 @@ def load(path: str | PathLike[str]) -> Network:
     file = Path(path)
     size = file.stat().st_size
     if size > _LARGEST_FILE:
-        raise LimitError(Fault(f"{file.name} has {size} bytes; the limit is {_LARGEST_FILE}", "is it the right file?"))
+        raise LimitError(
+            Fault(f"{file.name} has {size} bytes; the limit is {_LARGEST_FILE}", "is it the right file?")
+        )
     data = file.read_bytes()
     try:
         text = data.decode("utf-8-sig")
@@ -84,12 +94,17 @@ def load(path: str | PathLike[str]) -> Network:
     return read_network(text)
 
 
-def _branch(letter: str, word: str, name: str, start: str, end: str, value: ValueLike) -> Network:
+def _branch(word: str, name: str, nodes: tuple[str, str], value: ValueLike) -> Network:
+    letter = _WORDS[word]
     if name[:1] != letter:
         raise NotationError(
-            Fault(f"{name} is no name for {word}", f"its name begins with {letter}, as on the drawing", parts=(name,))
+            Fault(
+                f"{name} is no name for {word}",
+                f"its name begins with {letter}, as on the drawing",
+                parts=(name,),
+            )
         )
-    for node in (start, end):
+    for node in nodes:
         if not node or node[0] in CLASS_LETTERS:
             raise NotationError(
                 Fault(
@@ -98,33 +113,33 @@ def _branch(letter: str, word: str, name: str, start: str, end: str, value: Valu
                     nodes=(node,),
                 )
             )
-    piece = Network(parts=(Branch(name, start, end),))
+    piece = Network(parts=(Branch(name, *nodes),))
     return piece if value is None else piece.with_values({name: value})
 
 
 def resistor(name: str, start: str, end: str, value: ValueLike = None) -> Network:
     """A resistor between two nodes; value in ohm, or text such as ``"4.7 kohm ±1%"``. Current runs start to end."""
-    return _branch("R", "a resistor", name, start, end, value)
+    return _branch("a resistor", name, (start, end), value)
 
 
 def inductor(name: str, start: str, end: str, value: ValueLike = None) -> Network:
     """An inductor between two nodes; value in henry, or text such as ``"10 mH"``."""
-    return _branch("L", "an inductor", name, start, end, value)
+    return _branch("an inductor", name, (start, end), value)
 
 
 def capacitor(name: str, start: str, end: str, value: ValueLike = None) -> Network:
     """A capacitor between two nodes; value in farad, or text such as ``"22 nF"``."""
-    return _branch("C", "a capacitor", name, start, end, value)
+    return _branch("a capacitor", name, (start, end), value)
 
 
 def impedance(name: str, start: str, end: str, value: ValueLike = None) -> Network:
     """An impedance between two nodes; value in ohm, or an expression in s such as ``"R/(1 + s*R*C)"``."""
-    return _branch("Z", "an impedance", name, start, end, value)
+    return _branch("an impedance", name, (start, end), value)
 
 
 def admittance(name: str, start: str, end: str, value: ValueLike = None) -> Network:
     """An admittance between two nodes; value in siemens, or an expression in s such as ``"G + s*C"``."""
-    return _branch("Y", "an admittance", name, start, end, value)
+    return _branch("an admittance", name, (start, end), value)
 
 
 def opamp(name: str, plus: str, minus: str, out: str) -> Network:

@@ -85,7 +85,7 @@ class Network:
         for part in self.parts:
             if part.name == name:
                 return part
-        raise self._unknown(name, self.part_names, "part")
+        raise self.unknown(name, self.part_names, "part")
 
     def __contains__(self, name: object) -> bool:
         return any(part.name == name for part in self.parts)
@@ -108,7 +108,7 @@ class Network:
                 found[part.name] = None
         found.update(dict.fromkeys(name for name, _ in self.values))
         found.update(dict.fromkeys(name for name, _ in self.free))
-        nodes, electric = set(self.nodes), set(self._electric_names())
+        nodes, electric = set(self.nodes), set(self.electric_names())
         for expression in self._expressions():
             for name in names_in(expression):
                 if name.name != "s" and name.name not in nodes and name.name not in electric:
@@ -123,7 +123,7 @@ class Network:
             yield value.expression
         yield from self.reads
 
-    def _electric_names(self) -> Iterator[str]:
+    def electric_names(self) -> Iterator[str]:
         """The ways to write a voltage or current in an expression, beside a node's own name."""
         for node in (*self.nodes, GROUND):
             yield f"v_{node}"
@@ -134,9 +134,7 @@ class Network:
 
     # -- new networks from this one -----------------------------------------------------------------------
 
-    def with_values(
-        self, values: Mapping[str, ValueLike] | None = None, /, **named: ValueLike
-    ) -> Network:
+    def with_values(self, values: Mapping[str, ValueLike] | None = None, /, **named: ValueLike) -> Network:
         """A network with other values: text as in the notation (IEC 60062 codes too), exact numbers, or None.
 
         ``None`` takes the value away: the part becomes a symbol. A float is read as the decimal number that
@@ -157,7 +155,7 @@ class Network:
         known = self.symbols()
         for name, given in {**(values or {}), **named}.items():
             if name not in known:
-                raise self._unknown(name, known, "part or symbol")
+                raise self.unknown(name, known, "part or symbol")
             if given is None:
                 changed.pop(name, None)
             else:
@@ -181,7 +179,7 @@ class Network:
         """A network without these parts, laws or devices; their values go with them."""
         for name in names:
             if name not in self:
-                raise self._unknown(name, self.part_names, "part")
+                raise self.unknown(name, self.part_names, "part")
         gone = set(names)
         return replace(
             self,
@@ -253,7 +251,7 @@ class Network:
             free,
         )
 
-    def _read_value(self, name: str, given: str | int | Fraction | Decimal | float) -> Value:
+    def _read_value(self, name: str, given: str | Fraction | Decimal | float) -> Value:
         if isinstance(given, str):
             from symnet.network.reading import read_value
 
@@ -280,7 +278,8 @@ class Network:
         count = f"{len(self.parts)} part{'s' if len(self.parts) != 1 else ''}"
         return f"<Network: {count}, nodes {'; '.join([listed or 'none', *tail])}>"
 
-    def _unknown(self, name: str, known: Iterable[str], what: str) -> UnknownNameError:
+    def unknown(self, name: str, known: Iterable[str], what: str) -> UnknownNameError:
+        """The error, with the nearest known name, for a name that the network does not have."""
         close = nearest(name, known)
         hint = f"did you mean {close[0]}?" if close else "known: " + ", ".join(list(known)[:20])
         return UnknownNameError(Fault(f"the network has no {what} called {name}", hint))

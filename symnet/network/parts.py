@@ -60,7 +60,7 @@ class Branch:
         return self.name[0]
 
     @property
-    def nodes(self) -> tuple[str, ...]:
+    def nodes(self) -> tuple[str, str]:
         """Its terminals in the order of writing."""
         return (self.start, self.end)
 
@@ -76,7 +76,7 @@ class VoltageLaw:
     span: Span | None = _span()
 
     @property
-    def nodes(self) -> tuple[str, ...]:
+    def nodes(self) -> tuple[str, str]:
         """Its output terminals."""
         return (self.plus, self.minus)
 
@@ -92,7 +92,7 @@ class CurrentLaw:
     span: Span | None = _span()
 
     @property
-    def nodes(self) -> tuple[str, ...]:
+    def nodes(self) -> tuple[str, str]:
         """Its output terminals."""
         return (self.start, self.end)
 
@@ -108,7 +108,7 @@ class OpAmp:
     span: Span | None = _span()
 
     @property
-    def nodes(self) -> tuple[str, ...]:
+    def nodes(self) -> tuple[str, str, str]:
         """Its terminals: plus, minus, out."""
         return (self.plus, self.minus, self.out)
 
@@ -123,7 +123,7 @@ class VoltageDrive:
     span: Span | None = _span()
 
     @property
-    def nodes(self) -> tuple[str, ...]:
+    def nodes(self) -> tuple[str, str]:
         """Its terminals."""
         return (self.plus, self.minus)
 
@@ -138,7 +138,7 @@ class CurrentDrive:
     span: Span | None = _span()
 
     @property
-    def nodes(self) -> tuple[str, ...]:
+    def nodes(self) -> tuple[str, str]:
         """Its terminals."""
         return (self.start, self.end)
 

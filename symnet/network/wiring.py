@@ -124,9 +124,7 @@ def _islands(network: Network) -> Iterator[Fault]:
             continue
         inside = [part for part in network.branches() if part.start in members]
         sources = [
-            (said, piece)
-            for said, a, b, piece in _current_pairs(network)
-            if (a in members) != (b in members)
+            (said, piece) for said, a, b, piece in _current_pairs(network) if (a in members) != (b in members)
         ]
         touching = tuple(part.name for part in inside)
         at = _places(members)
@@ -164,9 +162,11 @@ def _source_loops(network: Network) -> Iterator[Fault]:
         path = _path(edges, a, b)
         if path is not None:
             others = ", ".join(path)
-            what = "two op amp outputs are tied together" if (
-                isinstance(piece, OpAmp) and len(path) == 1 and path[0].startswith("the output of ")
-            ) else "a loop of ideal voltage sources"
+            what = (
+                "two op amp outputs are tied together"
+                if (isinstance(piece, OpAmp) and len(path) == 1 and path[0].startswith("the output of "))
+                else "a loop of ideal voltage sources"
+            )
             between = place_of(a) if b == GROUND else f"nodes {a} and {b}"
             yield Fault(
                 f"{what}: {said} and {others} both fix the voltage at {between}",

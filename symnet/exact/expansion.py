@@ -1,0 +1,298 @@
+"""A determinant written out: one packed monomial and one integer per term, in arrays.
+
+All exponents of a monomial stand side by side in the bits of one or a few machine words, in fields wide enough
+for the highest degree that the weights allow, so that multiplying by a monomial is one addition and a child of
+the diagram is copied into its parents at the speed of memory. Where leaving and taking a piece give monomials
+that differ in a name which no other piece has, nothing can fall together; elsewhere equal monomials are merged
+by sorting. Conversion to sympy ring elements, a tuple per term, costs far more than the expansion and is made
+only when somebody looks at the polynomial.
+
+Measured, all symbols different (tests/speed): a 13-section RC ladder, 196 418 terms, in a few milliseconds.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from functools import cached_property
+from math import gcd
+from operator import add
+from typing import TYPE_CHECKING, Any
+
+import numpy as np
+
+from symnet.exact.trees import Diagram
+
+if TYPE_CHECKING:
+    from numpy.typing import NDArray
+    from sympy.polys.rings import PolyElement, PolyRing
+
+__all__ = ["Expansion", "Fields", "Primitive", "expand"]
+
+_WORD = 62  # bits used of each signed 64-bit word
+
+
+@dataclass(frozen=True, slots=True)
+class Fields:
+    """Where the exponent of each generator stands: its word, its lowest bit, the mask of its width."""
+
+    places: tuple[tuple[int, int, int], ...]
+    words: int
+
+    @classmethod
+    def for_degrees(cls, highest: Sequence[int]) -> Fields:
+        """Fields wide enough for these highest exponents."""
+        places, word, shift = [], 0, 0
+        for degree in highest:
+            width = max(1, int(degree).bit_length())
+            if shift + width > _WORD:
+                word, shift = word + 1, 0
+            places.append((word, shift, (1 << width) - 1))
+            shift += width
+        return cls(tuple(places), word + 1)
+
+    def pack(self, monomial: Sequence[int]) -> NDArray[np.int64]:
+        """One monomial as a column of words."""
+        packed = [0] * self.words
+        for exponent, (word, shift, _) in zip(monomial, self.places, strict=True):
+            packed[word] += int(exponent) << shift
+        return np.array(packed, dtype=np.int64)[:, None]
+
+
+@dataclass(frozen=True, eq=False)
+class Expansion:
+    """Terms of a polynomial: ``keys`` (words x terms, packed monomials, all different), ``coefficients`` (nonzero)."""
+
+    fields: Fields
+    keys: NDArray[np.int64]
+    coefficients: NDArray[Any]
+
+    def __len__(self) -> int:
+        return int(self.keys.shape[1])
+
+    def exponents(self, generator: int) -> NDArray[np.int64]:
+        """The exponent of one generator in every term."""
+        word, shift, mask = self.fields.places[generator]
+        exponents: NDArray[np.int64] = (self.keys[word] >> shift) & mask
+        return exponents
+
+    def content(self) -> tuple[int, tuple[int, ...]]:
+        """The greatest common integer and monomial of all terms; (0, zeros) for the zero polynomial."""
+        count = len(self.fields.places)
+        if not len(self):
+            return 0, (0,) * count
+        only_signs = self.coefficients.dtype == np.int8
+        number = 1 if only_signs else gcd(*map(int, np.unique(self.coefficients)))
+        common = np.bitwise_and.reduce(self.keys, axis=1)
+        return number, tuple(
+            int(self.exponents(k).min()) if mask > 1 else int(common[word] >> shift) & 1
+            for k, (word, shift, mask) in enumerate(self.fields.places)
+        )
+
+    def degrees(self) -> tuple[int, ...]:
+        """The highest exponent of every generator."""
+        count = len(self.fields.places)
+        if not len(self):
+            return (0,) * count
+        united = np.bitwise_or.reduce(self.keys, axis=1)
+        return tuple(
+            int(self.exponents(k).max()) if mask > 1 else int(united[word] >> shift) & 1
+            for k, (word, shift, mask) in enumerate(self.fields.places)
+        )
+
+    def begins_negative(self) -> bool:
+        """Whether the lexicographically first term of the lowest power of the first generator is negative."""
+        chosen = np.arange(len(self))
+        for k in range(len(self.fields.places)):
+            exponents = self.exponents(k)[chosen]
+            chosen = chosen[exponents == (exponents.min() if k == 0 else exponents.max())]
+        return bool(self.coefficients[chosen[0]] < 0)
+
+    def divided(self, number: int, exponents: Sequence[int]) -> Expansion:
+        """The polynomial divided by an integer and a monomial that divide every term."""
+        keys = self.keys - self.fields.pack(exponents) if any(exponents) else self.keys
+        coefficients = self.coefficients if number == 1 else self.coefficients // number
+        return Expansion(self.fields, keys, coefficients)
+
+    def times(self, number: int, exponents: Sequence[int]) -> Expansion:
+        """The polynomial times an integer and a monomial, in fields that are wide enough for it."""
+        if number == 1 and not any(exponents):
+            return self
+        highest = [d + e for d, e in zip(self.degrees(), exponents, strict=True)]
+        fields = Fields.for_degrees(highest)
+        keys = np.zeros((fields.words, len(self)), dtype=np.int64)
+        for k, (word, shift, _) in enumerate(fields.places):
+            keys[word] += (self.exponents(k) + exponents[k]) << shift
+        coefficients = self.coefficients
+        if abs(number) != 1 or coefficients.dtype != np.int8:
+            coefficients = coefficients.astype(object)
+        return Expansion(fields, keys, coefficients * number)
+
+    def to_element(self, ring: PolyRing) -> PolyElement:
+        """The same polynomial as an element of the ring whose generators the fields stand for; made once."""
+        element: PolyElement | None = self._elements.get(ring)
+        if element is None:
+            element = self._elements[ring] = self._to_element(ring)
+        return element
+
+    @cached_property
+    def _elements(self) -> dict[PolyRing, PolyElement]:
+        return {}
+
+    def _to_element(self, ring: PolyRing) -> PolyElement:
+        columns = [self.exponents(k).tolist() for k in range(len(self.fields.places))]
+        domain = ring.domain
+        coefficients = map(domain, map(int, self.coefficients.tolist()))
+        return ring.from_dict(dict(zip(zip(*columns, strict=True), coefficients, strict=True)))
+
+
+@dataclass(frozen=True, eq=False)
+class Primitive:
+    """A polynomial as ``number * monomial * part``, where the part has no such factor left.
+
+    The sign of ``number`` is such that the lowest power of s in the part begins with plus.
+    """
+
+    number: int
+    exponents: tuple[int, ...]
+    part: Expansion
+    degrees: tuple[int, ...]
+
+    @classmethod
+    def of(cls, expansion: Expansion) -> Primitive:
+        """The common integer and monomial factors apart from the rest; number 0 for the zero polynomial."""
+        number, exponents = expansion.content()
+        if not number:
+            return cls(0, exponents, expansion, exponents)
+        if expansion.begins_negative():
+            number = -number
+        part = expansion.divided(number, exponents)
+        return cls(number, exponents, part, part.degrees())
+
+
+def expand(
+    diagram: Diagram, factor: PolyElement, take: Sequence[PolyElement], leave: Sequence[PolyElement]
+) -> Expansion:
+    """``factor`` times the determinant, written out, with the weights' ring generators as fields."""
+    count = factor.ring.ngens
+    highest = map(add, _highest(count, take, leave), map(max, zip(*factor, strict=True)))
+    fields = Fields.for_degrees(list(highest))
+    if diagram.is_zero:
+        return Expansion(fields, np.zeros((fields.words, 0), dtype=np.int64), np.zeros(0, dtype=np.int8))
+    own = _own_names(count, take, leave)
+    dtype = _coefficient_type(diagram, factor, take, leave, own)
+    takes = [_packed(weight, fields) for weight in take]
+    leaves = [_packed(weight, fields) for weight in leave]
+    size = len(diagram)
+    users = [0] * (size + 1)
+    for child in (*diagram.leave, *diagram.take):
+        if child >= 0:
+            users[child] += 1
+    nothing = np.zeros((fields.words, 1), dtype=np.int64)
+    terms: list[Any] = [None] * (size + 1)
+    terms[size] = (nothing, np.ones(1, dtype=dtype))
+    for k in range(size - 1, -1, -1):
+        i, to_leave, to_take = diagram.piece[k], diagram.leave[k], diagram.take[k]
+        keys: list[NDArray[np.int64]] = []
+        coefficients: list[NDArray[Any]] = []
+        for child, weight, sign in ((to_leave, leaves[i], 1), (to_take, takes[i], diagram.sign[k])):
+            if child >= 0:
+                below, numbers = terms[child]
+                for monomial, coefficient in weight:
+                    keys.append(below if monomial is None else below + monomial)
+                    signed = coefficient * sign
+                    coefficients.append(numbers if signed == 1 else numbers * _as(dtype, signed))
+                users[child] -= 1
+                if not users[child]:
+                    terms[child] = None
+        if not keys:  # every weight on the way is zero
+            terms[k] = nothing[:, :0], np.zeros(0, dtype=dtype)
+        elif len(keys) == 1:
+            terms[k] = keys[0], coefficients[0]
+        else:
+            joined = np.concatenate(keys, axis=1), np.concatenate(coefficients)
+            terms[k] = joined if own[i] else _merged(*joined)
+    whole, numbers = terms[diagram.root]
+    if diagram.overall < 0:
+        numbers = -numbers
+    weights = _packed(factor, fields)
+    if len(weights) > 1:
+        keys = [whole if monomial is None else whole + monomial for monomial, _ in weights]
+        coefficients = [numbers * _as(dtype, c) for _, c in weights]
+        whole, numbers = _merged(np.concatenate(keys, axis=1), np.concatenate(coefficients))
+    elif factor != factor.ring.one:
+        ((monomial, c),) = weights
+        whole, numbers = (whole if monomial is None else whole + monomial), numbers * _as(dtype, c)
+    return Expansion(fields, whole, numbers)
+
+
+def _highest(count: int, take: Sequence[PolyElement], leave: Sequence[PolyElement]) -> list[int]:
+    """A bound on the exponent of each generator in the determinant."""
+    highest = [0] * count
+    for pair in zip(take, leave, strict=True):
+        for k, column in enumerate(zip(*(monomial for weight in pair for monomial in weight), strict=True)):
+            highest[k] += max(column)
+    return highest
+
+
+def _packed(weight: PolyElement, fields: Fields) -> list[tuple[NDArray[np.int64] | None, int]]:
+    return [(fields.pack(m) if any(m) else None, int(c)) for m, c in weight.items()]
+
+
+def _own_names(count: int, take: Sequence[PolyElement], leave: Sequence[PolyElement]) -> list[bool]:
+    """Whether each piece has a name of its own by which its take and its leave differ."""
+    owners = [0] * count
+    for pair in zip(take, leave, strict=True):
+        used = {k for weight in pair for monomial in weight for k, e in enumerate(monomial) if e}
+        for k in used:
+            owners[k] += 1
+    own = []
+    for t, m in zip(take, leave, strict=True):
+        if len(t) == len(m) == 1:
+            (a,), (b,) = t, m
+            own.append(any(owners[k] == 1 and a[k] != b[k] for k in range(count)))
+        else:
+            own.append(False)
+    return own
+
+
+def _coefficient_type(
+    diagram: Diagram,
+    factor: PolyElement,
+    take: Sequence[PolyElement],
+    leave: Sequence[PolyElement],
+    own: Sequence[bool],
+) -> np.dtype[Any]:
+    """int8 where every coefficient is +1 or -1, int64 where it surely fits, Python integers otherwise."""
+    sizes = [[_size(weight) for weight in weights] for weights in (take, leave)]
+    both = [
+        k
+        for k in range(len(diagram))
+        if diagram.leave[k] >= 0 and diagram.take[k] >= 0 and not own[diagram.piece[k]]
+    ]
+    if not both and _size(factor) == 1 and all(size == 1 for side in sizes for size in side):
+        return np.dtype(np.int8)
+    if diagram.bound(*sizes) * _size(factor) < 2**62:
+        return np.dtype(np.int64)
+    return np.dtype(object)
+
+
+def _as(dtype: np.dtype[Any], number: int) -> Any:
+    return number if dtype.hasobject else dtype.type(number)
+
+
+def _size(weight: PolyElement) -> int:
+    return sum(abs(int(c)) for c in weight.values())
+
+
+def _merged(keys: NDArray[np.int64], coefficients: NDArray[Any]) -> tuple[NDArray[np.int64], NDArray[Any]]:
+    """Equal monomials added up; what cancels is dropped."""
+    order = np.argsort(keys[0], kind="stable") if len(keys) == 1 else np.lexsort(keys)
+    keys, coefficients = keys[:, order], coefficients[order]
+    fresh = np.ones(keys.shape[1], dtype=bool)
+    fresh[1:] = (keys[:, 1:] != keys[:, :-1]).any(axis=0)
+    if not fresh.all():
+        starts = np.flatnonzero(fresh)
+        keys, coefficients = keys[:, starts], np.add.reduceat(coefficients, starts)
+    kept = coefficients != 0
+    return (keys, coefficients) if kept.all() else (keys[:, kept], coefficients[kept])

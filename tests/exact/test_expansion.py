@@ -1,0 +1,88 @@
+"""Writing determinants out: against plain ring arithmetic on the same diagram."""
+
+from __future__ import annotations
+
+from random import Random
+from typing import TYPE_CHECKING
+
+import pytest
+
+from symnet.exact.expansion import Expansion, Fields, Primitive, expand
+from symnet.exact.polynomials import begins_negative, make_ring
+from symnet.exact.trees import Piece, build
+
+from .test_trees import random_pieces
+
+if TYPE_CHECKING:
+    from sympy.polys.rings import PolyElement, PolyRing
+
+
+def written_out(polynomial: PolyElement, ring: PolyRing) -> Expansion:
+    """A ring element as an expansion: one piece whose weight it is."""
+    return expand(build(1, [Piece(0, None, 0, None)]), ring.one, [polynomial], [ring.one])
+
+
+@pytest.mark.parametrize("seed", range(80))
+def test_equals_ring_arithmetic(seed: int) -> None:
+    """Law: expanding and evaluating the diagram over the ring are the same reading of it."""
+    random = Random(seed)
+    names = ["a", "b", "c", "d", "e", "f"] if seed % 2 else [f"p{k}" for k in range(40)]
+    ring = make_ring(names)
+
+    def weight() -> PolyElement:
+        kind = random.random()
+        if kind < 0.3:
+            return ring.one
+        if kind < 0.7:
+            return random.choice(ring.gens)
+        total = ring.zero
+        for _ in range(random.randint(1, 3)):
+            total += random.choice([1, -1, 2, 10**12]) * random.choice(ring.gens) ** random.randint(0, 3)
+        return total or ring.one
+
+    size = random.randint(1, 4)
+    pieces = random_pieces(random, size, size + random.randint(0, 5), 0.5)
+    take, leave = [weight() for _ in pieces], [weight() for _ in pieces]
+    factor = weight()
+    diagram = build(size, pieces)
+    expected = factor * diagram.evaluate(take, leave, ring.one)
+    assert expand(diagram, factor, take, leave).to_element(ring) == expected
+
+
+def test_content_degrees_and_sign_are_those_of_the_polynomial() -> None:
+    ring = make_ring(["R", "C"])
+    s, r, c = ring.gens
+    polynomial = -6 * s * r**2 * c + 9 * s**3 * r**5
+    expansion = written_out(polynomial, ring)
+    assert expansion.content() == (3, (1, 2, 0))
+    assert expansion.degrees() == (3, 5, 1)
+    assert expansion.begins_negative()
+    assert begins_negative(polynomial)
+    primitive = Primitive.of(expansion)
+    assert primitive.number == -3
+    assert primitive.part.to_element(ring) == 2 * c - 3 * s**2 * r**3
+    assert primitive.part.times(-3, (1, 2, 0)).to_element(ring) == polynomial
+
+
+def test_zero_has_no_content() -> None:
+    ring = make_ring(["R"])
+    zero = expand(build(1, []), ring.one, [], [])
+    assert len(zero) == 0
+    assert zero.content() == (0, (0, 0))
+    assert zero.to_element(ring) == 0
+    assert Primitive.of(zero).number == 0
+
+
+def test_coefficients_beyond_a_machine_word_stay_exact() -> None:
+    ring = make_ring(["R"])
+    _, r = ring.gens
+    pieces = [Piece(k, None, k, None) for k in range(6)]
+    weight = 10**12 * r + 1
+    written = expand(build(6, pieces), ring.one, [weight] * 6, [ring.one] * 6)
+    assert written.to_element(ring) == weight**6
+
+
+def test_fields_do_not_run_into_each_other() -> None:
+    fields = Fields.for_degrees([1] * 100 + [1000])
+    assert fields.words == 2
+    assert len({(word, shift) for word, shift, _ in fields.places}) == 101
