@@ -22,6 +22,8 @@ from symnet.exact.modular import PRIME, Residue
 from symnet.exact.polynomials import modulo
 
 if TYPE_CHECKING:
+    from collections.abc import Mapping
+
     from symnet.exact.naming import Naming
     from symnet.exact.transfer import Transfer
     from symnet.network.network import Network
@@ -165,10 +167,17 @@ def _eliminate(rows: list[list[int]]) -> list[tuple[int, int]]:
     return pivots
 
 
-def undetermined(network: Network, naming: Naming) -> Fault:
-    """Which voltages and currents the equations leave open, from the null vector at a random point."""
+def undetermined(network: Network, naming: Naming, values: Mapping[str, Fraction] | None = None) -> Fault:
+    """Which voltages and currents the equations leave open, from the null vector at a random point.
+
+    With ``values``, at these values and a random s: open for these values only.
+    """
     random = Random("null")
     point = [random.randrange(1, PRIME) for _ in naming.ring.symbols]
+    for k, symbol in enumerate(naming.ring.symbols):
+        if values is not None and str(symbol) in values:
+            value = values[str(symbol)]
+            point[k] = Residue.of(value.numerator, value.denominator).value
     try:
         system = _at(network, naming, point)
     except ZeroDivisionError:

@@ -10,13 +10,13 @@ from symnet.errors import Fault, NotationError, SingularError, WiringError, near
 from symnet.exact.confirm import undetermined
 from symnet.exact.determinant import Determinant
 from symnet.exact.modular import PRIME
-from symnet.exact.pieces import Pieces, drive_column, terms_of
+from symnet.exact.pieces import Pieces, named_currents
 from symnet.exact.transfer import Transfer
 from symnet.exact.trees import Piece, build
 from symnet.expressions import Expression, Name, dimension_of, names_in
 from symnet.network.network import Network
 from symnet.network.parts import GROUND, CurrentDrive, Drive
-from symnet.network.wiring import check_wiring
+from symnet.network.wiring import check_drives, check_wiring
 from symnet.quantities import AMPERE, VOLT, Dimension
 
 __all__ = ["derive", "derive_all", "derive_from"]
@@ -75,6 +75,7 @@ def derive(
         raise WiringError(Fault("nothing is read", "write for example: read out   (or read i_R1)"))
     if drive is None:
         chosen = network.drives[0]
+    check_drives(network)
     return derive_from(network, chosen, reads[0], symbols)
 
 
@@ -96,6 +97,7 @@ def derive_all(
     wanted = network.reads if reads is None else tuple(_read(network, read) for read in reads)
     if not network.drives or not wanted:
         derive(network)  # says what is missing
+    check_drives(network)
     return tuple(derive_from(network, drive, read, kept) for drive in network.drives for read in wanted)
 
 
@@ -114,21 +116,14 @@ def derive_from(
         for name in kept:
             if name not in known:
                 raise network.unknown(name, known, "part or symbol")
-    pieces, denominator = _prepared(network, kept)
-    form = pieces.form(read, "the read")
+    pieces, denominator = _prepared(network, kept, named_currents(network, read))
     one = pieces.naming.ring.one
-    border = [
-        (Piece(pieces.size, None, plus, minus), weight.numer, weight.denom)
-        for weight, plus, minus in terms_of(form, pieces)
-    ]
-    plus, minus = drive_column(pieces, drive)
-    border.append((Piece(plus, minus, pieces.size, None), -one, one))
-    numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _, _ in border)))
-    factor = one
-    for _, _, leave in border:
-        factor = factor * leave
-    takes = (*pieces.take, *(take for _, take, _ in border))
-    leaves = (*pieces.leave, *(leave for _, _, leave in border))
+    factor, terms = pieces.terms(pieces.form(read, "the read"))
+    border = [(Piece(pieces.size, None, plus, minus), weight) for weight, plus, minus in terms]
+    border.append((Piece(*pieces.drive_rows(drive), pieces.size, None), -one))
+    numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _ in border)))
+    takes = (*pieces.take, *(take for _, take in border))
+    leaves = (*pieces.leave, *(one for _ in border))
     transfer = Transfer(
         network,
         drive,
@@ -146,10 +141,12 @@ def derive_from(
 
 
 @lru_cache(maxsize=16)
-def _prepared(network: Network, symbols: frozenset[str] | None) -> tuple[Pieces, Determinant]:
+def _prepared(
+    network: Network, symbols: frozenset[str] | None, currents: frozenset[str]
+) -> tuple[Pieces, Determinant]:
     """What every drive and read of a network shares: its pieces and its determinant."""
     check_wiring(network)
-    pieces = Pieces.of(network, symbols)
+    pieces = Pieces.of(network, symbols, currents)
     determinant = Determinant(
         build(pieces.size, pieces.pieces), pieces.take, pieces.leave, pieces.naming.ring.one
     )

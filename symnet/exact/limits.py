@@ -16,9 +16,10 @@ from symnet.exact.derive import derive_from
 from symnet.exact.naming import Naming
 from symnet.expressions import Expression, Name, Number, Power, Product, Sum, names_in
 from symnet.network.network import Network
-from symnet.network.parts import Branch, Part, Value, VoltageLaw
+from symnet.network.parts import GROUND, Branch, Part, Value, VoltageLaw
 from symnet.network.wiring import place_of
 from symnet.quantities import NUMBER
+from symnet.typeset.displayed import Displayed
 
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement
@@ -63,7 +64,7 @@ class Limit:
 
 
 @dataclass(frozen=True, slots=True)
-class Limits:
+class Limits(Displayed):
     """H at DC (s -> 0) and at high frequency (s -> infinity)."""
 
     dc: Limit
@@ -99,11 +100,9 @@ def _limit(transfer: Transfer, where: str) -> Limit:
         kept = [name for name in transfer.names if name in known]
         there = derive_from(resistive, transfer.drive, transfer.read, kept)
     except (WiringError, SingularError) as error:
-        fault = error.faults[0]
-        what = ", ".join(place_of(node) for node in fault.nodes if node) or "the network"
         return replace(
             limit,
-            reason=f"{said}; {what} is left floating or undetermined then, so from H alone",
+            reason=f"{said}; {_obstacle(error)}, so from H alone",
             from_network=limit.is_infinite or None,
         )
     except NotationError:
@@ -115,6 +114,15 @@ def _limit(transfer: Transfer, where: str) -> Limit:
     else:
         agrees = _equal(transfer, limit, there)
     return replace(limit, reason=said, from_network=agrees)
+
+
+def _obstacle(error: WiringError | SingularError) -> str:
+    """Why the resistive network has no solution, in the words of the drawing."""
+    fault = error.faults[0]
+    if isinstance(error, WiringError) and "loop of ideal voltage sources" in fault.message:
+        return "then the drive is shorted"
+    places = ", ".join(place_of(node) for node in fault.nodes if node != GROUND)
+    return f"then {places or 'a voltage'} is left open"
 
 
 def _end(polynomial: PolyElement, where: str) -> tuple[PolyElement, int]:

@@ -28,6 +28,7 @@ from symnet.network.parts import (
     VoltageLaw,
 )
 from symnet.network.wiring import check_wiring
+from symnet.typeset.displayed import Displayed
 
 if TYPE_CHECKING:
     from sympy import Matrix
@@ -220,8 +221,8 @@ class Equation:
     right: Expression
 
 
-@dataclass(frozen=True)
-class Equations:
+@dataclass(frozen=True, repr=False)
+class Equations(Displayed):
     """The modified nodal equations of a network.
 
     ``lines`` are the equations as written by hand; ``unknowns`` the names of node voltages (V) and currents (A)
@@ -234,6 +235,14 @@ class Equations:
     unknowns: tuple[str, ...]
     matrix: Matrix
     sources: Mapping[str, Matrix]
+
+    def __repr__(self) -> str:
+        return f"<Equations: {len(self.lines)} in the unknowns {_listed(self.unknowns)}>"
+
+
+def _listed(names: Sequence[str], most: int = 8) -> str:
+    rest = len(names) - most
+    return ", ".join(names[:most]) + (f" and {rest} more" if rest > 0 else "")
 
 
 def equations(network: Network) -> Equations:

@@ -1,32 +1,35 @@
 """A network as rank-one pieces with exact weights: what the determinants are made of.
 
-Rows are Kirchhoff's current law at each node and the law of each ideal source; columns are the node voltages
-and the currents of those sources. Every part gives pieces ``take/leave * u * v^T``:
+Rows are Kirchhoff's current law at each node and the law of each part with a current of its own; columns are
+the node voltages and those currents. Every part gives pieces ``take/leave * u * v^T``:
 
-========================  =============================================================
+========================  ===================================================================
 resistor, inductor        admittance 1/R, 1/(sL): take 1, leave R or sL
 capacitor                 admittance sC: take sC, leave 1
 impedance p/q             take q, leave p
 admittance p/q            take p, leave q
+branch whose current      its current into the two rows; its row v = (p/q) i or i = (p/q) v
+a law or the read names
 voltage source or law     its current into the two rows, its voltage in its own row
 op amp                    its output current into one row, the row v_plus - v_minus = 0
-current law p/q           take p, leave q, per controlling voltage or current
-========================  =============================================================
+current law p/q           take p, leave q; with a row of its own when it has several fractions
+========================  ===================================================================
 
-A resistance of zero so becomes a short and an infinite one an open branch, without any division.
+A resistance of zero so becomes a short and an infinite one an open branch, without any division. Every
+denominator is multiplied in once, so that the determinant has no natural frequency which the network has not.
 """
 
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
 from symnet.errors import Fault, NotationError
 from symnet.exact.linear import Bounded, LinearForm, linear_form
 from symnet.exact.naming import Naming
 from symnet.exact.trees import Piece
-from symnet.expressions import Expression, Name
+from symnet.expressions import Expression, Name, names_in
 from symnet.network.network import Network
 from symnet.network.parts import (
     GROUND,
@@ -40,15 +43,17 @@ from symnet.network.parts import (
 )
 
 if TYPE_CHECKING:
-    from sympy.polys.fields import FracElement
     from sympy.polys.rings import PolyElement
 
-__all__ = ["Pieces", "drive_column", "terms_of"]
+__all__ = ["Pieces", "named_currents"]
 
 
 @dataclass(frozen=True)
 class Pieces:
-    """The pieces of a network without a chosen drive or read, with their weights in the ring of its names."""
+    """The pieces of a network without a chosen drive, with their weights in the ring of its names.
+
+    ``nodes`` and ``currents`` give the column (and row) of each node voltage and each current of its own.
+    """
 
     network: Network
     naming: Naming
@@ -60,32 +65,30 @@ class Pieces:
     currents: Mapping[str, int]
 
     @classmethod
-    def of(cls, network: Network, symbols: frozenset[str] | None = None) -> Pieces:
-        """The pieces of a network; ``symbols`` are the names that stay symbols although they have a number.
+    def of(
+        cls,
+        network: Network,
+        symbols: frozenset[str] | None = None,
+        currents: frozenset[str] = frozenset(),
+    ) -> Pieces:
+        """The pieces of a network.
 
-        Raises NotationError where a law is not linear.
+        ``symbols`` are the names that stay symbols although they have a number; ``currents`` the parts whose
+        current a read will ask for. Raises NotationError where a law is not linear.
         """
-        return _Stamping(network, symbols).result()
-
-    def column(self, unknown: tuple[str, str]) -> int | None:
-        """The column of an unknown, ("v", node) or ("i", source); None for gnd."""
-        kind, name = unknown
-        return self.currents[name] if kind == "i" else self.nodes.get(name)
+        return _Stamping(network, symbols, currents).result()
 
     def form(self, expression: Expression, what: str) -> LinearForm:
         """The linear form of an expression of voltages and currents in this network."""
-        field = self.naming.field
-        return linear_form(expression, field, self._form_of, what)
+        return linear_form(expression, self.naming.field, self._form_of, what)
 
     def _form_of(self, name: Name) -> LinearForm:
         word = name.name
         if word in self.nodes or word == GROUND:
             return self._voltage(word)
         kind, _, rest = word.partition("_")
-        if kind == "v" and rest and word not in self.naming.dimensions:
-            return self._v(rest, name)
-        if kind == "i" and rest and word not in self.naming.dimensions:
-            return self._i(rest, name)
+        if kind in ("v", "i") and rest and word not in self.naming.dimensions:
+            return self._v(rest, name) if kind == "v" else self._i(rest, name)
         return LinearForm(Bounded(self.naming.fraction(name)), {})
 
     def _voltage(self, node: str) -> LinearForm:
@@ -99,15 +102,10 @@ class Pieces:
         return self._voltage(plus) + -self._voltage(minus)
 
     def _i(self, rest: str, name: Name) -> LinearForm:
+        field = self.naming.field
         if rest in self.currents:
-            return LinearForm(Bounded(self.naming.field.zero), {("i", rest): Bounded(self.naming.field.one)})
-        part = next((part for part in self.network.parts if part.name == rest), None)
-        if isinstance(part, Branch):
-            admittance = LinearForm(Bounded(_admittance(part, self.naming)), {})
-            return admittance * self._v(rest, name)
-        if isinstance(part, CurrentLaw):
-            return self.form(part.value, f"the law {part.name}")
-        raise self._stands_for_nothing(name)
+            return LinearForm(Bounded(field.zero), {("i", rest): Bounded(field.one)})
+        raise _stands_for_nothing(name)
 
     def _terminals(self, rest: str, name: Name) -> tuple[str, str]:
         for known, drive in zip(self.network.drive_names, self.network.drives, strict=True):
@@ -115,152 +113,179 @@ class Pieces:
                 return drive.nodes
         part = next((part for part in self.network.parts if part.name == rest), None)
         if part is None or isinstance(part, OpAmp):
-            raise self._stands_for_nothing(name)
+            raise _stands_for_nothing(name)
         return part.nodes
 
-    def _stands_for_nothing(self, name: Name) -> NotationError:
-        return NotationError(
-            Fault(
-                f"{name.name} stands for no voltage or current of this network",
-                "a node's name is its voltage; i_R1 is the current through R1, v_R1 the voltage across it",
-                span=name.span,
-            )
+    def terms(self, form: LinearForm) -> tuple[PolyElement, list[tuple[PolyElement, int | None, int | None]]]:
+        """A linear form as ``(q, terms)``: the sum of ``weight * (x - y)`` over terms, divided by q.
+
+        Opposite weights are paired, so that nothing cancels that a difference of voltages need not spell out.
+        """
+        common = self.naming.ring.one
+        for weight in form.weights.values():
+            common = common.lcm(weight.value.denom)
+        waiting: dict[int, PolyElement] = {}
+        out: list[tuple[PolyElement, int | None, int | None]] = []
+        for (kind, name), bounded in form.weights.items():
+            column = self.currents[name] if kind == "i" else self.nodes[name]
+            weight = bounded.value.numer * common.exquo(bounded.value.denom)
+            opposite = next((other for other, value in waiting.items() if value == -weight), None)
+            if opposite is None:
+                waiting[column] = weight
+            else:
+                out.append((waiting.pop(opposite), opposite, column))
+        out.extend((weight, column, None) for column, weight in waiting.items())
+        return common, out
+
+    def drive_rows(self, drive: Drive) -> tuple[int | None, int | None]:
+        """The rows, (+) and (-), in which a drive of value 1 stands on the right-hand side."""
+        if isinstance(drive, CurrentDrive):
+            return self.nodes.get(drive.end), self.nodes.get(drive.start)
+        return self.currents[self.network.drive_names[self.network.drives.index(drive)]], None
+
+
+def named_currents(network: Network, *expressions: Expression) -> frozenset[str]:
+    """The parts whose current these expressions and the laws of the network name as ``i_...``."""
+    parts = set(network.part_names)
+    laws = (part.value for part in network.parts if isinstance(part, VoltageLaw | CurrentLaw))
+    return frozenset(
+        name.name[2:]
+        for expression in (*laws, *expressions)
+        for name in names_in(expression)
+        if name.name.startswith("i_") and name.name[2:] in parts
+    )
+
+
+def _stands_for_nothing(name: Name) -> NotationError:
+    return NotationError(
+        Fault(
+            f"{name.name} stands for no voltage or current of this network",
+            "a node's name is its voltage; i_R1 is the current through R1, v_R1 the voltage across it",
+            span=name.span,
         )
-
-
-def _admittance(part: Branch, naming: Naming) -> FracElement:
-    value = naming.value(part.name)
-    s = naming.field.gens[0]
-    match part.kind:
-        case "C":
-            return s * value
-        case "Y":
-            return value
-        case "L":
-            return _inverse(s * value, part)
-        case _:
-            return _inverse(value, part)
-
-
-def _inverse(value: FracElement, part: Branch) -> FracElement:
-    if not value:
-        raise NotationError(
-            Fault(
-                f"the current through {part.name} cannot be written with its voltage, since {part.name} is zero",
-                "read the current of a part in series with it",
-                parts=(part.name,),
-            )
-        )
-    return 1 / value
+    )
 
 
 class _Stamping:
     """Collects the pieces of a network, part by part."""
 
-    def __init__(self, network: Network, symbols: frozenset[str] | None) -> None:
+    def __init__(self, network: Network, symbols: frozenset[str] | None, currents: frozenset[str]) -> None:
         self.network = network
         self.naming = Naming.of(network, symbols)
         self.nodes = {node: k for k, node in enumerate(network.nodes)}
-        self.currents: dict[str, int] = {}
-        size = len(self.nodes)
-        for name, drive in zip(network.drive_names, network.drives, strict=True):
-            if isinstance(drive, VoltageDrive):
-                self.currents[name] = size
-                size += 1
-        for part in network.parts:
-            if isinstance(part, VoltageLaw | OpAmp):
-                self.currents[part.name] = size
-                size += 1
-        self.size = size
+        named = named_currents(network) | currents
+        carriers = [
+            name
+            for name, drive in zip(network.drive_names, network.drives, strict=True)
+            if isinstance(drive, VoltageDrive)
+        ]
+        carriers += [
+            part.name for part in network.parts if isinstance(part, VoltageLaw | OpAmp) or part.name in named
+        ]
+        self.currents = {name: len(self.nodes) + k for k, name in enumerate(carriers)}
+        self.size = len(self.nodes) + len(self.currents)
+        self.frame = Pieces(network, self.naming, self.size, (), (), (), self.nodes, self.currents)
         self.pieces: list[Piece] = []
         self.take: list[PolyElement] = []
         self.leave: list[PolyElement] = []
 
     def result(self) -> Pieces:
-        frame = Pieces(self.network, self.naming, self.size, (), (), (), self.nodes, self.currents)
         for name, drive in zip(self.network.drive_names, self.network.drives, strict=True):
             if isinstance(drive, VoltageDrive):
-                self._voltage_source(name, drive.plus, drive.minus)
+                self._current(name, drive.plus, drive.minus)
+                self._row(name, *self._columns(drive.plus, drive.minus))
         for part in self.network.parts:
             match part:
+                case Branch() if part.name in self.currents:
+                    self._branch_with_current(part)
                 case Branch():
                     self._branch(part)
                 case VoltageLaw():
-                    self._voltage_source(part.name, part.plus, part.minus)
-                    row = self.currents[part.name]
-                    form = frame.form(part.value, f"the law {part.name}")
-                    for fraction, plus, minus in terms_of(form, frame):
-                        self._add(Piece(row, None, plus, minus), -fraction.numer, fraction.denom)
+                    self._current(part.name, part.plus, part.minus)
+                    self._law(part, *self._columns(part.plus, part.minus))
                 case CurrentLaw():
-                    form = frame.form(part.value, f"the law {part.name}")
-                    start, end = self.nodes.get(part.start), self.nodes.get(part.end)
-                    for fraction, plus, minus in terms_of(form, frame):
-                        self._add(Piece(start, end, plus, minus), fraction.numer, fraction.denom)
+                    self._current_law(part)
                 case OpAmp():
                     at = self.currents[part.name]
                     self._add(Piece(None, self.nodes.get(part.out), at, None))
-                    self._add(Piece(at, None, self.nodes.get(part.plus), self.nodes.get(part.minus)))
-        return Pieces(
-            self.network,
-            self.naming,
-            self.size,
-            tuple(self.pieces),
-            tuple(self.take),
-            tuple(self.leave),
-            self.nodes,
-            self.currents,
-        )
+                    self._row(part.name, *self._columns(part.plus, part.minus))
+        return replace(self.frame, pieces=tuple(self.pieces), take=tuple(self.take), leave=tuple(self.leave))
 
-    def _voltage_source(self, name: str, plus: str, minus: str) -> None:
-        at, a, b = self.currents[name], self.nodes.get(plus), self.nodes.get(minus)
-        self._add(Piece(a, b, at, None))
-        self._add(Piece(at, None, a, b))
+    def _columns(self, plus: str, minus: str) -> tuple[int | None, int | None]:
+        return self.nodes.get(plus), self.nodes.get(minus)
+
+    def _current(self, name: str, start: str, end: str) -> None:
+        """The current of its own of a part, leaving ``start`` and entering ``end``."""
+        self._add(Piece(*self._columns(start, end), self.currents[name], None))
+
+    def _row(self, name: str, plus: int | None, minus: int | None, take: PolyElement | None = None) -> None:
+        """A term ``take * (x_plus - x_minus)`` in the row of a part with a current of its own."""
+        self._add(Piece(self.currents[name], None, plus, minus), take)
+
+    def _law(self, part: VoltageLaw | CurrentLaw, plus: int | None, minus: int | None) -> None:
+        """The row ``q * (x_plus - x_minus) - q * value = 0``, with q the common denominator of the value."""
+        common, terms = self.frame.terms(self.frame.form(part.value, f"the law {part.name}"))
+        self._row(part.name, plus, minus, common)
+        for weight, a, b in terms:
+            self._row(part.name, a, b, -weight)
+
+    def _current_law(self, part: CurrentLaw) -> None:
+        start, end = self._columns(part.start, part.end)
+        if part.name in self.currents:
+            self._current(part.name, part.start, part.end)
+            self._law(part, self.currents[part.name], None)
+            return
+        common, terms = self.frame.terms(self.frame.form(part.value, f"the law {part.name}"))
+        if len(terms) == 1 or common == self.naming.ring.one:
+            for weight, a, b in terms:
+                self._add(Piece(start, end, a, b), weight, common)
+            return
+        at = self.size
+        self.size += 1
+        self.frame = replace(self.frame, size=self.size)
+        self._add(Piece(start, end, at, None))
+        self._add(Piece(at, None, at, None), common)
+        for weight, a, b in terms:
+            self._add(Piece(at, None, a, b), -weight)
 
     def _branch(self, part: Branch) -> None:
+        impedance, admittance = self._value(part)
+        a, b = self._columns(part.start, part.end)
+        take, leave = admittance if admittance is not None else impedance[::-1]
+        self._add(Piece(a, b, a, b), take, leave)
+
+    def _branch_with_current(self, part: Branch) -> None:
+        impedance, admittance = self._value(part)
+        self._current(part.name, part.start, part.end)
+        at, voltage = self.currents[part.name], self._columns(part.start, part.end)
+        if admittance is None:
+            numerator, denominator = impedance
+            self._row(part.name, *voltage)
+            self._add(Piece(at, None, at, None), -numerator, denominator)
+        else:
+            numerator, denominator = admittance
+            self._row(part.name, at, None)
+            self._add(Piece(at, None, *voltage), -numerator, denominator)
+
+    def _value(
+        self, part: Branch
+    ) -> tuple[tuple[PolyElement, PolyElement], tuple[PolyElement, PolyElement] | None]:
+        """Numerator and denominator of the impedance, and of the admittance for C and Y."""
         value = self.naming.value(part.name)
         s = self.naming.ring.gens[0]
-        one = self.naming.ring.one
-        a, b = self.nodes.get(part.start), self.nodes.get(part.end)
+        p, q = value.numer, value.denom
         match part.kind:
-            case "R" | "Z":
-                take, leave = value.denom, value.numer
-            case "L":
-                take, leave = value.denom, s * value.numer
             case "C":
-                take, leave = s * value.numer, value.denom
+                return (q, s * p), (s * p, q)
+            case "Y":
+                return (q, p), (p, q)
+            case "L":
+                return (s * p, q), None
             case _:
-                take, leave = value.numer, value.denom
-        self._add(Piece(a, b, a, b), take * one, leave * one)
+                return (p, q), None
 
     def _add(self, piece: Piece, take: PolyElement | None = None, leave: PolyElement | None = None) -> None:
         one = self.naming.ring.one
         self.pieces.append(piece)
         self.take.append(one if take is None else take)
         self.leave.append(one if leave is None else leave)
-
-
-def terms_of(form: LinearForm, frame: Pieces) -> list[tuple[FracElement, int | None, int | None]]:
-    """A linear form as few terms ``weight * (x - y)``: opposite weights are paired, so that fewer terms cancel."""
-    waiting: dict[int, FracElement] = {}
-    out: list[tuple[FracElement, int | None, int | None]] = []
-    for unknown, weight in form.weights.items():
-        column = frame.column(unknown)
-        if column is None:
-            continue
-        for other, value in waiting.items():
-            if value == -weight.value:
-                out.append((value, other, column))
-                del waiting[other]
-                break
-        else:
-            waiting[column] = weight.value
-    out.extend((value, column, None) for column, value in waiting.items())
-    return out
-
-
-def drive_column(frame: Pieces, drive: Drive) -> tuple[int | None, int | None]:
-    """The rows, (+) and (-), in which a drive of value 1 stands on the right-hand side."""
-    if isinstance(drive, CurrentDrive):
-        return frame.nodes.get(drive.end), frame.nodes.get(drive.start)
-    name = frame.network.drive_names[frame.network.drives.index(drive)]
-    return frame.currents[name], None

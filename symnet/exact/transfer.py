@@ -7,12 +7,12 @@ that needs numbers only is computed from the diagrams directly, in exact integer
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 from functools import cached_property
 from typing import TYPE_CHECKING, Any
 
-from symnet.errors import Fault, MissingValueError, UnknownNameError, nearest
+from symnet.errors import Fault, MissingValueError, SingularError, UnknownNameError, nearest
 from symnet.exact.determinant import Determinant, numeric_pair, pair_modulo
 from symnet.exact.lowest import LowestTerms, reduce
 from symnet.exact.modular import SMALL_PRIME
@@ -20,6 +20,7 @@ from symnet.exact.ratio import Ratio
 from symnet.network.network import Network
 from symnet.network.parts import Drive
 from symnet.quantities import Dimension
+from symnet.typeset.displayed import Displayed
 
 if TYPE_CHECKING:
     from sympy import Expr
@@ -33,7 +34,7 @@ __all__ = ["Transfer"]
 
 
 @dataclass(frozen=True, eq=False, repr=False)
-class Transfer:
+class Transfer(Displayed):
     """The exact transfer function H(s) = numerator/denominator from a drive to a read.
 
     Made by :func:`symnet.derive`. ``numerator`` and ``denominator`` are elements of ``ring`` (integers; the
@@ -83,12 +84,13 @@ class Transfer:
         n, d = self.determinants
         if n.diagram.is_zero:
             return LowestTerms(self.ring, self.ring.zero, self.ring.one, ())
-        return reduce(
+        found = reduce(
             n.primitive,
             d.primitive,
             self.ring,
             lambda point: pair_modulo(n, d, point, SMALL_PRIME),
         )
+        return replace(found, hidden=_without(found.hidden, d.factor))
 
     @property
     def numerator(self) -> PolyElement:
@@ -155,10 +157,20 @@ class Transfer:
                 )
             )
         n, d = self.determinants
-        return Ratio.of(*numeric_pair(n, d, [self.values[name] for name in self.names]))
+        top, bottom = numeric_pair(n, d, [self.values[name] for name in self.names])
+        if not any(bottom):
+            from symnet.exact.confirm import undetermined
+
+            fault = undetermined(self.network, self.naming, self.values)
+            raise SingularError(replace(fault, message=f"for these values {fault.message}"))
+        return Ratio.of(top, bottom)
 
     def numeric(self) -> Ratio:
-        """H with every name replaced by its number, exact; MissingValueError when one has none."""
+        """H with every name replaced by its number, exact.
+
+        Raises MissingValueError when a name has none, SingularError when these values leave the equations
+        without a single solution (a gain of exactly one around a loop, a negative resistor that cancels).
+        """
         return self._numeric
 
     def __eq__(self, other: object) -> bool:
@@ -177,6 +189,18 @@ class Transfer:
         n, d = self.terms
         shown = f"{n} over {d} terms" if max(n, d) > 1 else "a constant"
         return f"<Transfer {self.label}: {shown}, {self.confirmation.short}>"
+
+
+def _without(hidden: tuple[PolyElement, ...], factor: PolyElement) -> tuple[PolyElement, ...]:
+    """The hidden modes without those that the read itself has brought in, as in ``read a/(s*L1)``."""
+    kept = []
+    for mode in hidden:
+        quotient, rest = divmod(factor, mode)
+        if rest or not factor:
+            kept.append(mode)
+        else:
+            factor = quotient
+    return tuple(kept)
 
 
 def _named_terms(polynomial: PolyElement) -> frozenset[Any]:

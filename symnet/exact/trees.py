@@ -30,9 +30,15 @@ from __future__ import annotations
 from bisect import bisect_left
 from collections.abc import Sequence
 from dataclasses import dataclass
-from typing import Any
+from functools import cached_property
+from heapq import heappop, heappush
+from typing import TYPE_CHECKING, Any
 
-__all__ = ["Diagram", "Piece", "build"]
+if TYPE_CHECKING:
+    import numpy as np
+    from numpy.typing import NDArray
+
+__all__ = ["Diagram", "Level", "Piece", "build", "frontier_order"]
 
 _DEAD = -1
 
@@ -47,7 +53,20 @@ class Piece:
     column_minus: int | None
 
 
-@dataclass(frozen=True, slots=True)
+@dataclass(frozen=True, slots=True, eq=False)
+class Level:
+    """The nodes that decide one piece: which of them leave and take, to which nodes of the next level."""
+
+    piece: int
+    size: int
+    leave_from: NDArray[np.intp]
+    leave_to: NDArray[np.intp]
+    take_from: NDArray[np.intp]
+    take_to: NDArray[np.intp]
+    sign: NDArray[np.float64]
+
+
+@dataclass(frozen=True)
 class Diagram:
     """A determinant as a diagram of takes and leaves, parents before children.
 
@@ -71,6 +90,29 @@ class Diagram:
 
     def __len__(self) -> int:
         return len(self.piece)
+
+    @cached_property
+    def levels(self) -> tuple[Level, ...]:
+        """The nodes piece by piece, first decision first, with arrays of positions for whole-level arithmetic."""
+        import numpy as np
+
+        starts = [k for k in range(len(self.piece)) if k == 0 or self.piece[k] != self.piece[k - 1]]
+        out = []
+        for start, end in zip(starts, [*starts[1:], len(self.piece)], strict=True):
+            leaving = [k for k in range(start, end) if self.leave[k] >= 0]
+            taking = [k for k in range(start, end) if self.take[k] >= 0]
+            out.append(
+                Level(
+                    self.piece[start],
+                    end - start,
+                    np.array([k - start for k in leaving], dtype=np.intp),
+                    np.array([self.leave[k] - end for k in leaving], dtype=np.intp),
+                    np.array([k - start for k in taking], dtype=np.intp),
+                    np.array([self.take[k] - end for k in taking], dtype=np.intp),
+                    np.array([self.sign[k] for k in taking], dtype=np.float64),
+                )
+            )
+        return tuple(out)
 
     def count(self) -> int:
         """The number of paths, without expanding: the number of terms when every piece has its own symbol."""
@@ -322,9 +364,12 @@ def frontier_order(size: int, pieces: Sequence[Piece]) -> list[int]:
         closed = sum(1 for other in opened if remaining[other] <= remaining[site])
         return (new - closed, len(remaining[site]), not is_open[site], site)
 
-    prices = {site: price(site) for site in todo}
+    prices = {site: price(site) for site in sorted(todo)}
+    waiting = sorted((cost, site) for site, cost in prices.items())
     while todo:
-        site = min(todo, key=prices.__getitem__)
+        cost, site = heappop(waiting)
+        if site not in todo or prices[site] != cost:
+            continue  # a price that has changed since
         affected: set[int] = set()
         for index in sorted(remaining[site]):
             order.append(index)
@@ -334,9 +379,11 @@ def frontier_order(size: int, pieces: Sequence[Piece]) -> list[int]:
                 if other != site:
                     remaining[other].discard(index)
         remaining[site].clear()
-        done = {other for other in affected if not remaining[other]}
-        todo -= done
+        todo -= {other for other in affected if not remaining[other]}
         neighbours = {o for other in affected for index in remaining[other] for o in touched[index]}
         for other in (affected | neighbours) & todo:
-            prices[other] = price(other)
+            cost = price(other)
+            if cost != prices[other]:
+                prices[other] = cost
+                heappush(waiting, (cost, other))
     return order

@@ -11,7 +11,7 @@ from __future__ import annotations
 from collections import deque
 from collections.abc import Iterable, Iterator
 
-from symnet.errors import Fault, Span, WiringError
+from symnet.errors import Fault, Span, WiringError, nearest
 from symnet.expressions import Expression, names_in
 from symnet.network.network import Network
 from symnet.network.parts import (
@@ -24,12 +24,19 @@ from symnet.network.parts import (
     VoltageLaw,
 )
 
-__all__ = ["check_wiring", "place_of", "wiring_faults"]
+__all__ = ["check_drives", "check_wiring", "place_of", "wiring_faults"]
 
 
 def check_wiring(network: Network) -> None:
     """Raise WiringError with every fault of the wiring, unless there is none."""
     faults = wiring_faults(network)
+    if faults:
+        raise WiringError(faults, text=network.text)
+
+
+def check_drives(network: Network) -> None:
+    """Raise WiringError when a drive is at a node that no part touches: a slip of the name would give H = 0."""
+    faults = tuple(_unconnected_drives(network))
     if faults:
         raise WiringError(faults, text=network.text)
 
@@ -104,6 +111,23 @@ def _shorted_sources(network: Network) -> Iterator[Fault]:
                 span=_span(piece),
                 nodes=(a,),
             )
+
+
+def _unconnected_drives(network: Network) -> Iterator[Fault]:
+    touched = {node for part in network.parts for node in part.nodes}
+    for part in network.parts:
+        if isinstance(part, VoltageLaw | CurrentLaw):
+            touched.update(_sensed(network, part.value))
+    for drive in network.drives:
+        for node in drive.nodes:
+            if node != GROUND and node not in touched and network.parts:
+                close = nearest(node, touched - {GROUND})
+                yield Fault(
+                    f"the drive is at node {node}, but no part is connected there",
+                    f"did you mean {close[0]}?" if close else f"nodes with parts: {', '.join(sorted(touched))}",
+                    span=drive.span,
+                    nodes=(node,),
+                )
 
 
 def _span(piece: object) -> Span | None:

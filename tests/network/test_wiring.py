@@ -74,6 +74,13 @@ def test_a_shorted_source_that_was_built_in_python() -> None:
     ]
 
 
+@pytest.mark.parametrize("text", ["drive inn", "drive in - inn", "drive current into inn"])
+def test_a_drive_where_no_part_is(text: str) -> None:
+    net = sn.network(f"in -- R1 -- out -- C1 -- gnd; read out; {text}")
+    with pytest.raises(WiringError, match=r"the drive is at node inn, but no part is connected there\n.*\n.*\n.*in\?"):
+        sn.derive(net)
+
+
 def test_an_empty_network_is_said_to_be_empty() -> None:
     assert [fault.message for fault in wiring_faults(sn.network(""))] == ["the network is empty"]
 

@@ -1,0 +1,1 @@
+"""What H does: magnitude, phase and delay over frequency."""

@@ -1,0 +1,203 @@
+"""Random networks: drawn once, written twice, as symnet text and as the oracle's plain tuples.
+
+One builder serves seeded runs and hypothesis alike; it only asks a chooser for whole numbers. Every node hangs
+on gnd by a tree of branches, every op amp has a branch from its output to its minus input, and an ideal output
+never meets another one, so that most networks have a solution; whether one has is for the oracle to say.
+"""
+
+from __future__ import annotations
+
+import random
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass, field
+from fractions import Fraction
+from typing import Any, TypeVar
+
+from hypothesis import strategies as st
+
+from tests.oracle import Drawing, Part
+
+T = TypeVar("T")
+Whole = Callable[[int, int], int]
+
+NODES = "abcdefgh"
+DIGITS = ("1", "1.5", "2.2", "3.3", "4.7", "6.8")
+
+#: class letter: unit in text, SI value of that unit, smallest and largest decade
+SIZES = {
+    "R": ("ohm", Fraction(1), 0, 5),
+    "L": ("uH", Fraction(1, 10**6), 1, 5),
+    "C": ("pF", Fraction(1, 10**12), 1, 5),
+}
+
+#: impedances and admittances that are an expression in s
+RATIONAL = {
+    "Z": ("{R} + s*{L}", "{R}/(1 + s*{R}*{C})", "1/(s*{C})", "{R} + 1/(s*{C})"),
+    "Y": ("1/{R} + s*{C}", "s*{C}", "1/({R} + s*{L})", "s*{C}/(1 + s*{R}*{C})"),
+}
+
+
+@dataclass(frozen=True, slots=True)
+class Sketch:
+    """One network, written twice, with the value of every symbol."""
+
+    text: str
+    drawing: Drawing
+    values: dict[str, Fraction]
+
+
+@dataclass(slots=True)
+class _Pencil:
+    """What has been drawn so far."""
+
+    whole: Whole
+    rational: bool
+    lines: list[str] = field(default_factory=list)
+    parts: list[Part] = field(default_factory=list)
+    values: dict[str, Fraction] = field(default_factory=dict)
+    worth: list[str] = field(default_factory=list)
+    inner: int = 0
+
+    def pick(self, options: Sequence[T]) -> T:
+        return options[self.whole(0, len(options) - 1)]
+
+    def chance(self, of: int) -> bool:
+        return self.whole(1, of) == 1
+
+    def size(self, kind: str) -> tuple[str, Fraction]:
+        """A value of that class, as text and as a number."""
+        unit, one, low, high = SIZES[kind]
+        digits = f"{Fraction(self.pick(DIGITS)) * 10 ** self.whole(low, high)}"
+        if "/" in digits:
+            digits = f"{float(Fraction(digits))}"
+        return f"{digits} {unit}", Fraction(digits) * one
+
+    def branch(self, start: str, end: str) -> str:
+        """One part between two nodes; gives its name."""
+        kind = self.pick("RRRCCCLLZY" if self.rational else "RRRCCCLL")
+        name = f"{kind}{1 + sum(part[1][0] == kind for part in self.parts)}"
+        value = name
+        if kind in RATIONAL:
+            sizes = {letter: self.size(letter) for letter in "RLC"}
+            form = self.pick(RATIONAL[kind])
+            self.worth.append(f"{name} = " + form.format(**{k: text for k, (text, _) in sizes.items()}))
+            value = form.format(**{k: f"({number})" for k, (_, number) in sizes.items()})
+        else:
+            text, self.values[name] = self.size(kind)
+            self.worth.append(f"{name} = {text}")
+        self.parts.append((kind, name, start, end, value))
+        return name
+
+    def link(self, start: str, end: str) -> str:
+        """What stands between two nodes: a part, two in series, two in parallel; gives its text."""
+        shape = self.whole(0, 5)
+        if shape == 0:
+            self.inner += 1
+            inner = f"inside{self.inner}"
+            return f"{self.branch(start, inner)} + {self.branch(inner, end)}"
+        if shape == 1:
+            return f"{self.branch(start, end)} || {self.branch(start, end)}"
+        return self.branch(start, end)
+
+    def chain(self, start: str, end: str) -> None:
+        self.lines.append(f"{start} -- {self.link(start, end)} -- {end}")
+
+    def symbol(self, stem: str, unit: str, one: Fraction) -> str:
+        """A new law coefficient with a value; gives its name."""
+        name = f"{stem}{1 + sum(known.startswith(stem) for known in self.values)}"
+        digits = self.pick(DIGITS)
+        self.values[name] = Fraction(digits) * one
+        self.worth.append(f"{name} = {digits} {unit}".rstrip())
+        return name
+
+    def law(self, nodes: Sequence[str], kinds: dict[bool, tuple[str, str, Fraction]]) -> str:
+        """A law of one or two voltages or currents; ``kinds`` says per voltage (False) or current what the factor is."""
+        terms = []
+        for _ in range(1 if self.whole(0, 3) else 2):
+            control, of_current = self.control(nodes)
+            terms.append(f"{self.symbol(*kinds[of_current])}*{control}")
+        law = " - ".join(terms)
+        if self.rational and not self.whole(0, 3):
+            lag = self.pick(["tau1", "tau2"])
+            if lag not in self.values:
+                self.values[lag] = Fraction(2, 1000)
+                self.worth.append(f"{lag} = 2 ms")
+            law = f"({law})/(1 + s*{lag})"
+        return law
+
+    def control(self, nodes: Sequence[str]) -> tuple[str, bool]:
+        """A voltage or a current of the network, as text; True when it is a current."""
+        named = [part[1] for part in self.parts if part[0] in "RLCZY"]
+        if self.chance(3):
+            return f"i_{self.pick(named)}", True
+        if self.chance(2) and len(nodes) > 1:
+            first = self.pick(nodes)
+            second = self.pick([node for node in nodes if node != first])
+            return f"({first} - {second})", False
+        return self.pick(nodes), False
+
+
+def build(whole: Whole, most_nodes: int = 6, rational: bool = True, active: bool = True) -> Sketch:
+    """A connected network; ``whole(low, high)`` gives whole numbers, low and high included."""
+    pencil = _Pencil(whole, rational)
+    nodes = list(NODES[: whole(2, most_nodes)])
+    for k, node in enumerate(nodes):
+        pencil.chain(node, "gnd" if k == 0 or pencil.chance(4) else pencil.pick(nodes[:k]))
+    for _ in range(whole(0, 4)):
+        start = pencil.pick(nodes)
+        pencil.chain(start, pencil.pick([node for node in ["gnd", *nodes] if node != start]))
+    unfixed = list(nodes)
+    drive, drive_text = _drive(pencil, nodes, unfixed)
+    if active:
+        for k in range(whole(0, 2)):
+            _active(pencil, nodes, unfixed, f"{k + 1}")
+    read = pencil.control(nodes)[0].strip("()")
+    pencil.lines += [drive_text, f"read {read}"]
+    text = "\n".join([*pencil.lines, *pencil.worth])
+    return Sketch(text, Drawing(tuple(pencil.parts), drive, read), pencil.values)
+
+
+def _drive(pencil: _Pencil, nodes: list[str], unfixed: list[str]) -> tuple[tuple[str, str, str], str]:
+    node = pencil.pick(nodes)
+    if pencil.whole(0, 2):
+        unfixed.remove(node)
+        return ("voltage", node, "gnd"), f"drive {node}"
+    start = pencil.pick([other for other in ["gnd", *nodes] if other != node])
+    if start == "gnd":
+        return ("current", "gnd", node), f"drive current into {node}"
+    return ("current", start, node), f"drive current from {start} to {node}"
+
+
+def _active(pencil: _Pencil, nodes: list[str], unfixed: list[str], number: str) -> None:
+    """A law or an op amp, as long as a node is left whose voltage nothing holds yet."""
+    kind = pencil.pick(["hold", "push", "opamp"])
+    if kind == "push":
+        start = pencil.pick(nodes)
+        end = pencil.pick([node for node in ["gnd", *nodes] if node != start])
+        law = pencil.law(nodes, {True: ("beta", "", Fraction(1)), False: ("gm", "mS", Fraction(1, 1000))})
+        pencil.lines.append(f"push from {start} to {end} = {law} as pump{number}")
+        pencil.parts.append(("push", f"pump{number}", start, end, law))
+    elif unfixed and kind == "hold":
+        out = unfixed.pop(pencil.whole(0, len(unfixed) - 1))
+        others = [node for node in nodes if node != out] or nodes
+        law = pencil.law(others, {True: ("rho", "ohm", Fraction(1)), False: ("mu", "", Fraction(1))})
+        pencil.lines.append(f"hold {out} = {law} as amp{number}")
+        pencil.parts.append(("hold", f"amp{number}", out, "gnd", law))
+    elif len(unfixed) > 1:
+        out = unfixed.pop(pencil.whole(0, len(unfixed) - 1))
+        minus = pencil.pick(unfixed)
+        plus = pencil.pick([node for node in ["gnd", *nodes] if node not in {minus, out}])
+        pencil.chain(out, minus)
+        pencil.lines.append(f"U{number}: opamp(plus={plus}, minus={minus}, out={out})")
+        pencil.parts.append(("opamp", f"U{number}", plus, minus, out))
+
+
+def seeded(seed: int, **how: Any) -> Sketch:
+    """The network of a seed: the same one on every machine and in every Python from 3.11 on."""
+    return build(random.Random(seed).randint, **how)
+
+
+@st.composite
+def sketches(draw: st.DrawFn, most_nodes: int = 5, *, rational: bool = True, active: bool = True) -> Sketch:
+    """Random networks as hypothesis draws them; they shrink towards two nodes and resistors of 1 ohm."""
+    return build(lambda low, high: draw(st.integers(low, high)), most_nodes, rational, active)
