@@ -47,7 +47,7 @@ def derive(
     >>> H.numerator, H.denominator
     (RL, s*R1*C1*RL + R1 + RL)
     >>> sn.derive(net, symbols="C1").denominator
-    s*C1*5000 + 1
+    10000*s*C1 + 2
     """
     if drive is not None:
         network, chosen = _driven_by(network, drive)

@@ -254,7 +254,7 @@ def equations(network: Network) -> Equations:
     >>> import symnet as sn
     >>> system = sn.equations(sn.network("in -- R1 -- out -- C1 -- gnd; drive in; read out"))
     >>> system.matrix[1, :]
-    Matrix([[-1/R1, s*C1 + 1/R1, 0]])
+    Matrix([[-1/R1, C1*s + 1/R1, 0]])
     """
     from sympy import Matrix, Rational
 

@@ -165,7 +165,12 @@ class Space:
                 if block[max(block)] < 0:
                     block = {m: -c for m, c in block.items()}
                     coefficient = -coefficient if exponent % 2 else coefficient
-                found.append((block, exponent))
+                # the sign may have stood with one of several equal factors: count them together
+                same = next((k for k, (other, _) in enumerate(found) if other == block), None)
+                if same is None:
+                    found.append((block, exponent))
+                else:
+                    found[same] = block, found[same][1] + exponent
         return coefficient, monomial, found
 
     def _split(self, p: Polynomial) -> Factors:

@@ -8,19 +8,26 @@ divided out, or all as they stand, whichever is shorter.
 Middlebrook, "Low-entropy expressions: the key to design-oriented analysis", Frontiers in Education 1991 (from
 memory), argues for the form: gain, poles and zeros in terms of the parts.
 
+Before a tree leaves this module its value is compared with the polynomials it was made from, at a random point
+modulo 2^61 - 1. Should the search ever go wrong, the plain fraction is shown, with a warning: what is displayed is
+what an engineer signs.
+
 Bounds: a coefficient of more than 60 terms is not grouped, H of more than 120 terms is not factored, and one of
 more than 2000 terms is collected in powers of s and nothing else. Terms that are not written are counted.
 """
 
 from __future__ import annotations
 
+import warnings
 from collections.abc import Sequence
 from dataclasses import dataclass
 from fractions import Fraction
+from random import Random
 from typing import TYPE_CHECKING, Final, Literal, TypeAlias
 
-from symnet.errors import Fault, SingularError
+from symnet.errors import Fault, LimitError, SingularError
 from symnet.exact.grouping import LONGEST_PLAIN, Grouping, Place
+from symnet.exact.modular import PRIME, Residue, weight_at
 from symnet.exact.packed import Factors, Polynomial
 from symnet.exact.ratios import Factored, Ratios, cancelled
 from symnet.typeset.length import length
@@ -44,7 +51,7 @@ from symnet.typeset.tree import (
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement, PolyRing
 
-__all__ = ["Form", "as_ratio", "readable", "readable_ratio", "readable_transfer"]
+__all__ = ["DoubtfulFormWarning", "Form", "as_ratio", "readable", "readable_ratio", "readable_transfer"]
 
 #: readable: whichever of the next and "undivided" is shorter. constant term 1: divided by the constant term.
 #: monic: by the coefficient of the highest power. one fraction: nothing divided, powers of s collected.
@@ -56,6 +63,10 @@ _LARGEST_READ: Final = 2000
 _GAIN_IS_WORTH: Final = 18
 # Where the bracket with the powers of s stands in a product.
 _LAST: Final[Place] = (9, 0, 0)
+
+
+class DoubtfulFormWarning(UserWarning):
+    """A readable form did not have the value of what it was made from: a defect of symnet."""
 
 
 def readable(polynomial: PolyElement) -> Tree:
@@ -70,7 +81,8 @@ def readable(polynomial: PolyElement) -> Tree:
     if len(polynomial) > _LARGEST_READ:
         return collected(polynomial, LONGEST_PLAIN)
     writer = _Writer.of(polynomial)
-    return writer.in_powers(writer.packed(polynomial))
+    tree = writer.in_powers(writer.packed(polynomial))
+    return _checked(tree, polynomial, polynomial.ring.one)
 
 
 def readable_ratio(numerator: PolyElement, denominator: PolyElement) -> Tree:
@@ -124,6 +136,10 @@ def readable_transfer(
         return ZERO
     if len(n) + len(d) > _LARGEST_READ:
         return over(collected(n, LONGEST_PLAIN), collected(d, LONGEST_PLAIN))
+    return _checked(_written(n, d, form, descending=descending), n, d)
+
+
+def _written(n: PolyElement, d: PolyElement, form: Form, *, descending: bool) -> Tree:
     writer = _Writer.of(n, d, descending=descending)
     above, below = writer.packed(n), writer.packed(d)
     if form == "one fraction":
@@ -135,6 +151,31 @@ def readable_transfer(
         return writer.undivided(h)
     divided, whole = writer.normalised(h, monic=False), writer.undivided(h)
     return divided if length(divided) <= length(whole) + _GAIN_IS_WORTH else whole
+
+
+def _checked(tree: Tree, n: PolyElement, d: PolyElement) -> Tree:
+    """The tree if it is n/d at a random point modulo a prime; else the plain fraction, and a warning."""
+    ring = n.ring
+    random = Random(len(n) + 1000 * len(d))
+    for _ in range(3):  # a point at which something in the tree divides by zero says nothing
+        point = [random.randrange(1, PRIME) for _ in ring.symbols]
+        values = dict(zip(map(str, ring.symbols), map(Residue, point), strict=True))
+        try:
+            value = evaluate(tree, values.__getitem__, lambda c: Residue.of(c.numerator, c.denominator))
+        except ZeroDivisionError:
+            continue
+        except LimitError:  # terms were left out: there is no value to compare
+            return tree
+        above, below = (weight_at(p, point, PRIME) for p in (n, d))
+        if (value.value * below - above) % PRIME:
+            break
+        return tree
+    warnings.warn(
+        "a shorter form of H did not pass its check and is not shown; please report the network",
+        DoubtfulFormWarning,
+        stacklevel=3,
+    )
+    return over(collected(n, LONGEST_PLAIN), collected(d, LONGEST_PLAIN))
 
 
 def as_ratio(tree: Tree, ring: PolyRing) -> tuple[PolyElement, PolyElement]:

@@ -7,6 +7,7 @@ numerator and denominator can still be copied and read back.
 from __future__ import annotations
 
 from dataclasses import dataclass
+from textwrap import wrap
 from typing import Final
 
 from symnet.typeset.tree import Constant, Product, Quotient, Sum, Tree
@@ -109,8 +110,9 @@ def _broken(tree: Tree, width: int) -> Block:
         piece = to_text(Sum(((1, term),)))
         if k or sign < 0:
             piece = f"{'-' if sign < 0 else '+'} {piece}"
-        if rows[-1] and len(rows[-1]) + 1 + len(piece) > width:
-            rows.append("")
-        rows[-1] += f" {piece}" if rows[-1] else piece
+        for part in wrap(piece, width, break_long_words=False, break_on_hyphens=False):
+            if rows[-1] and len(rows[-1]) + 1 + len(part) > width:
+                rows.append("")
+            rows[-1] += f" {part}" if rows[-1] else part
     longest = max(map(len, rows))
     return Block(tuple(row.ljust(longest) for row in rows), 0)

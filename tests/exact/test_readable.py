@@ -338,3 +338,15 @@ def test_as_ratio_follows_the_tree() -> None:
     tree = minus(over(plus(a, b), plus(a, minus(b))))
     above, below = as_ratio(tree, RING)
     assert above * (BY_NAME["R1"] - BY_NAME["R2"]) == -(BY_NAME["R1"] + BY_NAME["R2"]) * below
+
+
+def test_a_form_that_fails_its_check_is_not_shown(monkeypatch: pytest.MonkeyPatch) -> None:
+    from symnet.exact import readable as module
+    from symnet.typeset.tree import ONE
+
+    _, R1, R2 = gens("R1 R2")
+    monkeypatch.setattr(module, "_written", lambda *_, **__: ONE)
+    with pytest.warns(module.DoubtfulFormWarning, match="did not pass its check"):
+        tree = readable_transfer(R1, R1 + R2)
+    above, below = as_ratio(tree, R1.ring)
+    assert above * (R1 + R2) == below * R1

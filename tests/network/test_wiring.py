@@ -77,7 +77,9 @@ def test_a_shorted_source_that_was_built_in_python() -> None:
 @pytest.mark.parametrize("text", ["drive inn", "drive in - inn", "drive current into inn"])
 def test_a_drive_where_no_part_is(text: str) -> None:
     net = sn.network(f"in -- R1 -- out -- C1 -- gnd; read out; {text}")
-    with pytest.raises(WiringError, match=r"the drive is at node inn, but no part is connected there\n.*\n.*\n.*in\?"):
+    with pytest.raises(
+        WiringError, match=r"the drive is at node inn, but no part is connected there\n.*\n.*\n.*in\?"
+    ):
         sn.derive(net)
 
 

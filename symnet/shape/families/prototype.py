@@ -1,0 +1,305 @@
+"""A member of a filter family as a value: its poles and zeros and every frequency reference it has.
+
+Filter tables disagree about what "unit frequency" means: the -3 dB point, the edge of the ripple, the inverse of
+the delay, the geometric mean of the poles. A :class:`Prototype` therefore carries all of them as data, each with
+a label that says what it is, and is moved from one to another by :meth:`Prototype.scaled` alone. Invariants:
+poles are sorted and come in conjugate pairs; every reference belongs to exactly these poles.
+"""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterable
+from dataclasses import dataclass, field, replace
+from typing import Final, TypeAlias, overload
+
+import numpy as np
+from numpy.typing import NDArray
+from sympy import Expr
+
+from symnet.errors import Fault, NotationError, UnknownNameError, nearest
+from symnet.shape.families.curves import geometric_mean, group_delay, last_crossing
+from symnet.typeset.displayed import Displayed
+
+__all__ = [
+    "HIGH_PASS",
+    "LOW_PASS",
+    "RIPPLE_EDGE",
+    "STOP_EDGE",
+    "UNIT_DELAY",
+    "W0",
+    "W3DB",
+    "W3DB_PEAK",
+    "Prototype",
+    "Reference",
+    "Setting",
+    "in_order",
+    "with_common_references",
+]
+
+LOW_PASS: Final = "low-pass"  # noqa: S105 - a band
+HIGH_PASS: Final = "high-pass"  # noqa: S105
+
+W0: Final = "w0"
+W3DB: Final = "w3dB"
+W3DB_PEAK: Final = "w3dB_peak"
+RIPPLE_EDGE: Final = "ripple_edge"
+STOP_EDGE: Final = "stop_edge"
+UNIT_DELAY: Final = "unit_delay"
+
+_LABELS: Final = {
+    W0: "w0, geometric mean of the pole magnitudes",
+    W3DB: "-3.0103 dB relative to DC",
+    W3DB_PEAK: "-3.0103 dB relative to the ripple peak",
+    RIPPLE_EDGE: "ripple edge",
+    STOP_EDGE: "stop-band edge",
+    UNIT_DELAY: "unit-delay frequency 1/T, T the group delay at DC",
+}
+_HIGH_PASS_LABELS: Final = _LABELS | {
+    W3DB: "-3.0103 dB relative to infinite frequency",
+    UNIT_DELAY: "T of the low-pass that s -> 1/s gives (its group delay at DC), as a frequency",
+}
+
+_Complexes: TypeAlias = NDArray[np.complex128]
+
+
+@dataclass(frozen=True, slots=True)
+class Reference:
+    """One frequency that a table may be normalised to: its name, the angular frequency w in rad/s, its label."""
+
+    name: str
+    w: float
+    label: str
+
+    @classmethod
+    def named(cls, name: str, w: float, note: str = "", band: str = LOW_PASS) -> Reference:
+        """The reference of that name with its usual label, and a note in brackets where there is more to say."""
+        label = (_LABELS if band == LOW_PASS else _HIGH_PASS_LABELS)[name]
+        return cls(name, w, label + (f" ({note})" if note else ""))
+
+    @property
+    def f(self) -> float:
+        """The frequency in Hz."""
+        return self.w / (2 * math.pi)
+
+
+@dataclass(frozen=True, slots=True)
+class Setting:
+    """The value of a continuous parameter of a family: ripple 0.5 dB."""
+
+    name: str
+    value: float
+    unit: str
+
+    def __str__(self) -> str:
+        return f"{self.name} {self.value:.4g} {self.unit}".rstrip()
+
+
+def in_order(roots: Iterable[complex]) -> tuple[complex, ...]:
+    """The roots by growing Q, that is from the real axis outwards; of a pair the upper one first."""
+    return tuple(sorted(roots, key=lambda r: (-abs(r.real) / (abs(r) or 1.0), abs(r), -r.imag)))
+
+
+@dataclass(frozen=True, slots=True, repr=False)
+class Prototype(Displayed):
+    """A member of a filter family: poles, zeros, gain and frequency references.
+
+    ``poles`` and ``zeros`` are in rad/s. ``gain`` is |H| at DC (of a high-pass: at infinite frequency) when the
+    largest |H| in the pass band is 1. ``exact`` holds the denominator as exact numbers, ascending powers of s,
+    where they can be read by a person; otherwise it is None.
+
+    >>> from symnet.shape.families import bessel
+    >>> p = bessel(3)
+    >>> print(p)
+    Bessel, order 3, low-pass
+    >>> [f"{r.w:.5f} rad/s: {r.label}" for r in p.references][1]
+    '1.75567 rad/s: -3.0103 dB relative to DC'
+    >>> print(p.scaled("w3dB", 1.0).reference("unit_delay").w.__round__(5))
+    0.56958
+    """
+
+    family: str
+    order: int
+    poles: tuple[complex, ...]
+    zeros: tuple[complex, ...] = ()
+    gain: float = 1.0
+    references: tuple[Reference, ...] = ()
+    settings: tuple[Setting, ...] = ()
+    equation: str = field(default="", compare=False)
+    band: str = LOW_PASS
+    exact: tuple[Expr, ...] | None = field(default=None, compare=False, repr=False)
+
+    def __repr__(self) -> str:
+        return f"<Prototype: {self}>"
+
+    def __str__(self) -> str:
+        settings = "".join(f", {setting}" for setting in self.settings)
+        return f"{self.family}, order {self.order}{settings}, {self.band}"
+
+    def reference(self, name: str) -> Reference:
+        """The reference of that name. Raises :class:`~symnet.errors.UnknownNameError` for one it does not have."""
+        for reference in self.references:
+            if reference.name == name:
+                return reference
+        known = [reference.name for reference in self.references]
+        guess = nearest(name, known)
+        hint = f"did you mean {guess[0]}? It" if guess else "it"
+        raise UnknownNameError(
+            Fault(f"{self} has no frequency reference {name!r}", hint=f"{hint} has {', '.join(known)}")
+        )
+
+    def scaled(self, reference: str, w: float) -> Prototype:
+        """The same shape with the named reference at the angular frequency w in rad/s: s -> s * (reference / w).
+
+        Raises :class:`~symnet.errors.UnknownNameError` for a reference it does not have and
+        :class:`~symnet.errors.NotationError` for a frequency that is not positive.
+
+        >>> from math import pi
+        >>> from symnet.shape.families import chebyshev
+        >>> p = chebyshev(3, "0.5 dB").scaled("w3dB", 2 * pi * 1000)
+        >>> round(p.reference("ripple_edge").f, 2)
+        856.54
+        """
+        if not (w > 0 and math.isfinite(w)):
+            raise NotationError(f"a prototype is scaled to a positive frequency, not to w = {w!r} rad/s")
+        k = w / self.reference(reference).w
+        if k == 1:
+            return self
+        return replace(
+            self,
+            poles=tuple(p * k for p in self.poles),
+            zeros=tuple(z * k for z in self.zeros),
+            references=tuple(replace(r, w=r.w * k) for r in self.references),
+            equation=f"{self.equation}, with s for s*{1 / k:.17g}" if self.equation else "",
+            exact=None,
+        )
+
+    def high_pass(self) -> Prototype:
+        """The high-pass that s -> 1/s gives: every frequency becomes its inverse, the missing zeros come to s = 0.
+
+        >>> from symnet.shape.families import butterworth
+        >>> p = butterworth(2).high_pass()
+        >>> p.zeros, p.reference("w3dB").label
+        ((0j, 0j), '-3.0103 dB relative to infinite frequency')
+        """
+        if self.band != LOW_PASS:
+            raise NotationError(f"{self} is not a low-pass, so s -> 1/s does not make a high-pass of it")
+        at_infinity = self.order - len(self.zeros)
+        return replace(
+            self,
+            poles=in_order((1 / p).conjugate() for p in self.poles),
+            zeros=(0j,) * at_infinity + in_order((1 / z).conjugate() for z in self.zeros),
+            references=tuple(
+                replace(r, w=1 / r.w, label=r.label.replace(_LABELS[r.name], _HIGH_PASS_LABELS[r.name]))
+                for r in self.references
+            ),
+            equation=f"{self.equation}, with 1/s for s" if self.equation else "",
+            band=HIGH_PASS,
+            exact=self.exact[::-1] if self.exact and not self.zeros else None,
+        )
+
+    @overload
+    def __call__(self, s: complex) -> complex: ...
+    @overload
+    def __call__(self, s: _Complexes) -> _Complexes: ...
+    def __call__(self, s: complex | _Complexes) -> complex | _Complexes:
+        """H(s) of this prototype, its largest magnitude in the pass band being 1; s in rad/s, a number or an array."""
+        at = np.asarray(s, dtype=complex)
+        value = np.full(at.shape, self.gain, dtype=complex)
+        for k, p in enumerate(self.poles):
+            z = self.zeros[k] if k < len(self.zeros) else None
+            if self.band == HIGH_PASS:
+                value *= (at - (z or 0j)) / (at - p)
+            else:
+                value *= (1 if z is None else 1 - at / z) / (1 - at / p)
+        return value if value.ndim else complex(value)
+
+    def decibels(self, w: float) -> float:
+        """20 log10 |H(jw)| in dB at the angular frequency w in rad/s, relative to the largest |H| of the pass band."""
+        size = abs(self(1j * w))
+        return 20 * math.log10(size) if size else -math.inf
+
+    def delay(self, w: float) -> float:
+        """The group delay in seconds at the angular frequency w in rad/s."""
+        return float(group_delay(np.asarray(w, dtype=float), self.poles, self.zeros))
+
+    def denominator(self) -> tuple[float, ...]:
+        """The coefficients of D(s) in ascending powers of s, the highest one being 1; coefficient k in (rad/s)^(n-k).
+
+        Nothing cancels in the products since the real parts of all poles have one sign.
+
+        >>> from symnet.shape.families import bessel
+        >>> [round(c, 9) for c in bessel(3).denominator()]
+        [15.0, 15.0, 6.0, 1.0]
+        """
+        total = [1.0]
+        for w, q in self.sections():
+            factor = [w, 1.0] if q is None else [w * w, w / q, 1.0]
+            product = [0.0] * (len(total) + len(factor) - 1)
+            for i, a in enumerate(total):
+                for j, b in enumerate(factor):
+                    product[i + j] += a * b
+            total = product
+        return tuple(total)
+
+    def sections(self) -> tuple[tuple[float, float | None], ...]:
+        """The first- and second-order sections by growing Q: (w in rad/s, Q), with Q None for a real pole.
+
+        >>> from symnet.shape.families import butterworth
+        >>> [round(q, 4) for _, q in butterworth(4).sections()]
+        [0.5412, 1.3066]
+        """
+        found: list[tuple[float, float | None]] = []
+        for p in self.poles:
+            if p.imag == 0:
+                found.append((-p.real, None))
+            elif p.imag > 0:
+                found.append((abs(p), abs(p) / (-2 * p.real)))
+        return tuple(found)
+
+    def rows(self) -> tuple[tuple[str, str], ...]:
+        """What it is, line by line, as pairs of words and figures with their units."""
+        rows = [("prototype", str(self))]
+        if self.equation:
+            rows.append(("definition", self.equation))
+        rows += [(r.label, f"w = {r.w:.6g} rad/s, f = {r.f:.6g} Hz") for r in self.references]
+        for w, q in self.sections():
+            rows.append(
+                ("real pole", f"w = {w:.6g} rad/s")
+                if q is None
+                else ("pole pair", f"w0 = {w:.6g} rad/s, Q = {q:.5g}")
+            )
+        for z in self.zeros:
+            if z.imag >= 0:
+                rows.append(("zero", f"s = {_complex_text(z)} rad/s"))
+        rows.append(
+            (
+                "|H| at DC" if self.band == LOW_PASS else "|H| at infinite frequency",
+                f"{self.gain:.6g} of the peak",
+            )
+        )
+        return tuple(rows)
+
+
+def _complex_text(z: complex) -> str:
+    if z.imag == 0:
+        return f"{z.real:.6g}"
+    real = f"{z.real:.6g} " if z.real else ""
+    return f"{real}+- j{z.imag:.6g}"
+
+
+def with_common_references(
+    poles: tuple[complex, ...], zeros: tuple[complex, ...], own: tuple[Reference, ...]
+) -> tuple[Reference, ...]:
+    """The references that every low-pass has (w0, -3.0103 dB, unit delay) and the family's own, in a fixed order.
+
+    A family that knows one of the common ones in closed form gives it among its own.
+    """
+    found = {reference.name: reference for reference in own}
+    if W0 not in found:
+        found[W0] = Reference.named(W0, geometric_mean(poles))
+    if W3DB not in found and (w := last_crossing(poles, zeros)) is not None:
+        found[W3DB] = Reference.named(W3DB, w)
+    if UNIT_DELAY not in found and (delay := float(group_delay(np.asarray(0.0), poles, zeros))) > 0:
+        found[UNIT_DELAY] = Reference.named(UNIT_DELAY, 1 / delay)
+    return tuple(found[name] for name in _LABELS if name in found)

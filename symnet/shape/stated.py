@@ -1,0 +1,121 @@
+"""What can be said of H in symbols: conditions, the ways to fulfil them, and the formulas that then hold.
+
+Values only; :mod:`symnet.shape.conditions` makes them. Every formula is a tree of :mod:`symnet.typeset`, so that
+text, LaTeX and HTML come from the same thing.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TypeAlias
+
+from symnet.typeset.displayed import Displayed
+from symnet.typeset.tree import Tree
+from symnet.typeset.writing import to_text
+
+__all__ = ["Alternative", "Condition", "Conditions", "Formula", "Relation"]
+
+#: left, sign ("=" or ">"), right
+Relation: TypeAlias = tuple[Tree, str, Tree]
+
+
+@dataclass(frozen=True, slots=True)
+class Alternative:
+    """One way to fulfil a condition: parts with the value they must have, and relations that are left.
+
+    ``needed`` are values among them that must come out positive, where no relation says when they do.
+    """
+
+    values: tuple[tuple[str, Tree], ...]
+    relations: tuple[Relation, ...] = ()
+    needed: tuple[str, ...] = ()
+
+    def __str__(self) -> str:
+        found = [f"{name} = {to_text(tree)}" for name, tree in self.values]
+        found += [f"{to_text(a)} {sign} {to_text(b)}" for a, sign, b in self.relations]
+        return " and ".join(found) + (
+            f" (where {', '.join(self.needed)} must be positive)" if self.needed else ""
+        )
+
+
+@dataclass(frozen=True, slots=True)
+class Formula:
+    """A figure of the shape in the parts: name = factor * tree, in Hz for f and in seconds for T."""
+
+    name: str
+    tree: Tree
+    factor: float = 1.0
+
+    def __str__(self) -> str:
+        factor = "" if self.factor == 1 else f"{self.factor:.5g}*"
+        return f"{self.name} = {factor}{to_text(self.tree)}"
+
+
+@dataclass(frozen=True, slots=True)
+class Condition:
+    """When H is a member of one family: ``status`` is "always", "never", "if" (and only if) or "open".
+
+    ``alternatives`` are the ways in which it can be; ``reason`` says why never, or why it is left open.
+    ``formulas`` are the references of the shape in the parts; T is the group delay at DC.
+    """
+
+    name: str
+    status: str
+    alternatives: tuple[Alternative, ...] = ()
+    reason: str = ""
+    formulas: tuple[Formula, ...] = ()
+
+    def __str__(self) -> str:
+        if self.status in {"never", "open"}:
+            return f"{self.name}: {self.status}, {self.reason}"
+        ways = " or ".join(f"({a})" if len(self.alternatives) > 1 else str(a) for a in self.alternatives)
+        when = "always" if self.status == "always" else f"if and only if {ways}"
+        then = ", ".join(map(str, self.formulas))
+        return f"{self.name}: {when}" + (f", then {then}" if then else "")
+
+
+@dataclass(frozen=True, slots=True, repr=False)
+class Conditions(Displayed):
+    """The verdict on H in symbols: one condition for each family, what they assume, and Q for order 2.
+
+    True in a condition of Python when H is a member of some family whatever its parts are.
+    """
+
+    order: int
+    band: str
+    conditions: tuple[Condition, ...] = ()
+    assumption: str = ""
+    quality: Tree | None = None
+    quality_bound: str = ""
+    note: str = ""
+
+    def __bool__(self) -> bool:
+        return any(condition.status == "always" for condition in self.conditions)
+
+    def __str__(self) -> str:
+        return self.verdict
+
+    def __repr__(self) -> str:
+        return f"<Conditions: {self.verdict}>"
+
+    @property
+    def verdict(self) -> str:
+        """All conditions in one sentence, with the assumption."""
+        found = [str(condition) for condition in self.conditions]
+        found += [self.quality_bound.partition(", because")[0]] if self.quality_bound else []
+        found += [self.note] if self.note else []
+        return "; ".join(found) + (f" (assuming {self.assumption})" if self.assumption else "")
+
+    def rows(self) -> tuple[tuple[str, str], ...]:
+        """The conditions line by line."""
+        rows = []
+        if self.quality is not None:
+            rows.append(
+                ("Q", to_text(self.quality) + (f"; {self.quality_bound}" if self.quality_bound else ""))
+            )
+        for condition in self.conditions:
+            name, _, text = str(condition).partition(": ")
+            rows.append((name, text))
+        rows += [("note", self.note)] if self.note else []
+        rows += [("assumption", self.assumption)] if self.assumption else []
+        return tuple(rows)
