@@ -11,7 +11,7 @@ from typing import Final
 
 from symnet.errors import Fault, LimitError, NotationError
 from symnet.expressions import Expression
-from symnet.network.network import Network, ValueLike
+from symnet.network.network import Network, ValueLike, read_network, value_for
 from symnet.network.parts import (
     CLASS_LETTERS,
     GROUND,
@@ -22,6 +22,7 @@ from symnet.network.parts import (
     VoltageDrive,
     VoltageLaw,
 )
+from symnet.network.reading import read_expression, read_reading
 
 __all__ = [
     "admittance",
@@ -66,8 +67,6 @@ def network(*pieces: str | Network) -> Network:
     >>> typed == built
     True
     """
-    from symnet.network.reading import read_network
-
     if len(pieces) == 1 and isinstance(pieces[0], str):
         return read_network(pieces[0])
     return Network().add(*pieces)
@@ -75,8 +74,6 @@ def network(*pieces: str | Network) -> Network:
 
 def load(path: str | PathLike[str]) -> Network:
     """The network in a text file (UTF-8). Raises OSError as open() does, NotationError for what it holds."""
-    from symnet.network.reading import read_network
-
     file = Path(path)
     size = file.stat().st_size
     if size > _LARGEST_FILE:
@@ -113,8 +110,10 @@ def _branch(word: str, name: str, nodes: tuple[str, str], value: ValueLike) -> N
                     nodes=(node,),
                 )
             )
-    piece = Network(parts=(Branch(name, *nodes),))
-    return piece if value is None else piece.with_values({name: value})
+    part = Branch(name, *nodes)
+    if value is None:
+        return Network(parts=(part,))
+    return Network(parts=(part,), values=((name, value_for(name, value)),))
 
 
 def resistor(name: str, start: str, end: str, value: ValueLike = None) -> Network:
@@ -169,10 +168,8 @@ def drive(plus: str, minus: str = GROUND, name: str | None = None, *, current: b
 
 def read(what: str) -> Network:
     """What is read: a node, ``"a - b"``, ``"i_R1"``, or a linear expression of voltages and currents."""
-    return Network(reads=(_expression(what),))
+    return Network(reads=(read_reading(what),))
 
 
 def _expression(text: str) -> Expression:
-    from symnet.network.reading import read_expression
-
     return read_expression(text)

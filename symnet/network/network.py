@@ -6,32 +6,35 @@ it. Its text form (:meth:`Network.to_text`) reads back to an equal Network.
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping
-from dataclasses import dataclass, field, replace
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass, fields, replace
 from decimal import Decimal
 from fractions import Fraction
 from math import isfinite
 from typing import TypeAlias
 
-from symnet.errors import Fault, NotationError, Span, UnknownNameError, nearest
-from symnet.expressions import Expression, Number, names_in
+from symnet.errors import Fault, NotationError, Span
+from symnet.expressions import Number, names_in
+from symnet.network.drawing import Drawing
+from symnet.network.names import check, dimensions
 from symnet.network.parts import (
-    GROUND,
     Branch,
-    Drive,
-    Part,
     Value,
     dimension_of_class,
 )
+from symnet.network.reading import read_drawing, read_value
+from symnet.network.series import settled
+from symnet.network.writing import write_drive, write_expression, write_network
 from symnet.quantities import NUMBER, Dimension
+from symnet.typeset.displayed import Displayed
 
-__all__ = ["Network", "ValueLike"]
+__all__ = ["Network", "ValueLike", "read_network", "value_for"]
 
 ValueLike: TypeAlias = str | int | Fraction | Decimal | float | None
 
 
-@dataclass(frozen=True, slots=True)
-class Network:
+@dataclass(frozen=True, slots=True, repr=False)
+class Network(Drawing, Displayed):
     """What was drawn: parts between nodes, drives, reads, values.
 
     Made by :func:`symnet.network` from text or from named constructors. ``values`` holds what each part or
@@ -44,93 +47,6 @@ class Network:
     >>> net.nodes
     ('in', 'out')
     """
-
-    parts: tuple[Part, ...] = ()
-    drives: tuple[Drive, ...] = ()
-    reads: tuple[Expression, ...] = ()
-    values: tuple[tuple[str, Value], ...] = ()
-    free: tuple[tuple[str, Dimension | None], ...] = ()
-    text: str | None = field(default=None, compare=False, repr=False)
-
-    # -- what there is ---------------------------------------------------------------------------------
-
-    @property
-    def nodes(self) -> tuple[str, ...]:
-        """The nodes other than gnd, in order of appearance; those inside a series have a name with ``+``."""
-        found: dict[str, None] = {}
-        for piece in (*self.parts, *self.drives):
-            found.update(dict.fromkeys(piece.nodes))
-        found.pop(GROUND, None)
-        return tuple(found)
-
-    @property
-    def part_names(self) -> tuple[str, ...]:
-        """The names of branches, laws and devices in order of writing."""
-        return tuple(part.name for part in self.parts)
-
-    @property
-    def drive_names(self) -> tuple[str, ...]:
-        """The names of the drives: their own, or ``drive``, ``drive2``, ... in order of writing."""
-        return tuple(
-            drive.name or ("drive" if place == 0 else f"drive{place + 1}")
-            for place, drive in enumerate(self.drives)
-        )
-
-    def branches(self) -> Iterator[Branch]:
-        """The two-terminal parts R, L, C, Z, Y in order of writing."""
-        return (part for part in self.parts if isinstance(part, Branch))
-
-    def __getitem__(self, name: str) -> Part:
-        """The part of that name; UnknownNameError, with the nearest name, when there is none."""
-        for part in self.parts:
-            if part.name == name:
-                return part
-        raise self.unknown(name, self.part_names, "part")
-
-    def __contains__(self, name: object) -> bool:
-        return any(part.name == name for part in self.parts)
-
-    def _ipython_key_completions_(self) -> list[str]:
-        return list(self.part_names)
-
-    def value(self, name: str) -> Value | None:
-        """What a part or symbol is worth: its Value, or None while it is only a symbol."""
-        for known, value in self.values:
-            if known == name:
-                return value
-        return None
-
-    def symbols(self) -> tuple[str, ...]:
-        """The names that stand for a quantity: branches and every symbol in values and laws, ties included."""
-        found: dict[str, None] = {}
-        for part in self.parts:
-            if isinstance(part, Branch):
-                found[part.name] = None
-        found.update(dict.fromkeys(name for name, _ in self.values))
-        found.update(dict.fromkeys(name for name, _ in self.free))
-        nodes, electric = set(self.nodes), set(self.electric_names())
-        for expression in self._expressions():
-            for name in names_in(expression):
-                if name.name != "s" and name.name not in nodes and name.name not in electric:
-                    found[name.name] = None
-        return tuple(found)
-
-    def _expressions(self) -> Iterator[Expression]:
-        for part in self.parts:
-            if not isinstance(part, Branch) and hasattr(part, "value"):
-                yield part.value
-        for _, value in self.values:
-            yield value.expression
-        yield from self.reads
-
-    def electric_names(self) -> Iterator[str]:
-        """The ways to write a voltage or current in an expression, beside a node's own name."""
-        for node in (*self.nodes, GROUND):
-            yield f"v_{node}"
-        yield GROUND
-        for name in (*self.part_names, *self.drive_names):
-            yield f"i_{name}"
-            yield f"v_{name}"
 
     # -- new networks from this one -----------------------------------------------------------------------
 
@@ -151,16 +67,17 @@ class Network:
         R1 = 4.7 kohm
         C1 = 470 nF
         """
+        known, found = self.symbols(), dimensions(self)
         changed = dict(self.values)
-        known = self.symbols()
         for name, given in {**(values or {}), **named}.items():
             if name not in known:
                 raise self.unknown(name, known, "part or symbol")
             if given is None:
                 changed.pop(name, None)
             else:
-                changed[name] = self._read_value(name, given)
-        return replace(self, values=tuple(changed.items()), text=None)
+                self._refuse_ambiguous(name, given)
+                changed[name] = value_for(name, given, found.get(name))
+        return _sound(replace(self, values=tuple(changed.items()), text=None))
 
     def add(self, *pieces: str | Network) -> Network:
         """A network with more in it: statements as text, or what a named constructor gives.
@@ -173,20 +90,35 @@ class Network:
         network = self
         for piece in pieces:
             network = network._add_text(piece) if isinstance(piece, str) else network._join(piece)
-        return network
+        return _sound(network)
 
     def without(self, *names: str) -> Network:
-        """A network without these parts, laws or devices; their values go with them."""
+        """A network without these parts, laws or devices; their values go with them.
+
+        Raises NotationError when what remains still hangs on one of them: a tied value, or a law that names its
+        voltage or current.
+        """
         for name in names:
             if name not in self:
                 raise self.unknown(name, self.part_names, "part")
         gone = set(names)
-        return replace(
+        left = replace(
             self,
             parts=tuple(part for part in self.parts if part.name not in gone),
             values=tuple((name, value) for name, value in self.values if name not in gone),
             text=None,
         )
+        for name, value in left.values:
+            for inner in names_in(value.expression):
+                if inner.name in gone:
+                    raise NotationError(
+                        Fault(
+                            f"the value of {name} is tied to {inner.name}, which is to go",
+                            f"give {name} a value of its own first",
+                            parts=(name, inner.name),
+                        )
+                    )
+        return _sound(left)
 
     def replace(self, name: str, by: str | Network) -> Network:
         """A network with something else in the place of one branch.
@@ -206,17 +138,14 @@ class Network:
                     )
                 )
             by = _between(by, old.start, old.end)
-        kept = self.without(name)
+        kept = replace(self, parts=tuple(part for part in self.parts if part is not old), text=None)
         added = {part.name for part in by.parts}
-        values = dict(kept.values)
-        if name in added:
-            values.update({n: v for n, v in self.values if n == name})
-        values.update(by.values)
+        values = {n: v for n, v in self.values if n != name or name in added} | dict(by.values)
         parts = (*kept.parts[:where], *by.parts, *kept.parts[where:])
         _check_disjoint(part.name for part in parts)
         order = [n for n, _ in self.values if n in values]
         order += [n for n in values if n not in order]
-        return replace(
+        network = replace(
             kept,
             parts=parts,
             drives=(*kept.drives, *by.drives),
@@ -224,10 +153,9 @@ class Network:
             values=tuple((n, values[n]) for n in order),
             free=(*kept.free, *(entry for entry in by.free if entry not in kept.free)),
         )
+        return _sound(network)
 
     def _add_text(self, text: str) -> Network:
-        from symnet.network.reading import read_network
-
         prefix = self.to_text() + "\n"
         try:
             return replace(read_network(prefix + text), text=None)
@@ -251,44 +179,44 @@ class Network:
             free,
         )
 
-    def _read_value(self, name: str, given: str | Fraction | Decimal | float) -> Value:
-        if isinstance(given, str):
-            from symnet.network.reading import read_value
-
-            return read_value(given, name)
-        if isinstance(given, float):
-            given = _exact(name, given)
-        return Value(Number(Fraction(given), dimension_of_class(name) or NUMBER))
+    def _refuse_ambiguous(self, name: str, given: object) -> None:
+        """``R2`` is a part and the code of 0.2 ohm: only the one who wrote it knows which is meant."""
+        word = given.strip() if isinstance(given, str) else ""
+        if word in self:
+            raise NotationError(
+                Fault(
+                    f"{word} is a part of this network and may also be the code of a value",
+                    f"write ({word}) to tie {name} to it, or the value with its unit",
+                    parts=(name, word),
+                )
+            )
 
     # -- words and showing ------------------------------------------------------------------------------------
 
     def to_text(self) -> str:
         """The network in symnet's notation; it reads back to an equal Network."""
-        from symnet.network.writing import write_network
-
         return write_network(self)
 
     def __repr__(self) -> str:
         visible = [node for node in self.nodes if "+" not in node]
         listed = ", ".join(visible[:8]) + (f" and {len(visible) - 8} more" if len(visible) > 8 else "")
-        from symnet.network.writing import write_drive, write_expression
-
         tail = [write_drive(drive) for drive in self.drives]
         tail += [f"read {write_expression(read)}" for read in self.reads]
         count = f"{len(self.parts)} part{'s' if len(self.parts) != 1 else ''}"
         return f"<Network: {count}, nodes {'; '.join([listed or 'none', *tail])}>"
 
-    def unknown(self, name: str, known: Iterable[str], what: str) -> UnknownNameError:
-        """The error, with the nearest known name, for a name that the network does not have."""
-        close = nearest(name, known)
-        hint = f"did you mean {close[0]}?" if close else "known: " + ", ".join(list(known)[:20])
-        return UnknownNameError(Fault(f"the network has no {what} called {name}", hint))
+
+def _sound(network: Network) -> Network:
+    """The same with the nodes inside series named afresh; NotationError for names and values that clash."""
+    network = replace(network, parts=settled(network.parts))
+    faults = check(network)
+    if faults:
+        raise NotationError([replace(fault, span=None) for fault in faults])
+    return network
 
 
 def _between(text: str, start: str, end: str) -> Network:
     """A fragment that stands between two nodes, read from the text of a chain's link."""
-    from symnet.network.reading import read_network
-
     prefix = "start -- "
     try:
         fragment = read_network(f"{prefix}{text} -- end")
@@ -317,6 +245,27 @@ def _check_disjoint(names: Iterable[str]) -> None:
         if name in seen:
             raise NotationError(Fault(f"{name} stands in the network twice", "give one of them another name"))
         seen.add(name)
+
+
+def read_network(text: str) -> Network:
+    """The Network of a text. Raises NotationError with every fault of the text."""
+    drawing = read_drawing(text)
+    return Network(*(getattr(drawing, each.name) for each in fields(drawing)))
+
+
+def value_for(
+    name: str, given: str | Fraction | Decimal | float, dimension: Dimension | None = None
+) -> Value:
+    """The value of a name from text, an exact number or a float, in SI units.
+
+    A name that begins with a class letter has the dimension of its class, any other the one given.
+    """
+    dimension = dimension_of_class(name) or dimension
+    if isinstance(given, str):
+        return read_value(given, name, dimension)
+    if isinstance(given, float):
+        given = _exact(name, given)
+    return Value(Number(Fraction(given), dimension or NUMBER))
 
 
 def _exact(name: str, given: float) -> Fraction:

@@ -23,8 +23,9 @@ from symnet.network.parts import (
     VoltageDrive,
     VoltageLaw,
 )
+from symnet.network.series import spoken
 
-__all__ = ["check_drives", "check_wiring", "place_of", "wiring_faults"]
+__all__ = ["check_drives", "check_wiring", "wiring_faults"]
 
 
 def check_wiring(network: Network) -> None:
@@ -63,18 +64,10 @@ def wiring_faults(network: Network) -> tuple[Fault, ...]:
     return tuple(faults)
 
 
-def place_of(node: str) -> str:
-    """How a node is said: its name, or between which parts it lies when it has none of its own."""
-    if "+" in node:
-        first, _, second = node.partition("+")
-        return f"the node between {first} and {second}"
-    return f"node {node}"
-
-
 def _places(nodes: Iterable[str]) -> str:
     nodes = list(nodes)
     named = [node for node in nodes if "+" not in node]
-    inner = [place_of(node) for node in nodes if "+" in node]
+    inner = [spoken(node) for node in nodes if "+" in node]
     if not named:
         return ", ".join(inner)
     word = "node" if len(named) == 1 else "nodes"
@@ -106,7 +99,7 @@ def _shorted_sources(network: Network) -> Iterator[Fault]:
     for said, a, b, piece in _voltage_pairs(network):
         if a == b:
             yield Fault(
-                f"{said} has both ends at {place_of(a)}: an ideal voltage source is shorted",
+                f"{said} has both ends at {spoken(a)}: an ideal voltage source is shorted",
                 "give it two different nodes",
                 span=_span(piece),
                 nodes=(a,),
@@ -124,7 +117,9 @@ def _unconnected_drives(network: Network) -> Iterator[Fault]:
                 close = nearest(node, touched - {GROUND})
                 yield Fault(
                     f"the drive is at node {node}, but no part is connected there",
-                    f"did you mean {close[0]}?" if close else f"nodes with parts: {', '.join(sorted(touched))}",
+                    f"did you mean {close[0]}?"
+                    if close
+                    else f"nodes with parts: {', '.join(sorted(touched))}",
                     span=drive.span,
                     nodes=(node,),
                 )
@@ -191,7 +186,7 @@ def _source_loops(network: Network) -> Iterator[Fault]:
                 if (isinstance(piece, OpAmp) and len(path) == 1 and path[0].startswith("the output of "))
                 else "a loop of ideal voltage sources"
             )
-            between = place_of(a) if b == GROUND else f"nodes {a} and {b}"
+            between = spoken(a) if b == GROUND else f"nodes {a} and {b}"
             yield Fault(
                 f"{what}: {said} and {others} both fix the voltage at {between}",
                 "take one away, or put a part (the source's own resistance) in series with it",
@@ -254,7 +249,7 @@ def _open_op_amps(network: Network) -> Iterator[Fault]:
             continue
         if part.plus == part.minus:
             yield Fault(
-                f"{part.name} has plus and minus at the same {place_of(part.plus)}: its output is undefined",
+                f"{part.name} has plus and minus at the same {spoken(part.plus)}: its output is undefined",
                 "the inputs of an op amp must be two different nodes",
                 span=part.span,
                 nodes=(part.plus,),

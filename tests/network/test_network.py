@@ -198,3 +198,37 @@ def test_the_repr_is_short() -> None:
     assert repr(sn.network(DIVIDER)) == "<Network: 3 parts, nodes in, out; drive in; read out>"
     long = sn.network("drive n0; read n9; " + "; ".join(f"n{k} -- R{k + 1} -- n{k + 1}" for k in range(20)))
     assert len(repr(long)) < 120
+
+
+def test_nodes_inside_a_series_are_named_afresh() -> None:
+    net = sn.network("in -- R1 + R2 + R3 -- gnd; drive in; read i_R1")
+    shorter = net.replace("R2", "C2")
+    assert shorter.nodes == ("in", "R1+C2", "C2+R3")
+    assert shorter == sn.network(shorter.to_text())
+
+
+def test_a_tie_in_a_circle_is_refused() -> None:
+    net = sn.network("in -- R1 -- out -- R2 -- gnd; drive in; read out; R1 = 2*R2")
+    with pytest.raises(NotationError):
+        net.with_values(R2="2*R1")
+
+
+def test_what_others_are_tied_to_cannot_go() -> None:
+    net = sn.network("in -- R1 -- out -- R2 -- gnd; drive in; read out; R1 = 2*R2")
+    with pytest.raises(NotationError, match="the value of R1 is tied to R2, which is to go"):
+        net.without("R2")
+
+
+def test_a_code_that_is_also_a_part_is_ambiguous() -> None:
+    net = sn.network("in -- R1 -- out -- R2 -- gnd; drive in; read out")
+    with pytest.raises(NotationError, match="may also be the code of a value"):
+        net.with_values(R1="R2")
+    assert sn.derive(net.with_values(R1="(R2)")).names == ("R2",)
+
+
+def test_a_symbol_takes_the_unit_that_the_laws_give_it() -> None:
+    net = sn.network("in -- R1 -- out; push from out to gnd = gm*out; drive in; read out")
+    value = net.with_values(gm="2m").value("gm")
+    assert value is not None
+    assert net.with_values(gm=0.002).value("gm") == value
+    assert net.with_values(gm="2m") == sn.network(net.with_values(gm="2m").to_text())

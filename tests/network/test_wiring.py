@@ -6,7 +6,8 @@ import pytest
 
 import symnet as sn
 from symnet.errors import WiringError
-from symnet.network.wiring import place_of, wiring_faults
+from symnet.network.series import spoken
+from symnet.network.wiring import wiring_faults
 
 FAULTS = {
     "isolated part": (
@@ -38,14 +39,18 @@ FAULTS = {
         "U1 has plus and minus at the same node p: its output is undefined",
     ),
     "two op amp outputs tied": (
-        "in -- R1 -- m -- R2 -- out; in -- R3 -- n -- R4 -- out; U1: opamp(plus=gnd, minus=m, out=out)\n"
-        "U2: opamp(plus=gnd, minus=n, out=out); drive in; read out",
+        (
+            "in -- R1 -- m -- R2 -- out; in -- R3 -- n -- R4 -- out; U1: opamp(plus=gnd, minus=m, out=out)\n"
+            "U2: opamp(plus=gnd, minus=n, out=out); drive in; read out"
+        ),
         "two op amp outputs are tied together: the output of U2 and the output of U1 both fix the voltage at node out",
     ),
     "current source into an open node": (
         "drive current into a; b -- R1 -- gnd; read a",
-        "node a is tied to the rest only by ideal current sources (drive current into a): "
-        "the current has no way back",
+        (
+            "node a is tied to the rest only by ideal current sources (drive current into a): "
+            "the current has no way back"
+        ),
     ),
     "current law into an open node": (
         "in -- R1 -- gnd; push into a = gm*in; drive in; read a",
@@ -111,8 +116,10 @@ SOUND = [
     "in -- R1 -- out -- C1 -- gnd; drive in; read out",
     "in -- R1 -- m -- R2 -- out; U1: opamp(plus=gnd, minus=m, out=out); drive in; read out",
     # feedback through another op amp
-    "in -- R1 -- p; p -- R2 -- o2; U1: opamp(plus=p, minus=gnd, out=o1); o1 -- R3 -- n -- R4 -- o2\n"
-    "U2: opamp(plus=gnd, minus=n, out=o2); drive in; read o1",
+    (
+        "in -- R1 -- p; p -- R2 -- o2; U1: opamp(plus=p, minus=gnd, out=o1); o1 -- R3 -- n -- R4 -- o2\n"
+        "U2: opamp(plus=gnd, minus=n, out=o2); drive in; read o1"
+    ),
     # feedback through a law
     "U1: opamp(plus=in, minus=m, out=o); hold m = K*o; drive in; read o; m -- R1 -- gnd",
     # a part that dangles, and a source that floats between two nodes
@@ -130,5 +137,5 @@ def test_a_sound_network_has_no_fault(text: str) -> None:
 
 
 def test_places_are_said_as_on_the_drawing() -> None:
-    assert place_of("a") == "node a"
-    assert place_of("R2+L2") == "the node between R2 and L2"
+    assert spoken("a") == "node a"
+    assert spoken("R2+L2") == "the node between R2 and L2"

@@ -1,0 +1,58 @@
+"""Text to exact value with dimension, and back: prefixes, units, IEC 60062 codes, engineering notation."""
+
+from symnet.quantities.dimension import (
+    AMPERE,
+    FARAD,
+    HENRY,
+    HERTZ,
+    NUMBER,
+    OHM,
+    SECOND,
+    SIEMENS,
+    VOLT,
+    Dimension,
+    in_words,
+)
+from symnet.quantities.engineering import MOST_DIGITS, WRITTEN_UNITS, Quantity, engineering
+from symnet.quantities.text import (
+    CODE,
+    LEADING_CODE,
+    MOST_EXPONENT,
+    PREFIXES,
+    UNITS,
+    read_code,
+    read_number,
+    read_quantity,
+    read_unit,
+    spread_code,
+    unit_hint,
+)
+
+__all__ = [
+    "AMPERE",
+    "CODE",
+    "FARAD",
+    "HENRY",
+    "HERTZ",
+    "LEADING_CODE",
+    "MOST_DIGITS",
+    "MOST_EXPONENT",
+    "NUMBER",
+    "OHM",
+    "PREFIXES",
+    "SECOND",
+    "SIEMENS",
+    "UNITS",
+    "VOLT",
+    "WRITTEN_UNITS",
+    "Dimension",
+    "Quantity",
+    "engineering",
+    "in_words",
+    "read_code",
+    "read_number",
+    "read_quantity",
+    "read_unit",
+    "spread_code",
+    "unit_hint",
+]
