@@ -2,56 +2,114 @@
 
 >>> import symnet as sn
 >>> net = sn.network("in -- R1 -- out -- C1 -- gnd; drive in; read out")
->>> H = sn.derive(net)
+>>> sn.derive(net).denominator
+s*R1*C1 + 1
 
-Everything public is a name of this module; each is loaded when it is first used.
+Everything public is a name of this module. Each is loaded when it is first used, so that importing symnet costs
+next to nothing.
 """
 
 from __future__ import annotations
 
 from importlib import import_module
-from typing import Any
+from typing import TYPE_CHECKING, Any
+
+if TYPE_CHECKING:
+    from symnet.circuit.build import (
+        admittance,
+        capacitor,
+        drive,
+        hold,
+        impedance,
+        inductor,
+        load,
+        network,
+        opamp,
+        push,
+        read,
+        resistor,
+    )
+    from symnet.circuit.network import Network
+    from symnet.errors import SymnetError
+    from symnet.exact.derive import derive, derive_all
+    from symnet.exact.limits import limits
+    from symnet.exact.mna import equations
+    from symnet.exact.transfer import Transfer
+    from symnet.present.brief import brief
+    from symnet.response.frequency import group_delay, phase
+    from symnet.shape.families.bessel import bessel
+    from symnet.shape.families.butterworth import butterworth
+    from symnet.shape.families.chebyshev import chebyshev
+    from symnet.shape.figures import f3db
+    from symnet.shape.forms import form
+    from symnet.shape.normal import normalise
+    from symnet.shape.recognise import recognise
+    from symnet.shape.sections import sections
 
 __version__ = "0.1.0"
 
-#: public name -> module that defines it
+__all__ = [
+    "Network",
+    "SymnetError",
+    "Transfer",
+    "admittance",
+    "bessel",
+    "brief",
+    "butterworth",
+    "capacitor",
+    "chebyshev",
+    "derive",
+    "derive_all",
+    "drive",
+    "equations",
+    "f3db",
+    "form",
+    "group_delay",
+    "hold",
+    "impedance",
+    "inductor",
+    "limits",
+    "load",
+    "network",
+    "normalise",
+    "opamp",
+    "phase",
+    "push",
+    "read",
+    "recognise",
+    "resistor",
+    "sections",
+]
+
+#: module -> the public names that it defines
 _WHERE = {
-    "network": "symnet.network.build",
-    "load": "symnet.network.build",
-    "resistor": "symnet.network.build",
-    "inductor": "symnet.network.build",
-    "capacitor": "symnet.network.build",
-    "impedance": "symnet.network.build",
-    "admittance": "symnet.network.build",
-    "opamp": "symnet.network.build",
-    "hold": "symnet.network.build",
-    "push": "symnet.network.build",
-    "drive": "symnet.network.build",
-    "read": "symnet.network.build",
-    "equations": "symnet.exact.mna",
-    "derive": "symnet.exact.derive",
-    "derive_all": "symnet.exact.derive",
-    "normalise": "symnet.shape.normal",
-    "form": "symnet.shape.forms",
-    "sections": "symnet.shape.sections",
-    "limits": "symnet.exact.limits",
-    "recognise": "symnet.shape.recognise",
-    "butterworth": "symnet.shape.families.butterworth",
-    "bessel": "symnet.shape.families.bessel",
-    "chebyshev": "symnet.shape.families.chebyshev",
-    "brief": "symnet.present.brief",
-    "SymnetError": "symnet.errors",
+    "symnet.circuit.build": "admittance capacitor drive hold impedance inductor load network opamp push read resistor",
+    "symnet.circuit.network": "Network",
+    "symnet.errors": "SymnetError",
+    "symnet.exact.derive": "derive derive_all",
+    "symnet.exact.limits": "limits",
+    "symnet.exact.mna": "equations",
+    "symnet.exact.transfer": "Transfer",
+    "symnet.present.brief": "brief",
+    "symnet.response.frequency": "group_delay phase",
+    "symnet.shape.families.bessel": "bessel",
+    "symnet.shape.families.butterworth": "butterworth",
+    "symnet.shape.families.chebyshev": "chebyshev",
+    "symnet.shape.figures": "f3db",
+    "symnet.shape.forms": "form",
+    "symnet.shape.normal": "normalise",
+    "symnet.shape.recognise": "recognise",
+    "symnet.shape.sections": "sections",
 }
 
-__all__ = sorted(_WHERE)  # noqa: PLE0605
+_MODULE_OF = {name: module for module, names in _WHERE.items() for name in names.split()}
 
 
 def __getattr__(name: str) -> Any:
-    where = _WHERE.get(name)
-    if where is None:
+    module = _MODULE_OF.get(name)
+    if module is None:
         raise AttributeError(f"module 'symnet' has no attribute {name!r}")
-    value = getattr(import_module(where), name)
-    globals()[name] = value
+    value = globals()[name] = getattr(import_module(module), name)
     return value
 
 

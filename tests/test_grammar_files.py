@@ -68,6 +68,6 @@ def test_a_grammar_inside_the_package_comes_first(
 
 
 def test_lark_is_imported_on_first_use_only() -> None:
-    code = "import sys; from symnet.network.network import read_network; print('lark' in sys.modules); read_network('a -- R1 -- b'); print('lark' in sys.modules)"
+    code = "import sys; from symnet.circuit.network import read_network; print('lark' in sys.modules); read_network('a -- R1 -- b'); print('lark' in sys.modules)"
     shown = subprocess.run([sys.executable, "-c", code], capture_output=True, text=True, check=True)
     assert shown.stdout.split() == ["False", "True"]

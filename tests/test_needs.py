@@ -11,10 +11,10 @@ from math import pi, sqrt
 import pytest
 
 import symnet as sn
+from symnet.circuit.notes import code_note, notes
 from symnet.errors import NotationError, SingularError, WiringError
 from symnet.exact.ratio import Ratio
 from symnet.exact.transfer import Transfer
-from symnet.network.notes import code_note, notes
 from symnet.response.frequency import phase
 from symnet.shape.figures import f3db, turning_points
 from symnet.shape.forms import Style

@@ -31,7 +31,7 @@ from symnet.quantities import (
     spread_code,
     unit_hint,
 )
-from tests.network.strategies import patient
+from tests.circuit.strategies import patient
 
 powers = st.integers(-4, 4)
 dimensions = st.builds(Dimension, powers, powers, powers)

@@ -6,6 +6,9 @@ from collections.abc import Iterable
 from dataclasses import replace
 from functools import lru_cache
 
+from symnet.circuit.network import Network
+from symnet.circuit.parts import GROUND, CurrentDrive, Drive
+from symnet.circuit.wiring import check_drives, check_wiring
 from symnet.errors import Fault, NotationError, SingularError, WiringError, nearest
 from symnet.exact.confirm import undetermined
 from symnet.exact.determinant import Determinant
@@ -14,9 +17,6 @@ from symnet.exact.pieces import Pieces, named_currents
 from symnet.exact.transfer import Transfer
 from symnet.exact.trees import Piece, build
 from symnet.expressions import Expression, Name, dimension_of, names_in
-from symnet.network.network import Network
-from symnet.network.parts import GROUND, CurrentDrive, Drive
-from symnet.network.wiring import check_drives, check_wiring
 from symnet.quantities import AMPERE, VOLT, Dimension
 
 __all__ = ["derive", "derive_all", "derive_from"]
@@ -167,9 +167,9 @@ def _vanishes(determinant: Determinant) -> bool:
 
 
 def _read(network: Network, text: str) -> Expression:
-    from symnet.network.reading import read_expression
+    from symnet.circuit.reading import read_reading
 
-    expression = read_expression(text)
+    expression = read_reading(text)
     known = {*network.nodes, *network.electric_names(), *network.symbols(), "s"}
     for name in names_in(expression):
         if name.name not in known:
@@ -182,7 +182,7 @@ def _read(network: Network, text: str) -> Expression:
 
 def _driven_by(network: Network, text: str) -> tuple[Network, Drive]:
     """The network with the drive that ``text`` names or describes, added if it is not there yet."""
-    from symnet.network.writing import write_drive
+    from symnet.circuit.writing import write_drive
 
     for name, drive in zip(network.drive_names, network.drives, strict=True):
         if text == name or write_drive(drive) == f"drive {text}":
@@ -192,7 +192,7 @@ def _driven_by(network: Network, text: str) -> tuple[Network, Drive]:
 
 
 def _label(network: Network, drive: Drive, read: Expression) -> str:
-    from symnet.network.writing import write_expression
+    from symnet.circuit.writing import write_expression
 
     top = write_expression(read)
     if not isinstance(read, Name):

@@ -17,7 +17,7 @@ from dataclasses import dataclass
 from functools import cached_property
 from math import gcd
 from operator import add
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, Final
 
 import numpy as np
 
@@ -29,7 +29,8 @@ if TYPE_CHECKING:
 
 __all__ = ["Expansion", "Fields", "Primitive", "expand"]
 
-_WORD = 62  # bits used of each signed 64-bit word
+_WORD: Final = 62  # bits used of each signed 64-bit word
+_LOOKED_UP: Final = 12  # bits of a word whose factor is found in one table
 
 
 @dataclass(frozen=True, slots=True)
@@ -127,6 +128,31 @@ class Expansion:
         if abs(number) != 1 or coefficients.dtype != np.int8:
             coefficients = coefficients.astype(object)
         return Expansion(fields, keys, coefficients * number)
+
+    def modulo(self, point: Sequence[int], prime: int) -> int:
+        """The value at a point, modulo a prime below 2^31.
+
+        Every bit of a packed monomial stands for one power of one generator, so that the product of those
+        powers is looked up for twelve bits at a time.
+        """
+        values = (
+            self.coefficients.astype(np.int64) if self.coefficients.dtype == np.int8 else self.coefficients
+        ) % prime
+        for word in range(self.fields.words):
+            factors = [1] * _WORD
+            for k, (at, shift, mask) in enumerate(self.fields.places):
+                if at == word:
+                    for bit in range(mask.bit_length()):
+                        factors[shift + bit] = pow(point[k], 1 << bit, prime)
+            for low in range(0, _WORD, _LOOKED_UP):
+                chunk = factors[low : low + _LOOKED_UP]
+                if any(factor != 1 for factor in chunk):
+                    table = np.ones(1, dtype=np.int64)
+                    for factor in chunk:
+                        table = np.concatenate([table, table * factor % prime])
+                    index = (self.keys[word] >> low) & (len(table) - 1)
+                    values = values * table[index] % prime
+        return int(values.sum()) % prime
 
     def to_element(self, ring: PolyRing) -> PolyElement:
         """The same polynomial as an element of the ring whose generators the fields stand for; made once."""

@@ -11,13 +11,13 @@ from dataclasses import dataclass, replace
 from fractions import Fraction
 from typing import TYPE_CHECKING, Final
 
+from symnet.circuit.network import Network
+from symnet.circuit.parts import GROUND, Branch, Part, Value, VoltageLaw
+from symnet.circuit.series import spoken
 from symnet.errors import NotationError, SingularError, WiringError
 from symnet.exact.derive import derive_from
 from symnet.exact.naming import Naming
 from symnet.expressions import Expression, Name, Number, Power, Product, Sum, names_in
-from symnet.network.network import Network
-from symnet.network.parts import GROUND, Branch, Part, Value, VoltageLaw
-from symnet.network.wiring import place_of
 from symnet.quantities import NUMBER
 from symnet.typeset.displayed import Displayed
 
@@ -121,7 +121,7 @@ def _obstacle(error: WiringError | SingularError) -> str:
     fault = error.faults[0]
     if isinstance(error, WiringError) and "loop of ideal voltage sources" in fault.message:
         return "then the drive is shorted"
-    places = ", ".join(place_of(node) for node in fault.nodes if node != GROUND)
+    places = ", ".join(spoken(node) for node in fault.nodes if node != GROUND)
     return f"then {places or 'a voltage'} is left open"
 
 

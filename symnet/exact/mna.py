@@ -16,9 +16,8 @@ from dataclasses import dataclass
 from fractions import Fraction
 from typing import TYPE_CHECKING, Any
 
-from symnet.expressions import Expression, Name, Number, Product, Sum, evaluate
-from symnet.network.network import Network
-from symnet.network.parts import (
+from symnet.circuit.network import Network
+from symnet.circuit.parts import (
     GROUND,
     Branch,
     CurrentDrive,
@@ -27,7 +26,8 @@ from symnet.network.parts import (
     VoltageDrive,
     VoltageLaw,
 )
-from symnet.network.wiring import check_wiring
+from symnet.circuit.wiring import check_wiring
+from symnet.expressions import Expression, Name, Number, Product, Sum, evaluate
 from symnet.typeset.displayed import Displayed
 
 if TYPE_CHECKING:

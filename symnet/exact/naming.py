@@ -12,12 +12,12 @@ from fractions import Fraction
 from types import MappingProxyType
 from typing import TYPE_CHECKING
 
+from symnet.circuit.network import Network
+from symnet.circuit.parts import Branch
 from symnet.errors import Fault, NotationError, SingularError
 from symnet.exact.linear import fraction_of
 from symnet.exact.polynomials import make_ring
 from symnet.expressions import Expression, Name, Number, evaluate, names_in
-from symnet.network.network import Network
-from symnet.network.parts import Branch
 from symnet.quantities import SECOND, Dimension
 
 if TYPE_CHECKING:
@@ -91,7 +91,7 @@ class Naming:
                 known[name] = fraction_of(
                     ties[name], field, lambda inner: known[inner.name], f"the value of {name}"
                 )
-        from symnet.network.names import dimensions
+        from symnet.circuit.names import dimensions
 
         found = {**dimensions(network), "s": SECOND**-1}
         return cls(

@@ -25,13 +25,8 @@ from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from typing import TYPE_CHECKING
 
-from symnet.errors import Fault, NotationError
-from symnet.exact.linear import Bounded, LinearForm, linear_form
-from symnet.exact.naming import Naming
-from symnet.exact.trees import Piece
-from symnet.expressions import Expression, Name, names_in
-from symnet.network.network import Network
-from symnet.network.parts import (
+from symnet.circuit.network import Network
+from symnet.circuit.parts import (
     GROUND,
     Branch,
     CurrentDrive,
@@ -41,6 +36,11 @@ from symnet.network.parts import (
     VoltageDrive,
     VoltageLaw,
 )
+from symnet.errors import Fault, NotationError
+from symnet.exact.linear import Bounded, LinearForm, linear_form
+from symnet.exact.naming import Naming
+from symnet.exact.trees import Piece
+from symnet.expressions import Expression, Name, names_in
 
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement

@@ -45,8 +45,11 @@ class Scaled:
         exponent = np.clip(self.exponent, -4000, 4000).astype(np.int32)
         with np.errstate(over="ignore", under="ignore", invalid="ignore"):
             if np.iscomplexobj(self.mantissa):
-                return _complex(np.ldexp(self.mantissa.real, exponent), np.ldexp(self.mantissa.imag, exponent))
-            return np.ldexp(self.mantissa, exponent)
+                return _complex(
+                    np.ldexp(self.mantissa.real, exponent), np.ldexp(self.mantissa.imag, exponent)
+                )
+            real: NDArray[Any] = np.ldexp(self.mantissa, exponent)
+            return real
 
     def log2(self) -> NDArray[np.float64]:
         """The base-2 logarithm of the magnitude, also where the magnitude itself is out of range."""

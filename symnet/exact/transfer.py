@@ -12,13 +12,13 @@ from fractions import Fraction
 from functools import cached_property
 from typing import TYPE_CHECKING, Any
 
+from symnet.circuit.network import Network
+from symnet.circuit.parts import Drive
 from symnet.errors import Fault, MissingValueError, SingularError, UnknownNameError, nearest
 from symnet.exact.determinant import Determinant, numeric_pair, pair_modulo
 from symnet.exact.lowest import LowestTerms, reduce
 from symnet.exact.modular import SMALL_PRIME
 from symnet.exact.ratio import Ratio
-from symnet.network.network import Network
-from symnet.network.parts import Drive
 from symnet.quantities import Dimension
 from symnet.typeset.displayed import Displayed
 
@@ -80,7 +80,8 @@ class Transfer(Displayed):
         return self.naming.dimensions
 
     @cached_property
-    def _lowest(self) -> LowestTerms:
+    def lowest(self) -> LowestTerms:
+        """N and D in lowest terms as they were written out: arrays of terms, or ring elements after a gcd."""
         n, d = self.determinants
         if n.diagram.is_zero:
             return LowestTerms(self.ring, self.ring.zero, self.ring.one, ())
@@ -95,17 +96,17 @@ class Transfer(Displayed):
     @property
     def numerator(self) -> PolyElement:
         """N of H = N/D, written out, in lowest terms. LimitError when it would be too long."""
-        return self._lowest.numerator
+        return self.lowest.numerator
 
     @property
     def denominator(self) -> PolyElement:
         """D of H = N/D, written out, in lowest terms. LimitError when it would be too long."""
-        return self._lowest.denominator
+        return self.lowest.denominator
 
     @property
     def hidden(self) -> tuple[PolyElement, ...]:
         """The cancelled factors that hold s: modes of the network that do not show in this H."""
-        return self._lowest.hidden
+        return self.lowest.hidden
 
     @cached_property
     def confirmation(self) -> Confirmation:

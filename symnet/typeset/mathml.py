@@ -78,10 +78,15 @@ def _piece(tree: Tree) -> tuple[str, int]:
         case Sum(terms):
             return _sum(terms), _SUM
         case Product(factors):
-            return _THIN.join(_inside(factor, _POWER if not _has_bar(factor) else _PRODUCT) for factor in factors), _PRODUCT
+            return _THIN.join(
+                _inside(factor, _POWER if not _has_bar(factor) else _PRODUCT) for factor in factors
+            ), _PRODUCT
         case Quotient(numerator, denominator):
             if _has_bar(numerator):  # set beside it, where it stays readable
-                return f"{_piece(numerator)[0]}{_THIN}{_fraction('<mn>1</mn>', _piece(denominator)[0])}", _PRODUCT
+                return (
+                    f"{_piece(numerator)[0]}{_THIN}{_fraction('<mn>1</mn>', _piece(denominator)[0])}",
+                    _PRODUCT,
+                )
             return _fraction(_piece(numerator)[0], _piece(denominator)[0]), _PRODUCT
         case Power(base, exponent):
             return f"<msup><mrow>{_inside(base, _ATOM)}</mrow><mn>{exponent}</mn></msup>", _POWER
@@ -97,7 +102,9 @@ def _piece(tree: Tree) -> tuple[str, int]:
 
 
 def _has_bar(tree: Tree) -> bool:
-    return isinstance(tree, Quotient) or (isinstance(tree, Constant) and tree.value.denominator != 1 and tree.value > 0)
+    return isinstance(tree, Quotient) or (
+        isinstance(tree, Constant) and tree.value.denominator != 1 and tree.value > 0
+    )
 
 
 def _constant(value: Fraction) -> tuple[str, int]:

@@ -79,7 +79,9 @@ def _stacked(tree: Tree, width: int) -> Block:
         case Constant(value) if value.denominator != 1 and value > 0:
             return fraction(words(str(value.numerator)), words(str(value.denominator)))
         case Sum(((-1, Quotient() | Product() as inner),)):
-            return beside(words("- "), _stacked(inner, width - 2))  # a sign at the bar would look like a part of it
+            return beside(
+                words("- "), _stacked(inner, width - 2)
+            )  # a sign at the bar would look like a part of it
         case Product(factors) if any(_is_fraction(factor) for factor in factors):
             pieces: list[Block] = []
             for factor in factors:
@@ -97,7 +99,9 @@ def _stacked(tree: Tree, width: int) -> Block:
 
 
 def _is_fraction(tree: Tree) -> bool:
-    return isinstance(tree, Quotient) or (isinstance(tree, Constant) and tree.value.denominator != 1 and tree.value > 0)
+    return isinstance(tree, Quotient) or (
+        isinstance(tree, Constant) and tree.value.denominator != 1 and tree.value > 0
+    )
 
 
 def _broken(tree: Tree, width: int) -> Block:

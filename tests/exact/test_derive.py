@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from fractions import Fraction
+from typing import Any
 
 import pytest
 
@@ -29,10 +30,10 @@ def fraction(transfer: Transfer, text: str) -> bool:
         for symbol, generator in zip(transfer.ring.symbols, transfer.ring.gens, strict=True)
     }
     n, d = (polynomial(part, names, transfer.ring.one) for part in over)
-    return transfer.numerator * d == transfer.denominator * n
+    return bool(transfer.numerator * d == transfer.denominator * n)
 
 
-def polynomial(text: str, names: dict[str, object], one: object) -> object:
+def polynomial(text: str, names: dict[str, Any], one: Any) -> Any:
     """A sum of products such as ``R1*C1*s + 2`` in the ring; nothing else is read."""
     total = one - one
     for term in text.split(" + "):
@@ -53,8 +54,8 @@ def test_two_loaded_sections() -> None:
 
 def test_numbers_come_out_exact() -> None:
     H = sn.derive(sn.network(TWO_SECTIONS + "; R1, R2 = 1 kohm; C1, C2 = 100 nF"))
-    assert H.numeric().num == (1,)
-    assert H.numeric().den == (1, Fraction(3, 10_000), Fraction(1, 10**8))
+    assert H.numeric().num == (Fraction(1),)
+    assert H.numeric().den == (Fraction(1), Fraction(3, 10_000), Fraction(1, 10**8))
 
 
 def test_only_chosen_names_stay_symbols() -> None:

@@ -8,6 +8,7 @@ from typing import TYPE_CHECKING
 import pytest
 
 from symnet.exact.expansion import Expansion, Fields, Primitive, expand
+from symnet.exact.modular import SMALL_PRIME, weight_at
 from symnet.exact.polynomials import begins_negative, make_ring
 from symnet.exact.trees import Piece, build
 
@@ -47,6 +48,21 @@ def test_equals_ring_arithmetic(seed: int) -> None:
     diagram = build(size, pieces)
     expected = factor * diagram.evaluate(take, leave, ring.one)
     assert expand(diagram, factor, take, leave).to_element(ring) == expected
+
+
+@pytest.mark.parametrize("names", [3, 30, 90])
+def test_the_value_modulo_a_prime_is_that_of_the_ring_element(names: int) -> None:
+    random = Random(names)
+    ring = make_ring([f"p{k}" for k in range(names)])
+    polynomial = ring.zero
+    for _ in range(200):
+        term = ring(random.choice([1, -1, 7, 10**20]))
+        for _ in range(4):
+            term *= random.choice(ring.gens) ** random.randint(0, 5)
+        polynomial += term
+    point = [random.randrange(SMALL_PRIME) for _ in ring.gens]
+    expected = weight_at(polynomial, point, SMALL_PRIME)
+    assert written_out(polynomial, ring).modulo(point, SMALL_PRIME) == expected
 
 
 def test_content_degrees_and_sign_are_those_of_the_polynomial() -> None:

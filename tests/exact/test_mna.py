@@ -6,8 +6,8 @@ import pytest
 import sympy
 
 import symnet as sn
+from symnet.circuit.writing import write_expression
 from symnet.errors import WiringError
-from symnet.network.writing import write_expression
 
 ACTIVE = """
     in -- R1 -- x -- R2 -- out;  x -- C1 -- gnd;  x -- L3 -- m -- C2 -- out

@@ -13,7 +13,8 @@ from symnet.exact.trees import Diagram, Piece, build, frontier_order
 
 def random_pieces(random: Random, size: int, count: int, symmetric: float) -> list[Piece]:
     def end() -> int | None:
-        return random.choice([None, *range(size)])
+        end = random.randint(-1, size - 1)
+        return None if end < 0 else end
 
     pieces = []
     for _ in range(count):

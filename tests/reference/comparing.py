@@ -7,10 +7,10 @@ from math import inf, log10, pi
 from random import Random
 
 import symnet as sn
+from symnet.circuit.reading import read_expression
 from symnet.exact.ratio import Ratio
 from symnet.exact.transfer import Transfer
 from symnet.expressions import evaluate
-from symnet.network.reading import read_expression
 from symnet.shape.closed import Figure
 from tests import oracle
 from tests.reference.cases import Case

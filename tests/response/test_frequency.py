@@ -11,10 +11,10 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from symnet.circuit.build import network
 from symnet.errors import MissingValueError, UndefinedError
 from symnet.exact.derive import derive
 from symnet.exact.ratio import Ratio
-from symnet.network.build import network
 from symnet.response.frequency import decibels, delay_over_square, group_delay, phase, squared_magnitude
 
 CUBIC = Ratio.of([1], [1, 2, 2, 1])

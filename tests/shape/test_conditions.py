@@ -10,11 +10,11 @@ from typing import Any
 
 import pytest
 
+from symnet.circuit.build import network
 from symnet.errors import NotationError, UndefinedError
 from symnet.exact.derive import derive
 from symnet.exact.polynomials import make_ring
 from symnet.exact.ratio import Ratio
-from symnet.network.build import network
 from symnet.shape.conditions import Condition, Conditions, conditions, conditions_of
 from symnet.shape.families import CATALOGUE
 from symnet.shape.families.butterworth import squared_magnitude

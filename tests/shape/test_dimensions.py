@@ -4,8 +4,8 @@ from __future__ import annotations
 
 import pytest
 
+from symnet.circuit.build import network
 from symnet.exact.derive import derive
-from symnet.network.build import network
 from symnet.quantities import NUMBER, OHM, SECOND
 from symnet.shape.dimensions import check_dimensions, coefficient_dimensions
 from tests.shape.symbols import transfer

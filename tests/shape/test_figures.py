@@ -10,10 +10,10 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from symnet.circuit.build import network
 from symnet.errors import UndefinedError
 from symnet.exact.derive import derive
 from symnet.exact.ratio import Ratio
-from symnet.network.build import network
 from symnet.quantities import OHM
 from symnet.shape.figures import Crossing, bandwidth, delay_extremes, f3db, peak, turning_points
 

@@ -10,10 +10,10 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from symnet.circuit.build import network
 from symnet.errors import MissingValueError
 from symnet.exact.derive import derive
 from symnet.exact.ratio import Ratio
-from symnet.network.build import network
 from symnet.quantities import HERTZ, NUMBER, OHM, SECOND
 from symnet.shape.normal import CONVENTIONS, NormalForm, normalise
 from symnet.typeset.writing import to_text

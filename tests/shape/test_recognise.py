@@ -412,8 +412,8 @@ class TestMatching:
 
 
 def test_symbols_get_conditions() -> None:
+    from symnet.circuit.build import network
     from symnet.exact.derive import derive
-    from symnet.network.build import network
 
     H = derive(network("in -- R1 -- out -- C1 -- gnd; drive in; read out"))
     assert isinstance(recognise(H), Conditions)

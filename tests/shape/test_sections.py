@@ -10,12 +10,12 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from symnet.circuit.build import network
 from symnet.errors import UndefinedError, UnknownNameError
 from symnet.exact.derive import derive
 from symnet.exact.polynomials import by_powers_of_s, make_ring
 from symnet.exact.ratio import Ratio
 from symnet.exact.surds import Surd
-from symnet.network.build import network
 from symnet.quantities import HERTZ, SECOND
 from symnet.shape.factors import factors_in_s
 from symnet.shape.forms import form

@@ -8,9 +8,9 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from symnet.circuit.build import network
 from symnet.exact.derive import derive
 from symnet.exact.ratio import Ratio
-from symnet.network.build import network
 from symnet.shape.stability import stability
 from tests.shape.symbols import transfer
 

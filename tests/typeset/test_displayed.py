@@ -39,4 +39,7 @@ def test_formatters_are_found_when_only_symnet_was_imported() -> None:
         "print(H._repr_mimebundle_()['text/latex'])"
     )
     run = subprocess.run([sys.executable, "-c", code], cwd=TOP, capture_output=True, text=True, check=True)
-    assert run.stdout == r"$\displaystyle H(s) = \frac{\mathrm{out}}{\mathrm{in}} = \frac{1}{1 + s R_{1} C_{1}}$" + "\n"
+    assert (
+        run.stdout
+        == r"$\displaystyle H(s) = \frac{\mathrm{out}}{\mathrm{in}} = \frac{1}{1 + s R_{1} C_{1}}$" + "\n"
+    )

@@ -136,7 +136,9 @@ LEAVES: st.SearchStrategy[Tree] = st.sampled_from([R1, R2, C]) | st.integers(-3,
 def _deeper(inner: st.SearchStrategy[Tree]) -> st.SearchStrategy[Tree]:
     several = st.lists(inner, min_size=2, max_size=3)
     return (
-        st.lists(st.tuples(st.sampled_from([1, -1]), inner), min_size=1, max_size=3).map(lambda t: Sum(tuple(t)))
+        st.lists(st.tuples(st.sampled_from([1, -1]), inner), min_size=1, max_size=3).map(
+            lambda t: Sum(tuple(t))
+        )
         | several.map(lambda t: Product(tuple(t)))
         | several.map(lambda t: Parallel(tuple(t)))
         | st.tuples(inner, inner).map(lambda t: Quotient(*t))

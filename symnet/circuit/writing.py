@@ -1,0 +1,281 @@
+"""From a network back to text that reads to an equal network.
+
+Parts keep their order, since the order of writing is part of the network; branches that follow one another are
+written as one chain, and nameless nodes go back into the series they came from. Values stand below, each exact.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator
+from fractions import Fraction
+from typing import TYPE_CHECKING
+
+from symnet.circuit.parts import (
+    CLASS_LETTERS,
+    GROUND,
+    Branch,
+    CurrentDrive,
+    CurrentLaw,
+    Drive,
+    OpAmp,
+    Part,
+    Value,
+    VoltageDrive,
+    VoltageLaw,
+)
+from symnet.circuit.series import Group, Leaf, Series, runs, settled
+from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Sum
+from symnet.quantities import HERTZ, NUMBER, WRITTEN_UNITS, Dimension, engineering
+
+if TYPE_CHECKING:
+    from symnet.circuit.drawing import Drawing
+
+__all__ = [
+    "default_labels",
+    "write_dimension",
+    "write_drive",
+    "write_expression",
+    "write_network",
+    "write_part",
+    "write_value",
+]
+
+_LONGEST_CHAIN = 6  # parts in one line
+
+
+def write_network(net: Drawing) -> str:
+    """The whole network in the notation, one statement a line.
+
+    >>> from symnet.circuit.reading import read_drawing
+    >>> print(write_network(read_drawing("in--R1--out--C1=1e-9||R2--gnd".replace("=1e-9", "") + ";drive in")))
+    in -- R1 -- out -- C1 || R2 -- gnd
+    drive in
+    """
+    lines = list(_parts(net))
+    lines += [write_drive(drive) for drive in net.drives]
+    lines += [f"read {write_expression(read)}" for read in net.reads]
+    lines += list(_free(net))
+    lines += list(_values(net))
+    return "\n".join(lines)
+
+
+# -- parts ------------------------------------------------------------------------------------------------------------
+
+
+def _parts(net: Drawing) -> Iterator[str]:
+    silent = _default_named(net)
+    # A network that was changed in Python may have nameless nodes where no series is left.
+    for piece in runs(settled(net.parts)):
+        if isinstance(piece, list):
+            yield from _chains(piece)
+        else:
+            yield write_part(piece, label=piece.name not in silent)
+
+
+def write_part(part: Part, *, label: bool = True) -> str:
+    """One part as a statement; ``label`` says whether a law shows its name."""
+    match part:
+        case Branch(name, start, end):
+            return f"{start} -- {name} -- {end}"
+        case VoltageLaw(name, plus, minus, value):
+            text = f"hold {_pair(plus, minus)} = {write_expression(value)}"
+        case CurrentLaw(name, start, end, value):
+            text = f"push {_ends(start, end)} = {write_expression(value)}"
+        case OpAmp(name, plus, minus, out):
+            return f"{name}: opamp(plus={plus}, minus={minus}, out={out})"
+    return f"{text} as {name}" if label else text
+
+
+def default_labels(count: int, taken: Iterable[str]) -> list[str]:
+    """The names that laws without a name of their own get, in order: law1, law2, ...
+
+    >>> default_labels(2, ["law1", "a"])
+    ['law2', 'law3']
+    """
+    used = set(taken)
+    found: list[str] = []
+    number = 1
+    while len(found) < count:
+        if f"law{number}" not in used:
+            found.append(f"law{number}")
+        number += 1
+    return found
+
+
+def _default_named(net: Drawing) -> set[str]:
+    """The laws that would get their name anyhow when it is not written."""
+    laws = [part.name for part in net.parts if isinstance(part, VoltageLaw | CurrentLaw)]
+    silent = [name for name in laws if name.startswith("law") and name[3:].isdigit()]
+    if not silent:
+        return set()
+    from symnet.circuit.names import names_of
+
+    taken = names_of(net) - set(silent)
+    return set(silent) if default_labels(len(silent), taken) == silent else set()
+
+
+def _chains(edges: list[tuple[str, Group, str]]) -> Iterator[str]:
+    text, last, count = "", "", 0
+    for start, group, end in edges:
+        if text and start == last and last != GROUND and count < _LONGEST_CHAIN:
+            text += f" -- {_group(group)} -- {end}"
+            count += 1
+        else:
+            if text:
+                yield text
+            text, count = f"{start} -- {_group(group)} -- {end}", 1
+        last = end
+    if text:
+        yield text
+
+
+def _group(group: Group, *, inside: bool = False) -> str:
+    """A group as a link of a chain. Groups are at most as deep as the parentheses that were read."""
+    if isinstance(group, Leaf):
+        return group.name
+    if isinstance(group, Series):
+        text = " + ".join(_group(item, inside=True) for item in group.items)
+        return f"({text})" if inside else text
+    text = " || ".join(_group(item, inside=True) for item in group.items)
+    return f"({text})" if inside else text
+
+
+def _pair(plus: str, minus: str) -> str:
+    return plus if minus == GROUND else f"{plus} - {minus}"
+
+
+def _ends(start: str, end: str) -> str:
+    return f"into {end}" if start == GROUND else f"from {start} to {end}"
+
+
+def write_drive(drive: Drive) -> str:
+    """A drive as a statement."""
+    match drive:
+        case VoltageDrive(plus, minus, name):
+            text = f"drive {_pair(plus, minus)}"
+        case CurrentDrive(start, end, name):
+            text = f"drive current {_ends(start, end)}"
+    return f"{text} as {name}" if name else text
+
+
+# -- values -----------------------------------------------------------------------------------------------------------
+
+
+def _free(net: Drawing) -> Iterator[str]:
+    waiting: list[str] = []
+    for name, dimension in net.free:
+        if dimension is None:
+            waiting.append(name)
+            continue
+        if waiting:
+            yield f"free {', '.join(waiting)}"
+            waiting = []
+        yield f"free {name} in {write_dimension(dimension)}"
+    if waiting:
+        yield f"free {', '.join(waiting)}"
+
+
+def _values(net: Drawing) -> Iterator[str]:
+    """One line for each run of names with the same number."""
+    declared = dict(net.free)
+    names: list[str] = []
+    last = ""
+    for name, value in net.values:
+        text = write_value(name, value, declared.get(name))
+        alike = isinstance(value.expression, Number) and text == last
+        if names and not alike:
+            yield f"{', '.join(names)} = {last}"
+            names = []
+        names.append(name)
+        last = text
+    if names:
+        yield f"{', '.join(names)} = {last}"
+
+
+def write_value(name: str, value: Value, dimension: Dimension | None = None) -> str:
+    """What stands right of the equals sign; ``dimension`` is the one that the name has been declared with."""
+    expression = value.expression
+    if isinstance(expression, Number):
+        text = _quantity(expression.value, expression.dimension, CLASS_LETTERS.get(name[0], dimension))
+    else:
+        text = write_expression(expression)
+    if value.tolerance is not None:
+        text += f" ±{engineering(value.tolerance * 100, exact=True)}%"
+    return text
+
+
+def _quantity(value: Fraction, dimension: Dimension, own: Dimension | None = None) -> str:
+    if dimension == NUMBER:
+        return engineering(value, NUMBER, exact=True)
+    if dimension == HERTZ:
+        return engineering(value, HERTZ, exact=True, unit="rad/s")
+    text = engineering(value, dimension, exact=True)
+    # Declared with a dimension that has no unit of its own: the bare number takes it when it is read.
+    if dimension in WRITTEN_UNITS or dimension == own:
+        return text
+    powers = (("1 V", dimension.v), ("1 A", dimension.a), ("1000 ms", dimension.t))
+    return "*".join([text, *(f"({unit})^{power}" for unit, power in powers if power)])
+
+
+def write_dimension(dimension: Dimension) -> str:
+    """A dimension behind ``free x in``.
+
+    >>> from symnet.quantities import OHM
+    >>> write_dimension(OHM), write_dimension(NUMBER)
+    ('ohm', 'V/V')
+    """
+    return "V/V" if dimension == NUMBER else str(dimension)
+
+
+# -- expressions ------------------------------------------------------------------------------------------------------
+
+_SUM, _PRODUCT, _PARALLEL, _POWER, _ATOM = range(5)
+
+
+def write_expression(expression: Expression) -> str:
+    """An expression in the notation, with the parentheses it needs.
+
+    >>> from symnet.circuit.reading import read_expression
+    >>> write_expression(read_expression("-mu*(p-m)||2 kohm/(1+s^-2)"))
+    '-mu*((p - m) || 2 kohm)/(1 + s^-2)'
+    """
+    return _written(expression)[0]
+
+
+def _written(expression: Expression) -> tuple[str, int]:
+    match expression:
+        case Name(name=name):
+            return name, _ATOM
+        case Number():
+            return _number(expression)
+        case Sum(terms=((-1, term),)):
+            # A minus binds looser than a product only where it stands first: -a*b is -(a*b).
+            return f"-{_inside(term, _PRODUCT)}", _SUM
+        case Sum(terms=terms):
+            written = [(" + " if sign > 0 else " - ") + _inside(term, _PRODUCT) for sign, term in terms]
+            first = written[0].removeprefix(" + ")
+            return "".join([f"-{first[3:]}" if first.startswith(" - ") else first, *written[1:]]), _SUM
+        case Product(factors=factors):
+            written = [("*" if power > 0 else "/") + _inside(factor, _PARALLEL) for power, factor in factors]
+            first = written[0].removeprefix("*")
+            return "".join([f"1{first}" if first.startswith("/") else first, *written[1:]]), _PRODUCT
+        case Parallel(branches=branches):
+            return " || ".join(_inside(branch, _POWER) for branch in branches), _PARALLEL
+        case Power(base=base, exponent=exponent):
+            return f"{_inside(base, _ATOM)}^{exponent}", _POWER
+
+
+def _inside(expression: Expression, least: int) -> str:
+    text, binding = _written(expression)
+    if binding == _PARALLEL:  # || binds tighter than *, but few readers would guess it
+        return f"({text})"
+    return f"({text})" if binding < least or (least == _ATOM and " " in text and binding == _ATOM) else text
+
+
+def _number(number: Number) -> tuple[str, int]:
+    value, dimension = number.value, number.dimension
+    text = _quantity(value, dimension)
+    if text.endswith(" s") and "/" not in text:
+        text = f"{engineering(value * 1000, exact=True)} ms"  # a bare s would look like the Laplace variable
+    simple = value >= 0 and not ("/" in text and not text.endswith("rad/s")) and "*" not in text
+    return text, _ATOM if simple else _SUM

@@ -1,0 +1,331 @@
+"""One function for each result of the engine: the value in, blocks out. Every number has its unit and convention."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Iterator, Mapping, Sequence
+from fractions import Fraction
+from typing import TYPE_CHECKING, Final
+
+from symnet.circuit.parts import CurrentDrive
+from symnet.exact.polynomials import by_powers_of_s
+from symnet.present.blocks import (
+    Block,
+    Formula,
+    Heading,
+    Items,
+    Line,
+    Paragraph,
+    Table,
+    without_empty_columns,
+)
+from symnet.present.formulas import amount, label_tree, with_power_of_s
+from symnet.quantities import AMPERE, HERTZ, NUMBER, SECOND, VOLT, Dimension
+from symnet.shape.families.prototype import LOW_PASS, UNIT_DELAY
+from symnet.typeset.notation import tree_of
+from symnet.typeset.numbers import Written, complex_quantity, plain_number, quantity
+from symnet.typeset.polynomials import collected
+from symnet.typeset.tree import Atom, Tree, over
+
+if TYPE_CHECKING:
+    from symnet.exact.limits import Limit, Limits
+    from symnet.exact.mna import Equations
+    from symnet.exact.roots import Root
+    from symnet.exact.transfer import Transfer
+    from symnet.shape.families.prototype import Reference
+    from symnet.shape.stated import Alternative, Condition, Conditions
+    from symnet.shape.verdict import Candidate, Recognition
+
+__all__ = [
+    "conditions_blocks",
+    "equations_blocks",
+    "limits_table",
+    "recognition_blocks",
+    "shortened",
+    "transfer_blocks",
+    "transfer_formula",
+    "unit_of",
+]
+
+#: H with more terms than this is not grouped: nobody reads it, and only the first terms of each power are set.
+MOST_GROUPED: Final = 150
+FIRST_TERMS: Final = 3
+#: H with more terms than this is not written out for a showing.
+MOST_TERMS: Final = 100_000
+MOST_EQUATIONS: Final = 40
+
+
+# -- H(s) -------------------------------------------------------------------------------------------------------
+
+
+def unit_of(transfer: Transfer) -> str:
+    """The unit of H as read over drive: V/V, A/A, V/A (ohm) or A/V (siemens)."""
+    below = AMPERE if isinstance(transfer.drive, CurrentDrive) else VOLT
+    above = transfer.dimension * below
+    ratio = f"{above if above in {VOLT, AMPERE} else f'({above})'}/{below}"
+    return ratio if transfer.dimension == NUMBER else f"{ratio} = {transfer.dimension}"
+
+
+def transfer_formula(transfer: Transfer) -> Formula | None:
+    """H(s) = out/in = ..., or None when it has too many terms to be written out."""
+    from symnet.exact.readable import readable_transfer
+
+    if max(transfer.terms) > MOST_TERMS:
+        return None
+    n, d = transfer.numerator, transfer.denominator
+    if shortened(transfer):
+        tree = over(collected(n, FIRST_TERMS), collected(d, FIRST_TERMS))
+    else:
+        tree = readable_transfer(n, d)
+    return Formula((label_tree(transfer.label), tree), "H")
+
+
+def shortened(transfer: Transfer) -> bool:
+    """Whether a showing holds only the first terms of each power of s; H is written out for the answer."""
+    return max(len(transfer.numerator), len(transfer.denominator)) > MOST_GROUPED
+
+
+def transfer_blocks(transfer: Transfer) -> tuple[Block, ...]:
+    """H as a formula, its unit, its order, how it was confirmed, and what it hides."""
+    formula = transfer_formula(transfer)
+    if formula is None:
+        above, below = transfer.terms
+        text = (
+            f"H(s) = {transfer.label}, written out, has up to {above} term{'s' * (above != 1)} over {below}. To see "
+            'it, keep fewer names as symbols, as in derive(net, symbols="R1 C1").'
+        )
+        return (Paragraph(text), Items((f"unit: {unit_of(transfer)}", f"confirmed: {transfer.confirmation}")))
+    return (formula, Items(tuple(_about(transfer))))
+
+
+def _about(transfer: Transfer) -> Iterator[Line]:
+    yield f"unit: {unit_of(transfer)}"
+    storing = [part.name for part in transfer.network.branches() if part.kind in "LC"]
+    if shortened(transfer):
+        yield f"terms: {len(transfer.numerator)} over {len(transfer.denominator)}; the first of each power are shown"
+    yield f"order {_order(transfer)}; parts that store energy: {', '.join(storing) or 'none'}"
+    yield f"confirmed: {transfer.confirmation}"
+    yield from _hidden(transfer)
+
+
+def _order(transfer: Transfer) -> int:
+    return max((monomial[0] for monomial in transfer.denominator), default=0)
+
+
+def _hidden(transfer: Transfer) -> Iterator[Line]:
+    from symnet.exact.readable import readable
+    from symnet.exact.roots import roots
+    from symnet.shape.closed import value_of
+
+    for factor in transfer.hidden:
+        said = " cancels between numerator and denominator: the network has this natural frequency, this H does not show it"
+        try:
+            found = roots([value_of(coefficient, transfer.values) for coefficient in by_powers_of_s(factor)])
+        except KeyError:
+            found = ()
+        yield ("hidden mode: ", readable(factor), said, *_places(found))
+    common = _cancelled_by_values(transfer)
+    if len(common) > 1:
+        said = "hidden mode: with these values, and only with exactly these, a factor with s cancels that is there in symbols"
+        yield (said, *_places(roots(common)))
+    elif not transfer.hidden:
+        yield "hidden modes: none, no factor with s has cancelled"
+
+
+def _cancelled_by_values(transfer: Transfer) -> Sequence[Fraction]:
+    """The factor that N and D, in lowest terms in symbols, have in common once the values are put in."""
+    from symnet.exact.ratio import Ratio
+    from symnet.shape.closed import value_of
+
+    if not transfer.is_numeric or transfer.numeric().order == _order(transfer):
+        return ()
+    n, d = (
+        [value_of(coefficient, transfer.values) for coefficient in by_powers_of_s(polynomial)]
+        for polynomial in (transfer.numerator, transfer.denominator)
+    )
+    return Ratio.reduced(n, d)[1] if any(n) and any(d) else ()
+
+
+def _places(found: Sequence[Root]) -> Iterator[str | Written]:
+    """Where hidden modes lie, and a warning when one grows."""
+    shown = [root for root in found if root.imag >= 0]
+    for k, root in enumerate(shown):
+        yield ", " if k else " (s = "
+        yield _root(root)
+    if shown:
+        yield ")"
+    if any(root.real > 0 for root in found):
+        yield ". IT GROWS WITH TIME: the network is unstable, whatever this H says"
+
+
+def _root(root: Root) -> Written:
+    return complex_quantity(root.value, "rad/s", 5, pair=root.imag > 0)
+
+
+# -- limits -----------------------------------------------------------------------------------------------------
+
+
+def limits_table(ends: Limits, values: Mapping[str, Fraction], dimension: Dimension) -> Table:
+    """H at DC and at high frequency, from H and from the network; ``dimension`` is that of H."""
+    header = ("where", "H tends to", "value", "slope of |H|", "because", "from the network alone")
+    rows = [_limit_row(end, _limit_value(end, values, dimension)) for end in (ends.dc, ends.high)]
+    return without_empty_columns(header, rows)
+
+
+def _limit_row(limit: Limit, value: Line) -> tuple[Line, ...]:
+    from symnet.exact.readable import readable_ratio
+
+    tree = with_power_of_s(readable_ratio(limit.numerator, limit.denominator), limit.power)
+    approach: Line = tree
+    if limit.is_zero:
+        approach = ("0, as ", tree) if limit.numerator else "0"
+    elif limit.is_infinite:
+        approach = ("infinity, as ", tree)
+    agreement = {True: "the same", False: "NOT the same", None: "not available"}[limit.from_network]
+    slope = f"{limit.slope:+d} dB/decade" if limit.slope else "0 dB/decade"
+    return (limit.where, approach, value, slope, limit.reason, agreement)
+
+
+def _limit_value(limit: Limit, values: Mapping[str, Fraction], dimension: Dimension) -> Line:
+    """The number, with dB where H is a ratio of like quantities."""
+    from symnet.shape.closed import value_of
+
+    if limit.power or not limit.numerator:
+        return ""
+    try:
+        value = value_of(limit.numerator, values) / value_of(limit.denominator, values)
+    except (KeyError, ZeroDivisionError):
+        return ""
+    number = amount(value, dimension)
+    if dimension != NUMBER or not value:
+        return number
+    decibels = 20 * (math.log10(abs(value.numerator)) - math.log10(value.denominator))
+    return (number, "\u00a0(", quantity(decibels, "dB"), ")")
+
+
+# -- recognition --------------------------------------------------------------------------------------------------
+
+
+def recognition_blocks(found: Recognition) -> tuple[Block, ...]:
+    """The verdict, the candidates with their distances, and their frequencies beside those of this H."""
+    blocks: list[Block] = [Paragraph(found.verdict)]
+    if found.candidates:
+        header = ("candidate", "poles within", "pass band within", "group delay within", "")
+        blocks.append(
+            Table(header, tuple(_candidate_row(found, candidate) for candidate in found.candidates))
+        )
+    if found.own:
+        blocks.append(_references(found))
+    if found.normalised_to:
+        said = ", ".join(reference.label for reference in found.normalised_to)
+        blocks.append(Paragraph(f"normalised so that 1 rad/s is: {said}"))
+    return tuple(blocks)
+
+
+def conditions_blocks(found: Conditions) -> tuple[Block, ...]:
+    """One row for each family: when H is a member of it, and its frequencies then."""
+    rows: list[tuple[Line, ...]] = [_condition_row(condition) for condition in found.conditions]
+    blocks: list[Block] = [Table(("shape", "H is this shape", "then"), tuple(rows))] if rows else []
+    if found.quality is not None:
+        bound = f"; {found.quality_bound}" if found.quality_bound else ""
+        blocks.append(Paragraph(("Q = ", found.quality, bound)))
+    if found.note:
+        blocks.append(Paragraph(found.note))
+    if found.assumption:
+        blocks.append(Paragraph(f"assuming {found.assumption}"))
+    return tuple(blocks)
+
+
+def _condition_row(condition: Condition) -> tuple[Line, ...]:
+    if condition.status in {"never", "open"}:
+        return (condition.name, f"{condition.status}: {condition.reason}", "")
+    when: list[str | Tree | Written] = []
+    if condition.status != "always":
+        for k, way in enumerate(condition.alternatives):
+            when += [" or " if k else "if and only if ", *_way(way)]
+    then: list[str | Tree | Written] = []
+    for k, formula in enumerate(condition.formulas):
+        factor = "" if formula.factor == 1 else f"{plain_number(formula.factor, 5)} · "
+        then += [", " if k else "", f"{formula.name} = {factor}", formula.tree]
+    return (condition.name, tuple(when) or "always", tuple(then))
+
+
+def _way(way: Alternative) -> Iterator[str | Tree | Written]:
+    pieces: list[tuple[str | Tree | Written, ...]] = [(Atom(name), " = ", tree) for name, tree in way.values]
+    pieces += [(left, f" {sign} ", right) for left, sign, right in way.relations]
+    for k, piece in enumerate(pieces):
+        if k:
+            yield " and "
+        yield from piece
+    if way.needed:
+        yield f" (where {', '.join(way.needed)} must be positive)"
+
+
+def _candidate_row(found: Recognition, candidate: Candidate) -> tuple[Line, ...]:
+    if candidate is found.match:
+        role = f"match, exact: {candidate.exact}" if candidate.exact else "match"
+    else:
+        role = "fits too" if candidate.matches else "runner-up"
+    poles, response, delay = (
+        Written(text, text.replace("%", r"\%"), text)
+        for text in (
+            f"{_bound(candidate.pole_error_percent)} %",
+            f"{_bound(candidate.response_error_db)} dB",
+            f"{_bound(candidate.delay_error_percent)} %",
+        )
+    )
+    return (candidate.name, poles, response, delay, role)
+
+
+def _references(found: Recognition) -> Table:
+    """Every frequency reference, of this H and of the nearest candidate, whose scale was fitted."""
+    own = {reference.name: reference for reference in found.own}
+    candidate = found.candidates[0] if found.candidates else None
+    theirs = {} if candidate is None else {r.name: r for r in candidate.prototype.references}
+    columns = [own] if candidate is None else [own, theirs]
+    header = (
+        "reference",
+        "of this H",
+        "",
+        *(() if candidate is None else (f"of the {candidate.prototype.family}", "")),
+    )
+    rows = []
+    for name, reference in {**own, **theirs}.items():
+        label = (
+            "T, the group delay at DC" if name == UNIT_DELAY and found.band == LOW_PASS else reference.label
+        )
+        rows.append((label, *(cell for column in columns for cell in _reference_cells(column.get(name)))))
+    return Table(header, tuple(rows))
+
+
+def _reference_cells(reference: Reference | None) -> tuple[Line, Line]:
+    if reference is None:
+        return ("", "")
+    if reference.name == UNIT_DELAY:
+        return (amount(1 / reference.w, SECOND, 5), "")
+    return (amount(reference.f, HERTZ, 5, angular=False), amount(reference.w, HERTZ, 5))
+
+
+def _bound(value: float) -> str:
+    """Two digits, rounded up; what is below 1e-9 is rounding."""
+    if value < 1e-9:
+        return "1e-9"
+    places = 1 - math.floor(math.log10(value))
+    return plain_number(math.ceil(value * 10.0**places) / 10.0**places, 2, pad=True).text
+
+
+# -- equations ----------------------------------------------------------------------------------------------------
+
+
+def equations_blocks(system: Equations) -> tuple[Block, ...]:
+    """The nodal equations, one a row, as they are written by hand."""
+    shown = system.lines[:MOST_EQUATIONS]
+    rows = tuple((line.label, (tree_of(line.left), " = ", tree_of(line.right))) for line in shown)
+    return (
+        Heading("Equations"),
+        Table(("row", "equation"), rows, len(system.lines) - len(shown)),
+        Paragraph(
+            f"Unknowns: {', '.join(system.unknowns[:MOST_EQUATIONS])}. A node's name is its voltage against gnd. "
+            "KCL rows: the currents that leave the node, in A. Laws: voltages, in V."
+        ),
+    )

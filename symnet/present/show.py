@@ -1,0 +1,118 @@
+"""How each result shows itself in a notebook: one formatter for each class, all from blocks.
+
+Loaded when the first value is displayed (:mod:`symnet.typeset.displayed`). A showing is the same thing in four
+dresses: plain text for a terminal, Markdown and LaTeX, and HTML with MathML, which needs no script to be set.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from symnet.circuit.network import Network
+from symnet.exact.limits import Limits
+from symnet.exact.mna import Equations
+from symnet.exact.naming import Naming
+from symnet.exact.transfer import Transfer
+from symnet.present.blocks import Block, Formula, Table
+from symnet.present.brief import Brief
+from symnet.present.network import network_blocks
+from symnet.present.response import half_power_rows
+from symnet.present.results import (
+    conditions_blocks,
+    equations_blocks,
+    limits_table,
+    recognition_blocks,
+    shortened,
+    transfer_blocks,
+    transfer_formula,
+)
+from symnet.present.shapes import form_blocks, normal_blocks, sections_blocks
+from symnet.present.writers import formula_latex, html, latex, markdown, text
+from symnet.quantities import NUMBER
+from symnet.shape.families.prototype import Prototype
+from symnet.shape.figures import HalfPower
+from symnet.shape.forms import Form
+from symnet.shape.normal import NormalForm
+from symnet.shape.sections import Sections
+from symnet.shape.stated import Conditions
+from symnet.shape.verdict import Recognition
+from symnet.typeset.displayed import Bundle, formats
+
+__all__ = ["bundle"]
+
+
+def bundle(blocks: Sequence[Block]) -> Bundle:
+    """The showings of these blocks by MIME type; LaTeX of a formula alone stands between dollar signs."""
+    alone = blocks[0] if len(blocks) == 1 else None
+    return {
+        "text/plain": text(blocks),
+        "text/markdown": markdown(blocks),
+        "text/html": html(blocks),
+        "text/latex": f"$\\displaystyle {formula_latex(alone)}$"
+        if isinstance(alone, Formula)
+        else latex(blocks),
+    }
+
+
+@formats(Brief)
+def _brief(value: Brief) -> Bundle:
+    return bundle(value.blocks)
+
+
+@formats(Transfer)
+def _transfer(value: Transfer) -> Bundle:
+    formula = transfer_formula(value)
+    if formula is None or value.hidden or shortened(value):
+        return bundle(transfer_blocks(value))
+    return bundle((formula,))
+
+
+@formats(Network)
+def _network(value: Network) -> Bundle:
+    return bundle(network_blocks(value, Naming.of(value).numbers)[1:])
+
+
+@formats(Equations)
+def _equations(value: Equations) -> Bundle:
+    return bundle(equations_blocks(value)[1:])
+
+
+@formats(Limits)
+def _limits(value: Limits) -> Bundle:
+    return bundle((limits_table(value, {}, NUMBER),))
+
+
+@formats(NormalForm)
+def _normal_form(value: NormalForm) -> Bundle:
+    return bundle(normal_blocks(value))
+
+
+@formats(Form)
+def _form(value: Form) -> Bundle:
+    return bundle(form_blocks(value))
+
+
+@formats(HalfPower)
+def _half_power(value: HalfPower) -> Bundle:
+    rows = tuple(half_power_rows(value, value.level.dimension or NUMBER))
+    return bundle((Table(("figure", "f", "w", "remark"), rows),))
+
+
+@formats(Prototype)
+def _prototype(value: Prototype) -> Bundle:
+    return bundle((Table((), value.rows()),))
+
+
+@formats(Sections)
+def _sections(value: Sections) -> Bundle:
+    return bundle(sections_blocks(value))
+
+
+@formats(Recognition)
+def _recognition(value: Recognition) -> Bundle:
+    return bundle(recognition_blocks(value))
+
+
+@formats(Conditions)
+def _conditions(value: Conditions) -> Bundle:
+    return bundle(conditions_blocks(value))

@@ -1,0 +1,28 @@
+"""The scripts that measure still run. What they measure is for a quiet machine and is asserted nowhere here."""
+
+from __future__ import annotations
+
+import subprocess
+import sys
+from pathlib import Path
+
+import pytest
+
+SPEED = Path(__file__).resolve().parent / "speed"
+
+
+@pytest.mark.parametrize("script", sorted(SPEED.glob("[!_]*.py")), ids=lambda path: path.stem)
+def test_script_prints_its_table(script: Path) -> None:
+    run = subprocess.run(
+        [sys.executable, "-m", f"tests.speed.{script.stem}", "1"],
+        cwd=SPEED.parents[1],
+        capture_output=True,
+        text=True,
+        check=False,
+    )
+    assert run.returncode == 0, run.stderr
+    header, rule, *rows = run.stdout.splitlines()
+    assert header.startswith("| ")
+    assert set(rule) <= set("|-: ")
+    assert rows
+    assert all(row.count("|") == header.count("|") for row in rows)
