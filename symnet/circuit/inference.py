@@ -15,7 +15,7 @@ from typing import Final
 
 from symnet.circuit.meanings import Meanings, Use
 from symnet.circuit.parts import CLASS_LETTERS
-from symnet.circuit.writing import write_expression
+from symnet.circuit.spelling import write_expression
 from symnet.errors import Fault, Span
 from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Sum, names_in
 from symnet.quantities import AMPERE, NUMBER, VOLT, Dimension, engineering, in_words

@@ -6,6 +6,7 @@ it. Its text form (:meth:`Network.to_text`) reads back to an equal Network.
 
 from __future__ import annotations
 
+import warnings
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, fields, replace
 from decimal import Decimal
@@ -15,6 +16,7 @@ from typing import TypeAlias
 
 from symnet.circuit.drawing import Drawing
 from symnet.circuit.names import check, dimensions
+from symnet.circuit.notes import UnusualValueWarning, code_note
 from symnet.circuit.parts import (
     Branch,
     Value,
@@ -22,7 +24,8 @@ from symnet.circuit.parts import (
 )
 from symnet.circuit.reading import read_drawing, read_value
 from symnet.circuit.series import settled
-from symnet.circuit.writing import write_drive, write_expression, write_network
+from symnet.circuit.spelling import write_expression
+from symnet.circuit.writing import write_drive, write_network
 from symnet.errors import Fault, NotationError, Span
 from symnet.expressions import Number, names_in
 from symnet.quantities import NUMBER, Dimension
@@ -262,6 +265,9 @@ def value_for(
     """
     dimension = dimension_of_class(name) or dimension
     if isinstance(given, str):
+        note = code_note(given, name)
+        if "unusual" in note:
+            warnings.warn(note, UnusualValueWarning, stacklevel=3)
         return read_value(given, name, dimension)
     if isinstance(given, float):
         given = _exact(name, given)

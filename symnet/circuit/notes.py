@@ -19,7 +19,7 @@ from symnet.quantities import LEADING_CODE, Quantity, engineering, read_code
 if TYPE_CHECKING:
     from symnet.circuit.drawing import Drawing
 
-__all__ = ["code_note", "notes"]
+__all__ = ["UnusualValueWarning", "code_note", "notes"]
 
 _RANGES: Final = {
     "R": (Fraction("1e-3"), Fraction("1e12")),
@@ -127,6 +127,10 @@ def _same_but_slip(one: str, two: str) -> bool:
     return one.lower() == two.lower() or min(len(one), len(two)) >= 3
 
 
+class UnusualValueWarning(UserWarning):
+    """A code was read in a way that is legal and unusual for its part."""
+
+
 def code_note(text: str, name: str) -> str:
     """How a code that begins with its letter was read, and whether that is unusual; empty for other texts.
 
@@ -140,6 +144,6 @@ def code_note(text: str, name: str) -> str:
     worth = read_code(code, dimension, leading=True) if LEADING_CODE.fullmatch(code) else None
     if worth is None:
         return ""
-    usual = {"R": "RkKMG", "L": "num", "C": "pnu\N{MICRO SIGN}\N{GREEK SMALL LETTER MU}"}.get(name[:1])
+    usual = {"R": "RkKMG", "L": "num", "C": "pnuU\N{MICRO SIGN}\N{GREEK SMALL LETTER MU}"}.get(name[:1])
     said = f"{code} for {name} is read as {Quantity(worth.value, worth.dimension)}"
     return said if usual is None or code[0] in usual else f"{said}, which is unusual; please confirm"

@@ -7,7 +7,6 @@ written as one chain, and nameless nodes go back into the series they came from.
 from __future__ import annotations
 
 from collections.abc import Iterable, Iterator
-from fractions import Fraction
 from typing import TYPE_CHECKING
 
 from symnet.circuit.parts import (
@@ -24,17 +23,16 @@ from symnet.circuit.parts import (
     VoltageLaw,
 )
 from symnet.circuit.series import Group, Leaf, Series, runs, settled
-from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Sum
-from symnet.quantities import HERTZ, NUMBER, WRITTEN_UNITS, Dimension, engineering
+from symnet.circuit.spelling import write_dimension, write_expression, write_quantity
+from symnet.expressions import Number
+from symnet.quantities import Dimension, engineering
 
 if TYPE_CHECKING:
     from symnet.circuit.drawing import Drawing
 
 __all__ = [
     "default_labels",
-    "write_dimension",
     "write_drive",
-    "write_expression",
     "write_network",
     "write_part",
     "write_value",
@@ -196,86 +194,9 @@ def write_value(name: str, value: Value, dimension: Dimension | None = None) -> 
     """What stands right of the equals sign; ``dimension`` is the one that the name has been declared with."""
     expression = value.expression
     if isinstance(expression, Number):
-        text = _quantity(expression.value, expression.dimension, CLASS_LETTERS.get(name[0], dimension))
+        text = write_quantity(expression.value, expression.dimension, CLASS_LETTERS.get(name[0], dimension))
     else:
         text = write_expression(expression)
     if value.tolerance is not None:
         text += f" ±{engineering(value.tolerance * 100, exact=True)}%"
     return text
-
-
-def _quantity(value: Fraction, dimension: Dimension, own: Dimension | None = None) -> str:
-    if dimension == NUMBER:
-        return engineering(value, NUMBER, exact=True)
-    if dimension == HERTZ:
-        return engineering(value, HERTZ, exact=True, unit="rad/s")
-    text = engineering(value, dimension, exact=True)
-    # Declared with a dimension that has no unit of its own: the bare number takes it when it is read.
-    if dimension in WRITTEN_UNITS or dimension == own:
-        return text
-    powers = (("1 V", dimension.v), ("1 A", dimension.a), ("1000 ms", dimension.t))
-    return "*".join([text, *(f"({unit})^{power}" for unit, power in powers if power)])
-
-
-def write_dimension(dimension: Dimension) -> str:
-    """A dimension behind ``free x in``.
-
-    >>> from symnet.quantities import OHM
-    >>> write_dimension(OHM), write_dimension(NUMBER)
-    ('ohm', 'V/V')
-    """
-    return "V/V" if dimension == NUMBER else str(dimension)
-
-
-# -- expressions ------------------------------------------------------------------------------------------------------
-
-_SUM, _PRODUCT, _PARALLEL, _POWER, _ATOM = range(5)
-
-
-def write_expression(expression: Expression) -> str:
-    """An expression in the notation, with the parentheses it needs.
-
-    >>> from symnet.circuit.reading import read_expression
-    >>> write_expression(read_expression("-mu*(p-m)||2 kohm/(1+s^-2)"))
-    '-mu*((p - m) || 2 kohm)/(1 + s^-2)'
-    """
-    return _written(expression)[0]
-
-
-def _written(expression: Expression) -> tuple[str, int]:
-    match expression:
-        case Name(name=name):
-            return name, _ATOM
-        case Number():
-            return _number(expression)
-        case Sum(terms=((-1, term),)):
-            # A minus binds looser than a product only where it stands first: -a*b is -(a*b).
-            return f"-{_inside(term, _PRODUCT)}", _SUM
-        case Sum(terms=terms):
-            written = [(" + " if sign > 0 else " - ") + _inside(term, _PRODUCT) for sign, term in terms]
-            first = written[0].removeprefix(" + ")
-            return "".join([f"-{first[3:]}" if first.startswith(" - ") else first, *written[1:]]), _SUM
-        case Product(factors=factors):
-            written = [("*" if power > 0 else "/") + _inside(factor, _PARALLEL) for power, factor in factors]
-            first = written[0].removeprefix("*")
-            return "".join([f"1{first}" if first.startswith("/") else first, *written[1:]]), _PRODUCT
-        case Parallel(branches=branches):
-            return " || ".join(_inside(branch, _POWER) for branch in branches), _PARALLEL
-        case Power(base=base, exponent=exponent):
-            return f"{_inside(base, _ATOM)}^{exponent}", _POWER
-
-
-def _inside(expression: Expression, least: int) -> str:
-    text, binding = _written(expression)
-    if binding == _PARALLEL:  # || binds tighter than *, but few readers would guess it
-        return f"({text})"
-    return f"({text})" if binding < least or (least == _ATOM and " " in text and binding == _ATOM) else text
-
-
-def _number(number: Number) -> tuple[str, int]:
-    value, dimension = number.value, number.dimension
-    text = _quantity(value, dimension)
-    if text.endswith(" s") and "/" not in text:
-        text = f"{engineering(value * 1000, exact=True)} ms"  # a bare s would look like the Laplace variable
-    simple = value >= 0 and not ("/" in text and not text.endswith("rad/s")) and "*" not in text
-    return text, _ATOM if simple else _SUM

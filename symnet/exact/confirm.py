@@ -16,7 +16,6 @@ from random import Random
 from typing import TYPE_CHECKING, Final
 
 from symnet.errors import Fault, SingularError, SymnetError
-from symnet.exact.determinant import MOST_TERMS, pair_modulo
 from symnet.exact.expansion import Expansion
 from symnet.exact.mna import Arithmetic, Stamped, stamp, unknown_name
 from symnet.exact.modular import PRIME, SMALL_PRIME, Residue
@@ -26,8 +25,10 @@ if TYPE_CHECKING:
     from collections.abc import Mapping
 
     from symnet.circuit.network import Network
+    from symnet.circuit.parts import Drive
     from symnet.exact.naming import Naming
-    from symnet.exact.transfer import Transfer
+    from symnet.exact.quotient import Quotient
+    from symnet.expressions import Expression
 
 __all__ = ["Confirmation", "UnconfirmedError", "confirm", "undetermined"]
 
@@ -66,66 +67,69 @@ class Confirmation:
         )
 
 
-def confirm(transfer: Transfer) -> Confirmation:
-    """Compare H with the solution of the nodal equations at random points modulo a prime.
+def confirm(
+    network: Network, naming: Naming, drive: Drive, read: Expression, quotient: Quotient
+) -> Confirmation:
+    """Compare a quotient with the solution of the nodal equations at random points modulo a prime.
 
     Raises :class:`UnconfirmedError` when they differ, and SingularError when the equations have no single solution.
     """
-    written_out = max(transfer.terms) <= _MOST_TERMS_COMPARED
+    most = max(quotient.terms)
+    written_out = most <= _MOST_TERMS_COMPARED
     what = "N and D as written out" if written_out else "the determinants, not written out,"
-    place = transfer.network.drives.index(transfer.drive)
+    place = network.drives.index(drive)
     done = 0
     for trial in range(_MOST_TRIES):
-        point = _point(transfer.naming, trial)
-        solved = _solved(transfer.network, transfer.naming, place, trial)
+        point = _point(naming, trial)
+        solved = _solved(network, naming, place, trial)
         if solved is None:
             continue
         system, solution = solved
-        weights = system.weights(transfer.read)
+        weights = system.weights(read)
         expected = sum(weight.value * value for weight, value in zip(weights, solution, strict=True))
         if written_out:
-            n, d = (modulo(p, point, PRIME) for p in (transfer.numerator, transfer.denominator))
+            lowest = quotient.lowest
+            n, d = (modulo(p, point, PRIME) for p in (lowest.numerator, lowest.denominator))
         else:
-            n, d = pair_modulo(*transfer.determinants, point, PRIME)
-            if not done and max(transfer.terms) <= MOST_TERMS:
-                _compare_written_out(transfer, [value % SMALL_PRIME for value in point])
+            n, d = quotient.modulo(point, PRIME)
+            if not done and quotient.is_writable:
+                _compare_written_out(quotient, [value % SMALL_PRIME for value in point])
                 what = "N and D, compared as determinants and (once, modulo 2^31 - 1) as written out,"
         if (n - expected * d) % PRIME or not d:
-            raise UnconfirmedError(_disagreement(transfer))
+            raise UnconfirmedError(_disagreement())
         done += 1
         if done == _POINTS:
             break
     else:
-        raise SingularError(undetermined(transfer.network, transfer.naming))
-    return Confirmation(_POINTS, _degree(transfer, written_out), what)
+        raise SingularError(undetermined(network, naming))
+    return Confirmation(_POINTS, _degree(network, quotient, written_out=written_out), what)
 
 
-def _compare_written_out(transfer: Transfer, point: list[int]) -> None:
+def _compare_written_out(quotient: Quotient, point: list[int]) -> None:
     """Compare N/D as written out with the determinants at a point modulo the smaller prime, in whole arrays."""
-    n, d = pair_modulo(*transfer.determinants, point, SMALL_PRIME)
+    n, d = quotient.modulo(point, SMALL_PRIME)
     top, bottom = (
         side.modulo(point, SMALL_PRIME) if isinstance(side, Expansion) else modulo(side, point, SMALL_PRIME)
-        for side in (transfer.lowest.top, transfer.lowest.bottom)
+        for side in (quotient.lowest.top, quotient.lowest.bottom)
     )
     if (n * bottom - top * d) % SMALL_PRIME:
-        raise UnconfirmedError(_disagreement(transfer))
+        raise UnconfirmedError(_disagreement())
 
 
-def _disagreement(transfer: Transfer) -> Fault:
+def _disagreement() -> Fault:
     return Fault(
-        f"two independent derivations of {transfer.label} disagree; this result must not be used",
+        "two independent derivations of this H disagree; it must not be used",
         "this is a defect of symnet: please report the network",
     )
 
 
-def _degree(transfer: Transfer, written_out: bool) -> int:
+def _degree(network: Network, quotient: Quotient, *, written_out: bool) -> int:
+    """A bound on the degree of what was compared, for the probability that a wrong H passes."""
     if written_out:
-        polynomials = (transfer.numerator, transfer.denominator)
-        return max((sum(m) for p in polynomials for m in p), default=0) + len(transfer.network.nodes)
-    return sum(
-        max(sum(m) for weight in pair for m in weight)
-        for pair in zip(*(getattr(transfer.determinants[0], side) for side in ("take", "leave")), strict=True)
-    )
+        polynomials = (quotient.lowest.numerator, quotient.lowest.denominator)
+        return max((sum(m) for p in polynomials for m in p), default=0) + len(network.nodes)
+    pairs = zip(quotient.numerator.take, quotient.numerator.leave, strict=True)
+    return sum(max((sum(m) for weight in pair for m in weight), default=0) for pair in pairs)
 
 
 def _at(network: Network, naming: Naming, point: list[int]) -> Stamped:

@@ -10,10 +10,11 @@ from symnet.circuit.network import Network
 from symnet.circuit.parts import GROUND, CurrentDrive, Drive
 from symnet.circuit.wiring import check_drives, check_wiring
 from symnet.errors import Fault, NotationError, SingularError, WiringError, nearest
-from symnet.exact.confirm import undetermined
+from symnet.exact.confirm import confirm, undetermined
 from symnet.exact.determinant import Determinant
 from symnet.exact.modular import PRIME
 from symnet.exact.pieces import Pieces, named_currents
+from symnet.exact.quotient import Quotient
 from symnet.exact.transfer import Transfer
 from symnet.exact.trees import Piece, build
 from symnet.expressions import Expression, Name, dimension_of, names_in
@@ -124,20 +125,20 @@ def derive_from(
     numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _ in border)))
     takes = (*pieces.take, *(take for _, take in border))
     leaves = (*pieces.leave, *(one for _ in border))
-    transfer = Transfer(
+    quotient = Quotient(
+        Determinant(numerator, takes, leaves, one),
+        denominator if factor == one else replace(denominator, factor=factor),
+    )
+    return Transfer(
         network,
         drive,
         read,
         _label(network, drive, read),
         _dimension(pieces, drive, read),
         pieces.naming,
-        (
-            Determinant(numerator, takes, leaves, one),
-            denominator if factor == one else replace(denominator, factor=factor),
-        ),
+        quotient,
+        confirm(network, pieces.naming, drive, read, quotient),
     )
-    transfer.confirmation  # noqa: B018 - computed here, so that no H leaves unconfirmed
-    return transfer
 
 
 @lru_cache(maxsize=16)
@@ -192,7 +193,7 @@ def _driven_by(network: Network, text: str) -> tuple[Network, Drive]:
 
 
 def _label(network: Network, drive: Drive, read: Expression) -> str:
-    from symnet.circuit.writing import write_expression
+    from symnet.circuit.spelling import write_expression
 
     top = write_expression(read)
     if not isinstance(read, Name):

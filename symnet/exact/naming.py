@@ -6,8 +6,8 @@ it is tied: it is replaced everywhere, and only the names it is tied to remain.
 
 from __future__ import annotations
 
-from collections.abc import Mapping
-from dataclasses import dataclass
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass, replace
 from fractions import Fraction
 from types import MappingProxyType
 from typing import TYPE_CHECKING
@@ -101,6 +101,28 @@ class Naming:
             MappingProxyType({str(symbol): found.get(str(symbol)) for symbol in ring.symbols}),
             MappingProxyType(known),
         )
+
+    def with_numbers(self, network: Network, changed: Iterable[str]) -> Naming:
+        """The same names with the numbers that the network now gives to the changed ones.
+
+        Raises NotationError where it gives a tie instead of a number.
+        """
+        numbers = dict(self.numbers)
+        for name in changed:
+            value = network.value(name)
+            if value is None:
+                numbers.pop(name, None)
+            elif any(True for _ in names_in(value.expression)):
+                raise NotationError(
+                    Fault(
+                        f"{name} is to be tied to other names, which makes another H",
+                        "derive the network that has the tie: derive(net.with_values(...))",
+                        parts=(name,),
+                    )
+                )
+            else:
+                numbers[name] = _number(name, value.expression)
+        return replace(self, numbers=MappingProxyType(numbers))
 
     def value(self, name: str) -> FracElement:
         """What a name stands for, as a fraction of ring elements."""

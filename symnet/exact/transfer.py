@@ -12,12 +12,11 @@ from fractions import Fraction
 from functools import cached_property
 from typing import TYPE_CHECKING, Any
 
-from symnet.circuit.network import Network
+from symnet.circuit.network import Network, ValueLike
 from symnet.circuit.parts import Drive
 from symnet.errors import Fault, MissingValueError, SingularError, UnknownNameError, nearest
-from symnet.exact.determinant import Determinant, numeric_pair, pair_modulo
-from symnet.exact.lowest import LowestTerms, reduce
-from symnet.exact.modular import SMALL_PRIME
+from symnet.exact.confirm import Confirmation, undetermined
+from symnet.exact.quotient import Quotient
 from symnet.exact.ratio import Ratio
 from symnet.quantities import Dimension
 from symnet.typeset.displayed import Displayed
@@ -26,7 +25,6 @@ if TYPE_CHECKING:
     from sympy import Expr
     from sympy.polys.rings import PolyElement, PolyRing
 
-    from symnet.exact.confirm import Confirmation
     from symnet.exact.naming import Naming
     from symnet.expressions import Expression
 
@@ -56,8 +54,9 @@ class Transfer(Displayed):
     label: str
     dimension: Dimension
     naming: Naming
-    determinants: tuple[Determinant, Determinant]
-    """Numerator and denominator before anything is cancelled."""
+    quotient: Quotient
+    confirmation: Confirmation
+    """Which independent confirmation this H has had."""
 
     @property
     def ring(self) -> PolyRing:
@@ -79,47 +78,25 @@ class Transfer(Displayed):
         """The dimension of s (1/second) and of every name."""
         return self.naming.dimensions
 
-    @cached_property
-    def lowest(self) -> LowestTerms:
-        """N and D in lowest terms as they were written out: arrays of terms, or ring elements after a gcd."""
-        n, d = self.determinants
-        if n.diagram.is_zero:
-            return LowestTerms(self.ring, self.ring.zero, self.ring.one, ())
-        found = reduce(
-            n.primitive,
-            d.primitive,
-            self.ring,
-            lambda point: pair_modulo(n, d, point, SMALL_PRIME),
-        )
-        return replace(found, hidden=_without(found.hidden, d.factor))
-
     @property
     def numerator(self) -> PolyElement:
         """N of H = N/D, written out, in lowest terms. LimitError when it would be too long."""
-        return self.lowest.numerator
+        return self.quotient.lowest.numerator
 
     @property
     def denominator(self) -> PolyElement:
         """D of H = N/D, written out, in lowest terms. LimitError when it would be too long."""
-        return self.lowest.denominator
+        return self.quotient.lowest.denominator
 
     @property
     def hidden(self) -> tuple[PolyElement, ...]:
         """The cancelled factors that hold s: modes of the network that do not show in this H."""
-        return self.lowest.hidden
-
-    @cached_property
-    def confirmation(self) -> Confirmation:
-        """Which independent confirmation this H has had."""
-        from symnet.exact.confirm import confirm
-
-        return confirm(self)
+        return self.quotient.lowest.hidden
 
     @property
     def terms(self) -> tuple[int, int]:
         """An upper bound of the number of terms of N and D written out, known without expanding."""
-        n, d = self.determinants
-        return n.diagram.count(), d.diagram.count()
+        return self.quotient.terms
 
     @property
     def is_numeric(self) -> bool:
@@ -140,11 +117,22 @@ class Transfer(Displayed):
         hint = f"did you mean {close[0]}?" if close else "H holds: " + ", ".join(("s", *self.names))
         raise UnknownNameError(Fault(f"H holds no symbol called {name}", hint))
 
-    def with_values(self, values: Mapping[str, Any] | None = None, /, **named: Any) -> Transfer:
-        """The same transfer of the network with other values; see :meth:`Network.with_values`."""
-        from symnet.exact.derive import derive_from
+    def with_values(self, values: Mapping[str, ValueLike] | None = None, /, **named: ValueLike) -> Transfer:
+        """The same H with other numbers for its names; nothing is derived anew.
 
-        return derive_from(self.network.with_values(values, **named), self.drive, self.read)
+        Values are given as to :meth:`Network.with_values`; None takes a number away. Raises UnknownNameError for
+        a name that H does not hold, NotationError for a tie, which would make another H: derive the network with it.
+
+        >>> import symnet as sn
+        >>> H = sn.derive(sn.network("in -- R1 -- out -- C1 -- gnd; drive in; read out"))
+        >>> H.with_values(R1="1k", C1="1u").numeric().den
+        (Fraction(1, 1), Fraction(1, 1000))
+        """
+        given = {**(values or {}), **named}
+        for name in given:
+            self.symbol(name)
+        network = self.network.with_values(given)
+        return replace(self, network=network, naming=self.naming.with_numbers(network, given))
 
     @cached_property
     def _numeric(self) -> Ratio:
@@ -157,11 +145,8 @@ class Transfer(Displayed):
                     parts=tuple(missing),
                 )
             )
-        n, d = self.determinants
-        top, bottom = numeric_pair(n, d, [self.values[name] for name in self.names])
+        top, bottom = self.quotient.numbers([self.values[name] for name in self.names])
         if not any(bottom):
-            from symnet.exact.confirm import undetermined
-
             fault = undetermined(self.network, self.naming, self.values)
             raise SingularError(replace(fault, message=f"for these values {fault.message}"))
         return Ratio.of(top, bottom)
@@ -190,18 +175,6 @@ class Transfer(Displayed):
         n, d = self.terms
         shown = f"{n} over {d} terms" if max(n, d) > 1 else "a constant"
         return f"<Transfer {self.label}: {shown}, {self.confirmation.short}>"
-
-
-def _without(hidden: tuple[PolyElement, ...], factor: PolyElement) -> tuple[PolyElement, ...]:
-    """The hidden modes without those that the read itself has brought in, as in ``read a/(s*L1)``."""
-    kept = []
-    for mode in hidden:
-        quotient, rest = divmod(factor, mode)
-        if rest or not factor:
-            kept.append(mode)
-        else:
-            factor = quotient
-    return tuple(kept)
 
 
 def _named_terms(polynomial: PolyElement) -> frozenset[Any]:

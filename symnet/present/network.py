@@ -24,7 +24,7 @@ from symnet.circuit.parts import (
     dimension_of_class,
 )
 from symnet.circuit.series import spoken
-from symnet.circuit.writing import write_expression
+from symnet.circuit.spelling import write_expression
 from symnet.expressions import Expression, Name, dimension_of, names_in
 from symnet.present.blocks import Block, Heading, Items, Line, Table, Typed
 from symnet.present.formulas import amount

@@ -161,6 +161,7 @@ _LETTERS: Final[dict[str, tuple[int, Dimension | None]]] = {
     "R": (0, OHM),
     "K": (3, OHM),
     "F": (0, FARAD),
+    "U": (-6, None),  # common on drawings for micro, where no mu can be typed
     **{letter: (power, None) for letter, power in PREFIXES.items() if letter not in "Kf"},
 }
 _CODE_LETTERS: Final = "".join(_LETTERS)
@@ -199,7 +200,7 @@ def spread_code(text: str) -> str:
     found = CODE.fullmatch(text) or LEADING_CODE.fullmatch(text)
     if found is None:
         return text
-    unit = {"R": "ohm", "F": "F"}.get(found[2], found[2])
+    unit = {"R": "ohm", "F": "F", "U": "u"}.get(found[2], found[2])
     return f"{found[1] or '0'}{'.' * bool(found[3])}{found[3]} {unit}"
 
 

@@ -68,7 +68,10 @@ def test_values_are_taken_exactly(given: object, exact: Fraction) -> None:
 
 def test_a_capacitor_takes_codes_with_a_leading_letter() -> None:
     assert number(sn.network(DIVIDER).with_values(C2="u47"), "C2") == Fraction(47, 10**8)
-    assert number(sn.network(DIVIDER).with_values(C2="m47"), "C2") == Fraction(47, 10**5)
+    assert number(sn.network(DIVIDER).with_values(C2="U47"), "C2") == Fraction(47, 10**8)
+    with pytest.warns(UserWarning, match="m47 for C2 is read as 470 uF, which is unusual; please confirm"):
+        unusual = sn.network(DIVIDER).with_values(C2="m47")
+    assert number(unusual, "C2") == Fraction(47, 10**5)
 
 
 def test_numpy_numbers_are_numbers() -> None:

@@ -10,15 +10,8 @@ from hypothesis import given
 from symnet.circuit.network import Network, read_network
 from symnet.circuit.parts import Branch, CurrentDrive, OpAmp, Value, VoltageDrive
 from symnet.circuit.reading import read_expression
-from symnet.circuit.writing import (
-    default_labels,
-    write_dimension,
-    write_drive,
-    write_expression,
-    write_network,
-    write_part,
-    write_value,
-)
+from symnet.circuit.spelling import write_dimension, write_expression
+from symnet.circuit.writing import default_labels, write_drive, write_network, write_part, write_value
 from symnet.expressions import Expression, Name, Number, Power, Product, Sum
 from symnet.quantities import FARAD, HERTZ, NUMBER, OHM, SECOND, VOLT
 from tests.circuit.strategies import expressions, networks, patient

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from fractions import Fraction
 from typing import Any
 
@@ -16,7 +17,9 @@ from symnet.errors import (
     UnknownNameError,
     WiringError,
 )
+from symnet.exact.confirm import UnconfirmedError, confirm
 from symnet.exact.derive import derive_from
+from symnet.exact.quotient import Quotient
 from symnet.exact.transfer import Transfer
 
 TWO_SECTIONS = "in -- R1 -- a -- R2 -- out -- C2 -- gnd; a -- C1 -- gnd; drive in; read out"
@@ -219,16 +222,28 @@ def test_a_resistance_of_zero_is_a_short() -> None:
     assert fraction(H, "1 / 1 + s*R1*C1 + s*R1*C2")
 
 
-def test_a_wrong_h_does_not_pass_the_confirmation() -> None:
-    from dataclasses import replace
-
-    from symnet.exact.confirm import UnconfirmedError
-
-    H = sn.derive(sn.network(TWO_SECTIONS))
-    n, d = H.determinants
-    wrong = replace(H, determinants=(replace(n, factor=2 * n.factor), d))
+@pytest.mark.parametrize("sections", [2, 12])
+def test_a_wrong_h_does_not_pass_the_confirmation(sections: int) -> None:
+    """Both where N and D are compared as written out and where the determinants are."""
+    lines = [f"n{k} -- R{k + 1} -- n{k + 1} -- C{k + 1} -- gnd" for k in range(sections)]
+    net = sn.network("\n".join([*lines, "drive n0", "read n1"]))
+    H = sn.derive(net)
+    n, d = H.quotient.numerator, H.quotient.denominator
+    wrong = Quotient(replace(n, factor=2 * n.factor), d)
     with pytest.raises(UnconfirmedError, match="must not be used"):
-        wrong.confirmation  # noqa: B018
+        confirm(net, H.naming, H.drive, H.read, wrong)
+
+
+def test_other_numbers_do_not_derive_anew() -> None:
+    H = sn.derive(sn.network(TWO_SECTIONS + "; R2 = R1"))
+    changed = H.with_values(R1="1k", C1=1e-9, C2="1n")
+    assert changed.quotient is H.quotient
+    assert changed.numeric().den == (Fraction(1), Fraction(3, 10**6), Fraction(1, 10**12))
+    assert changed.with_values(C1=None).values == {"R1": 1000, "C2": Fraction(1, 10**9)}
+    with pytest.raises(UnknownNameError, match="H holds no symbol called R2"):
+        H.with_values(R2="5k")
+    with pytest.raises(NotationError, match="makes another H"):
+        H.with_values(C2="2*C1")
 
 
 def test_every_h_says_how_it_was_confirmed() -> None:

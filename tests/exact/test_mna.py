@@ -6,7 +6,7 @@ import pytest
 import sympy
 
 import symnet as sn
-from symnet.circuit.writing import write_expression
+from symnet.circuit.spelling import write_expression
 from symnet.errors import WiringError
 
 ACTIVE = """

@@ -15,6 +15,7 @@ from symnet.present.results import (
     unit_of,
 )
 from symnet.shape.conditions import conditions
+from symnet.shape.verdict import Recognition
 
 DIVIDER = "in -- R1 -- out -- R2 || C1 -- gnd; drive in; read out"
 
@@ -51,9 +52,9 @@ def test_limits_with_values_and_reasons() -> None:
 
 def test_recognition_names_both_scales() -> None:
     third = "in -- R1 -- a -- L1 -- out; a -- C1 -- gnd; out -- C2 || R2 -- gnd; drive in; read out; "
-    text = writers.text(
-        recognition_blocks(sn.recognise(sn.derive(sn.network(third + "R1, R2 = 1; C1, C2 = 1; L1 = 2"))))
-    )
+    found = sn.recognise(sn.derive(sn.network(third + "R1, R2 = 1; C1, C2 = 1; L1 = 2")))
+    assert isinstance(found, Recognition)
+    text = writers.text(recognition_blocks(found))
     assert "Butterworth, order 3, low-pass, exactly" in text
     assert "of this H" in text
     assert "of the Butterworth" in text

@@ -99,7 +99,7 @@ def with_symnet(net: sn.Network) -> int:
     """From the network to lowest terms, written out; the number of terms."""
     engine._prepared.cache_clear()
     H = sn.derive(net)
-    return len(H.lowest.bottom)
+    return len(H.quotient.lowest.bottom)
 
 
 def with_sympy_ring(net: sn.Network) -> int:
