@@ -36,13 +36,21 @@ def _written(expression: Expression) -> tuple[str, int]:
             first = written[0].removeprefix(" + ")
             return "".join([f"-{first[3:]}" if first.startswith(" - ") else first, *written[1:]]), _SUM
         case Product(factors=factors):
-            written = [("*" if power > 0 else "/") + _inside(factor, _PARALLEL) for power, factor in factors]
+            written = [_factor(power, factor) for power, factor in factors]
             first = written[0].removeprefix("*")
             return "".join([f"1{first}" if first.startswith("/") else first, *written[1:]]), _PRODUCT
         case Parallel(branches=branches):
             return " || ".join(_inside(branch, _POWER) for branch in branches), _PARALLEL
         case Power(base=base, exponent=exponent):
             return f"{_inside(base, _ATOM)}^{exponent}", _POWER
+
+
+def _factor(power: int, factor: Expression) -> str:
+    text = _inside(factor, _PARALLEL)
+    if power > 0:
+        return f"*{text}"
+    # 1/2 kohm is 1/(2 kohm), but few readers would bet on it
+    return f"/({text})" if isinstance(factor, Number) and " " in text else f"/{text}"
 
 
 def _inside(expression: Expression, least: int) -> str:

@@ -25,7 +25,7 @@ from symnet.exact.polynomials import begins_negative
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement, PolyRing
 
-__all__ = ["LowestTerms", "reduce"]
+__all__ = ["LowestTerms", "degrees_of", "reduce"]
 
 #: Terms beyond which a multivariate gcd is not attempted.
 MOST_TERMS_FOR_GCD: Final = 20_000
@@ -61,6 +61,13 @@ class LowestTerms:
 
 def _element(written: Expansion | PolyElement, ring: PolyRing) -> PolyElement:
     return written.to_element(ring) if isinstance(written, Expansion) else written
+
+
+def degrees_of(written: Expansion | PolyElement) -> tuple[int, ...]:
+    """The highest exponent of every generator."""
+    if isinstance(written, Expansion):
+        return written.degrees()
+    return tuple(map(max, zip(*written, strict=True))) if written else (0,) * written.ring.ngens
 
 
 def reduce(numerator: Primitive, denominator: Primitive, ring: PolyRing, at: Evaluator) -> LowestTerms:

@@ -10,16 +10,20 @@ from collections.abc import Mapping
 from dataclasses import dataclass, replace
 from fractions import Fraction
 from functools import cached_property
+from itertools import count
 from typing import TYPE_CHECKING, Any
 
 from symnet.circuit.network import Network, ValueLike
 from symnet.circuit.parts import Drive
 from symnet.errors import Fault, MissingValueError, SingularError, UnknownNameError, nearest
 from symnet.exact.confirm import Confirmation, undetermined
+from symnet.exact.lowest import degrees_of
 from symnet.exact.quotient import Quotient
 from symnet.exact.ratio import Ratio
+from symnet.exact.readable import readable_transfer
 from symnet.quantities import Dimension
 from symnet.typeset.displayed import Displayed
+from symnet.typeset.writing import to_text
 
 if TYPE_CHECKING:
     from sympy import Expr
@@ -63,10 +67,18 @@ class Transfer(Displayed):
         """The integer polynomial ring of numerator and denominator."""
         return self.naming.ring
 
-    @property
+    @cached_property
     def names(self) -> tuple[str, ...]:
-        """The names in H's ring, without s, in order of appearance."""
-        return tuple(str(symbol) for symbol in self.ring.symbols[1:])
+        """The names that H hangs on, without s, in order of appearance.
+
+        A name of the ring that has cancelled is not among them, unless H is too long to be written out.
+        """
+        names = [str(symbol) for symbol in self.ring.symbols[1:]]
+        if not self.quotient.is_writable:
+            return tuple(names)
+        lowest = self.quotient.lowest
+        top, bottom = (degrees_of(side) for side in (lowest.top, lowest.bottom))
+        return tuple(name for name, a, b in zip(names, top[1:], bottom[1:], strict=True) if a or b)
 
     @property
     def values(self) -> Mapping[str, Fraction]:
@@ -145,7 +157,14 @@ class Transfer(Displayed):
                     parts=tuple(missing),
                 )
             )
-        top, bottom = self.quotient.numbers([self.values[name] for name in self.names])
+        # a name that has cancelled may have any number, as long as it leaves N and D defined
+        anything = (Fraction(prime) for prime in count(1_000_003, 2))
+        top, bottom = self.quotient.numbers(
+            [
+                self.values[str(symbol)] if str(symbol) in self.values else next(anything)
+                for symbol in self.ring.symbols[1:]
+            ]
+        )
         if not any(bottom):
             fault = undetermined(self.network, self.naming, self.values)
             raise SingularError(replace(fault, message=f"for these values {fault.message}"))
@@ -170,6 +189,12 @@ class Transfer(Displayed):
     @cached_property
     def _canonical(self) -> tuple[frozenset[Any], frozenset[Any]]:
         return _named_terms(self.numerator), _named_terms(self.denominator)
+
+    def __str__(self) -> str:
+        """``out/in = ...`` in the readable form; the repr when H is too long to be written out."""
+        if not self.quotient.is_writable:
+            return repr(self)
+        return f"{self.label} = {to_text(readable_transfer(self.numerator, self.denominator))}"
 
     def __repr__(self) -> str:
         n, d = self.terms

@@ -1,14 +1,10 @@
-"""How an expression, a number, a table become text, LaTeX and HTML; knows no value of the other rooms."""
+"""How an expression and a number become text, LaTeX and HTML; knows no value of the other rooms."""
 
-from symnet.typeset.mime import Shown
 from symnet.typeset.numbers import Written, complex_quantity, plain_number, quantity
-from symnet.typeset.tables import Table
 from symnet.typeset.tree import Tree
 from symnet.typeset.writing import to_html, to_latex, to_text
 
 __all__ = [
-    "Shown",
-    "Table",
     "Tree",
     "Written",
     "complex_quantity",

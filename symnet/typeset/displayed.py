@@ -3,8 +3,7 @@
 A result inherits :class:`Displayed` and knows no more of display than that. A formatter is a function from the
 value to its showings by MIME type, registered for the class. Formatters stand in the room above all others,
 which is loaded when the first value is displayed: by its name, as the public words are, since no room imports
-one that stands above it. (A value that writes itself, a table or a number, inherits
-:class:`symnet.typeset.mime.Shown` instead.)
+one that stands above it.
 """
 
 from __future__ import annotations

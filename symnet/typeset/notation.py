@@ -25,7 +25,7 @@ def tree_of(expression: Expression) -> shown.Tree:
             case Number(value=value, dimension=dimension):
                 if dimension == NUMBER:
                     return shown.Constant(value)
-                return shown.Atom(engineering(value, dimension))
+                return shown.Atom(engineering(value, dimension, exact=True))
             case Name(name=name):
                 return shown.Atom(name)
             case Sum(terms=terms):

@@ -226,7 +226,7 @@ def test_a_code_that_is_also_a_part_is_ambiguous() -> None:
     net = sn.network("in -- R1 -- out -- R2 -- gnd; drive in; read out")
     with pytest.raises(NotationError, match="may also be the code of a value"):
         net.with_values(R1="R2")
-    assert sn.derive(net.with_values(R1="(R2)")).names == ("R2",)
+    assert sn.derive(net.with_values(R1="(R2)"), read="i_R1").names == ("R2",)
 
 
 def test_a_symbol_takes_the_unit_that_the_laws_give_it() -> None:

@@ -89,7 +89,7 @@ def test_expression_round_trip(expression: Expression) -> None:
         (Sum(((1, Name("a")), (-1, Number(Fraction(-2))))), "a - (-2)"),
         (Product(((1, Number(Fraction(3), SECOND)), (1, Name("K")))), "3000 ms*K"),
         (Product(((1, Number(Fraction(1, 3), SECOND)), (1, Name("K")))), "(1000 ms/3)*K"),
-        (Product(((1, Name("K")), (-1, Number(Fraction(5), HERTZ)))), "K/5 rad/s"),
+        (Product(((1, Name("K")), (-1, Number(Fraction(5), HERTZ)))), "K/(5 rad/s)"),
         (Product(((1, Number(Fraction(2), VOLT * VOLT)), (1, Name("K")))), "(2*(1 V)^2)*K"),
     ],
 )

@@ -156,6 +156,24 @@ def test_a_hidden_mode_is_kept_and_named() -> None:
     assert [str(mode) for mode in H.hidden] == ["s*R2*C2 + 1"]
 
 
+def test_a_name_that_has_cancelled_needs_no_number() -> None:
+    H = sn.derive(
+        sn.network(
+            "in -- R1 -- out -- R2 -- gnd; out -- C1 -- b; hold b = out; hold c = mu*out; c -- RL -- gnd; drive in; read out"
+        )
+    )
+    assert H.names == ("R1", "R2")
+    assert H.with_values(R1=1, R2=3).numeric().num == (Fraction(3, 4),)
+    assert H.with_values(R1=1, R2=3).is_numeric
+    assert H.with_values(R1=0, R2=3).numeric().num == (Fraction(1),)
+
+
+def test_an_h_is_printed_in_its_readable_form() -> None:
+    H = sn.derive(sn.network("in -- R1 -- out -- R2 + C2 -- gnd; drive in; read out"))
+    assert str(H) == "out/in = (1 + s*R2*C2)/(1 + s*(R1 + R2)*C2)"
+    assert repr(H).startswith("<Transfer out/in")
+
+
 def test_a_branch_that_the_read_cannot_see_is_hidden() -> None:
     H = sn.derive(sn.network("in -- R1 -- out -- C1 -- gnd; in -- R2 -- b -- C2 -- gnd; drive in; read out"))
     assert fraction(H, "1 / 1 + s*R1*C1")
@@ -203,6 +221,7 @@ def test_no_determinant_is_written_out_beyond_the_limit() -> None:
     text += [f"n{k} -- R{k + 1} -- n{k + 1} -- C{k + 1} -- gnd" for k in range(30)]
     H = sn.derive(sn.network("\n".join(text)))
     assert H.terms[1] == 2504730781961  # F(61), the spanning trees of a ladder of 30 sections
+    assert str(H) == repr(H)
     with pytest.raises(LimitError, match=r"2\.5e12 terms"):
         H.denominator  # noqa: B018
     values = {f"{letter}{k + 1}": k + 1 for k in range(30) for letter in "RC"}
