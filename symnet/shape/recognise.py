@@ -229,6 +229,9 @@ def _candidates(target: Target, band: str, h: Ratio, order: int) -> tuple[Candid
             _candidate(c.family, fit_by_poles(c.family, target), band) for c in found if c.prototype.settings
         ]
         found = [next((p for p in by_poles if p.family is c.family and p.matches), c) for c in found]
+    # a ripple that vanishes is Butterworth, and is said once
+    simplest = min((len(c.prototype.settings) for c in found), default=0)
+    found = [c for c in found if not c.is_degenerate or len(c.prototype.settings) == simplest]
     return _ranked([_with_exactness(c, ascending, target) for c in found])
 
 

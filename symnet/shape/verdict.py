@@ -81,6 +81,15 @@ class Candidate:
         return self.prototype.order - 1 > len(self.prototype.settings)
 
     @property
+    def is_degenerate(self) -> bool:
+        """Whether a fitted parameter vanished: the family's limit, which a family without it holds already."""
+        parameters = self.family.parameters(self.prototype.order)
+        return any(
+            setting.value <= parameter.lower
+            for parameter, setting in zip(parameters, self.prototype.settings, strict=True)
+        )
+
+    @property
     def name(self) -> str:
         """The prototype in words, each fitted parameter with the digits that H tells."""
         p = self.prototype

@@ -9,6 +9,7 @@ LaTeX and HTML have the proper signs. The text of exact values that is read back
 from __future__ import annotations
 
 import math
+import re
 from dataclasses import dataclass
 from fractions import Fraction
 from typing import Final, TypeAlias
@@ -58,6 +59,10 @@ class Written:
 
     def __str__(self) -> str:
         return self.text
+
+
+#: A unit that ends in a power, such as s^3.
+_POWER_IN_UNIT: Final = re.compile(r"\^-?\d+$")
 
 
 def plain_number(value: Real, digits: int = DIGITS, *, pad: bool = False) -> Written:
@@ -208,8 +213,12 @@ def _beside(number: Written, prefix: str, unit: str) -> Written:
         return Written(f"{number.text} deg", rf"{number.latex}^{{\circ}}", f"{number.html}°")
     # In a typeset unit, ohm and micro have their signs.
     micro = prefix == "u"
-    latex = (r"\mu " if micro else prefix) + escape_latex(unit).replace("ohm", r"\Omega ").strip()
-    html = ("µ" if micro else prefix) + escape_html(unit).replace("ohm", "Ω")
+    plain = _POWER_IN_UNIT.sub("", unit)
+    power = unit[len(plain) + 1 :] if plain != unit else ""
+    latex = (r"\mu " if micro else prefix) + escape_latex(plain).replace("ohm", r"\Omega ").strip()
+    html = ("µ" if micro else prefix) + escape_html(plain).replace("ohm", "Ω")
+    if power:
+        latex, html = f"{latex}^{{{power}}}", f"{html}<sup>{power}</sup>"
     return Written(
         f"{number.text} {prefix}{unit}", rf"{number.latex}\,\mathrm{{{latex}}}", f"{number.html} {html}"
     )

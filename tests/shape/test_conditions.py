@@ -167,8 +167,10 @@ class TestAgainstNumbers:
             )
             numeric = recognise(at(H, values))
             assert isinstance(numeric, Recognition)
-            candidate = next(c for c in numeric.candidates if c.prototype.family == "Chebyshev")
-            if candidate.prototype.settings[0].value < 11.9:
+            candidate = next((c for c in numeric.candidates if c.prototype.family == "Chebyshev"), None)
+            if candidate is None:  # the ripple has vanished
+                assert not holds
+            elif candidate.prototype.settings[0].value < 11.9:
                 assert bool(candidate.exact) == holds
 
 

@@ -246,8 +246,7 @@ class TestMembers:
         for order in (2, 3, 5, 8):
             found = verdict(of_poles(butterworth(order).poles))
             assert best(found) == "Butterworth"
-            assert found.candidates[1].prototype.family == "Chebyshev"
-            assert "ripple below" in found.candidates[1].name
+            assert all(c.prototype.family != "Chebyshev" for c in found.candidates)
 
     def test_scale_changes_nothing_but_frequencies(self) -> None:
         """s -> k s moves every frequency by k and no distance."""
