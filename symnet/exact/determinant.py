@@ -23,7 +23,7 @@ from symnet.exact.trees import Diagram
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement
 
-__all__ = ["MOST_TERMS", "Determinant", "numeric_pair", "pair_modulo"]
+__all__ = ["MOST_TERMS", "Determinant", "count_in_words", "numeric_pair", "pair_modulo"]
 
 #: Paths of a diagram that are still written out as terms.
 MOST_TERMS: Final = 500_000
@@ -45,7 +45,7 @@ class Determinant:
         if paths > MOST_TERMS:
             raise LimitError(
                 Fault(
-                    f"written out, this determinant has up to {_count(paths)} terms; the limit is {MOST_TERMS}",
+                    f"written out, this determinant has up to {count_in_words(paths)} terms; the limit is {MOST_TERMS}",
                     "give the parts values and use H.numeric(), or keep only a few names as symbols: "
                     'derive(net, symbols="R1 C1")',
                 )
@@ -71,7 +71,8 @@ def pair_modulo(n: Determinant, d: Determinant, point: Sequence[Any], prime: int
     return top, bottom
 
 
-def _count(paths: int) -> str:
+def count_in_words(paths: int) -> str:
+    """A number of terms as it is said: all digits up to seven, then two and the power of ten."""
     text = str(paths)
     return text if len(text) < 8 else f"{text[0]}.{text[1]}e{len(text) - 1}"
 

@@ -17,6 +17,7 @@ from symnet.circuit.network import Network, ValueLike
 from symnet.circuit.parts import Drive
 from symnet.errors import Fault, MissingValueError, SingularError, UnknownNameError, nearest
 from symnet.exact.confirm import Confirmation, undetermined
+from symnet.exact.determinant import count_in_words
 from symnet.exact.lowest import degrees_of
 from symnet.exact.quotient import Quotient
 from symnet.exact.ratio import Ratio
@@ -198,7 +199,7 @@ class Transfer(Displayed):
 
     def __repr__(self) -> str:
         n, d = self.terms
-        shown = f"{n} over {d} terms" if max(n, d) > 1 else "a constant"
+        shown = f"{count_in_words(n)} over {count_in_words(d)} terms" if max(n, d) > 1 else "a constant"
         return f"<Transfer {self.label}: {shown}, {self.confirmation.short}>"
 
 

@@ -12,7 +12,7 @@ from dataclasses import dataclass, field
 from typing import Final, TypeAlias
 
 from symnet.circuit.network import Network
-from symnet.errors import SymnetError
+from symnet.errors import Fault, LimitError, SymnetError
 from symnet.exact.derive import derive_all
 from symnet.exact.limits import limits
 from symnet.exact.transfer import Transfer
@@ -27,6 +27,9 @@ from symnet.quantities import NUMBER
 from symnet.typeset.displayed import Displayed
 
 __all__ = ["Brief", "brief"]
+
+#: Order of a numeric H up to which the brief finds its poles.
+HIGHEST_ORDER: Final = 100
 
 
 @dataclass(frozen=True, slots=True, repr=False)
@@ -100,6 +103,8 @@ def _about(transfer: Transfer) -> tuple[list[Block], set[str]]:
     for title, make in _PIECES:
         blocks.append(Heading(title.format(transfer.label)))
         try:
+            if make in _FROM_POLES:
+                _refuse_high_order(transfer)
             made, used = make(transfer)
         except SymnetError as error:
             said = "; ".join(fault.message for fault in error.faults)
@@ -108,6 +113,18 @@ def _about(transfer: Transfer) -> tuple[list[Block], set[str]]:
         blocks += made
         words |= used
     return blocks, words
+
+
+def _refuse_high_order(transfer: Transfer) -> None:
+    """The poles of a very long network take minutes: nobody waits for that without having asked."""
+    if transfer.is_numeric and (order := transfer.numeric().order) > HIGHEST_ORDER:
+        raise LimitError(
+            Fault(
+                f"the order is {order}; poles and what follows from them take minutes beyond order {HIGHEST_ORDER}, "
+                "so the brief leaves them out. sn.sections(H) and sn.f3db(H) find them; H.numeric() takes "
+                "arrays of s at once"
+            )
+        )
 
 
 _Piece: TypeAlias = tuple[tuple[Block, ...], set[str]]
@@ -151,6 +168,8 @@ def _recognition(transfer: Transfer) -> _Piece:
         return recognition_blocks(found), {"f3dB", "distance"} if found.candidates else {"f3dB"}
     return conditions_blocks(found), {"f3dB", "positivity"}
 
+
+_FROM_POLES: Final = (_normal, _sections, _response, _recognition)
 
 _PIECES: Final[tuple[tuple[str, Callable[[Transfer], _Piece]], ...]] = (
     ("H(s) = {}", _transfer),

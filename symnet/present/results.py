@@ -8,6 +8,7 @@ from fractions import Fraction
 from typing import TYPE_CHECKING, Final
 
 from symnet.circuit.parts import CurrentDrive
+from symnet.exact.determinant import count_in_words
 from symnet.exact.polynomials import by_powers_of_s
 from symnet.present.blocks import (
     Block,
@@ -91,7 +92,8 @@ def transfer_blocks(transfer: Transfer) -> tuple[Block, ...]:
     if formula is None:
         above, below = transfer.terms
         text = (
-            f"H(s) = {transfer.label}, written out, has up to {above} term{'s' * (above != 1)} over {below}. To see "
+            f"H(s) = {transfer.label}, written out, has up to {count_in_words(above)} "
+            f"term{'s' * (above != 1)} over {count_in_words(below)}. To see "
             'it, keep fewer names as symbols, as in derive(net, symbols="R1 C1").'
         )
         return (Paragraph(text), Items((f"unit: {unit_of(transfer)}", f"confirmed: {transfer.confirmation}")))

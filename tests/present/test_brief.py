@@ -151,3 +151,11 @@ def test_repr_is_short_and_equality_is_that_of_the_network() -> None:
 def test_without_drive_or_read(text: str) -> None:
     with pytest.raises(sn.SymnetError):
         sn.brief(sn.network(text))
+
+
+def test_a_very_long_network_is_not_waited_for() -> None:
+    """Poles of order 150 would take minutes: the brief says so and what to call instead."""
+    chain = [f"n{k} -- R{k + 1} = 1 kohm -- n{k + 1} -- C{k + 1} = 1 nF -- gnd" for k in range(150)]
+    text = sn.brief(sn.network("\n".join([*chain, "drive n0", "read n150"]))).to_text()
+    assert text.count("not available: the order is 150") == 4
+    assert "sn.f3db(H) find them" in text.replace("\n", " ")
