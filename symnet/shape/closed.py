@@ -13,6 +13,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 from typing import TYPE_CHECKING, Any, Final, TypeAlias
 
+from symnet.errors import Fault, UndefinedError
 from symnet.exact.doubles import double
 from symnet.quantities import NUMBER, Dimension
 
@@ -119,10 +120,10 @@ class Figure:
 
 
 def figure(closed: Closed, values: Mapping[str, Fraction], dimension: Dimension | None = NUMBER) -> Figure:
-    """The closed form with its number, where the values allow one."""
+    """The closed form with its number, where the values allow one (no real root of a negative number)."""
     try:
         return Figure(closed, closed.value(values), dimension)
-    except (KeyError, ZeroDivisionError):
+    except (KeyError, ZeroDivisionError, UndefinedError):
         return Figure(closed, None, dimension)
 
 
@@ -156,9 +157,13 @@ def value_of(coefficient: Coefficient, values: Mapping[str, Fraction]) -> Fracti
 def nth_root(value: Fraction, degree: int) -> Fraction:
     """The positive root of a non-negative rational: exact where it is rational, else good to 2^-160 of itself.
 
+    Raises UndefinedError for a negative number.
+
     >>> nth_root(Fraction(8, 27), 3), float(nth_root(Fraction(2), 2))
     (Fraction(2, 3), 1.4142135623730951)
     """
+    if value < 0:
+        raise UndefinedError(Fault(f"the root of degree {degree} of a negative number is not real"))
     exact = _exact_root(value, degree)
     if exact is not None:
         return exact
