@@ -101,13 +101,25 @@ def transfer_blocks(transfer: Transfer) -> tuple[Block, ...]:
 
 
 def _about(transfer: Transfer) -> Iterator[Line]:
-    yield f"unit: {unit_of(transfer)}"
+    yield f"unit: {unit_of(transfer)}; {_units_checked(transfer)}"
     storing = [part.name for part in transfer.network.branches() if part.kind in "LC"]
     if shortened(transfer):
         yield f"terms: {len(transfer.numerator)} over {len(transfer.denominator)}; the first of each power are shown"
     yield f"order {_order(transfer)}; parts that store energy: {', '.join(storing) or 'none'}"
     yield f"confirmed: {transfer.confirmation}"
     yield from _hidden(transfer)
+
+
+def _units_checked(transfer: Transfer) -> str:
+    """What the check of the units of every term has found."""
+    from symnet.shape.dimensions import check_dimensions
+
+    found = check_dimensions(transfer)
+    if found:
+        return "units that do not fit: " + "; ".join(map(str, found))
+    unknown = [name for name in transfer.names if transfer.dimensions.get(name) is None]
+    left_out = f" (terms with {', '.join(unknown)}, whose unit is not known, left out)" if unknown else ""
+    return f"the units of all terms agree, power by power{left_out}"
 
 
 def _order(transfer: Transfer) -> int:
