@@ -16,7 +16,7 @@ from math import lcm, prod
 from typing import TYPE_CHECKING, Any, Final
 
 from symnet.errors import Fault, LimitError
-from symnet.exact.expansion import Primitive, expand
+from symnet.exact.expansion import Primitive, expand, highest_exponents
 from symnet.exact.modular import weight_at
 from symnet.exact.trees import Diagram
 
@@ -39,13 +39,23 @@ class Determinant:
     factor: PolyElement
 
     @cached_property
+    def terms(self) -> int:
+        """An upper bound of the number of terms written out, known without expanding.
+
+        The smaller of the number of paths, exact when every piece has a symbol of its own, and the number of
+        monomials that the degrees leave room for, which is small when parts are tied.
+        """
+        degrees = highest_exponents(self.factor.ring.ngens, self.take, self.leave)
+        return min(self.diagram.count(), prod(degree + 1 for degree in degrees))
+
+    @cached_property
     def primitive(self) -> Primitive:
         """Written out, its common integer and monomial factors apart; LimitError beyond :data:`MOST_TERMS` paths."""
-        paths = self.diagram.count()
-        if paths > MOST_TERMS:
+        if self.terms > MOST_TERMS:
             raise LimitError(
                 Fault(
-                    f"written out, this determinant has up to {count_in_words(paths)} terms; the limit is {MOST_TERMS}",
+                    f"written out, this determinant has up to {count_in_words(self.terms)} terms; "
+                    f"the limit is {MOST_TERMS}",
                     "give the parts values and use H.numeric(), or keep only a few names as symbols: "
                     'derive(net, symbols="R1 C1")',
                 )

@@ -15,9 +15,10 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 from functools import cached_property
+from itertools import groupby
 from math import gcd
 from operator import add
-from typing import TYPE_CHECKING, Any, Final
+from typing import TYPE_CHECKING, Any, Final, TypeAlias
 
 import numpy as np
 
@@ -27,8 +28,14 @@ if TYPE_CHECKING:
     from numpy.typing import NDArray
     from sympy.polys.rings import PolyElement, PolyRing
 
-__all__ = ["Expansion", "Fields", "Primitive", "expand"]
+__all__ = ["Expansion", "Fields", "Primitive", "expand", "highest_exponents"]
 
+#: A weight as terms: the packed monomial and the coefficient.
+_Weight: TypeAlias = "list[tuple[int, int]]"
+#: Packed monomials and their coefficients; None when every coefficient is 1.
+_Terms: TypeAlias = "tuple[list[int], list[int] | None]"
+
+_NOTHING: Final = -1  # the child of a node after which nothing follows
 _WORD: Final = 62  # bits used of each signed 64-bit word
 _LOOKED_UP: Final = 12  # bits of a word whose factor is found in one table
 
@@ -52,12 +59,22 @@ class Fields:
             shift += width
         return cls(tuple(places), word + 1)
 
-    def pack(self, monomial: Sequence[int]) -> NDArray[np.int64]:
-        """One monomial as a column of words."""
-        packed = [0] * self.words
-        for exponent, (word, shift, _) in zip(monomial, self.places, strict=True):
-            packed[word] += int(exponent) << shift
-        return np.array(packed, dtype=np.int64)[:, None]
+    def pack(self, monomial: Sequence[int]) -> int:
+        """One monomial as one integer, the words side by side."""
+        return sum(
+            int(exponent) << (word * _WORD + shift)
+            for exponent, (word, shift, _) in zip(monomial, self.places, strict=True)
+            if exponent
+        )
+
+    def words_of(self, packed: Sequence[int]) -> NDArray[np.int64]:
+        """Packed monomials as an array (words x monomials)."""
+        if self.words == 1:
+            return np.array([packed], dtype=np.int64)
+        mask = (1 << _WORD) - 1
+        return np.array(
+            [[(key >> (word * _WORD)) & mask for key in packed] for word in range(self.words)], dtype=np.int64
+        )
 
 
 @dataclass(frozen=True, eq=False)
@@ -111,7 +128,9 @@ class Expansion:
 
     def divided(self, number: int, exponents: Sequence[int]) -> Expansion:
         """The polynomial divided by an integer and a monomial that divide every term."""
-        keys = self.keys - self.fields.pack(exponents) if any(exponents) else self.keys
+        keys = (
+            self.keys - self.fields.words_of([self.fields.pack(exponents)]) if any(exponents) else self.keys
+        )
         coefficients = self.coefficients if number == 1 else self.coefficients // number
         return Expansion(self.fields, keys, coefficients)
 
@@ -201,7 +220,7 @@ def expand(
 ) -> Expansion:
     """``factor`` times the determinant, written out, with the weights' ring generators as fields."""
     count = factor.ring.ngens
-    highest = map(add, _highest(count, take, leave), map(max, zip(*factor, strict=True)))
+    highest = map(add, highest_exponents(count, take, leave), map(max, zip(*factor, strict=True)))
     fields = Fields.for_degrees(list(highest))
     if diagram.is_zero:
         return Expansion(fields, np.zeros((fields.words, 0), dtype=np.int64), np.zeros(0, dtype=np.int8))
@@ -209,50 +228,148 @@ def expand(
     dtype = _coefficient_type(diagram, factor, take, leave, own)
     takes = [_packed(weight, fields) for weight in take]
     leaves = [_packed(weight, fields) for weight in leave]
-    size = len(diagram)
-    users = [0] * (size + 1)
-    for child in (*diagram.leave, *diagram.take):
-        if child >= 0:
-            users[child] += 1
-    nothing = np.zeros((fields.words, 1), dtype=np.int64)
-    terms: list[Any] = [None] * (size + 1)
-    terms[size] = (nothing, np.ones(1, dtype=dtype))
-    for k in range(size - 1, -1, -1):
-        i, to_leave, to_take = diagram.piece[k], diagram.leave[k], diagram.take[k]
-        keys: list[NDArray[np.int64]] = []
-        coefficients: list[NDArray[Any]] = []
-        for child, weight, sign in ((to_leave, leaves[i], 1), (to_take, takes[i], diagram.sign[k])):
-            if child >= 0:
-                below, numbers = terms[child]
-                for monomial, coefficient in weight:
-                    keys.append(below if monomial is None else below + monomial)
-                    signed = coefficient * sign
-                    coefficients.append(numbers if signed == 1 else numbers * _as(dtype, signed))
-                users[child] -= 1
-                if not users[child]:
-                    terms[child] = None
-        if not keys:  # every weight on the way is zero
-            terms[k] = nothing[:, :0], np.zeros(0, dtype=dtype)
-        elif len(keys) == 1:
-            terms[k] = keys[0], coefficients[0]
-        else:
-            joined = np.concatenate(keys, axis=1), np.concatenate(coefficients)
-            terms[k] = joined if own[i] else _merged(*joined)
-    whole, numbers = terms[diagram.root]
-    if diagram.overall < 0:
-        numbers = -numbers
-    weights = _packed(factor, fields)
-    if len(weights) > 1:
-        keys = [whole if monomial is None else whole + monomial for monomial, _ in weights]
-        coefficients = [numbers * _as(dtype, c) for _, c in weights]
-        whole, numbers = _merged(np.concatenate(keys, axis=1), np.concatenate(coefficients))
-    elif factor != factor.ring.one:
-        ((monomial, c),) = weights
-        whole, numbers = (whole if monomial is None else whole + monomial), numbers * _as(dtype, c)
-    return Expansion(fields, whole, numbers)
+    halves = _Halves(diagram, takes, leaves, own)
+    cut = halves.cut()
+    below, above = halves.below(cut), halves.above(cut)
+    last = _packed(factor, fields)
+    keys: list[NDArray[np.int64]] = []
+    coefficients: list[NDArray[Any]] = []
+    for node, (upper, upper_numbers) in above.items():
+        lower, lower_numbers = below[node]
+        if not upper or not lower:  # every weight on the way is zero
+            continue
+        lower_words = fields.words_of(lower)
+        for monomial, coefficient in last:
+            upper_words = fields.words_of([key + monomial for key in upper] if monomial else upper)
+            whole = upper_words[:, :, None] + lower_words[:, None, :]
+            keys.append(whole.reshape(fields.words, -1))
+            size, scale = len(upper) * len(lower), coefficient * diagram.overall
+            if upper_numbers is None and lower_numbers is None:
+                coefficients.append(np.full(size, scale, dtype=dtype))
+                continue
+            left = np.array([scale * c for c in upper_numbers or [1] * len(upper)], dtype=dtype)
+            right = np.array(lower_numbers or [1] * len(lower), dtype=dtype)
+            coefficients.append(np.multiply.outer(left, right).ravel())
+    if not keys:
+        return Expansion(fields, np.zeros((fields.words, 0), dtype=np.int64), np.zeros(0, dtype=dtype))
+    joined = np.concatenate(keys, axis=1), np.concatenate(coefficients)
+    if len(last) > 1 or not halves.all_own:
+        joined = _merged(*joined)
+    return Expansion(fields, *joined)
 
 
-def _highest(count: int, take: Sequence[PolyElement], leave: Sequence[PolyElement]) -> list[int]:
+class _Halves:
+    """A diagram cut at one level: what grows down to the cut from the root, and up to it from the end.
+
+    Each term of the result is one of the upper half times one of the lower; the halves have so few terms that
+    plain lists of packed integers are faster than arrays.
+    """
+
+    def __init__(
+        self, diagram: Diagram, takes: Sequence[_Weight], leaves: Sequence[_Weight], own: Sequence[bool]
+    ) -> None:
+        self._diagram, self._takes, self._leaves, self._own = diagram, takes, leaves, own
+        parting = {
+            i
+            for i, leave, take in zip(diagram.piece, diagram.leave, diagram.take, strict=True)
+            if leave >= 0 <= take
+        }
+        self.all_own = all(own[i] for i in parting)
+        self._steps = self._plain_steps()
+
+    def _plain_steps(self) -> list[tuple[int, int]] | None:
+        """The monomials of leave and take of each piece, if every weight is a monomial and every sign plus."""
+        weights = (*self._takes, *self._leaves)
+        if not self.all_own or -1 in self._diagram.sign or any(len(w) != 1 or w[0][1] != 1 for w in weights):
+            return None
+        return [(m[0][0], t[0][0]) for t, m in zip(self._takes, self._leaves, strict=True)]
+
+    def cut(self) -> int:
+        """The first node of the level at which both halves together have the fewest terms."""
+        d, size = self._diagram, len(self._diagram)
+        up, down = [0] * size + [1, 0], [1] + [0] * (size + 1)  # the last entry stands for "nothing follows"
+        leave, take = d.leave, d.take
+        for k in range(size - 1, -1, -1):
+            up[k] = up[leave[k]] + up[take[k]]
+        for k in range(size):
+            here = down[k]
+            down[leave[k]] += here
+            down[take[k]] += here
+        rising, falling, best, chosen, start = sum(up), 0, sum(up), 0, 0
+        for _, level in groupby(d.piece):
+            end = start + sum(1 for _ in level)
+            if rising + falling < best:
+                best, chosen = rising + falling, start
+            rising -= sum(up[start:end])
+            falling += sum(down[start:end])
+            start = end
+        return size if rising + falling < best else chosen
+
+    def below(self, cut: int) -> dict[int, _Terms]:
+        """The determinants that the nodes from the cut on stand for, written out from the end upwards."""
+        d, size = self._diagram, len(self._diagram)
+        terms: dict[int, _Terms] = {size: ([0], None), _NOTHING: ([], None)}
+        for k in range(size - 1, cut - 1, -1):
+            i = d.piece[k]
+            parts = [(terms[d.leave[k]], self._leaves[i], 1), (terms[d.take[k]], self._takes[i], d.sign[k])]
+            terms[k] = _sum(parts, own=self._own[i])
+        return terms
+
+    def above(self, cut: int) -> dict[int, _Terms]:
+        """For every node at the cut, the sum over the paths from the root to it."""
+        d = self._diagram
+        if self._steps is not None:
+            return self._plainly_above(cut, self._steps)
+        parts: dict[int, list[tuple[_Terms, _Weight, int]]] = {d.root: [(([0], None), [(0, 1)], 1)]}
+        for k in range(cut):
+            here = _sum(parts.pop(k, ()), own=self.all_own)
+            i = d.piece[k]
+            if d.leave[k] >= 0:
+                parts.setdefault(d.leave[k], []).append((here, self._leaves[i], 1))
+            if d.take[k] >= 0:
+                parts.setdefault(d.take[k], []).append((here, self._takes[i], d.sign[k]))
+        return {node: _sum(found, own=self.all_own) for node, found in parts.items()}
+
+    def _plainly_above(self, cut: int, steps: Sequence[tuple[int, int]]) -> dict[int, _Terms]:
+        """The same where every coefficient is 1 and nothing falls together, as in a network of R, L, C."""
+        d = self._diagram
+        keys: dict[int, list[int]] = {d.root: [0]}
+        for k in range(cut):
+            here = keys.pop(k)
+            for child, step in zip((d.leave[k], d.take[k]), steps[d.piece[k]], strict=True):
+                if child < 0:
+                    continue
+                moved = [key + step for key in here] if step else here
+                if child in keys:
+                    keys[child] = keys[child] + moved
+                else:
+                    keys[child] = moved
+        return {node: (found, None) for node, found in keys.items()}
+
+
+def _sum(parts: Sequence[tuple[_Terms, _Weight, int]], *, own: bool) -> _Terms:
+    """The sum of sign * weight * terms."""
+    keys: list[int] = []
+    numbers: list[int] | None = None
+    for (below, coefficients), weight, sign in parts:
+        for monomial, coefficient in weight:
+            factor = coefficient * sign
+            if numbers is None and (coefficients is not None or factor != 1):
+                numbers = [1] * len(keys)
+            keys += [key + monomial for key in below] if monomial else below
+            if numbers is not None:
+                numbers += (
+                    [factor] * len(below) if coefficients is None else [c * factor for c in coefficients]
+                )
+    if own:
+        return keys, numbers
+    merged: dict[int, int] = {}
+    for key, number in zip(keys, numbers or [1] * len(keys), strict=True):
+        merged[key] = merged.get(key, 0) + number
+    return [key for key, c in merged.items() if c], [c for c in merged.values() if c]
+
+
+def highest_exponents(count: int, take: Sequence[PolyElement], leave: Sequence[PolyElement]) -> list[int]:
     """A bound on the exponent of each generator in the determinant."""
     highest = [0] * count
     for pair in zip(take, leave, strict=True):
@@ -261,8 +378,8 @@ def _highest(count: int, take: Sequence[PolyElement], leave: Sequence[PolyElemen
     return highest
 
 
-def _packed(weight: PolyElement, fields: Fields) -> list[tuple[NDArray[np.int64] | None, int]]:
-    return [(fields.pack(m) if any(m) else None, int(c)) for m, c in weight.items()]
+def _packed(weight: PolyElement, fields: Fields) -> _Weight:
+    return [(fields.pack(monomial), int(coefficient)) for monomial, coefficient in weight.items()]
 
 
 def _own_names(count: int, take: Sequence[PolyElement], leave: Sequence[PolyElement]) -> list[bool]:

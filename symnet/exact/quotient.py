@@ -38,7 +38,7 @@ class Quotient:
     @property
     def terms(self) -> tuple[int, int]:
         """An upper bound of the number of terms of each, known without writing them out."""
-        return self.numerator.diagram.count(), self.denominator.diagram.count()
+        return self.numerator.terms, self.denominator.terms
 
     @property
     def is_writable(self) -> bool:

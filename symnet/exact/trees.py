@@ -32,13 +32,16 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from functools import cached_property
 from heapq import heappop, heappush
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, TypeAlias
 
 if TYPE_CHECKING:
     import numpy as np
     from numpy.typing import NDArray
 
 __all__ = ["Diagram", "Level", "Piece", "build", "frontier_order"]
+
+State: TypeAlias = tuple[int, ...]
+_Moves: TypeAlias = tuple[State | None, State | None, int]
 
 _DEAD = -1
 
@@ -185,73 +188,125 @@ def build(size: int, pieces: Sequence[Piece], order: Sequence[int] | None = None
     if rows.untouched or columns.untouched:
         return Diagram((), (), (), (), 0 if size == 0 else _DEAD)
 
-    states: dict[tuple[tuple[int, ...], tuple[int, ...]], int] = {((), ()): 0}
-    piece: list[int] = []
-    leave: list[int] = []
-    take: list[int] = []
-    sign: list[int] = []
-    next_id = 1
+    grown = _Growing()
+    states: list[tuple[State, State]] = [((), ())]
+    twins = _first_twin_level(rows, columns)
     for level, index in enumerate(order):
         rows.enter(level)
         columns.enter(level)
-        following: dict[tuple[tuple[int, ...], tuple[int, ...]], int] = {}
+        if level >= twins and rows.open == columns.open and all(row == column for row, column in states):
+            parity = rows.parity * columns.parity
+            return _pruned(_grow_twins(grown, rows, [row for row, _ in states], order, level), parity)
+        row_moves: dict[State, _Moves] = {}
+        column_moves: dict[State, _Moves] = {}
+        following: dict[tuple[State, State], int] = {}
         for row_state, column_state in states:
-            row_work, column_work = row_state + rows.new, column_state + columns.new
-            to_leave = to_take = _DEAD
-            kept_rows = rows.leave(row_work)
-            if kept_rows is not None:
-                kept_columns = columns.leave(column_work)
-                if kept_columns is not None:
-                    key = (kept_rows, kept_columns)
-                    to_leave = following.get(key, _DEAD)
-                    if to_leave < 0:
-                        to_leave = following[key] = next_id
-                        next_id += 1
-            parity = 1
-            row_taken = rows.take(row_work)
-            if row_taken is not None:
-                column_taken = columns.take(column_work)
-                if column_taken is not None:
-                    parity = row_taken[1] * column_taken[1]
-                    key = (row_taken[0], column_taken[0])
-                    to_take = following.get(key, _DEAD)
-                    if to_take < 0:
-                        to_take = following[key] = next_id
-                        next_id += 1
-            piece.append(index)
-            leave.append(to_leave)
-            take.append(to_take)
-            sign.append(parity)
-        states = following
+            row = row_moves.get(row_state)
+            if row is None:
+                row = row_moves[row_state] = rows.moves(row_state)
+            column = column_moves.get(column_state)
+            if column is None:
+                column = column_moves[column_state] = columns.moves(column_state)
+            left = None if row[0] is None or column[0] is None else (row[0], column[0])
+            taken = None if row[1] is None or column[1] is None else (row[1], column[1])
+            grown.add(index, left, taken, row[2] * column[2], following)
+        states = list(following)
         if not states:
             return Diagram((), (), (), (), _DEAD)
-    return _pruned(piece, leave, take, sign, rows.parity * columns.parity)
+    return _pruned(grown, rows.parity * columns.parity)
 
 
-def _pruned(piece: list[int], leave: list[int], take: list[int], sign: list[int], overall: int) -> Diagram:
+def _grow_twins(
+    grown: _Growing, side: _Side, states: list[State], order: Sequence[int], level: int
+) -> _Growing:
+    """The rest of a diagram whose two graphs are the same from here on, as in a network of R, L, C past its sources.
+
+    Rows and columns then merge alike, one partition is the whole state, and every sign is plus, being a square.
+    """
+    for here in range(level, len(order)):
+        if here > level:
+            side.enter(here)
+        following: dict[State, int] = {}
+        grown.piece += [order[here]] * len(states)
+        grown.sign += [1] * len(states)
+        moves, leave, take, number = side.moves, grown.leave.append, grown.take.append, grown.next
+        for state in states:
+            left, taken, _ = moves(state, signed=False)
+            for target, reached in ((leave, left), (take, taken)):
+                if reached is None:
+                    target(_DEAD)
+                elif reached in following:
+                    target(following[reached])
+                else:
+                    following[reached] = number
+                    target(number)
+                    number += 1
+        grown.next = number
+        states = list(following)
+    return grown
+
+
+def _first_twin_level(rows: _Side, columns: _Side) -> int:
+    """The first level from which on both graphs have the same pieces, numbered alike."""
+    level = len(rows.ends)
+    while level and rows.ends[level - 1] == columns.ends[level - 1]:
+        level -= 1
+    return level
+
+
+class _Growing:
+    """The nodes made so far, in the order of their levels."""
+
+    def __init__(self) -> None:
+        self.piece: list[int] = []
+        self.leave: list[int] = []
+        self.take: list[int] = []
+        self.sign: list[int] = []
+        self.next = 1
+
+    def add(self, piece: int, left: Any, taken: Any, sign: int, following: dict[Any, int]) -> None:
+        """One node: the states after leaving and taking the piece, None where there is none."""
+        self.piece.append(piece)
+        self.sign.append(sign)
+        for state, target in ((left, self.leave), (taken, self.take)):
+            if state is None:
+                target.append(_DEAD)
+                continue
+            number = following.get(state)
+            if number is None:
+                number = following[state] = self.next
+                self.next += 1
+            target.append(number)
+
+
+def _pruned(grown: _Growing, overall: int) -> Diagram:
     """The diagram without the nodes from which the end cannot be reached."""
+    piece, leave, take, sign = grown.piece, grown.leave, grown.take, grown.sign
     count = len(piece)
-    number = [_DEAD] * (count + 1)
-    kept: list[int] = []
-    number[count] = 0
+    alive = [False] * count
+    alive.append(True)  # the end
     for k in range(count - 1, -1, -1):
-        to_leave = number[leave[k]] if leave[k] >= 0 else _DEAD
-        to_take = number[take[k]] if take[k] >= 0 else _DEAD
-        if to_leave >= 0 or to_take >= 0:
-            kept.append(k)
-            number[k] = len(kept)
-    size = len(kept)
-
-    def renamed(target: int) -> int:
-        return size - number[target] if target >= 0 and number[target] >= 0 else _DEAD
-
-    kept.reverse()
+        alive[k] = (leave[k] >= 0 and alive[leave[k]]) or (take[k] >= 0 and alive[take[k]])
+    if not alive[0]:
+        return Diagram((), (), (), (), _DEAD)
+    forced = 0  # what must be taken anyway, the sources above all, lays its sign on the whole
+    while forced < count and (leave[forced] < 0 or not alive[leave[forced]]):
+        overall *= sign[forced]
+        sign[forced] = 1
+        forced = take[forced]
+    if all(alive) and _DEAD not in leave and _DEAD not in take:
+        return Diagram(tuple(piece), tuple(leave), tuple(take), tuple(sign), 0, overall)
+    number = [_DEAD] * (count + 2)  # the last entry answers for _DEAD itself
+    kept = [k for k in range(count) if alive[k]]
+    for place, k in enumerate(kept):
+        number[k] = place
+    number[count] = len(kept)
     return Diagram(
-        tuple(piece[k] for k in kept),
-        tuple(renamed(leave[k]) for k in kept),
-        tuple(renamed(take[k]) for k in kept),
-        tuple(sign[k] for k in kept),
-        renamed(0),
+        tuple([piece[k] for k in kept]),
+        tuple([number[leave[k]] for k in kept]),
+        tuple([number[take[k]] for k in kept]),
+        tuple([sign[k] for k in kept]),
+        0,
         overall,
     )
 
@@ -273,7 +328,7 @@ class _Side:
         number = {end: n for n, end in enumerate(by_leaving)}
         self.parity = _parity(by_leaving)
         self.ground = size
-        self._ends = [tuple(size if end is None else number[end] for end in pair) for pair in ends]
+        self.ends = [tuple(size if end is None else number[end] for end in pair) for pair in ends]
         self._first = [first[end] for end in by_leaving]
         self._last = [last[end] for end in by_leaving]
         self._waiting = list(range(size))  # numbers that no piece has touched yet, ascending
@@ -282,7 +337,7 @@ class _Side:
 
     def enter(self, level: int) -> None:
         """Prepare for the piece of this level: who comes in, who leaves, which ends it has."""
-        plus, minus = self._ends[level]
+        plus, minus = self.ends[level]
         fresh = sorted({end for end in (plus, minus) if end != self.ground and self._first[end] == level})
         for end in fresh:
             del self._waiting[bisect_left(self._waiting, end)]
@@ -296,31 +351,41 @@ class _Side:
         self._leaving = [place for place, end in enumerate(work) if self._last[end] <= level]
         self._frontier = [work[place] for place in self._staying]
 
-    def leave(self, work: tuple[int, ...]) -> tuple[int, ...] | None:
-        """The state after leaving the piece out; None when a class that is alive would leave."""
-        for place in self._leaving:
-            if work[place] == self._work[place]:
-                return None
-        return tuple([work[place] for place in self._staying])
+    @property
+    def open(self) -> tuple[list[int], list[int]]:
+        """The numbers in the state, and those that no piece has touched yet."""
+        return self._work, self._waiting
 
-    def take(self, work: tuple[int, ...]) -> tuple[tuple[int, ...], int] | None:
-        """The state after taking the piece, and the sign; None when its ends are one class already."""
+    def moves(self, state: State, *, signed: bool = True) -> _Moves:
+        """The state after leaving the piece out, the state after taking it, and the sign of taking it.
+
+        None where a class that is alive would leave, or where the ends of the piece are one class already.
+        """
+        work = state + self.new
+        names = self._work
+        left: State | None = tuple([work[place] for place in self._staying])
+        for place in self._leaving:
+            if work[place] == names[place]:
+                left = None
+                break
         plus = self.ground if self._plus < 0 else work[self._plus]
         minus = self.ground if self._minus < 0 else work[self._minus]
         if plus == minus:
-            return None
+            return left, None, 1
         low, high = (plus, minus) if plus < minus else (minus, plus)
         merged = [high if end == low else end for end in work]
-        names = self._work
         for place in self._leaving:
             if merged[place] == names[place]:
-                return None
+                return left, None, 1
+        staying = tuple([merged[place] for place in self._staying])
+        if not signed:
+            return left, staying, 1
         position = bisect_left(self._waiting, low)
-        for place, end in enumerate(work):
-            if end == names[place] and end < low:
+        for end, name in zip(work, names, strict=True):
+            if end == name and end < low:
                 position += 1
-        sign = 1 if low == plus else -1
-        return tuple([merged[place] for place in self._staying]), -sign if position & 1 else sign
+        sign = 1 if (low == plus) == (position & 1 == 0) else -1
+        return left, staying, sign
 
 
 def _parity(permutation: list[int]) -> int:
