@@ -11,6 +11,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import lru_cache
+from heapq import heapify, heappop, heappush
 from math import log10
 from random import Random
 from typing import TYPE_CHECKING, Final
@@ -86,7 +87,7 @@ def confirm(
             continue
         system, solution = solved
         weights = system.weights(read)
-        expected = sum(weight.value * value for weight, value in zip(weights, solution, strict=True))
+        expected = sum(weight.value * solution[k] for k, weight in weights.items())
         if written_out:
             lowest = quotient.lowest
             n, d = (modulo(p, point, PRIME) for p in (lowest.numerator, lowest.denominator))
@@ -160,31 +161,56 @@ def _solved(network: Network, naming: Naming, drive: int, trial: int) -> tuple[S
         system = _at(network, naming, _point(naming, trial))
     except ZeroDivisionError:
         return None
+    size = len(system.unknowns)
     column = system.sources[network.drive_names[drive]]
-    rows = [[e.value for e in row] + [c.value] for row, c in zip(system.matrix, column, strict=True)]
-    pivots = _eliminate(rows)
-    if len(pivots) < len(rows):
+    rows = [{k: e.value for k, e in row.items() if e.value} for row in system.matrix]
+    for k, value in column.items():
+        rows[k][size] = value.value
+    pivots = _eliminate(rows, size)
+    if len(pivots) < size:
         return None
-    return system, [rows[row][-1] for row, _ in pivots]
+    return system, [rows[pivots[k]].get(size, 0) for k in range(size)]
 
 
-def _eliminate(rows: list[list[int]]) -> list[tuple[int, int]]:
-    """Reduce augmented rows in place to reduced echelon form modulo the prime; the pivots as (row, column)."""
-    pivots: list[tuple[int, int]] = []
-    columns = len(rows[0]) - 1 if rows else 0
-    for column in range(columns):
-        at = len(pivots)
-        found = next((k for k in range(at, len(rows)) if rows[k][column]), None)
-        if found is None:
+def _eliminate(rows: list[dict[int, int]], size: int) -> dict[int, int]:
+    """Reduce sparse augmented rows in place, modulo the prime, until each pivot column has one entry.
+
+    Returns the row of each pivot column. The row with the fewest entries is taken next, and in it the column
+    with the fewest: long networks fill in little, and are solved in time that grows with their length.
+    """
+    where: list[set[int]] = [set() for _ in range(size + 1)]
+    for r, row in enumerate(rows):
+        for column in row:
+            where[column].add(r)
+    waiting = [(len(row), r) for r, row in enumerate(rows)]
+    heapify(waiting)
+    pivots: dict[int, int] = {}
+    done: set[int] = set()
+    while waiting:
+        length, r = heappop(waiting)
+        if r in done or length != len(rows[r]):
             continue
-        rows[at], rows[found] = rows[found], rows[at]
-        inverse = pow(rows[at][column], -1, PRIME)
-        pivot = rows[at] = [value * inverse % PRIME for value in rows[at]]
-        for k, row in enumerate(rows):
+        done.add(r)
+        candidates = [column for column in rows[r] if column != size]
+        if not candidates:
+            continue
+        column = min(candidates, key=lambda k: (len(where[k]), k))
+        pivots[column] = r
+        inverse = pow(rows[r][column], -1, PRIME)
+        pivot = rows[r] = {k: value * inverse % PRIME for k, value in rows[r].items()}
+        for other in sorted(where[column] - {r}):
+            row = rows[other]
             factor = row[column]
-            if k != at and factor:
-                rows[k] = [(a - factor * b) % PRIME for a, b in zip(row, pivot, strict=True)]
-        pivots.append((at, column))
+            for k, value in pivot.items():
+                left = (row.get(k, 0) - factor * value) % PRIME
+                if left:
+                    row[k] = left
+                    where[k].add(other)
+                elif k in row:
+                    del row[k]
+                    where[k].discard(other)
+            if other not in done:
+                heappush(waiting, (len(row), other))
     return pivots
 
 
@@ -203,13 +229,13 @@ def undetermined(network: Network, naming: Naming, values: Mapping[str, Fraction
         system = _at(network, naming, point)
     except ZeroDivisionError:
         return Fault("the equations divide by zero for these values")
-    rows = [[e.value for e in row] + [0] for row in system.matrix]
-    pivots = _eliminate(rows)
-    bound = {column: row for row, column in pivots}
-    free = next((k for k in range(len(rows)) if k not in bound), None)
+    size = len(system.unknowns)
+    rows = [{k: e.value for k, e in row.items() if e.value} for row in system.matrix]
+    bound = _eliminate(rows, size)
+    free = next((k for k in range(size) if k not in bound), None)
     if free is None:
         return Fault("the equations have no single solution")
-    open_ones = [k for k in range(len(rows)) if k == free or (k in bound and rows[bound[k]][free])]
+    open_ones = [k for k in range(size) if k == free or (k in bound and free in rows[bound[k]])]
     names = [unknown_name(system.unknowns[k]) for k in open_ones]
     return Fault(
         f"the equations leave open: {', '.join(names)}",

@@ -269,10 +269,11 @@ class _Halves:
         self, diagram: Diagram, takes: Sequence[_Weight], leaves: Sequence[_Weight], own: Sequence[bool]
     ) -> None:
         self._diagram, self._takes, self._leaves, self._own = diagram, takes, leaves, own
+        # where paths part, or a weight has several terms, terms may fall together unless the piece has its own name
         parting = {
             i
             for i, leave, take in zip(diagram.piece, diagram.leave, diagram.take, strict=True)
-            if leave >= 0 <= take
+            if leave >= 0 <= take or len(takes[i]) > 1 or len(leaves[i]) > 1
         }
         self.all_own = all(own[i] for i in parting)
         self._steps = self._plain_steps()

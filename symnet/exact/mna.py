@@ -11,7 +11,7 @@ with the determinants: a law is read off by putting single unknowns to one, not 
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Container, Mapping, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 from typing import TYPE_CHECKING, Any
@@ -50,23 +50,28 @@ class Arithmetic:
 
 @dataclass(frozen=True)
 class Stamped:
-    """``matrix`` times unknowns = ``sources[drive]`` for a drive of value 1; ``rows`` and ``unknowns`` say which."""
+    """``matrix`` times unknowns = ``sources[drive]`` for a drive of value 1; ``rows`` and ``unknowns`` say which.
+
+    Each row of ``matrix``, and each source, maps the numbers of its columns (rows) to what stands there.
+    """
 
     rows: tuple[str, ...]
     unknowns: tuple[tuple[str, str], ...]
-    matrix: list[list[Any]]
-    sources: dict[str, list[Any]]
+    matrix: list[dict[int, Any]]
+    sources: dict[str, dict[int, Any]]
     _arithmetic: Arithmetic
     _network: Network
 
-    def weights(self, expression: Expression) -> list[Any]:
-        """The factor of each unknown in an expression of voltages and currents (a read, say)."""
-        return _weights(self._network, self._arithmetic, expression, self.unknowns)
+    def weights(self, expression: Expression) -> dict[int, Any]:
+        """The factor of each unknown in an expression of voltages and currents (a read, say), by its number."""
+        place = {unknown: k for k, unknown in enumerate(self.unknowns)}
+        found = _weights(self._network, self._arithmetic, expression, place)
+        return {place[unknown]: weight for unknown, weight in found.items()}
 
 
 def stamp(network: Network, arithmetic: Arithmetic) -> Stamped:
     """The modified nodal equations of a network in this arithmetic."""
-    zero, one = arithmetic.number(Fraction(0)), arithmetic.number(Fraction(1))
+    one = arithmetic.number(Fraction(1))
     nodes = network.nodes
     carriers: list[tuple[str, Any]] = [
         (name, drive)
@@ -83,12 +88,12 @@ def stamp(network: Network, arithmetic: Arithmetic) -> Stamped:
     unknowns = tuple([("v", node) for node in nodes] + [("i", name) for name, _ in carriers])
     place = {unknown: k for k, unknown in enumerate(unknowns)}
     size = len(unknowns)
-    matrix = [[zero] * size for _ in range(size)]
+    matrix: list[dict[int, Any]] = [{} for _ in range(size)]
 
     def add(row: tuple[str, str], column: tuple[str, str], value: Any) -> None:
         if row in place and column in place:
-            at = matrix[place[row]]
-            at[place[column]] = at[place[column]] + value
+            at, here = matrix[place[row]], place[column]
+            at[here] = at[here] + value if here in at else value
 
     def add_law(name: str, plus: str, minus: str) -> None:
         here = ("i", name)
@@ -122,24 +127,21 @@ def stamp(network: Network, arithmetic: Arithmetic) -> Stamped:
             add(b, a, -admittance)
     for part in network.parts:
         if isinstance(part, VoltageLaw | CurrentLaw):
-            weights = _weights(network, arithmetic, part.value, unknowns)
-            for unknown, weight in zip(unknowns, weights, strict=True):
+            for unknown, weight in _weights(network, arithmetic, part.value, place).items():
                 if isinstance(part, VoltageLaw):
                     add(("i", part.name), unknown, -weight)
                 else:
                     add(("v", part.start), unknown, weight)
                     add(("v", part.end), unknown, -weight)
-    sources: dict[str, list[Any]] = {}
+    sources: dict[str, dict[int, Any]] = {}
     for name, drive in zip(network.drive_names, network.drives, strict=True):
-        column = [zero] * size
         if isinstance(drive, VoltageDrive):
-            column[place["i", name]] = one
+            sources[name] = {place["i", name]: one}
         else:
-            for node, value in ((drive.end, one), (drive.start, -one)):
-                if ("v", node) in place:
-                    at = place["v", node]
-                    column[at] = column[at] + value
-        sources[name] = column
+            entering = {
+                node: value for node, value in ((drive.end, one), (drive.start, -one)) if ("v", node) in place
+            }
+            sources[name] = {place["v", node]: value for node, value in entering.items()}
     rows = tuple(f"KCL at {name}" if kind == "v" else f"law of {name}" for kind, name in unknowns)
     return Stamped(rows, unknowns, matrix, sources, arithmetic, network)
 
@@ -150,37 +152,53 @@ def _needs_current(part: Branch, arithmetic: Arithmetic) -> bool:
 
 
 def _weights(
-    network: Network, arithmetic: Arithmetic, expression: Expression, unknowns: Sequence[tuple[str, str]]
-) -> list[Any]:
+    network: Network, arithmetic: Arithmetic, expression: Expression, unknowns: Container[tuple[str, str]]
+) -> dict[tuple[str, str], Any]:
+    """The factor of each unknown that an expression names: its value with that unknown one and all others zero."""
     zero, one = arithmetic.number(Fraction(0)), arithmetic.number(Fraction(1))
-    out = []
-    for chosen in unknowns:
-        lookup = _Electric(network, {chosen: one}, zero, arithmetic)
-        out.append(evaluate(expression, lookup.value, lambda n: arithmetic.number(n.value)))
-    return out
+    lookup = _Electric(network, arithmetic, zero)
+
+    def value(values: dict[tuple[str, str], Any]) -> Any:
+        lookup.values = values
+        return evaluate(expression, lookup.value, lambda n: arithmetic.number(n.value))
+
+    asked: dict[tuple[str, str], Any] = _Asked(zero)
+    value(asked)
+    return {unknown: value({unknown: one}) for unknown in asked if unknown in unknowns}
 
 
-@dataclass(frozen=True)
+class _Asked(dict[tuple[str, str], Any]):
+    """Remembers which unknowns an expression asks for; all are zero."""
+
+    def __init__(self, zero: Any) -> None:
+        super().__init__()
+        self._zero = zero
+
+    def get(self, unknown: tuple[str, str], default: Any = None) -> Any:  # noqa: ARG002 - the default is our zero
+        self[unknown] = self._zero
+        return self._zero
+
+
 class _Electric:
-    """The value of any name in a law, when the unknowns have these values and all others are zero."""
+    """The value of any name in a law, when the unknowns have the given ``values`` and all others are zero."""
 
-    network: Network
-    values: Mapping[tuple[str, str], Any]
-    zero: Any
-    arithmetic: Arithmetic
+    def __init__(self, network: Network, arithmetic: Arithmetic, zero: Any) -> None:
+        self.network, self.arithmetic, self.zero = network, arithmetic, zero
+        self.values: Mapping[tuple[str, str], Any] = {}
+        self._nodes, self._symbols = frozenset(network.nodes), frozenset(network.symbols())
 
     def unknown(self, unknown: tuple[str, str]) -> Any:
         return self.values.get(unknown, self.zero)
 
     def value(self, name: Name) -> Any:
         word = name.name
-        if word == GROUND or word in self.network.nodes:
+        if word == GROUND or word in self._nodes:
             return self.voltage(word)
-        if word not in self.network.symbols() and word != "s":
+        if word not in self._symbols and word != "s":
             kind, _, rest = word.partition("_")
-            if kind == "v" and (rest in self.network.nodes or rest == GROUND):
+            if kind == "v" and (rest in self._nodes or rest == GROUND):
                 return self.voltage(rest)
-            if kind in ("v", "i"):
+            if kind in {"v", "i"}:
                 return self.of_part(kind, rest)
         return self.arithmetic.name(word)
 
@@ -270,12 +288,13 @@ def equations(network: Network) -> Equations:
     system: Stamped = stamp(
         network, Arithmetic(lambda number: Rational(number.numerator, number.denominator), name)
     )
+    columns = range(len(system.unknowns))
     return Equations(
         network,
         tuple(_lines(network, system)),
         tuple(unknown_name(unknown) for unknown in system.unknowns),
-        Matrix(system.matrix),
-        {drive: Matrix(column) for drive, column in system.sources.items()},
+        Matrix([[row.get(k, 0) for k in columns] for row in system.matrix]),
+        {drive: Matrix([column.get(k, 0) for k in columns]) for drive, column in system.sources.items()},
     )
 
 

@@ -102,3 +102,13 @@ def test_fields_do_not_run_into_each_other() -> None:
     fields = Fields.for_degrees([1] * 100 + [1000])
     assert fields.words == 2
     assert len({(word, shift) for word, shift, _ in fields.places}) == 101
+
+
+def test_terms_of_a_weight_fall_together_where_no_path_parts() -> None:
+    """Found by a random network: (1 + a)*(1 + a) on one forced path each has the term 2a."""
+    ring = make_ring(["a"])
+    _, a = ring.gens
+    pieces = [Piece(0, None, 0, None), Piece(1, None, 1, None)]
+    written = expand(build(2, pieces), ring.one, [1 + a, 1 + a], [ring.one, ring.one])
+    assert len(written) == 3
+    assert written.to_element(ring) == (1 + a) ** 2
