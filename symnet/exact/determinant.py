@@ -16,8 +16,9 @@ from math import lcm, prod
 from typing import TYPE_CHECKING, Any, Final
 
 from symnet.errors import Fault, LimitError
-from symnet.exact.expansion import Primitive, expand, highest_exponents
-from symnet.exact.modular import weight_at
+from symnet.exact.expansion import Primitive, expand
+from symnet.exact.modular import terms_at
+from symnet.exact.polynomials import Terms, highest_exponents, sparse_terms
 from symnet.exact.trees import Diagram
 
 if TYPE_CHECKING:
@@ -39,13 +40,24 @@ class Determinant:
     factor: PolyElement
 
     @cached_property
+    def weights(self) -> tuple[list[Terms], list[Terms]]:
+        """The weights of all pieces, take and leave, with only the names that occur in each."""
+        take, leave = ([sparse_terms(weight) for weight in side] for side in (self.take, self.leave))
+        return take, leave
+
+    def weights_modulo(self, point: Sequence[Any], prime: int) -> tuple[list[Any], list[Any]]:
+        """All weights at a point (s first, then the names in order), modulo a prime."""
+        take, leave = ([terms_at(terms, point, prime) for terms in side] for side in self.weights)
+        return take, leave
+
+    @cached_property
     def terms(self) -> int:
         """An upper bound of the number of terms written out, known without expanding.
 
         The smaller of the number of paths, exact when every piece has a symbol of its own, and the number of
         monomials that the degrees leave room for, which is small when parts are tied.
         """
-        degrees = highest_exponents(self.factor.ring.ngens, self.take, self.leave)
+        degrees = highest_exponents(self.factor.ring.ngens, *self.weights)
         return min(self.diagram.count(), prod(degree + 1 for degree in degrees))
 
     @cached_property
@@ -64,18 +76,17 @@ class Determinant:
 
     def modulo(self, point: Sequence[Any], prime: int) -> Any:
         """The value at a point (s first, then the names in order), modulo a prime."""
-        take = [weight_at(weight, point, prime) for weight in self.take]
-        leave = [weight_at(weight, point, prime) for weight in self.leave]
-        value = self.diagram.evaluate_modulo(take, leave, prime)
-        return value * weight_at(self.factor, point, prime) % prime
+        value = self.diagram.evaluate_modulo(*self.weights_modulo(point, prime), prime)
+        return value * terms_at(sparse_terms(self.factor), point, prime) % prime
 
 
 def pair_modulo(n: Determinant, d: Determinant, point: Sequence[Any], prime: int) -> tuple[Any, Any]:
     """N and D at a point modulo a prime; D's pieces are the first of N's, so their weights are found once."""
-    take = [weight_at(weight, point, prime) for weight in n.take]
-    leave = [weight_at(weight, point, prime) for weight in n.leave]
+    take, leave = n.weights_modulo(point, prime)
     top, bottom = (
-        det.diagram.evaluate_modulo(take, leave, prime) * weight_at(det.factor, point, prime) % prime
+        det.diagram.evaluate_modulo(take, leave, prime)
+        * terms_at(sparse_terms(det.factor), point, prime)
+        % prime
         for det in (n, d)
     )
     return top, bottom
@@ -94,13 +105,13 @@ def numeric_pair(n: Determinant, d: Determinant, values: Sequence[Fraction]) -> 
     has (the read) are scaled on both sides.
     """
     takes, leaves, scales = [], [], []
-    for take, leave in zip(n.take, n.leave, strict=True):
+    for take, leave in zip(*n.weights, strict=True):
         taken, left = _coefficients(take, values), _coefficients(leave, values)
         scale = lcm(*(c.denominator for c in (*taken, *left)))
         takes.append([int(c * scale) for c in taken])
         leaves.append([int(c * scale) for c in left])
         scales.append(scale)
-    n_factor, d_factor = _coefficients(n.factor, values), _coefficients(d.factor, values)
+    n_factor, d_factor = (_coefficients(sparse_terms(p), values) for p in (n.factor, d.factor))
     common = lcm(*(c.denominator for c in (*n_factor, *d_factor)))
     own = len(d.take)
     extra = prod(scales[own:]) * common
@@ -109,15 +120,18 @@ def numeric_pair(n: Determinant, d: Determinant, values: Sequence[Fraction]) -> 
     return top, bottom
 
 
-def _coefficients(weight: PolyElement, values: Sequence[Fraction]) -> list[Fraction]:
+def _coefficients(terms: Terms, values: Sequence[Fraction]) -> list[Fraction]:
     """The coefficients, ascending in s, of a weight at these values."""
-    out = [Fraction(0)] * (max((m[0] for m in weight), default=0) + 1)
-    for monomial, coefficient in weight.items():
-        term = Fraction(int(coefficient))
-        for value, exponent in zip(values, monomial[1:], strict=True):
-            if exponent:
-                term *= value**exponent
-        out[monomial[0]] += term
+    out: list[Fraction] = [Fraction(0)]
+    for coefficient, powers in terms:
+        term, degree = Fraction(coefficient), 0
+        for k, exponent in powers:
+            if k:
+                term *= values[k - 1] ** exponent
+            else:
+                degree = exponent
+        out += [Fraction(0)] * (degree + 1 - len(out))
+        out[degree] += term
     return out
 
 

@@ -22,13 +22,14 @@ from typing import TYPE_CHECKING, Any, Final, TypeAlias
 
 import numpy as np
 
+from symnet.exact.polynomials import highest_exponents, sparse_terms
 from symnet.exact.trees import Diagram
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray
     from sympy.polys.rings import PolyElement, PolyRing
 
-__all__ = ["Expansion", "Fields", "Primitive", "expand", "highest_exponents"]
+__all__ = ["Expansion", "Fields", "Primitive", "expand"]
 
 #: A weight as terms: the packed monomial and the coefficient.
 _Weight: TypeAlias = "list[tuple[int, int]]"
@@ -220,7 +221,11 @@ def expand(
 ) -> Expansion:
     """``factor`` times the determinant, written out, with the weights' ring generators as fields."""
     count = factor.ring.ngens
-    highest = map(add, highest_exponents(count, take, leave), map(max, zip(*factor, strict=True)))
+    highest = map(
+        add,
+        highest_exponents(count, *([sparse_terms(w) for w in side] for side in (take, leave))),
+        map(max, zip(*factor, strict=True)),
+    )
     fields = Fields.for_degrees(list(highest))
     if diagram.is_zero:
         return Expansion(fields, np.zeros((fields.words, 0), dtype=np.int64), np.zeros(0, dtype=np.int8))
@@ -368,15 +373,6 @@ def _sum(parts: Sequence[tuple[_Terms, _Weight, int]], *, own: bool) -> _Terms:
     for key, number in zip(keys, numbers or [1] * len(keys), strict=True):
         merged[key] = merged.get(key, 0) + number
     return [key for key, c in merged.items() if c], [c for c in merged.values() if c]
-
-
-def highest_exponents(count: int, take: Sequence[PolyElement], leave: Sequence[PolyElement]) -> list[int]:
-    """A bound on the exponent of each generator in the determinant."""
-    highest = [0] * count
-    for pair in zip(take, leave, strict=True):
-        for k, column in enumerate(zip(*(monomial for weight in pair for monomial in weight), strict=True)):
-            highest[k] += max(column)
-    return highest
 
 
 def _packed(weight: PolyElement, fields: Fields) -> _Weight:

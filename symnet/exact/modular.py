@@ -6,10 +6,12 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Any, Final
 
+from symnet.exact.polynomials import Terms, sparse_terms
+
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement
 
-__all__ = ["PRIME", "SMALL_PRIME", "Residue", "gcd_modulo", "interpolate", "weight_at"]
+__all__ = ["PRIME", "SMALL_PRIME", "Residue", "gcd_modulo", "interpolate", "terms_at", "weight_at"]
 
 #: A Mersenne prime: random points modulo it miss a wrong polynomial of degree d with probability d / 2^61.
 PRIME: Final = 2**61 - 1
@@ -56,16 +58,19 @@ class Residue:
 
 def weight_at(weight: PolyElement, point: Sequence[Any], prime: int) -> Any:
     """A ring element at a point whose coordinates are ints, or int64 arrays if the prime is below 2^31."""
-    if len(weight) == 1 and weight.ring.zero_monom in weight:
-        return int(weight[weight.ring.zero_monom]) % prime
+    return terms_at(sparse_terms(weight), point, prime)
+
+
+def terms_at(terms: Terms, point: Sequence[Any], prime: int) -> Any:
+    """The same for terms as :func:`~symnet.exact.polynomials.sparse_terms` gives them."""
     total: Any = 0
-    for monomial, coefficient in weight.items():
-        term: Any = int(coefficient) % prime
-        for base, exponent in zip(point, monomial, strict=True):
+    for coefficient, powers in terms:
+        term: Any = coefficient % prime
+        for k, exponent in powers:
             for _ in range(exponent):
-                term = term * base % prime
-        total = (total + term) % prime
-    return total
+                term = term * point[k] % prime
+        total = total + term if len(terms) > 1 else term
+    return total % prime
 
 
 def interpolate(values: Sequence[int], prime: int) -> list[int]:

@@ -3,12 +3,23 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
-from typing import TYPE_CHECKING, Any
+from typing import TYPE_CHECKING, Any, TypeAlias
 
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement, PolyRing
 
-__all__ = ["begins_negative", "by_powers_of_s", "make_ring", "modulo"]
+__all__ = [
+    "Terms",
+    "begins_negative",
+    "by_powers_of_s",
+    "highest_exponents",
+    "make_ring",
+    "modulo",
+    "sparse_terms",
+]
+
+#: Terms as (coefficient, ((generator, exponent), ...)), with the exponents that are not zero only.
+Terms: TypeAlias = "tuple[tuple[int, tuple[tuple[int, int], ...]], ...]"
 
 
 def make_ring(names: Iterable[str]) -> PolyRing:
@@ -55,3 +66,34 @@ def modulo(polynomial: PolyElement, point: Sequence[int], prime: int) -> int:
                 term = term * (base if exponent == 1 else pow(base, exponent, prime)) % prime
         total += term
     return total % prime
+
+
+def sparse_terms(polynomial: PolyElement) -> Terms:
+    """The terms with only the generators that occur: in a long network a weight holds one or two of thousands."""
+    return tuple((int(c), tuple(_powers(monomial))) for monomial, c in polynomial.items())
+
+
+def _powers(monomial: tuple[int, ...]) -> list[tuple[int, int]]:
+    rest, place, found = sum(monomial), -1, []
+    while rest:
+        try:
+            place = monomial.index(1, place + 1)  # nearly every exponent is 1
+        except ValueError:
+            break
+        found.append((place, 1))
+        rest -= 1
+    return found if not rest else [(k, e) for k, e in enumerate(monomial) if e]
+
+
+def highest_exponents(count: int, take: Sequence[Terms], leave: Sequence[Terms]) -> list[int]:
+    """A bound on the exponent of each generator in a product of one of take or leave for every piece."""
+    highest = [0] * count
+    for pair in zip(take, leave, strict=True):
+        here: dict[int, int] = {}
+        for terms in pair:
+            for _, powers in terms:
+                for k, exponent in powers:
+                    here[k] = max(here.get(k, 0), exponent)
+        for k, exponent in here.items():
+            highest[k] += exponent
+    return highest

@@ -1,0 +1,79 @@
+"""The weights of a determinant in floating point, for all frequencies of a sweep at once.
+
+:mod:`symnet.exact.sweeps` reads a diagram at many points; here is what it is fed with. A weight is a short
+polynomial in s and the names, so it is evaluated as it stands: the names first, in exact fractions, then its
+powers of s on the whole array of points. Each coefficient is so rounded once, and weights that no frequency
+touches are constant rows.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from fractions import Fraction
+from typing import TYPE_CHECKING, Any
+
+import numpy as np
+
+from symnet.errors import Fault, MissingValueError
+
+if TYPE_CHECKING:
+    from numpy.typing import NDArray
+    from sympy.polys.rings import PolyElement
+
+    from symnet.exact.determinant import Determinant
+
+__all__ = ["weight_row", "weights_at"]
+
+
+def weights_at(
+    determinant: Determinant, values: Mapping[str, Fraction], s: NDArray[Any]
+) -> tuple[NDArray[Any], NDArray[Any]]:
+    """The weights (take, leave) of every piece at these points, as arrays (pieces x points).
+
+    ``values`` gives the numbers (SI units) of the names that occur, ``s`` the points in rad/s, a real or complex
+    array of one dimension. ``determinant.factor`` is not among the weights. Raises MissingValueError where a
+    name that occurs has no number.
+
+    >>> import numpy as np
+    >>> import symnet as sn
+    >>> H = sn.derive(sn.network("in -- R1 = 2 ohm -- out -- C1 = 3 F -- gnd; drive in; read out"))
+    >>> take, leave = weights_at(H.quotient.denominator, H.values, np.array([1j, 2j]))
+    >>> take[-1].tolist(), leave[-2].tolist()
+    ([3j, 6j], [(2+0j), (2+0j)])
+    """
+    points = np.atleast_1d(s)
+    symbols = [str(symbol) for symbol in determinant.factor.ring.symbols[1:]]
+    numbers = [values.get(name) for name in symbols]
+    take, leave = (
+        np.array([_row(weight, symbols, numbers, points) for weight in weights]).reshape(-1, len(points))
+        for weights in (determinant.take, determinant.leave)
+    )
+    return take, leave
+
+
+def weight_row(weight: PolyElement, values: Mapping[str, Fraction], s: NDArray[Any]) -> NDArray[Any]:
+    """One ring element at these points, such as the factor of a determinant; raises as :func:`weights_at`."""
+    symbols = [str(symbol) for symbol in weight.ring.symbols[1:]]
+    return _row(weight, symbols, [values.get(name) for name in symbols], np.atleast_1d(s))
+
+
+def _row(
+    weight: PolyElement, symbols: list[str], numbers: list[Fraction | None], points: NDArray[Any]
+) -> NDArray[Any]:
+    by_power: dict[int, Fraction] = {}
+    for monomial, coefficient in weight.items():
+        term = Fraction(int(coefficient))
+        for place, exponent in enumerate(monomial[1:]):
+            if exponent:
+                number = numbers[place]
+                if number is None:
+                    name = symbols[place]
+                    raise MissingValueError(
+                        Fault(f"no value for {name}", f'give one: H.with_values({name}="...")', parts=(name,))
+                    )
+                term *= number**exponent
+        by_power[monomial[0]] = by_power.get(monomial[0], Fraction(0)) + term
+    row: NDArray[Any] = np.zeros(points.shape, dtype=np.result_type(points, np.float64))
+    for power, value in by_power.items():
+        row += float(value) * points**power if power else float(value)
+    return row
