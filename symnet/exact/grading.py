@@ -35,6 +35,8 @@ def factors_in_s(space: Space, p: Polynomial) -> tuple[int, int, Factors]:
     for block, exponent in found:
         degrees = {m: _weighed(space.unpack(m), weights) for m in block}
         least = min(degrees.values())
+        if any((degree - least) % 1 for degree in degrees.values()):
+            return space.factors(p)  # the factors would need roots of s, as in s*R^2 - 1
         restored.append(({m + int(degrees[m] - least) * unit: c for m, c in block.items()}, exponent))
     return coefficient, monomial + min(e[0] for e in exponents) * unit, restored
 

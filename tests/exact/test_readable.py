@@ -350,3 +350,12 @@ def test_a_form_that_fails_its_check_is_not_shown(monkeypatch: pytest.MonkeyPatc
         tree = readable_transfer(R1, R1 + R2)
     above, below = as_ratio(tree, R1.ring)
     assert above * (R1 + R2) == below * R1
+
+
+def test_factors_that_would_need_a_root_of_s_are_none() -> None:
+    """Found by random forms: with s = 1, s*R^2 - 1 is (R - 1)*(R + 1), and neither factor can take s back."""
+    s, R1 = gens("R1")
+    for sign in (1, -1):
+        tree = readable_transfer(R1.ring.one, s * R1**2 - sign)
+        above, below = as_ratio(tree, R1.ring)
+        assert above * (s * R1**2 - sign) == below
