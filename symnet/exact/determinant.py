@@ -16,7 +16,7 @@ from math import lcm, prod
 from typing import TYPE_CHECKING, Any, Final
 
 from symnet.errors import Fault, LimitError
-from symnet.exact.expansion import Primitive, expand
+from symnet.exact.expansion import Primitive, expand_terms
 from symnet.exact.modular import terms_at
 from symnet.exact.polynomials import Terms, highest_exponents, sparse_terms
 from symnet.exact.trees import Diagram
@@ -72,7 +72,9 @@ class Determinant:
                     'derive(net, symbols="R1 C1")',
                 )
             )
-        return Primitive.of(expand(self.diagram, self.factor, self.take, self.leave))
+        return Primitive.of(
+            expand_terms(self.diagram, self.factor.ring.ngens, sparse_terms(self.factor), *self.weights)
+        )
 
     def modulo(self, point: Sequence[Any], prime: int) -> Any:
         """The value at a point (s first, then the names in order), modulo a prime."""

@@ -12,24 +12,24 @@ Measured, all symbols different (tests/speed): a 13-section RC ladder, 196 418 t
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Sequence
 from dataclasses import dataclass
 from functools import cached_property
 from itertools import groupby
 from math import gcd
-from operator import add
 from typing import TYPE_CHECKING, Any, Final, TypeAlias
 
 import numpy as np
 
-from symnet.exact.polynomials import highest_exponents, sparse_terms
+from symnet.exact.polynomials import Terms, highest_exponents, sparse_terms
 from symnet.exact.trees import Diagram
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray
     from sympy.polys.rings import PolyElement, PolyRing
 
-__all__ = ["Expansion", "Fields", "Primitive", "expand"]
+__all__ = ["Expansion", "Fields", "Primitive", "expand", "expand_terms"]
 
 #: A weight as terms: the packed monomial and the coefficient.
 _Weight: TypeAlias = "list[tuple[int, int]]"
@@ -67,6 +67,10 @@ class Fields:
             for exponent, (word, shift, _) in zip(monomial, self.places, strict=True)
             if exponent
         )
+
+    def bits(self) -> list[int]:
+        """The lowest bit of each field in a packed monomial."""
+        return [word * _WORD + shift for word, shift, _ in self.places]
 
     def words_of(self, packed: Sequence[int]) -> NDArray[np.int64]:
         """Packed monomials as an array (words x monomials)."""
@@ -220,23 +224,26 @@ def expand(
     diagram: Diagram, factor: PolyElement, take: Sequence[PolyElement], leave: Sequence[PolyElement]
 ) -> Expansion:
     """``factor`` times the determinant, written out, with the weights' ring generators as fields."""
-    count = factor.ring.ngens
-    highest = map(
-        add,
-        highest_exponents(count, *([sparse_terms(w) for w in side] for side in (take, leave))),
-        map(max, zip(*factor, strict=True)),
-    )
-    fields = Fields.for_degrees(list(highest))
+    takes, leaves = ([sparse_terms(weight) for weight in side] for side in (take, leave))
+    return expand_terms(diagram, factor.ring.ngens, sparse_terms(factor), takes, leaves)
+
+
+def expand_terms(
+    diagram: Diagram, count: int, factor: Terms, take: Sequence[Terms], leave: Sequence[Terms]
+) -> Expansion:
+    """The same for weights given as terms in ``count`` generators."""
+    highest = highest_exponents(count, [*take, factor], [*leave, factor])
+    fields = Fields.for_degrees(highest)
     if diagram.is_zero:
         return Expansion(fields, np.zeros((fields.words, 0), dtype=np.int64), np.zeros(0, dtype=np.int8))
-    own = _own_names(count, take, leave)
+    own = _own_names(take, leave)
     dtype = _coefficient_type(diagram, factor, take, leave, own)
-    takes = [_packed(weight, fields) for weight in take]
-    leaves = [_packed(weight, fields) for weight in leave]
+    bits = fields.bits()
+    takes, leaves = ([_packed(terms, bits) for terms in side] for side in (take, leave))
     halves = _Halves(diagram, takes, leaves, own)
     cut = halves.cut()
     below, above = halves.below(cut), halves.above(cut)
-    last = _packed(factor, fields)
+    last = _packed(factor, bits)
     keys: list[NDArray[np.int64]] = []
     coefficients: list[NDArray[Any]] = []
     for node, (upper, upper_numbers) in above.items():
@@ -375,54 +382,48 @@ def _sum(parts: Sequence[tuple[_Terms, _Weight, int]], *, own: bool) -> _Terms:
     return [key for key, c in merged.items() if c], [c for c in merged.values() if c]
 
 
-def _packed(weight: PolyElement, fields: Fields) -> _Weight:
-    return [(fields.pack(monomial), int(coefficient)) for monomial, coefficient in weight.items()]
+def _packed(terms: Terms, bits: Sequence[int]) -> _Weight:
+    return [(sum(e << bits[k] for k, e in powers), coefficient) for coefficient, powers in terms]
 
 
-def _own_names(count: int, take: Sequence[PolyElement], leave: Sequence[PolyElement]) -> list[bool]:
+def _own_names(take: Sequence[Terms], leave: Sequence[Terms]) -> list[bool]:
     """Whether each piece has a name of its own by which its take and its leave differ."""
-    owners = [0] * count
+    owners: Counter[int] = Counter()
     for pair in zip(take, leave, strict=True):
-        used = {k for weight in pair for monomial in weight for k, e in enumerate(monomial) if e}
-        for k in used:
-            owners[k] += 1
+        owners.update({k for terms in pair for _, powers in terms for k, _ in powers})
     own = []
     for t, m in zip(take, leave, strict=True):
         if len(t) == len(m) == 1:
-            (a,), (b,) = t, m
-            own.append(any(owners[k] == 1 and a[k] != b[k] for k in range(count)))
+            differing = {k for k, _ in set(t[0][1]) ^ set(m[0][1])}
+            own.append(any(owners[k] == 1 for k in differing))
         else:
             own.append(False)
     return own
 
 
 def _coefficient_type(
-    diagram: Diagram,
-    factor: PolyElement,
-    take: Sequence[PolyElement],
-    leave: Sequence[PolyElement],
-    own: Sequence[bool],
+    diagram: Diagram, factor: Terms, take: Sequence[Terms], leave: Sequence[Terms], own: Sequence[bool]
 ) -> np.dtype[Any]:
     """int8 where every coefficient is +1 or -1, int64 where it surely fits, Python integers otherwise."""
-    sizes = [[_size(weight) for weight in weights] for weights in (take, leave)]
-    both = [
-        k
-        for k in range(len(diagram))
-        if diagram.leave[k] >= 0 and diagram.take[k] >= 0 and not own[diagram.piece[k]]
-    ]
-    if not both and _size(factor) == 1 and all(size == 1 for side in sizes for size in side):
+    sizes = [[_size(terms) for terms in weights] for weights in (take, leave)]
+    single = all(
+        own[i]
+        for i, to_leave, to_take in zip(diagram.piece, diagram.leave, diagram.take, strict=True)
+        if to_leave >= 0 <= to_take
+    )
+    if single and _size(factor) == 1 and all(size == 1 for side in sizes for size in side):
         return np.dtype(np.int8)
     if diagram.bound(*sizes) * _size(factor) < 2**62:
         return np.dtype(np.int64)
     return np.dtype(object)
 
 
+def _size(terms: Terms) -> int:
+    return sum(abs(coefficient) for coefficient, _ in terms)
+
+
 def _as(dtype: np.dtype[Any], number: int) -> Any:
     return number if dtype.hasobject else dtype.type(number)
-
-
-def _size(weight: PolyElement) -> int:
-    return sum(abs(int(c)) for c in weight.values())
 
 
 def _merged(keys: NDArray[np.int64], coefficients: NDArray[Any]) -> tuple[NDArray[np.int64], NDArray[Any]]:

@@ -9,9 +9,11 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping
 from dataclasses import dataclass, replace
 from fractions import Fraction
+from functools import cached_property
 from types import MappingProxyType
 from typing import TYPE_CHECKING
 
+from symnet.circuit.names import dimensions
 from symnet.circuit.network import Network
 from symnet.circuit.parts import Branch
 from symnet.errors import Fault, NotationError, SingularError
@@ -38,8 +40,19 @@ class Naming:
     ring: PolyRing
     field: FracField
     numbers: Mapping[str, Fraction]
-    dimensions: Mapping[str, Dimension | None]
+    _network: Network
     _ties: Mapping[str, FracElement]
+
+    @cached_property
+    def names(self) -> frozenset[str]:
+        """The names in the ring, s included."""
+        return frozenset(map(str, self.ring.symbols))
+
+    @cached_property
+    def dimensions(self) -> Mapping[str, Dimension | None]:
+        """The dimension of s (1/second) and of every name in the ring; None where nothing tells it."""
+        found = {**dimensions(self._network), "s": SECOND**-1}
+        return MappingProxyType({str(symbol): found.get(str(symbol)) for symbol in self.ring.symbols})
 
     @classmethod
     def of(cls, network: Network, symbols: frozenset[str] | None = None) -> Naming:
@@ -91,14 +104,11 @@ class Naming:
                 known[name] = fraction_of(
                     ties[name], field, lambda inner: known[inner.name], f"the value of {name}"
                 )
-        from symnet.circuit.names import dimensions
-
-        found = {**dimensions(network), "s": SECOND**-1}
         return cls(
             ring,
             field,
             MappingProxyType({name: numbers[name] for name in remaining if name in numbers}),
-            MappingProxyType({str(symbol): found.get(str(symbol)) for symbol in ring.symbols}),
+            network,
             MappingProxyType(known),
         )
 
@@ -122,7 +132,7 @@ class Naming:
                 )
             else:
                 numbers[name] = _number(name, value.expression)
-        return replace(self, numbers=MappingProxyType(numbers))
+        return replace(self, numbers=MappingProxyType(numbers), _network=network)
 
     def value(self, name: str) -> FracElement:
         """What a name stands for, as a fraction of ring elements."""

@@ -87,7 +87,7 @@ class Pieces:
         if word in self.nodes or word == GROUND:
             return self._voltage(word)
         kind, _, rest = word.partition("_")
-        if kind in ("v", "i") and rest and word not in self.naming.dimensions:
+        if kind in ("v", "i") and rest and word not in self.naming.names:
             return self._v(rest, name) if kind == "v" else self._i(rest, name)
         return LinearForm(Bounded(self.naming.fraction(name)), {})
 
