@@ -34,9 +34,12 @@ if TYPE_CHECKING:
     from symnet.exact.derive import derive, derive_all
     from symnet.exact.limits import limits
     from symnet.exact.mna import equations
+    from symnet.exact.scaling import scale
     from symnet.exact.transfer import Transfer
     from symnet.present.brief import brief
     from symnet.response.frequency import group_delay, phase
+    from symnet.shape.difference import compare
+    from symnet.shape.dominant import dominant
     from symnet.shape.families.bessel import bessel
     from symnet.shape.families.butterworth import butterworth
     from symnet.shape.families.chebyshev import chebyshev
@@ -45,6 +48,7 @@ if TYPE_CHECKING:
     from symnet.shape.normal import normalise
     from symnet.shape.recognise import recognise
     from symnet.shape.sections import sections
+    from symnet.shape.split import split_poles
 
 __version__ = "0.1.0"
 
@@ -58,8 +62,10 @@ __all__ = [
     "butterworth",
     "capacitor",
     "chebyshev",
+    "compare",
     "derive",
     "derive_all",
+    "dominant",
     "drive",
     "equations",
     "f3db",
@@ -78,7 +84,9 @@ __all__ = [
     "read",
     "recognise",
     "resistor",
+    "scale",
     "sections",
+    "split_poles",
 ]
 
 #: module -> the public names that it defines
@@ -89,9 +97,12 @@ _WHERE = {
     "symnet.exact.derive": "derive derive_all",
     "symnet.exact.limits": "limits",
     "symnet.exact.mna": "equations",
+    "symnet.exact.scaling": "scale",
     "symnet.exact.transfer": "Transfer",
     "symnet.present.brief": "brief",
     "symnet.response.frequency": "group_delay phase",
+    "symnet.shape.difference": "compare",
+    "symnet.shape.dominant": "dominant",
     "symnet.shape.families.bessel": "bessel",
     "symnet.shape.families.butterworth": "butterworth",
     "symnet.shape.families.chebyshev": "chebyshev",
@@ -100,6 +111,7 @@ _WHERE = {
     "symnet.shape.normal": "normalise",
     "symnet.shape.recognise": "recognise",
     "symnet.shape.sections": "sections",
+    "symnet.shape.split": "split_poles",
 }
 
 _MODULE_OF = {name: module for module, names in _WHERE.items() for name in names.split()}

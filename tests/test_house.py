@@ -46,8 +46,10 @@ WORDS = {
     "butterworth",
     "capacitor",
     "chebyshev",
+    "compare",
     "derive",
     "derive_all",
+    "dominant",
     "drive",
     "equations",
     "f3db",
@@ -66,7 +68,9 @@ WORDS = {
     "read",
     "recognise",
     "resistor",
+    "scale",
     "sections",
+    "split_poles",
 }
 
 

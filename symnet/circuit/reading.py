@@ -176,7 +176,7 @@ def read_value(text: str, name: str, dimension: Dimension | None = None) -> Valu
         return value_of(name, side, dimension)
 
     _must_be_text(text)
-    code = re.match(r"\w+(?=\s*(?:$|±|\+))", text.strip())
+    code = re.match(r"\w+(?=\s*(?:$|±|\+\s*/?\s*-\s*\d))", text.strip())
     if code is None or not LEADING_CODE.fullmatch(code[0]):
         return _alone(text, "value", made)
     try:  # as a number with prefix, so that dimension and tolerance are treated as those of any other value

@@ -124,10 +124,11 @@ def scale(network: Network, frequency: Factor | None = None, impedance: Factor |
     if not network.drives or not network.reads:
         return Scaling(network, after, factors, (), "no drive or no read, so no H to compare")
     try:
-        pairs = tuple(zip(derive_all(network), derive_all(after), strict=True))
+        pairs = zip(derive_all(network), derive_all(after), strict=True)
+        identities = tuple(_identity(a, b, factors) for a, b in pairs)
     except (WiringError, SingularError) as error:
         return Scaling(network, after, factors, (), f"no H to compare: {error.faults[0].message}")
-    return Scaling(network, after, factors, tuple(_identity(a, b, factors) for a, b in pairs))
+    return Scaling(network, after, factors, identities)
 
 
 def is_scaled_copy(

@@ -12,9 +12,12 @@ from symnet.circuit.network import Network
 from symnet.exact.limits import Limits
 from symnet.exact.mna import Equations
 from symnet.exact.naming import Naming
+from symnet.exact.scaling import Scaling
 from symnet.exact.transfer import Transfer
 from symnet.present.blocks import Block, Formula, Table
 from symnet.present.brief import Brief
+from symnet.present.difference import comparison_blocks
+from symnet.present.dominant import dominant_blocks, split_blocks
 from symnet.present.network import network_blocks
 from symnet.present.response import half_power_rows
 from symnet.present.results import (
@@ -26,14 +29,18 @@ from symnet.present.results import (
     transfer_blocks,
     transfer_formula,
 )
+from symnet.present.scaling import scaling_blocks
 from symnet.present.shapes import form_blocks, normal_blocks, sections_blocks
 from symnet.present.writers import formula_latex, html, latex, markdown, text
 from symnet.quantities import NUMBER
+from symnet.shape.difference import Comparison
+from symnet.shape.dominant import Dominant
 from symnet.shape.families.prototype import Prototype
 from symnet.shape.figures import HalfPower
 from symnet.shape.forms import Form
 from symnet.shape.normal import NormalForm
 from symnet.shape.sections import Sections
+from symnet.shape.split import SplitPoles
 from symnet.shape.stated import Conditions
 from symnet.shape.verdict import Recognition
 from symnet.typeset.displayed import Bundle, formats
@@ -116,3 +123,23 @@ def _recognition(value: Recognition) -> Bundle:
 @formats(Conditions)
 def _conditions(value: Conditions) -> Bundle:
     return bundle(conditions_blocks(value))
+
+
+@formats(Dominant)
+def _dominant(value: Dominant) -> Bundle:
+    return bundle(dominant_blocks(value))
+
+
+@formats(SplitPoles)
+def _split_poles(value: SplitPoles) -> Bundle:
+    return bundle(split_blocks(value))
+
+
+@formats(Scaling)
+def _scaling(value: Scaling) -> Bundle:
+    return bundle(scaling_blocks(value))
+
+
+@formats(Comparison)
+def _comparison(value: Comparison) -> Bundle:
+    return bundle(comparison_blocks(value))

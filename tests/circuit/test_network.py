@@ -235,3 +235,10 @@ def test_a_symbol_takes_the_unit_that_the_laws_give_it() -> None:
     assert value is not None
     assert net.with_values(gm=0.002).value("gm") == value
     assert net.with_values(gm="2m") == sn.network(net.with_values(gm="2m").to_text())
+
+
+def test_a_part_at_the_start_of_an_expression_is_no_code() -> None:
+    """R1 alone may be the code of 0.1 ohm; in front of a sum it is the part."""
+    net = sn.network("in -- R1 -- out -- R2 -- gnd; drive in; read i_R1")
+    assert sn.derive(net.with_values(R2="R1 + 5 kohm")).names == ("R1",)
+    assert number(net.with_values(R2="R47 +/- 1%"), "R2") == Fraction(47, 100)
