@@ -16,7 +16,7 @@ from math import lcm, prod
 from typing import TYPE_CHECKING, Any, Final
 
 from symnet.errors import Fault, LimitError
-from symnet.exact.expansion import Primitive, expand_terms
+from symnet.exact.expansion import Expansion, Primitive, expand_terms
 from symnet.exact.modular import terms_at
 from symnet.exact.polynomials import Terms, highest_exponents, sparse_terms
 from symnet.exact.trees import Diagram
@@ -62,19 +62,25 @@ class Determinant:
 
     @cached_property
     def primitive(self) -> Primitive:
-        """Written out, its common integer and monomial factors apart; LimitError beyond :data:`MOST_TERMS` paths."""
-        if self.terms > MOST_TERMS:
+        """Written out, its common integer and monomial factors apart; LimitError beyond :data:`MOST_TERMS` terms."""
+        return Primitive.of(self.written())
+
+    def written(self, most: int = MOST_TERMS) -> Expansion:
+        """Written out in arrays, term by term; LimitError when there may be more than ``most`` terms.
+
+        A term takes about 9 bytes for each machine word of its packed exponents (60 names or so go into one), and
+        three times that while it is made: two million terms stay below 100 MB.
+        """
+        if self.terms > most:
             raise LimitError(
                 Fault(
                     f"written out, this determinant has up to {count_in_words(self.terms)} terms; "
-                    f"the limit is {MOST_TERMS}",
+                    f"the limit is {most}",
                     "give the parts values and use H.numeric(), or keep only a few names as symbols: "
                     'derive(net, symbols="R1 C1")',
                 )
             )
-        return Primitive.of(
-            expand_terms(self.diagram, self.factor.ring.ngens, sparse_terms(self.factor), *self.weights)
-        )
+        return expand_terms(self.diagram, self.factor.ring.ngens, sparse_terms(self.factor), *self.weights)
 
     def modulo(self, point: Sequence[Any], prime: int) -> Any:
         """The value at a point (s first, then the names in order), modulo a prime."""

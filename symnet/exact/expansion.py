@@ -13,7 +13,7 @@ Measured, all symbols different (tests/speed): a 13-section RC ladder, 196 418 t
 from __future__ import annotations
 
 from collections import Counter
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
 from functools import cached_property
 from itertools import groupby
@@ -92,6 +92,12 @@ class Expansion:
 
     def __len__(self) -> int:
         return int(self.keys.shape[1])
+
+    def __iter__(self) -> Iterator[tuple[int, tuple[int, ...]]]:
+        """The terms one by one, as (coefficient, exponents of the generators)."""
+        columns = [self.exponents(k) for k in range(len(self.fields.places))]
+        for term, coefficient in enumerate(self.coefficients):
+            yield int(coefficient), tuple(int(column[term]) for column in columns)
 
     def exponents(self, generator: int) -> NDArray[np.int64]:
         """The exponent of one generator in every term."""

@@ -10,6 +10,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from fractions import Fraction
+from itertools import compress, count
 from typing import TYPE_CHECKING, Any
 
 import numpy as np
@@ -63,15 +64,15 @@ def _row(
     by_power: dict[int, Fraction] = {}
     for monomial, coefficient in weight.items():
         term = Fraction(int(coefficient))
-        for place, exponent in enumerate(monomial[1:]):
-            if exponent:
-                number = numbers[place]
-                if number is None:
-                    name = symbols[place]
-                    raise MissingValueError(
-                        Fault(f"no value for {name}", f'give one: H.with_values({name}="...")', parts=(name,))
-                    )
-                term *= number**exponent
+        exponents = monomial[1:]
+        for place in compress(count(), exponents):
+            number = numbers[place]
+            if number is None:
+                name = symbols[place]
+                raise MissingValueError(
+                    Fault(f"no value for {name}", f'give one: H.with_values({name}="...")', parts=(name,))
+                )
+            term *= number ** exponents[place]
         by_power[monomial[0]] = by_power.get(monomial[0], Fraction(0)) + term
     row: NDArray[Any] = np.zeros(points.shape, dtype=np.result_type(points, np.float64))
     for power, value in by_power.items():

@@ -3,8 +3,9 @@
 Integers and monomials common to all terms go first, at no cost. A further common factor must hold some name
 that both polynomials have; for each such name all others are given random values modulo a prime, and the gcd
 of what remains is taken. If it is a power of the name for every name, there is no common factor: a true factor
-would still divide after the values are put in. That certificate needs only a few evaluations of the diagrams;
-the multivariate gcd over the integers is taken only when it fails.
+would still divide after the values are put in. That certificate needs only a few evaluations of the diagrams.
+When it fails, a factor that shares no name with the rest is cut out (:mod:`symnet.exact.apart`); the multivariate
+gcd over the integers is left for what is not of that kind.
 """
 
 from __future__ import annotations
@@ -18,6 +19,7 @@ from random import Random
 from typing import TYPE_CHECKING, Any, Final
 
 from symnet.errors import Fault, LimitError
+from symnet.exact.apart import take_apart
 from symnet.exact.expansion import Expansion, Primitive
 from symnet.exact.modular import SMALL_PRIME, gcd_modulo, interpolate
 from symnet.exact.polynomials import begins_negative
@@ -88,6 +90,16 @@ def reduce(numerator: Primitive, denominator: Primitive, ring: PolyRing, at: Eva
         top = numerator.part.times(number.numerator, n_rest)
         bottom = denominator.part.times(number.denominator, d_rest)
         return LowestTerms(ring, top, bottom, tuple(hidden))
+    apart = take_apart(numerator, denominator, at)
+    if apart is not None:
+        n_side, d_side = apart.numerator, apart.denominator
+        rest = reduce(
+            Primitive.of(n_side), Primitive.of(d_side), ring, lambda point: _both(n_side, d_side, point)
+        )
+        hidden.extend((*_factors_with_s(apart.common.to_element(ring)), *rest.hidden))
+        top = _times(rest.top, number.numerator, n_rest)
+        bottom = _times(rest.bottom, number.denominator, d_rest)
+        return LowestTerms(ring, top, bottom, tuple(hidden))
     terms = max(len(numerator.part), len(denominator.part))
     if terms > MOST_TERMS_FOR_GCD:
         raise LimitError(
@@ -106,7 +118,22 @@ def reduce(numerator: Primitive, denominator: Primitive, ring: PolyRing, at: Eva
     return LowestTerms(ring, n, d, tuple(hidden))
 
 
-def _times(polynomial: PolyElement, number: int, exponents: tuple[int, ...]) -> PolyElement:
+def _both(n: Expansion, d: Expansion, point: list[Any]) -> tuple[Any, Any]:
+    """Two expansions at points that are int64 arrays, one point after the other."""
+    import numpy as np
+
+    single = [[int(x) for x in coordinates] for coordinates in zip(*point, strict=True)]
+    n_values, d_values = (
+        np.array([side.modulo(x, SMALL_PRIME) for x in single], dtype=np.int64) for side in (n, d)
+    )
+    return n_values, d_values
+
+
+def _times(
+    polynomial: Expansion | PolyElement, number: int, exponents: tuple[int, ...]
+) -> Expansion | PolyElement:
+    if isinstance(polynomial, Expansion):
+        return polynomial.times(number, exponents)
     if number != 1:
         polynomial = polynomial.mul_ground(number)
     return polynomial.mul_monom(exponents) if any(exponents) else polynomial

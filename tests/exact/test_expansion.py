@@ -112,3 +112,26 @@ def test_terms_of_a_weight_fall_together_where_no_path_parts() -> None:
     written = expand(build(2, pieces), ring.one, [1 + a, 1 + a], [ring.one, ring.one])
     assert len(written) == 3
     assert written.to_element(ring) == (1 + a) ** 2
+
+
+def test_terms_can_be_read_one_by_one() -> None:
+    ring = make_ring(["R", "C"])
+    s, r, c = ring.gens
+    polynomial = 2 * s * r - 3 * c**2 + 1
+    assert {exponents: number for number, exponents in written_out(polynomial, ring)} == dict(polynomial)
+
+
+def test_two_million_terms_stay_far_below_a_gigabyte() -> None:
+    """A 15-section ladder of different parts and a load: the arrays of its terms, and what making them takes."""
+    import tracemalloc
+
+    import symnet as sn
+
+    chain = [f"n{k} -- R{k + 1} -- n{k + 1} -- C{k + 1} -- gnd" for k in range(15)]
+    H = sn.derive(sn.network("\n".join([*chain, "n15 -- RL -- gnd", "drive n0", "read n15"])))
+    tracemalloc.start()
+    written = H.quotient.denominator.written(most=5_000_000)
+    peak = tracemalloc.get_traced_memory()[1]
+    tracemalloc.stop()
+    assert len(written) == H.terms[1] == 2_178_309  # F(32)
+    assert peak < 200_000_000
