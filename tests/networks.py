@@ -20,7 +20,7 @@ from tests.oracle import Drawing, Part
 T = TypeVar("T")
 Whole = Callable[[int, int], int]
 
-NODES = "abcdefgh"
+NODES = "abcdefghjkmnpqr"
 DIGITS = ("1", "1.5", "2.2", "3.3", "4.7", "6.8")
 
 #: class letter: unit in text, SI value of that unit, smallest and largest decade
@@ -52,6 +52,7 @@ class _Pencil:
 
     whole: Whole
     rational: bool
+    single: bool = False
     lines: list[str] = field(default_factory=list)
     parts: list[Part] = field(default_factory=list)
     values: dict[str, Fraction] = field(default_factory=dict)
@@ -113,7 +114,7 @@ class _Pencil:
     def law(self, nodes: Sequence[str], kinds: dict[bool, tuple[str, str, Fraction]]) -> str:
         """A law of one or two voltages or currents; ``kinds`` says per voltage (False) or current what the factor is."""
         terms = []
-        for _ in range(1 if self.whole(0, 3) else 2):
+        for _ in range(1 if self.single or self.whole(0, 3) else 2):
             control, of_current = self.control(nodes)
             terms.append(f"{self.symbol(*kinds[of_current])}*{control}")
         law = " - ".join(terms)
@@ -137,13 +138,26 @@ class _Pencil:
         return self.pick(nodes), False
 
 
-def build(whole: Whole, most_nodes: int = 6, rational: bool = True, active: bool = True) -> Sketch:
-    """A connected network; ``whole(low, high)`` gives whole numbers, low and high included."""
-    pencil = _Pencil(whole, rational)
-    nodes = list(NODES[: whole(2, most_nodes)])
+def build(
+    whole: Whole,
+    most_nodes: int = 6,
+    rational: bool = True,
+    active: bool = True,
+    *,
+    least_nodes: int = 2,
+    links: tuple[int, int] = (0, 4),
+    single: bool = False,
+) -> Sketch:
+    """A connected network; ``whole(low, high)`` gives whole numbers, low and high included.
+
+    ``links`` are the fewest and the most branches beyond the tree that hangs every node on gnd. With ``single``
+    (and without ``rational``) every law has one term, so that every term of the equations has its own parameter.
+    """
+    pencil = _Pencil(whole, rational, single)
+    nodes = list(NODES[: whole(least_nodes, most_nodes)])
     for k, node in enumerate(nodes):
         pencil.chain(node, "gnd" if k == 0 or pencil.chance(4) else pencil.pick(nodes[:k]))
-    for _ in range(whole(0, 4)):
+    for _ in range(whole(*links)):
         start = pencil.pick(nodes)
         pencil.chain(start, pencil.pick([node for node in ["gnd", *nodes] if node != start]))
     unfixed = list(nodes)

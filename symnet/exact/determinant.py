@@ -101,9 +101,14 @@ def pair_modulo(n: Determinant, d: Determinant, point: Sequence[Any], prime: int
 
 
 def count_in_words(paths: int) -> str:
-    """A number of terms as it is said: all digits up to seven, then two and the power of ten."""
-    text = str(paths)
-    return text if len(text) < 8 else f"{text[0]}.{text[1]}e{len(text) - 1}"
+    """An upper bound as it is said: all digits up to seven, then three, rounded up, and the power of ten."""
+    power = len(str(paths)) - 1
+    if power < 7:
+        return str(paths)
+    leading = -(-paths // 10 ** (power - 2))
+    if leading == 1000:
+        leading, power = 100, power + 1
+    return f"{leading // 100}.{leading % 100:02d}e{power}"
 
 
 def numeric_pair(n: Determinant, d: Determinant, values: Sequence[Fraction]) -> tuple[list[int], list[int]]:

@@ -10,16 +10,16 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from fractions import Fraction
-from itertools import compress, count
 from typing import TYPE_CHECKING, Any
 
 import numpy as np
 
 from symnet.errors import Fault, MissingValueError
+from symnet.exact.polynomials import Terms, sparse_terms
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray
-    from sympy.polys.rings import PolyElement
+    from sympy.polys.rings import PolyElement, PolyRing
 
     from symnet.exact.determinant import Determinant
 
@@ -43,37 +43,38 @@ def weights_at(
     ([3j, 6j], [(2+0j), (2+0j)])
     """
     points = np.atleast_1d(s)
-    symbols = [str(symbol) for symbol in determinant.factor.ring.symbols[1:]]
-    numbers = [values.get(name) for name in symbols]
+    numbers = _numbers(determinant.factor.ring, values)
     take, leave = (
-        np.array([_row(weight, symbols, numbers, points) for weight in weights]).reshape(-1, len(points))
-        for weights in (determinant.take, determinant.leave)
+        np.array([_row(terms, numbers, points) for terms in side]).reshape(-1, len(points))
+        for side in determinant.weights
     )
     return take, leave
 
 
 def weight_row(weight: PolyElement, values: Mapping[str, Fraction], s: NDArray[Any]) -> NDArray[Any]:
     """One ring element at these points, such as the factor of a determinant; raises as :func:`weights_at`."""
-    symbols = [str(symbol) for symbol in weight.ring.symbols[1:]]
-    return _row(weight, symbols, [values.get(name) for name in symbols], np.atleast_1d(s))
+    return _row(sparse_terms(weight), _numbers(weight.ring, values), np.atleast_1d(s))
 
 
-def _row(
-    weight: PolyElement, symbols: list[str], numbers: list[Fraction | None], points: NDArray[Any]
-) -> NDArray[Any]:
+def _numbers(ring: PolyRing, values: Mapping[str, Fraction]) -> list[tuple[str, Fraction | None]]:
+    return [(name, values.get(name)) for name in map(str, ring.symbols)]
+
+
+def _row(terms: Terms, numbers: list[tuple[str, Fraction | None]], points: NDArray[Any]) -> NDArray[Any]:
     by_power: dict[int, Fraction] = {}
-    for monomial, coefficient in weight.items():
-        term = Fraction(int(coefficient))
-        exponents = monomial[1:]
-        for place in compress(count(), exponents):
-            number = numbers[place]
+    for coefficient, powers in terms:
+        value, power_of_s = Fraction(coefficient), 0
+        for place, exponent in powers:
+            if not place:
+                power_of_s = exponent
+                continue
+            name, number = numbers[place]
             if number is None:
-                name = symbols[place]
                 raise MissingValueError(
                     Fault(f"no value for {name}", f'give one: H.with_values({name}="...")', parts=(name,))
                 )
-            term *= number ** exponents[place]
-        by_power[monomial[0]] = by_power.get(monomial[0], Fraction(0)) + term
+            value *= number**exponent
+        by_power[power_of_s] = by_power.get(power_of_s, Fraction(0)) + value
     row: NDArray[Any] = np.zeros(points.shape, dtype=np.result_type(points, np.float64))
     for power, value in by_power.items():
         row += float(value) * points**power if power else float(value)

@@ -8,6 +8,7 @@ from fractions import Fraction
 from functools import cached_property
 from typing import TYPE_CHECKING, Any
 
+from symnet.errors import LimitError
 from symnet.exact.determinant import MOST_TERMS, Determinant, numeric_pair, pair_modulo
 from symnet.exact.lowest import LowestTerms, reduce
 from symnet.exact.modular import SMALL_PRIME
@@ -40,10 +41,16 @@ class Quotient:
         """An upper bound of the number of terms of each, known without writing them out."""
         return self.numerator.terms, self.denominator.terms
 
-    @property
+    @cached_property
     def is_writable(self) -> bool:
-        """Whether both are short enough to be written out."""
-        return max(self.terms) <= MOST_TERMS
+        """Whether both can be written out in lowest terms within the limits."""
+        if max(self.terms) > MOST_TERMS:
+            return False
+        try:
+            self.lowest  # noqa: B018 - a common factor may be too long to be looked for
+        except LimitError:
+            return False
+        return True
 
     def modulo(self, point: Sequence[Any], prime: int) -> tuple[Any, Any]:
         """Numerator and denominator at a point (s first, then the names in order), modulo a prime."""

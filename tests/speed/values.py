@@ -166,8 +166,8 @@ def leapfrog(stages: int = 5) -> str:
 MESH = (
     "drive a; read f\n"
     + "\n".join(
-        f"{x} -- R{k + 1} -- {y}"
-        for k, (x, y) in enumerate(["ab", "ac", "bc", "bd", "cd", "ce", "de", "df", "ef", "ad", "be", "cf"])
+        f"{pair[0]} -- R{k + 1} -- {pair[1]}"
+        for k, pair in enumerate(["ab", "ac", "bc", "bd", "cd", "ce", "de", "df", "ef", "ad", "be", "cf"])
     )
     + "\nf -- RL -- gnd; e -- C1 -- gnd; d -- L1 -- gnd"
 )
