@@ -68,7 +68,7 @@ class _Butterworth(Family):
         return f"|H(jw)|^2 = 1/(1 + w^{2 * order})"
 
     def exact(self, order: int, values: tuple[float, ...]) -> tuple[Expr, ...] | None:
-        """a_k = prod over j = 1 ... k of cos((j - 1) g)/sin(j g) with g = pi/(2n) (Weinberg 1962, section 11.2)."""
+        """a_k = prod over j = 1 ... k of cos((j - 1) g)/sin(j g) with g = pi/(2n) (Weinberg 1962, section 11.2; from memory)."""
         if order > _READABLE_ORDER:
             return None
         angle = sympy.pi / (2 * order)
