@@ -14,6 +14,7 @@ from typing import TYPE_CHECKING, Any, Final
 import numpy as np
 
 from symnet.errors import Fault, MissingValueError, UnknownNameError, nearest
+from symnet.exact.polynomials import sparse_terms
 
 if TYPE_CHECKING:
     from numpy.typing import ArrayLike, NDArray
@@ -94,8 +95,6 @@ def _block(
         takes.append([(array / largest, power) for array, power in taken])
         leaves.append([(array / largest, power) for array, power in left])
     sets = len(columns[0]) if columns else 1
-    from symnet.exact.polynomials import sparse_terms
-
     return tuple(  # type: ignore[return-value]
         _times(_diagram(det.diagram, takes, leaves, sets), _weight(sparse_terms(det.factor), columns), sets)
         for det in (n, d)

@@ -428,10 +428,6 @@ def _size(terms: Terms) -> int:
     return sum(abs(coefficient) for coefficient, _ in terms)
 
 
-def _as(dtype: np.dtype[Any], number: int) -> Any:
-    return number if dtype.hasobject else dtype.type(number)
-
-
 def _merged(keys: NDArray[np.int64], coefficients: NDArray[Any]) -> tuple[NDArray[np.int64], NDArray[Any]]:
     """Equal monomials added up; what cancels is dropped."""
     order = np.argsort(keys[0], kind="stable") if len(keys) == 1 else np.lexsort(keys)

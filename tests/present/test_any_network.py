@@ -27,3 +27,14 @@ def test_in_symbols(seed: int) -> None:
     with suppress(sn.SymnetError):
         seen = sn.brief(sn.network(text))
         assert all((seen.to_text(), seen.to_html(), seen.to_latex(), seen.to_markdown()))
+
+
+def test_most_of_these_networks_have_a_brief() -> None:
+    """So that the tests above judge briefs, and not refusals."""
+    refused = 0
+    for seed in SEEDS:
+        try:
+            sn.brief(sn.network(seeded(seed).text))
+        except sn.SymnetError:
+            refused += 1
+    assert refused <= len(SEEDS) // 4

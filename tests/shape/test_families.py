@@ -11,7 +11,10 @@ import pytest
 import scipy.signal
 
 from symnet.errors import LimitError, NotationError, UnknownNameError
-from symnet.shape.families import CATALOGUE, Prototype, bessel, butterworth, chebyshev
+from symnet.shape.families import CATALOGUE, Prototype
+from symnet.shape.families.bessel import bessel
+from symnet.shape.families.butterworth import butterworth
+from symnet.shape.families.chebyshev import chebyshev
 from symnet.shape.families.family import LARGEST_ORDER, Family
 from tests.reference import families as published
 

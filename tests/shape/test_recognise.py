@@ -16,7 +16,10 @@ from hypothesis import strategies as st
 from symnet.errors import NotationError
 from symnet.exact.ratio import Ratio
 from symnet.shape.conditions import Conditions
-from symnet.shape.families import CATALOGUE, Prototype, bessel, butterworth, chebyshev
+from symnet.shape.families import CATALOGUE, Prototype
+from symnet.shape.families.bessel import bessel
+from symnet.shape.families.butterworth import butterworth
+from symnet.shape.families.chebyshev import chebyshev
 from symnet.shape.families.curves import attenuation
 from symnet.shape.matching import Target, distance_of_roots, fit
 from symnet.shape.recognise import Recognition, recognise

@@ -108,7 +108,7 @@ class Prototype(Displayed):
     largest |H| in the pass band is 1. ``exact`` holds the denominator as exact numbers, ascending powers of s,
     where they can be read by a person; otherwise it is None.
 
-    >>> from symnet.shape.families import bessel
+    >>> from symnet.shape.families.bessel import bessel
     >>> p = bessel(3)
     >>> print(p)
     Bessel, order 3, low-pass
@@ -155,7 +155,7 @@ class Prototype(Displayed):
         :class:`~symnet.errors.NotationError` for a frequency that is not positive.
 
         >>> from math import pi
-        >>> from symnet.shape.families import chebyshev
+        >>> from symnet.shape.families.chebyshev import chebyshev
         >>> p = chebyshev(3, "0.5 dB").scaled("w3dB", 2 * pi * 1000)
         >>> round(p.reference("ripple_edge").f, 2)
         856.54
@@ -177,7 +177,7 @@ class Prototype(Displayed):
     def high_pass(self) -> Prototype:
         """The high-pass that s -> 1/s gives: every frequency becomes its inverse, the missing zeros come to s = 0.
 
-        >>> from symnet.shape.families import butterworth
+        >>> from symnet.shape.families.butterworth import butterworth
         >>> p = butterworth(2).high_pass()
         >>> p.zeros, p.reference("w3dB").label
         ((0j, 0j), '-3.0103 dB relative to infinite frequency')
@@ -228,7 +228,7 @@ class Prototype(Displayed):
 
         Nothing cancels in the products since the real parts of all poles have one sign.
 
-        >>> from symnet.shape.families import bessel
+        >>> from symnet.shape.families.bessel import bessel
         >>> [round(c, 9) for c in bessel(3).denominator()]
         [15.0, 15.0, 6.0, 1.0]
         """
@@ -245,7 +245,7 @@ class Prototype(Displayed):
     def sections(self) -> tuple[tuple[float, float | None], ...]:
         """The first- and second-order sections by growing Q: (w in rad/s, Q), with Q None for a real pole.
 
-        >>> from symnet.shape.families import butterworth
+        >>> from symnet.shape.families.butterworth import butterworth
         >>> [round(q, 4) for _, q in butterworth(4).sections()]
         [0.5412, 1.3066]
         """
