@@ -21,7 +21,7 @@ from symnet.exact.determinant import count_in_words
 from symnet.exact.lowest import degrees_of
 from symnet.exact.quotient import Quotient
 from symnet.exact.ratio import Ratio
-from symnet.exact.readable import readable_transfer
+from symnet.exact.readable.forms import readable_transfer
 from symnet.quantities import Dimension
 from symnet.typeset.displayed import Displayed
 from symnet.typeset.writing import to_text

@@ -69,7 +69,7 @@ def unit_of(transfer: Transfer) -> str:
 
 def transfer_formula(transfer: Transfer) -> Formula | None:
     """H(s) = out/in = ..., or None when it has too many terms to be written out."""
-    from symnet.exact.readable import readable_transfer
+    from symnet.exact.readable.forms import readable_transfer
 
     if max(transfer.terms) > MOST_TERMS:
         return None
@@ -127,7 +127,7 @@ def _order(transfer: Transfer) -> int:
 
 
 def _hidden(transfer: Transfer) -> Iterator[Line]:
-    from symnet.exact.readable import readable
+    from symnet.exact.readable.forms import readable
     from symnet.exact.roots import roots
     from symnet.shape.closed import value_of
 
@@ -187,7 +187,7 @@ def limits_table(ends: Limits, values: Mapping[str, Fraction], dimension: Dimens
 
 
 def _limit_row(limit: Limit, value: Line) -> tuple[Line, ...]:
-    from symnet.exact.readable import readable_ratio
+    from symnet.exact.readable.forms import readable_ratio
 
     tree = with_power_of_s(readable_ratio(limit.numerator, limit.denominator), limit.power)
     approach: Line = tree

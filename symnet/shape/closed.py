@@ -133,7 +133,7 @@ def one(like: Coefficient) -> Coefficient:
 
 
 def _tree(num: Coefficient, den: Coefficient) -> Tree:
-    from symnet.exact.readable import readable_ratio
+    from symnet.exact.readable.forms import readable_ratio
     from symnet.typeset.tree import number
 
     return number(num / den) if isinstance(num, Fraction) else readable_ratio(num, den)

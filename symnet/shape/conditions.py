@@ -17,7 +17,7 @@ from typing import TYPE_CHECKING, Final
 
 from symnet.errors import Fault, NotationError, UndefinedError
 from symnet.exact.polynomials import by_powers_of_s
-from symnet.exact.readable import readable, readable_ratio
+from symnet.exact.readable.forms import readable, readable_ratio
 from symnet.shape.families import CATALOGUE
 from symnet.shape.families.family import LARGEST_ORDER, Family
 from symnet.shape.families.prototype import HIGH_PASS, LOW_PASS, W0, W3DB

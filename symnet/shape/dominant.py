@@ -128,7 +128,7 @@ class Dominant(Displayed):
     @property
     def tree(self) -> Tree:
         """The shortened H as a formula, in its readable form."""
-        from symnet.exact.readable import readable_transfer
+        from symnet.exact.readable.forms import readable_transfer
 
         return readable_transfer(self.numerator, self.denominator)
 

@@ -12,7 +12,7 @@ from fractions import Fraction
 from math import gcd, lcm
 from typing import TYPE_CHECKING, Any, Final, TypeAlias
 
-from symnet.exact.readable import readable
+from symnet.exact.readable.forms import readable
 from symnet.typeset.tree import Atom, Tree, number, plus, power, times
 
 if TYPE_CHECKING:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from typing import TYPE_CHECKING, Final
 
-from symnet.exact.readable import readable, readable_ratio
+from symnet.exact.readable.forms import readable, readable_ratio
 from symnet.shape.positive import content, divide_content, sign_of
 from symnet.typeset.tree import ONE, Atom, Root, Tree, number, over, power, times
 

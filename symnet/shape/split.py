@@ -177,7 +177,7 @@ def _tree(pair: Pair, m: int, poles: Sequence[SplitPole]) -> Tree:
 
 
 def _polynomial(coefficients: Sequence[Coefficient]) -> Tree:
-    from symnet.exact.readable import readable
+    from symnet.exact.readable.forms import readable
     from symnet.typeset.tree import Atom, number, plus, power, times
 
     if isinstance(coefficients[0], Fraction):

@@ -8,7 +8,7 @@ from random import Random
 import pytest
 import sympy
 
-from symnet.exact.trees import Diagram, Piece, build, frontier_order
+from symnet.exact.trees import Diagram, Piece, build
 
 
 def random_pieces(random: Random, size: int, count: int, symmetric: float) -> list[Piece]:
@@ -132,9 +132,3 @@ def test_zero_for_every_value_is_known_from_the_graph() -> None:
 def test_the_empty_determinant_is_one() -> None:
     assert build(0, []) == Diagram((), (), (), (), 0)
     assert build(0, []).evaluate([], []) == 1
-
-
-def test_the_order_decides_every_piece_once() -> None:
-    random = Random(8)
-    pieces = [*random_pieces(random, 6, 15, 0.5), Piece(None, None, None, None)]
-    assert sorted(frontier_order(6, pieces)) == list(range(16))

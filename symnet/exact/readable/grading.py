@@ -12,8 +12,8 @@ from collections.abc import Sequence
 from fractions import Fraction
 from typing import TypeAlias
 
-from symnet.exact.grouping import kind_of_name
-from symnet.exact.packed import Factors, Polynomial, Space
+from symnet.exact.readable.grouping import kind_of_name
+from symnet.exact.readable.packed import Factors, Polynomial, Space
 
 __all__ = ["factors_in_s"]
 

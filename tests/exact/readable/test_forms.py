@@ -12,7 +12,7 @@ from hypothesis import strategies as st
 
 from symnet.errors import SingularError
 from symnet.exact.polynomials import by_powers_of_s, make_ring
-from symnet.exact.readable import Form, as_ratio, readable, readable_ratio, readable_transfer
+from symnet.exact.readable.forms import Form, as_ratio, readable, readable_ratio, readable_transfer
 from symnet.typeset.length import length
 from symnet.typeset.tree import Atom, evaluate, minus, over, plus
 from symnet.typeset.writing import to_latex, to_text
@@ -341,7 +341,7 @@ def test_as_ratio_follows_the_tree() -> None:
 
 
 def test_a_form_that_fails_its_check_is_not_shown(monkeypatch: pytest.MonkeyPatch) -> None:
-    from symnet.exact import readable as module
+    from symnet.exact.readable import forms as module
     from symnet.typeset.tree import ONE
 
     _, R1, R2 = gens("R1 R2")

@@ -9,8 +9,8 @@ from typing import Any
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from symnet.exact.packed import LONGEST_GROUPED, Polynomial, Space
 from symnet.exact.polynomials import make_ring
+from symnet.exact.readable.packed import LONGEST_GROUPED, Polynomial, Space
 
 RING = make_ring(["R1", "R2", "R3", "R4", "L1", "L2", "C1", "C2", "C3", "C4", "K"])
 s, R1, R2, R3, R4, L1, L2, C1, C2, C3, C4, K = RING.gens

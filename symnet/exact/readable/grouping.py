@@ -1,7 +1,7 @@
 """The shortest way to write a polynomial in part names: common factors out, brackets where they save symbols.
 
 An expanded coefficient such as R1*C1 + R1*C2 + R2*C2 hides what a designer looks for. Factors come first
-(:mod:`symnet.exact.packed`). In what does not factor, find d and q with p = d*q + r where no term is made twice,
+(:mod:`symnet.exact.readable.packed`). In what does not factor, find d and q with p = d*q + r where no term is made twice,
 take the pair that saves most names, go on with d, q and r. Candidates are the names and the pairs of terms that
 are alike but for a common part, each grown to the largest rectangle of terms it belongs to. This is the algebraic
 factoring of multi-level logic (Brayton and McMullen 1982, Rajski and Vasudevamurthy 1992; from memory), where
@@ -22,7 +22,7 @@ from fractions import Fraction
 from math import gcd
 from typing import Final, TypeAlias
 
-from symnet.exact.packed import LONGEST_GROUPED, Factors, Polynomial, Space
+from symnet.exact.readable.packed import LONGEST_GROUPED, Factors, Polynomial, Space
 from symnet.typeset.length import BRACKETS, EXPONENT, NAME, NESTED, SIGN, length_of_number
 from symnet.typeset.tree import Atom, Omitted, Sum, Tree, minus, number, over, power, times
 

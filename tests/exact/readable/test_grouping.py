@@ -10,10 +10,10 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from symnet.exact.grouping import LONGEST_PLAIN, Grouping, kind_of, kind_of_name
-from symnet.exact.packed import LONGEST_GROUPED, Polynomial
 from symnet.exact.polynomials import make_ring
-from symnet.exact.readable import as_ratio
+from symnet.exact.readable.forms import as_ratio
+from symnet.exact.readable.grouping import LONGEST_PLAIN, Grouping, kind_of, kind_of_name
+from symnet.exact.readable.packed import LONGEST_GROUPED, Polynomial
 from symnet.typeset.length import length
 from symnet.typeset.polynomials import plain
 from symnet.typeset.tree import Omitted, Sum

@@ -26,10 +26,10 @@ from random import Random
 from typing import TYPE_CHECKING, Final, Literal, TypeAlias
 
 from symnet.errors import Fault, LimitError, SingularError
-from symnet.exact.grouping import LONGEST_PLAIN, Grouping, Place
 from symnet.exact.modular import PRIME, Residue, weight_at
-from symnet.exact.packed import Factors, Polynomial
-from symnet.exact.ratios import Factored, Ratios, cancelled
+from symnet.exact.readable.grouping import LONGEST_PLAIN, Grouping, Place
+from symnet.exact.readable.packed import Factors, Polynomial
+from symnet.exact.readable.ratios import Factored, Ratios, cancelled
 from symnet.typeset.length import length
 from symnet.typeset.polynomials import collected
 from symnet.typeset.tree import (

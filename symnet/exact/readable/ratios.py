@@ -15,9 +15,9 @@ from dataclasses import dataclass, field
 from fractions import Fraction
 from typing import Final
 
-from symnet.exact.grading import factors_in_s
-from symnet.exact.grouping import Grouping, Place, kind_of
-from symnet.exact.packed import Factors, Polynomial
+from symnet.exact.readable.grading import factors_in_s
+from symnet.exact.readable.grouping import Grouping, Place, kind_of
+from symnet.exact.readable.packed import Factors, Polynomial
 from symnet.typeset.length import length
 from symnet.typeset.tree import ZERO, Parallel, Sum, Tree, minus, plus
 
