@@ -112,7 +112,11 @@ def conditions_of(
         return Conditions(
             1, band, (Condition(f"first order, {band}", "always", formulas=(formula,)),), assumption
         )
-    found = [_of_family(family, a, band) for family in CATALOGUE if not family.finite_zeros(order)]
+    found = [
+        _of_family(family, a, band)
+        for family in CATALOGUE
+        if family.has_order(order) and not family.finite_zeros(order)
+    ]
     if quality is not None:
         equation = quality.denominator * a[0] * a[2] - quality.numerator * a[1] ** 2
         found.append(_judged(f"Q = {q}", [equation], [], a, quality, formulas=(Formula("f0", _f0(a, band)),)))

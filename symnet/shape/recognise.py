@@ -221,7 +221,7 @@ def _candidates(target: Target, band: str, h: Ratio, order: int) -> tuple[Candid
     ascending = h.den if band == LOW_PASS else h.den[::-1]
     found = []
     for family in CATALOGUE:
-        if family.finite_zeros(order) != len(target.zeros):
+        if not family.has_order(order) or family.finite_zeros(order) != len(target.zeros):
             continue
         found.append(_candidate(family, fit(family, target), band))
     if not any(c.matches for c in found):

@@ -76,6 +76,10 @@ class Family(ABC):
         """The continuous parameters of the members of that order; none for a family of fixed shapes."""
         return ()
 
+    def has_order(self, order: int) -> bool:
+        """Whether the family has members of that order; some have even orders only, or are tabulated up to one."""
+        return True
+
     def finite_zeros(self, order: int) -> int:
         """How many finite zeros a member of that order has; 0 for an all-pole family."""
         return 0
