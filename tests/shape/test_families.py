@@ -6,6 +6,7 @@ import math
 from collections.abc import Callable
 from fractions import Fraction
 
+import mpmath
 import numpy as np
 import pytest
 import scipy.signal
@@ -294,3 +295,27 @@ class TestRefusals:
     def test_scale_is_positive(self, w: float) -> None:
         with pytest.raises(NotationError, match="positive frequency"):
             bessel(3).scaled("w0", w)
+
+
+class TestMoreDigits:
+    """``precise`` gives as many digits as are asked for, and they are those of the doubles as far as these go."""
+
+    @pytest.mark.parametrize("made", members(range(1, 13)), ids=str)
+    def test_doubles_are_the_rounded_digits(self, made: Prototype) -> None:
+        poles, zeros = made.precise(40)
+        assert [complex(p) for p in poles] == pytest.approx(made.poles, rel=1e-15, abs=0)
+        assert [complex(z) for z in zeros] == pytest.approx(made.zeros, rel=1e-15, abs=0)
+
+    def test_a_ripple_is_taken_as_typed(self) -> None:
+        """Chebyshev 1, 0.1 dB: the pole is -1/e with e^2 = 10^(1/100) - 1, one tenth being exact."""
+        (pole,), _ = chebyshev(1, "0.1 dB").precise(60)
+        with mpmath.workdps(70):
+            wanted = -1 / mpmath.sqrt(mpmath.power(10, mpmath.mpf(1) / 100) - 1)
+            assert abs(pole.real / wanted - 1) < mpmath.mpf(10) ** -59
+        assert pole.imag == 0
+
+    def test_digits_belong_to_the_scale_of_the_definition(self) -> None:
+        with pytest.raises(NotationError, match="this one was scaled"):
+            bessel(3).scaled("w3dB", 1.0).precise()
+        with pytest.raises(LimitError, match="501 digits"):
+            bessel(3).precise(501)

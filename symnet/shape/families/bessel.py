@@ -13,7 +13,7 @@ import sympy
 from sympy import Expr
 
 from symnet.exact.roots import roots
-from symnet.shape.families.family import Family, Roots, checked_order, member
+from symnet.shape.families.family import Family, Points, Roots, checked_order, member, precise_roots
 from symnet.shape.families.prototype import UNIT_DELAY, Prototype, Reference
 
 __all__ = ["BESSEL", "bessel"]
@@ -66,6 +66,10 @@ class _Bessel(Family):
     def roots(self, order: int, values: tuple[float, ...]) -> Roots:
         """The roots of the exact integer polynomial."""
         return _poles(order), ()
+
+    def points(self, m: Any, order: int, values: tuple[float, ...]) -> Points:
+        """The same roots."""
+        return precise_roots(m, polynomial(order)), ()
 
     def references(self, order: int, values: tuple[float, ...]) -> tuple[Reference, ...]:
         """The delay is 1 s by definition."""

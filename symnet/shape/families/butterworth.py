@@ -10,7 +10,7 @@ from typing import Any, ClassVar, Final
 import sympy
 from sympy import Expr
 
-from symnet.shape.families.family import Family, Roots, checked_order, member
+from symnet.shape.families.family import Family, Points, Roots, checked_order, member, with_conjugates
 from symnet.shape.families.prototype import UNIT_DELAY, W0, W3DB, Prototype, Reference
 
 __all__ = ["BUTTERWORTH", "butterworth"]
@@ -42,18 +42,24 @@ def butterworth(order: int) -> Prototype:
     return member(BUTTERWORTH, checked_order(order), ())
 
 
+def _poles(m: Any, order: int) -> list[tuple[Any, Any]]:
+    """Each cosine as the sine of a small angle, exact to the last place."""
+    angle = m.pi / (2 * order)
+    upper = [(-m.sin((2 * k + 1) * angle), m.sin((order - 2 * k - 1) * angle)) for k in range(order // 2)]
+    return with_conjugates(upper, (-1.0,) if order % 2 else ())
+
+
 class _Butterworth(Family):
     name: ClassVar[str] = "Butterworth"
     source: ClassVar[str] = "S. Butterworth, Experimental Wireless & the Wireless Engineer 7 (1930), 536-541"
 
     def roots(self, order: int, values: tuple[float, ...]) -> Roots:
-        """The n points of the left half of the unit circle; each cosine as the sine of a small angle, exact to the last place."""
-        angle = math.pi / (2 * order)
-        poles = (
-            complex(-math.sin((2 * k + 1) * angle), math.sin((order - 2 * k - 1) * angle))
-            for k in range(order)
-        )
-        return tuple(poles), ()
+        """The n points of the left half of the unit circle."""
+        return tuple(complex(*p) for p in _poles(math, order)), ()
+
+    def points(self, m: Any, order: int, values: tuple[float, ...]) -> Points:
+        """The same points."""
+        return _poles(m, order), ()
 
     def references(self, order: int, values: tuple[float, ...]) -> tuple[Reference, ...]:
         """w0 and the -3 dB frequency are 1 by definition."""

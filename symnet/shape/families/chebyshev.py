@@ -3,13 +3,20 @@
 from __future__ import annotations
 
 import math
-import re
 from collections.abc import Sequence
 from typing import Any, ClassVar, Final
 
-from symnet.errors import Fault, NotationError
+from symnet.shape.families.arithmetic import as_typed, measured
 from symnet.shape.families.butterworth import squared_magnitude
-from symnet.shape.families.family import Family, Parameter, Roots, checked_order, member
+from symnet.shape.families.family import (
+    Family,
+    Parameter,
+    Points,
+    Roots,
+    checked_order,
+    member,
+    with_conjugates,
+)
 from symnet.shape.families.prototype import (
     RIPPLE_EDGE,
     W3DB,
@@ -18,9 +25,17 @@ from symnet.shape.families.prototype import (
     Reference,
 )
 
-__all__ = ["CHEBYSHEV", "chebyshev", "ripple_of"]
+__all__ = [
+    "CHEBYSHEV",
+    "LARGEST_RIPPLE_DB",
+    "chebyshev",
+    "ellipse",
+    "outermost",
+    "ripple_of",
+    "squared_epsilon",
+]
 
-_LARGEST_RIPPLE_DB: Final = 12.0  # tables end at 3 dB; beyond this nobody speaks of a pass band any more
+LARGEST_RIPPLE_DB: Final = 12.0  # tables end at 3 dB; beyond this nobody speaks of a pass band any more
 
 
 def chebyshev(order: int, ripple: str = "0.5 dB") -> Prototype:
@@ -58,29 +73,37 @@ def ripple_of(text: str) -> float:
     >>> ripple_of("0.5 dB")
     0.5
     """
-    found = re.fullmatch(r"\s*\+?((?:\d+\.?\d*|\.\d+)(?:[eE][-+]?\d+)?)\s*dB\s*", str(text), re.ASCII)
-    if found is None:
-        raise NotationError(
-            Fault(
-                f"a ripple is a positive number of dB, not {text!r}", hint='write it with its unit: "0.5 dB"'
-            )
-        )
-    value = float(found.group(1))
-    if not 0 < value <= _LARGEST_RIPPLE_DB:
-        raise NotationError(
-            Fault(
-                f"a ripple lies above 0 dB and up to {_LARGEST_RIPPLE_DB:g} dB, not at {value:g} dB",
-                hint="the shape without any ripple is Butterworth" if value == 0 else "",
-            )
-        )
-    return value
+    return measured(
+        text,
+        "dB",
+        what="a ripple",
+        above=0,
+        up_to=LARGEST_RIPPLE_DB,
+        at_zero="the shape without any ripple is Butterworth",
+    )
 
 
-def _e_squared(ripple: float) -> float:
-    return math.expm1(ripple * math.log(10) / 10)
+def squared_epsilon(m: Any, level_db: float) -> Any:
+    """e^2 = 10^(level/10 dB) - 1."""
+    return m.expm1(as_typed(m, level_db) * m.log(10) / 10)
 
 
-def _outer(x: float, order: int) -> float:
+def ellipse(m: Any, order: int, v: Any) -> list[tuple[Any, Any]]:
+    """-sinh v sin t + j cosh v cos t at t = (2k - 1) pi/(2n), k = 1 ... n: where 1 + T_n(-js)^2/sinh(nv)^2 vanishes."""
+    across, along = m.sinh(v), m.cosh(v)
+    angle = m.pi / (2 * order)
+    upper = [
+        (-across * m.sin((2 * k + 1) * angle), along * m.sin((order - 2 * k - 1) * angle))
+        for k in range(order // 2)
+    ]
+    return with_conjugates(upper, (-across,) if order % 2 else ())
+
+
+def _poles(m: Any, order: int, ripple: float) -> list[tuple[Any, Any]]:
+    return ellipse(m, order, m.asinh(1 / m.sqrt(squared_epsilon(m, ripple))) / order)
+
+
+def outermost(x: float, order: int) -> float:
     """The largest w with |T_n(w)| = x."""
     return math.cosh(math.acosh(x) / order) if x >= 1 else math.cos(math.acos(x) / order)
 
@@ -96,30 +119,27 @@ class _Chebyshev(Family):
         semi-axes in the ratio (1 - x)/(1 + x) with x = (e/2)^(2/n), and the bound is x = 0.005.
         """
         smallest = 10 / math.log(10) * (2 * 0.005 ** (order / 2)) ** 2
-        return (Parameter("ripple", "dB", smallest, _LARGEST_RIPPLE_DB, logarithmic=True),)
+        return (Parameter("ripple", "dB", smallest, LARGEST_RIPPLE_DB, logarithmic=True),)
 
     def roots(self, order: int, values: tuple[float, ...]) -> Roots:
         """Poles on an ellipse with foci at +-j."""
-        v = math.asinh(1 / math.sqrt(_e_squared(values[0]))) / order
-        across, along = math.sinh(v), math.cosh(v)
-        angle = math.pi / (2 * order)
-        poles = (
-            complex(-across * math.sin((2 * k + 1) * angle), along * math.sin((order - 2 * k - 1) * angle))
-            for k in range(order)
-        )
-        return tuple(poles), ()
+        return tuple(complex(*p) for p in _poles(math, order, values[0])), ()
+
+    def points(self, m: Any, order: int, values: tuple[float, ...]) -> Points:
+        """The same poles."""
+        return _poles(m, order, values[0]), ()
 
     def references(self, order: int, values: tuple[float, ...]) -> tuple[Reference, ...]:
         """The edge of the ripple, 1 by definition, and the -3 dB points in closed form."""
         ripple = values[0]
-        e2 = _e_squared(ripple)
+        e2 = squared_epsilon(math, ripple)
         edge = Reference.named(RIPPLE_EDGE, 1.0, f"-{ripple:.4g} dB relative to the peak")
         if order % 2:
             note = "DC is a ripple peak" if ripple <= 3.0102 else "DC is a ripple peak; the last of several"
-            return (edge, Reference.named(W3DB, _outer(1 / math.sqrt(e2), order), note))
-        from_dc = _outer(math.sqrt((1 + 2 * e2) / e2), order)
+            return (edge, Reference.named(W3DB, outermost(1 / math.sqrt(e2), order), note))
+        from_dc = outermost(math.sqrt((1 + 2 * e2) / e2), order)
         note = f"a ripple minimum, {ripple:.4g} dB below the peak"
-        from_peak = Reference.named(W3DB_PEAK, _outer(1 / math.sqrt(e2), order))
+        from_peak = Reference.named(W3DB_PEAK, outermost(1 / math.sqrt(e2), order))
         return (edge, Reference.named(W3DB, from_dc, note), from_peak)
 
     def gain(self, order: int, values: tuple[float, ...]) -> float:

@@ -12,18 +12,33 @@ from __future__ import annotations
 from abc import ABC, abstractmethod
 from collections.abc import Sequence
 from dataclasses import dataclass
-from functools import lru_cache
+from fractions import Fraction
+from functools import lru_cache, partial
 from typing import Any, ClassVar, Final, TypeAlias
 
 from sympy import Expr
 
 from symnet.errors import Fault, LimitError, NotationError
+from symnet.exact.roots import roots as exact_roots
+from symnet.shape.families.arithmetic import context
 from symnet.shape.families.prototype import Prototype, Reference, Setting, in_order, with_common_references
 
-__all__ = ["LARGEST_ORDER", "Family", "Parameter", "Roots", "checked_order"]
+__all__ = [
+    "LARGEST_ORDER",
+    "Family",
+    "Parameter",
+    "Points",
+    "Roots",
+    "checked_order",
+    "precise_roots",
+    "with_conjugates",
+]
 
 #: Poles and finite zeros, in the family's own frequency scale.
 Roots: TypeAlias = tuple[tuple[complex, ...], tuple[complex, ...]]
+
+#: The same in an arithmetic of more digits: poles and finite zeros, each as its real and its imaginary part.
+Points: TypeAlias = tuple[Sequence[tuple[Any, Any]], Sequence[tuple[Any, Any]]]
 
 #: Beyond this order no table, no network and no double-precision coefficient is of any use.
 LARGEST_ORDER: Final = 60
@@ -80,6 +95,10 @@ class Family(ABC):
         """Whether the family has members of that order; some have even orders only, or are tabulated up to one."""
         return True
 
+    def has(self, order: int) -> bool:
+        """Whether the family has members of that order at all."""
+        return order >= 1
+
     def finite_zeros(self, order: int) -> int:
         """How many finite zeros a member of that order has; 0 for an all-pole family."""
         return 0
@@ -87,6 +106,18 @@ class Family(ABC):
     @abstractmethod
     def roots(self, order: int, values: tuple[float, ...]) -> Roots:
         """Poles and finite zeros to full double precision, in the frequency scale of the definition."""
+
+    def points(self, m: Any, order: int, values: tuple[float, ...]) -> Points:
+        """Poles and finite zeros to the full precision of ``m``, an mpmath context."""
+        raise LimitError(Fault(f"{self.name}: poles are known to double precision only"))
+
+    def precise(
+        self, order: int, values: tuple[float, ...], digits: int
+    ) -> tuple[tuple[Any, ...], tuple[Any, ...]]:
+        """Poles and finite zeros as mpmath numbers of so many digits, in the frequency scale of the definition."""
+        shown = context(digits)
+        poles, zeros = self.points(context(digits + 15), order, values)
+        return tuple(+shown.mpc(*p) for p in poles), tuple(+shown.mpc(*z) for z in zeros)
 
     def references(self, order: int, values: tuple[float, ...]) -> tuple[Reference, ...]:
         """The references that the definition gives, or that are known in closed form."""
@@ -136,8 +167,28 @@ def build(family: Family, order: int, values: tuple[float, ...], *, exact: bool 
         settings=tuple(Setting(p.name, v, p.unit) for p, v in zip(parameters, values, strict=True)),
         equation=family.equation(order, values),
         exact=family.exact(order, values) if exact else None,
+        refined=partial(family.precise, order, values),
     )
 
 
-#: The same, remembered: for the round values that people ask for, not for the steps of a fit.
+def with_conjugates(upper: Sequence[tuple[Any, Any]], real: Sequence[Any] = ()) -> list[tuple[Any, Any]]:
+    """The roots of the upper half plane as (real, imaginary), their exact conjugates, and the real ones."""
+    pairs = [point for x, y in upper for point in ((x, y), (x, -y))]
+    return pairs + [(x, 0) for x in real]
+
+
+def precise_roots(m: Any, ascending: Sequence[Fraction | int]) -> list[tuple[Any, Any]]:
+    """The roots of a polynomial with exact coefficients, to the full precision of ``m``, an mpmath context."""
+
+    def number(x: Fraction) -> Any:
+        return m.mpf(x.numerator) / x.denominator
+
+    return [
+        (number(root.real), number(root.imag))
+        for root in exact_roots(ascending, m.dps)
+        for _ in range(root.multiplicity)
+    ]
+
+
+#: :func:`build`, remembered: for the round values that people ask for, not for the steps of a fit.
 member = lru_cache(maxsize=512)(build)

@@ -9,9 +9,9 @@ poles are sorted and come in conjugate pairs; every reference belongs to exactly
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable
+from collections.abc import Callable, Iterable
 from dataclasses import dataclass, field, replace
-from typing import Final, TypeAlias, overload
+from typing import Any, Final, TypeAlias, overload
 
 import numpy as np
 from numpy.typing import NDArray
@@ -95,7 +95,7 @@ class Setting:
         return f"{self.name} {self.value:.4g} {self.unit}".rstrip()
 
 
-def in_order(roots: Iterable[complex]) -> tuple[complex, ...]:
+def in_order(roots: Iterable[Any]) -> tuple[Any, ...]:
     """The roots by growing Q, that is from the real axis outwards; of a pair the upper one first."""
     return tuple(sorted(roots, key=lambda r: (-abs(r.real) / (abs(r) or 1.0), abs(r), -r.imag)))
 
@@ -106,7 +106,7 @@ class Prototype(Displayed):
 
     ``poles`` and ``zeros`` are in rad/s. ``gain`` is |H| at DC (of a high-pass: at infinite frequency) when the
     largest |H| in the pass band is 1. ``exact`` holds the denominator as exact numbers, ascending powers of s,
-    where they can be read by a person; otherwise it is None.
+    where they can be read by a person; otherwise it is None. More digits than doubles have: :meth:`precise`.
 
     >>> from symnet.shape.families.bessel import bessel
     >>> p = bessel(3)
@@ -128,6 +128,9 @@ class Prototype(Displayed):
     equation: str = field(default="", compare=False)
     band: str = LOW_PASS
     exact: tuple[Expr, ...] | None = field(default=None, compare=False, repr=False)
+    refined: Callable[[int], tuple[tuple[Any, ...], tuple[Any, ...]]] | None = field(
+        default=None, compare=False, repr=False
+    )
 
     def __repr__(self) -> str:
         return f"<Prototype: {self}>"
@@ -172,6 +175,7 @@ class Prototype(Displayed):
             references=tuple(replace(r, w=r.w * k) for r in self.references),
             equation=f"{self.equation}, with s for s*{1 / k:.17g}" if self.equation else "",
             exact=None,
+            refined=None,
         )
 
     def high_pass(self) -> Prototype:
@@ -196,7 +200,30 @@ class Prototype(Displayed):
             equation=f"{self.equation}, with 1/s for s" if self.equation else "",
             band=HIGH_PASS,
             exact=self.exact[::-1] if self.exact and not self.zeros else None,
+            refined=None,
         )
+
+    def precise(self, digits: int = 50) -> tuple[tuple[Any, ...], tuple[Any, ...]]:
+        """Poles and finite zeros in rad/s as mpmath numbers of so many decimal digits, in the order of :attr:`poles`.
+
+        Parameters of the family count as typed: a ripple of 0.1 dB is one tenth. Raises
+        :class:`~symnet.errors.NotationError` for a prototype that was scaled or turned into a high-pass, since the
+        frequency that it was scaled to is a double; and :class:`~symnet.errors.LimitError` for more than 500 digits.
+
+        >>> from symnet.shape.families.bessel import bessel
+        >>> poles, zeros = bessel(2).precise(30)
+        >>> poles[0]
+        mpc(real='-1.5', imag='0.866025403784438646763723170752918')
+        """
+        if self.refined is None:
+            raise NotationError(
+                Fault(
+                    f"{self}: more digits belong to the frequency scale of the definition, and this one was scaled",
+                    hint="ask the prototype as its constructor gives it, then scale the digits",
+                )
+            )
+        poles, zeros = self.refined(digits)
+        return in_order(poles), in_order(zeros)
 
     @overload
     def __call__(self, s: complex) -> complex: ...
