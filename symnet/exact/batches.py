@@ -14,7 +14,6 @@ from typing import TYPE_CHECKING, Any, Final
 import numpy as np
 
 from symnet.errors import Fault, MissingValueError, UnknownNameError, nearest
-from symnet.exact.polynomials import sparse_terms
 
 if TYPE_CHECKING:
     from numpy.typing import ArrayLike, NDArray
@@ -46,7 +45,7 @@ def coefficient_arrays(
     >>> (d / n[0]).tolist()
     [[1.0, 1.0], [0.001, 0.002]]
     """
-    names = [str(symbol) for symbol in transfer.ring.symbols[1:]]
+    names = transfer.naming.generators.names[1:]
     for name in values:
         if name not in names:
             close = nearest(name, names)
@@ -88,7 +87,7 @@ def _block(
     n: Determinant, d: Determinant, columns: Sequence[NDArray[np.float64]]
 ) -> tuple[NDArray[np.float64], NDArray[np.float64]]:
     takes, leaves = [], []
-    for take, leave in zip(*n.weights, strict=True):
+    for take, leave in zip(n.take, n.leave, strict=True):
         taken, left = _weight(take, columns), _weight(leave, columns)
         largest = np.max([np.abs(array) for array, _ in (*taken, *left)], axis=0)
         largest[largest == 0] = 1
@@ -96,7 +95,7 @@ def _block(
         leaves.append([(array / largest, power) for array, power in left])
     sets = len(columns[0]) if columns else 1
     return tuple(  # type: ignore[return-value]
-        _times(_diagram(det.diagram, takes, leaves, sets), _weight(sparse_terms(det.factor), columns), sets)
+        _times(_diagram(det.diagram, takes, leaves, sets), _weight(det.factor, columns), sets)
         for det in (n, d)
     )
 

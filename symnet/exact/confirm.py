@@ -19,7 +19,7 @@ from typing import TYPE_CHECKING, Final
 from symnet.errors import Fault, SingularError, SymnetError
 from symnet.exact.expansion import Expansion
 from symnet.exact.mna import Arithmetic, Stamped, stamp, unknown_name
-from symnet.exact.modular import PRIME, SMALL_PRIME, Residue
+from symnet.exact.modular import PRIME, SMALL_PRIME, Residue, terms_at
 from symnet.exact.polynomials import modulo
 
 if TYPE_CHECKING:
@@ -130,17 +130,19 @@ def _degree(network: Network, quotient: Quotient, *, written_out: bool) -> int:
         polynomials = (quotient.lowest.numerator, quotient.lowest.denominator)
         return max((sum(m) for p in polynomials for m in p), default=0) + len(network.nodes)
     pairs = zip(quotient.numerator.take, quotient.numerator.leave, strict=True)
-    return sum(max((sum(m) for weight in pair for m in weight), default=0) for pair in pairs)
+    return sum(
+        max((sum(e for _, e in powers) for terms in pair for _, powers in terms), default=0) for pair in pairs
+    )
 
 
 def _at(network: Network, naming: Naming, point: list[int]) -> Stamped:
-    values = dict(zip(map(str, naming.ring.symbols), map(Residue, point), strict=True))
+    values = dict(zip(naming.generators.names, map(Residue, point), strict=True))
 
     def name(word: str) -> Residue:
         if word in values:
             return values[word]
-        fraction = naming.value(word)
-        return Residue(modulo(fraction.numer, point, PRIME)) / Residue(modulo(fraction.denom, point, PRIME))
+        numerator, denominator = (terms_at(side, point, PRIME) for side in naming.terms(word))
+        return Residue(numerator) / Residue(denominator)
 
     def number(given: Fraction) -> Residue:
         return Residue.of(given.numerator, given.denominator)
@@ -150,8 +152,8 @@ def _at(network: Network, naming: Naming, point: list[int]) -> Stamped:
 
 def _point(naming: Naming, trial: int) -> list[int]:
     """A random value of s and of every name; the same for every H of a network, so that solutions are shared."""
-    random = Random("|".join(("symnet", str(trial), *map(str, naming.ring.symbols))))
-    return [random.randrange(1, PRIME) for _ in naming.ring.symbols]
+    random = Random("|".join(("symnet", str(trial), *naming.generators.names)))
+    return [random.randrange(1, PRIME) for _ in naming.generators.names]
 
 
 @lru_cache(maxsize=32)
@@ -220,10 +222,10 @@ def undetermined(network: Network, naming: Naming, values: Mapping[str, Fraction
     With ``values``, at these values and a random s: open for these values only.
     """
     random = Random("null")
-    point = [random.randrange(1, PRIME) for _ in naming.ring.symbols]
-    for k, symbol in enumerate(naming.ring.symbols):
-        if values is not None and str(symbol) in values:
-            value = values[str(symbol)]
+    point = [random.randrange(1, PRIME) for _ in naming.generators.names]
+    for k, name in enumerate(naming.generators.names):
+        if values is not None and name in values:
+            value = values[name]
             point[k] = Residue.of(value.numerator, value.denominator).value
     try:
         system = _at(network, naming, point)

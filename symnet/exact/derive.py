@@ -14,6 +14,7 @@ from symnet.exact.confirm import confirm, undetermined
 from symnet.exact.determinant import Determinant
 from symnet.exact.modular import PRIME
 from symnet.exact.pieces import Pieces, named_currents
+from symnet.exact.polynomials import ONE, negated
 from symnet.exact.quotient import Quotient
 from symnet.exact.transfer import Transfer
 from symnet.exact.trees import Piece, build
@@ -118,16 +119,15 @@ def derive_from(
             if name not in known:
                 raise network.unknown(name, known, "part or symbol")
     pieces, denominator = _prepared(network, kept, named_currents(network, read))
-    one = pieces.naming.ring.one
-    factor, terms = pieces.terms(pieces.form(read, "the read"))
+    factor, terms = pieces.form(read, "the read")
     border = [(Piece(pieces.size, None, plus, minus), weight) for weight, plus, minus in terms]
-    border.append((Piece(*pieces.drive_rows(drive), pieces.size, None), -one))
+    border.append((Piece(*pieces.drive_rows(drive), pieces.size, None), negated(ONE)))
     numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _ in border)))
     takes = (*pieces.take, *(take for _, take in border))
-    leaves = (*pieces.leave, *(one for _ in border))
+    leaves = (*pieces.leave, *(ONE for _ in border))
     quotient = Quotient(
-        Determinant(numerator, takes, leaves, one),
-        denominator if factor == one else replace(denominator, factor=factor),
+        Determinant(pieces.naming.generators, numerator, takes, leaves),
+        denominator if factor == ONE else replace(denominator, factor=factor),
     )
     return Transfer(
         network,
@@ -149,7 +149,7 @@ def _prepared(
     check_wiring(network)
     pieces = Pieces.of(network, symbols, currents)
     determinant = Determinant(
-        build(pieces.size, pieces.pieces), pieces.take, pieces.leave, pieces.naming.ring.one
+        pieces.naming.generators, build(pieces.size, pieces.pieces), pieces.take, pieces.leave
     )
     if determinant.diagram.is_zero or _vanishes(determinant):
         raise SingularError(undetermined(network, pieces.naming))
@@ -161,7 +161,7 @@ def _vanishes(determinant: Determinant) -> bool:
     from random import Random
 
     random = Random("zero")
-    count = determinant.factor.ring.ngens
+    count = len(determinant.generators)
     return not any(
         determinant.modulo([random.randrange(1, PRIME) for _ in range(count)], PRIME) for _ in range(2)
     )

@@ -13,16 +13,13 @@ from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
 from math import lcm, prod
-from typing import TYPE_CHECKING, Any, Final
+from typing import Any, Final
 
 from symnet.errors import Fault, LimitError
 from symnet.exact.expansion import Expansion, Primitive, expand_terms
 from symnet.exact.modular import terms_at
-from symnet.exact.polynomials import Terms, highest_exponents, sparse_terms
+from symnet.exact.polynomials import ONE, Generators, Terms, highest_exponents
 from symnet.exact.trees import Diagram
-
-if TYPE_CHECKING:
-    from sympy.polys.rings import PolyElement
 
 __all__ = ["MOST_TERMS", "Determinant", "count_in_words", "numeric_pair", "pair_modulo"]
 
@@ -34,20 +31,15 @@ MOST_TERMS: Final = 500_000
 class Determinant:
     """``factor`` times the determinant that ``diagram`` is with the weights ``take`` and ``leave``."""
 
+    generators: Generators
     diagram: Diagram
-    take: tuple[PolyElement, ...]
-    leave: tuple[PolyElement, ...]
-    factor: PolyElement
-
-    @cached_property
-    def weights(self) -> tuple[list[Terms], list[Terms]]:
-        """The weights of all pieces, take and leave, with only the names that occur in each."""
-        take, leave = ([sparse_terms(weight) for weight in side] for side in (self.take, self.leave))
-        return take, leave
+    take: tuple[Terms, ...]
+    leave: tuple[Terms, ...]
+    factor: Terms = ONE
 
     def weights_modulo(self, point: Sequence[Any], prime: int) -> tuple[list[Any], list[Any]]:
         """All weights at a point (s first, then the names in order), modulo a prime."""
-        take, leave = ([terms_at(terms, point, prime) for terms in side] for side in self.weights)
+        take, leave = ([terms_at(terms, point, prime) for terms in side] for side in (self.take, self.leave))
         return take, leave
 
     @cached_property
@@ -57,7 +49,7 @@ class Determinant:
         The smaller of the number of paths, exact when every piece has a symbol of its own, and the number of
         monomials that the degrees leave room for, which is small when parts are tied.
         """
-        degrees = highest_exponents(self.factor.ring.ngens, *self.weights)
+        degrees = highest_exponents(len(self.generators), self.take, self.leave)
         return min(self.diagram.count(), prod(degree + 1 for degree in degrees))
 
     @cached_property
@@ -80,21 +72,19 @@ class Determinant:
                     'derive(net, symbols="R1 C1")',
                 )
             )
-        return expand_terms(self.diagram, self.factor.ring.ngens, sparse_terms(self.factor), *self.weights)
+        return expand_terms(self.diagram, len(self.generators), self.factor, self.take, self.leave)
 
     def modulo(self, point: Sequence[Any], prime: int) -> Any:
         """The value at a point (s first, then the names in order), modulo a prime."""
         value = self.diagram.evaluate_modulo(*self.weights_modulo(point, prime), prime)
-        return value * terms_at(sparse_terms(self.factor), point, prime) % prime
+        return value * terms_at(self.factor, point, prime) % prime
 
 
 def pair_modulo(n: Determinant, d: Determinant, point: Sequence[Any], prime: int) -> tuple[Any, Any]:
     """N and D at a point modulo a prime; D's pieces are the first of N's, so their weights are found once."""
     take, leave = n.weights_modulo(point, prime)
     top, bottom = (
-        det.diagram.evaluate_modulo(take, leave, prime)
-        * terms_at(sparse_terms(det.factor), point, prime)
-        % prime
+        det.diagram.evaluate_modulo(take, leave, prime) * terms_at(det.factor, point, prime) % prime
         for det in (n, d)
     )
     return top, bottom
@@ -118,13 +108,13 @@ def numeric_pair(n: Determinant, d: Determinant, values: Sequence[Fraction]) -> 
     has (the read) are scaled on both sides.
     """
     takes, leaves, scales = [], [], []
-    for take, leave in zip(*n.weights, strict=True):
+    for take, leave in zip(n.take, n.leave, strict=True):
         taken, left = _coefficients(take, values), _coefficients(leave, values)
         scale = lcm(*(c.denominator for c in (*taken, *left)))
         takes.append([int(c * scale) for c in taken])
         leaves.append([int(c * scale) for c in left])
         scales.append(scale)
-    n_factor, d_factor = (_coefficients(sparse_terms(p), values) for p in (n.factor, d.factor))
+    n_factor, d_factor = (_coefficients(factor, values) for factor in (n.factor, d.factor))
     common = lcm(*(c.denominator for c in (*n_factor, *d_factor)))
     own = len(d.take)
     extra = prod(scales[own:]) * common

@@ -15,15 +15,14 @@ from typing import TYPE_CHECKING, Any
 import numpy as np
 
 from symnet.errors import Fault, MissingValueError
-from symnet.exact.polynomials import Terms, sparse_terms
+from symnet.exact.polynomials import Generators, Terms
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray
-    from sympy.polys.rings import PolyElement, PolyRing
 
     from symnet.exact.determinant import Determinant
 
-__all__ = ["weight_row", "weights_at"]
+__all__ = ["factor_at", "weights_at"]
 
 
 def weights_at(
@@ -43,21 +42,21 @@ def weights_at(
     ([3j, 6j], [(2+0j), (2+0j)])
     """
     points = np.atleast_1d(s)
-    numbers = _numbers(determinant.factor.ring, values)
+    numbers = _numbers(determinant.generators, values)
     take, leave = (
         np.array([_row(terms, numbers, points) for terms in side]).reshape(-1, len(points))
-        for side in determinant.weights
+        for side in (determinant.take, determinant.leave)
     )
     return take, leave
 
 
-def weight_row(weight: PolyElement, values: Mapping[str, Fraction], s: NDArray[Any]) -> NDArray[Any]:
-    """One ring element at these points, such as the factor of a determinant; raises as :func:`weights_at`."""
-    return _row(sparse_terms(weight), _numbers(weight.ring, values), np.atleast_1d(s))
+def factor_at(determinant: Determinant, values: Mapping[str, Fraction], s: NDArray[Any]) -> NDArray[Any]:
+    """The factor of a determinant at these points; raises as :func:`weights_at`."""
+    return _row(determinant.factor, _numbers(determinant.generators, values), np.atleast_1d(s))
 
 
-def _numbers(ring: PolyRing, values: Mapping[str, Fraction]) -> list[tuple[str, Fraction | None]]:
-    return [(name, values.get(name)) for name in map(str, ring.symbols)]
+def _numbers(generators: Generators, values: Mapping[str, Fraction]) -> list[tuple[str, Fraction | None]]:
+    return [(name, values.get(name)) for name in generators.names]
 
 
 def _row(terms: Terms, numbers: list[tuple[str, Fraction | None]], points: NDArray[Any]) -> NDArray[Any]:

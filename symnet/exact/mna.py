@@ -280,7 +280,7 @@ def equations(network: Network) -> Equations:
 
     check_wiring(network)
     naming = Naming.of(network)
-    symbols = {str(symbol): symbol for symbol in naming.ring.symbols}
+    symbols = dict(zip(naming.generators.names, naming.ring.symbols, strict=True))
 
     def name(word: str) -> Any:
         return symbols[word] if word in symbols else naming.value(word).as_expr()

@@ -2,6 +2,10 @@
 
 A name whose value has no names in it stays a symbol and has a number (SI). A name whose value has names in
 it is tied: it is replaced everywhere, and only the names it is tied to remain.
+
+What a name is worth is kept as two lists of terms, numerator and denominator. Arithmetic with names, in a tie or
+a law, happens in a small field of just the names that occur there: the work grows with what is written down, not
+with the length of the network.
 """
 
 from __future__ import annotations
@@ -11,48 +15,95 @@ from dataclasses import dataclass, replace
 from fractions import Fraction
 from functools import cached_property
 from types import MappingProxyType
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, TypeAlias
 
 from symnet.circuit.names import dimensions
 from symnet.circuit.network import Network
 from symnet.circuit.parts import Branch
 from symnet.errors import Fault, NotationError, SingularError
 from symnet.exact.linear import fraction_of
-from symnet.exact.polynomials import make_ring
+from symnet.exact.polynomials import ONE, Generators, Terms, sparse_terms
 from symnet.expressions import Expression, Name, Number, evaluate, names_in
 from symnet.quantities import SECOND, Dimension
 
 if TYPE_CHECKING:
     from sympy.polys.fields import FracElement, FracField
-    from sympy.polys.rings import PolyRing
+    from sympy.polys.rings import PolyElement, PolyRing
 
-__all__ = ["Naming"]
+__all__ = ["Naming", "Words"]
+
+#: Numerator and denominator, in lowest terms.
+_Worth: TypeAlias = tuple[Terms, Terms]
+
+
+class Words:
+    """The field of fractions in s and a few names of a network, and the way from there to the whole ring."""
+
+    def __init__(self, generators: Generators, worth: Mapping[str, _Worth], names: Iterable[str]) -> None:
+        places = {
+            place
+            for name in names
+            for terms in worth.get(name, ())
+            for _, powers in terms
+            for place, _ in powers
+        }
+        self._worth = worth
+        self._places = sorted(places | {0})
+        self._generators = Generators(tuple(generators.names[place] for place in self._places))
+        self.field: FracField = self._generators.field
+
+    def fraction(self, name: Name) -> FracElement:
+        """What a name stands for; NotationError when it stands for nothing."""
+        try:
+            sides = self._worth[name.name]
+        except KeyError:
+            raise NotationError(
+                Fault(f"{name.name} is no part or symbol of this network", span=name.span)
+            ) from None
+        where = {place: k for k, place in enumerate(self._places)}
+        numer, denom = (
+            self._generators.element(
+                tuple((c, tuple((where[k], e) for k, e in powers)) for c, powers in side)
+            )
+            for side in sides
+        )
+        return self.field.raw_new(numer, denom)
+
+    def terms(self, polynomial: PolyElement) -> Terms:
+        """An element of the ring below the field, in the places of the whole ring."""
+        return tuple(
+            (c, tuple((self._places[k], e) for k, e in powers)) for c, powers in sparse_terms(polynomial)
+        )
 
 
 @dataclass(frozen=True, eq=False)
 class Naming:
     """What the names of a network mean in its ring.
 
-    ``ring`` has s first, then the names that remain, in order of appearance. ``numbers`` are the values (SI)
-    of those that have one.
+    ``generators`` are s, then the names that remain, in order of appearance. ``numbers`` are the values (SI) of
+    those that have one.
     """
 
-    ring: PolyRing
-    field: FracField
+    generators: Generators
     numbers: Mapping[str, Fraction]
     _network: Network
-    _ties: Mapping[str, FracElement]
+    _worth: Mapping[str, _Worth]
+
+    @property
+    def ring(self) -> PolyRing:
+        """The integer polynomial ring of the generators."""
+        return self.generators.ring
 
     @cached_property
     def names(self) -> frozenset[str]:
         """The names in the ring, s included."""
-        return frozenset(map(str, self.ring.symbols))
+        return frozenset(self.generators.names)
 
     @cached_property
     def dimensions(self) -> Mapping[str, Dimension | None]:
         """The dimension of s (1/second) and of every name in the ring; None where nothing tells it."""
         found = {**dimensions(self._network), "s": SECOND**-1}
-        return MappingProxyType({str(symbol): found.get(str(symbol)) for symbol in self.ring.symbols})
+        return MappingProxyType({name: found.get(name) for name in self.generators.names})
 
     @classmethod
     def of(cls, network: Network, symbols: frozenset[str] | None = None) -> Naming:
@@ -96,17 +147,15 @@ class Naming:
             for inner in names_in(read):
                 if inner.name not in electric:
                     appear(inner.name)
-        ring = make_ring(remaining)
-        field = ring.to_field()
-        known: dict[str, FracElement] = dict(zip(map(str, ring.symbols), field.gens, strict=True))
+        generators = Generators(("s", *remaining))
+        known: dict[str, _Worth] = {
+            name: (((1, ((place, 1),)),), ONE) for place, name in enumerate(generators.names)
+        }
         for name in order:
             if all(inner.name in known for inner in names_in(ties[name])):
-                known[name] = fraction_of(
-                    ties[name], field, lambda inner: known[inner.name], f"the value of {name}"
-                )
+                known[name] = _worth(name, ties[name], generators, known)
         return cls(
-            ring,
-            field,
+            generators,
             MappingProxyType({name: numbers[name] for name in remaining if name in numbers}),
             network,
             MappingProxyType(known),
@@ -136,16 +185,28 @@ class Naming:
 
     def value(self, name: str) -> FracElement:
         """What a name stands for, as a fraction of ring elements."""
-        return self._ties[name]
+        numer, denom = map(self.generators.element, self._worth[name])
+        return self.generators.field.raw_new(numer, denom)
 
-    def fraction(self, name: Name) -> FracElement:
-        """The same for a name in an expression; NotationError when it stands for nothing."""
-        try:
-            return self._ties[name.name]
-        except KeyError:
-            raise NotationError(
-                Fault(f"{name.name} is no part or symbol of this network", span=name.span)
-            ) from None
+    def terms(self, name: str) -> tuple[Terms, Terms]:
+        """The same as the terms of its numerator and of its denominator."""
+        return self._worth[name]
+
+    def words(self, expression: Expression) -> Words:
+        """The field of the names that occur in an expression."""
+        return Words(self.generators, self._worth, {name.name for name in names_in(expression)})
+
+
+def _worth(name: str, value: Expression, generators: Generators, known: Mapping[str, _Worth]) -> _Worth:
+    """What a tied name is worth: a name or a number as it stands, anything else by arithmetic."""
+    if isinstance(value, Name):
+        return known[value.name]
+    if isinstance(value, Number):
+        number = Fraction(value.value)
+        return ((number.numerator, ()),) if number else (), ((number.denominator, ()),)
+    words = Words(generators, known, {inner.name for inner in names_in(value)})
+    fraction = fraction_of(value, words.field, words.fraction, f"the value of {name}")
+    return words.terms(fraction.numer), words.terms(fraction.denom)
 
 
 def _number(name: str, expression: Expression) -> Fraction:

@@ -23,7 +23,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass, replace
-from typing import TYPE_CHECKING
+from functools import partial
 
 from symnet.circuit.network import Network
 from symnet.circuit.parts import (
@@ -38,19 +38,17 @@ from symnet.circuit.parts import (
 )
 from symnet.errors import Fault, NotationError
 from symnet.exact.linear import Bounded, LinearForm, linear_form
-from symnet.exact.naming import Naming
+from symnet.exact.naming import Naming, Words
+from symnet.exact.polynomials import ONE, Terms, negated, times_s
 from symnet.exact.trees import Piece
 from symnet.expressions import Expression, Name, names_in
-
-if TYPE_CHECKING:
-    from sympy.polys.rings import PolyElement
 
 __all__ = ["Pieces", "named_currents"]
 
 
 @dataclass(frozen=True)
 class Pieces:
-    """The pieces of a network without a chosen drive, with their weights in the ring of its names.
+    """The pieces of a network without a chosen drive, with their weights in the names of its ring.
 
     ``nodes`` and ``currents`` give the column (and row) of each node voltage and each current of its own.
     """
@@ -59,8 +57,8 @@ class Pieces:
     naming: Naming
     size: int
     pieces: tuple[Piece, ...]
-    take: tuple[PolyElement, ...]
-    leave: tuple[PolyElement, ...]
+    take: tuple[Terms, ...]
+    leave: tuple[Terms, ...]
     nodes: Mapping[str, int]
     currents: Mapping[str, int]
 
@@ -78,33 +76,50 @@ class Pieces:
         """
         return _Stamping(network, symbols, currents).result()
 
-    def form(self, expression: Expression, what: str) -> LinearForm:
-        """The linear form of an expression of voltages and currents in this network."""
-        return linear_form(expression, self.naming.field, self._form_of, what)
+    def form(
+        self, expression: Expression, what: str
+    ) -> tuple[Terms, list[tuple[Terms, int | None, int | None]]]:
+        """An expression of voltages and currents as ``(q, terms)``: the sum of ``weight * (x - y)`` over terms,
+        divided by q.
 
-    def _form_of(self, name: Name) -> LinearForm:
+        Opposite weights are paired, so that nothing cancels that a difference of voltages need not spell out.
+        """
+        words = self.naming.words(expression)
+        form = linear_form(expression, words.field, partial(self._form_of, words), what)
+        common = words.field.ring.one
+        for bounded in form.weights.values():
+            common = common.lcm(bounded.value.denom)
+        waiting: dict[int, Terms] = {}
+        out: list[tuple[Terms, int | None, int | None]] = []
+        for (kind, name), bounded in form.weights.items():
+            column = self.currents[name] if kind == "i" else self.nodes[name]
+            weight = words.terms(bounded.value.numer * common.exquo(bounded.value.denom))
+            opposite = next((other for other, value in waiting.items() if value == negated(weight)), None)
+            if opposite is None:
+                waiting[column] = weight
+            else:
+                out.append((waiting.pop(opposite), opposite, column))
+        out.extend((weight, column, None) for column, weight in waiting.items())
+        return words.terms(common), out
+
+    def _form_of(self, words: Words, name: Name) -> LinearForm:
         word = name.name
         if word in self.nodes or word == GROUND:
-            return self._voltage(word)
+            return _unknown(words, ("v", word))
         kind, _, rest = word.partition("_")
         if kind in ("v", "i") and rest and word not in self.naming.names:
-            return self._v(rest, name) if kind == "v" else self._i(rest, name)
-        return LinearForm(Bounded(self.naming.fraction(name)), {})
+            return self._v(words, rest, name) if kind == "v" else self._i(words, rest, name)
+        return LinearForm(Bounded(words.fraction(name)), {})
 
-    def _voltage(self, node: str) -> LinearForm:
-        one, zero = Bounded(self.naming.field.one), Bounded(self.naming.field.zero)
-        return LinearForm(zero, {} if node == GROUND else {("v", node): one})
-
-    def _v(self, rest: str, name: Name) -> LinearForm:
+    def _v(self, words: Words, rest: str, name: Name) -> LinearForm:
         if rest in self.nodes or rest == GROUND:
-            return self._voltage(rest)
+            return _unknown(words, ("v", rest))
         plus, minus = self._terminals(rest, name)
-        return self._voltage(plus) + -self._voltage(minus)
+        return _unknown(words, ("v", plus)) + -_unknown(words, ("v", minus))
 
-    def _i(self, rest: str, name: Name) -> LinearForm:
-        field = self.naming.field
+    def _i(self, words: Words, rest: str, name: Name) -> LinearForm:
         if rest in self.currents:
-            return LinearForm(Bounded(field.zero), {("i", rest): Bounded(field.one)})
+            return _unknown(words, ("i", rest))
         raise _stands_for_nothing(name)
 
     def _terminals(self, rest: str, name: Name) -> tuple[str, str]:
@@ -115,27 +130,6 @@ class Pieces:
         if part is None or isinstance(part, OpAmp):
             raise _stands_for_nothing(name)
         return part.nodes
-
-    def terms(self, form: LinearForm) -> tuple[PolyElement, list[tuple[PolyElement, int | None, int | None]]]:
-        """A linear form as ``(q, terms)``: the sum of ``weight * (x - y)`` over terms, divided by q.
-
-        Opposite weights are paired, so that nothing cancels that a difference of voltages need not spell out.
-        """
-        common = self.naming.ring.one
-        for weight in form.weights.values():
-            common = common.lcm(weight.value.denom)
-        waiting: dict[int, PolyElement] = {}
-        out: list[tuple[PolyElement, int | None, int | None]] = []
-        for (kind, name), bounded in form.weights.items():
-            column = self.currents[name] if kind == "i" else self.nodes[name]
-            weight = bounded.value.numer * common.exquo(bounded.value.denom)
-            opposite = next((other for other, value in waiting.items() if value == -weight), None)
-            if opposite is None:
-                waiting[column] = weight
-            else:
-                out.append((waiting.pop(opposite), opposite, column))
-        out.extend((weight, column, None) for column, weight in waiting.items())
-        return common, out
 
     def drive_rows(self, drive: Drive) -> tuple[int | None, int | None]:
         """The rows, (+) and (-), in which a drive of value 1 stands on the right-hand side."""
@@ -154,6 +148,12 @@ def named_currents(network: Network, *expressions: Expression) -> frozenset[str]
         for name in names_in(expression)
         if name.name.startswith("i_") and name.name[2:] in parts
     )
+
+
+def _unknown(words: Words, unknown: tuple[str, str]) -> LinearForm:
+    """One voltage or current; gnd is no unknown."""
+    weights = {} if unknown == ("v", GROUND) else {unknown: Bounded(words.field.one)}
+    return LinearForm(Bounded(words.field.zero), weights)
 
 
 def _stands_for_nothing(name: Name) -> NotationError:
@@ -186,8 +186,8 @@ class _Stamping:
         self.size = len(self.nodes) + len(self.currents)
         self.frame = Pieces(network, self.naming, self.size, (), (), (), self.nodes, self.currents)
         self.pieces: list[Piece] = []
-        self.take: list[PolyElement] = []
-        self.leave: list[PolyElement] = []
+        self.take: list[Terms] = []
+        self.leave: list[Terms] = []
 
     def result(self) -> Pieces:
         for name, drive in zip(self.network.drive_names, self.network.drives, strict=True):
@@ -218,16 +218,16 @@ class _Stamping:
         """The current of its own of a part, leaving ``start`` and entering ``end``."""
         self._add(Piece(*self._columns(start, end), self.currents[name], None))
 
-    def _row(self, name: str, plus: int | None, minus: int | None, take: PolyElement | None = None) -> None:
+    def _row(self, name: str, plus: int | None, minus: int | None, take: Terms = ONE) -> None:
         """A term ``take * (x_plus - x_minus)`` in the row of a part with a current of its own."""
         self._add(Piece(self.currents[name], None, plus, minus), take)
 
     def _law(self, part: VoltageLaw | CurrentLaw, plus: int | None, minus: int | None) -> None:
         """The row ``q * (x_plus - x_minus) - q * value = 0``, with q the common denominator of the value."""
-        common, terms = self.frame.terms(self.frame.form(part.value, f"the law {part.name}"))
+        common, terms = self.frame.form(part.value, f"the law {part.name}")
         self._row(part.name, plus, minus, common)
         for weight, a, b in terms:
-            self._row(part.name, a, b, -weight)
+            self._row(part.name, a, b, negated(weight))
 
     def _current_law(self, part: CurrentLaw) -> None:
         start, end = self._columns(part.start, part.end)
@@ -235,8 +235,8 @@ class _Stamping:
             self._current(part.name, part.start, part.end)
             self._law(part, self.currents[part.name], None)
             return
-        common, terms = self.frame.terms(self.frame.form(part.value, f"the law {part.name}"))
-        if len(terms) == 1 or common == self.naming.ring.one:
+        common, terms = self.frame.form(part.value, f"the law {part.name}")
+        if len(terms) == 1 or common == ONE:
             for weight, a, b in terms:
                 self._add(Piece(start, end, a, b), weight, common)
             return
@@ -246,7 +246,7 @@ class _Stamping:
         self._add(Piece(start, end, at, None))
         self._add(Piece(at, None, at, None), common)
         for weight, a, b in terms:
-            self._add(Piece(at, None, a, b), -weight)
+            self._add(Piece(at, None, a, b), negated(weight))
 
     def _branch(self, part: Branch) -> None:
         impedance, admittance = self._value(part)
@@ -261,31 +261,26 @@ class _Stamping:
         if admittance is None:
             numerator, denominator = impedance
             self._row(part.name, *voltage)
-            self._add(Piece(at, None, at, None), -numerator, denominator)
+            self._add(Piece(at, None, at, None), negated(numerator), denominator)
         else:
             numerator, denominator = admittance
             self._row(part.name, at, None)
-            self._add(Piece(at, None, *voltage), -numerator, denominator)
+            self._add(Piece(at, None, *voltage), negated(numerator), denominator)
 
-    def _value(
-        self, part: Branch
-    ) -> tuple[tuple[PolyElement, PolyElement], tuple[PolyElement, PolyElement] | None]:
+    def _value(self, part: Branch) -> tuple[tuple[Terms, Terms], tuple[Terms, Terms] | None]:
         """Numerator and denominator of the impedance, and of the admittance for C and Y."""
-        value = self.naming.value(part.name)
-        s = self.naming.ring.gens[0]
-        p, q = value.numer, value.denom
+        p, q = self.naming.terms(part.name)
         match part.kind:
             case "C":
-                return (q, s * p), (s * p, q)
+                return (q, times_s(p)), (times_s(p), q)
             case "Y":
                 return (q, p), (p, q)
             case "L":
-                return (s * p, q), None
+                return (times_s(p), q), None
             case _:
                 return (p, q), None
 
-    def _add(self, piece: Piece, take: PolyElement | None = None, leave: PolyElement | None = None) -> None:
-        one = self.naming.ring.one
+    def _add(self, piece: Piece, take: Terms = ONE, leave: Terms = ONE) -> None:
         self.pieces.append(piece)
-        self.take.append(one if take is None else take)
-        self.leave.append(one if leave is None else leave)
+        self.take.append(take)
+        self.leave.append(leave)

@@ -1,25 +1,87 @@
-"""Polynomials in s and the part names: elements of one sympy ring over the integers, lexicographic, s first."""
+"""Polynomials in s and the part names: sparse terms while a network is read, ring elements when one looks at them.
+
+A weight of a long network holds one or two of its hundreds of names. As an element of the whole ring each of its
+monomials is a tuple with a place for every name, so that the weights alone would take time and room that grow with
+the square of the length; as terms they hold what occurs. The ring (over the integers, lexicographic, s first) is
+made when the first element of it is asked for.
+"""
 
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
-from typing import TYPE_CHECKING, Any, TypeAlias
+from dataclasses import dataclass
+from functools import cached_property
+from typing import TYPE_CHECKING, Any, Final, TypeAlias
 
 if TYPE_CHECKING:
+    from sympy.polys.fields import FracField
     from sympy.polys.rings import PolyElement, PolyRing
 
 __all__ = [
+    "ONE",
+    "Generators",
     "Terms",
     "begins_negative",
     "by_powers_of_s",
     "highest_exponents",
     "make_ring",
     "modulo",
+    "negated",
     "sparse_terms",
+    "times_s",
 ]
 
-#: Terms as (coefficient, ((generator, exponent), ...)), with the exponents that are not zero only.
+#: Terms as (coefficient, ((generator, exponent), ...)): generators ascending, exponents that are not zero only.
 Terms: TypeAlias = "tuple[tuple[int, tuple[tuple[int, int], ...]], ...]"
+
+ONE: Final[Terms] = ((1, ()),)
+
+
+@dataclass(frozen=True)
+class Generators:
+    """The names that the generators of a ring stand for, s first."""
+
+    names: tuple[str, ...]
+
+    def __len__(self) -> int:
+        return len(self.names)
+
+    @cached_property
+    def ring(self) -> PolyRing:
+        """The integer polynomial ring, lexicographic."""
+        return make_ring(self.names[1:])
+
+    @cached_property
+    def field(self) -> FracField:
+        """The fractions of its elements."""
+        return self.ring.to_field()
+
+    def element(self, terms: Terms) -> PolyElement:
+        """Terms as an element of the ring.
+
+        >>> Generators(("s", "R1", "C1")).element(((2, ((0, 1), (2, 1))), (1, ())))
+        2*s*C1 + 1
+        """
+        found: dict[tuple[int, ...], Any] = {}
+        for coefficient, powers in terms:
+            monomial = [0] * len(self)
+            for place, exponent in powers:
+                monomial[place] = exponent
+            found[tuple(monomial)] = self.ring.domain(coefficient)
+        return self.ring.from_dict(found)
+
+
+def times_s(terms: Terms) -> Terms:
+    """The terms times s."""
+    return tuple(
+        (c, ((0, powers[0][1] + 1), *powers[1:]) if powers and not powers[0][0] else ((0, 1), *powers))
+        for c, powers in terms
+    )
+
+
+def negated(terms: Terms) -> Terms:
+    """The terms with the other sign."""
+    return tuple((-c, powers) for c, powers in terms)
 
 
 def make_ring(names: Iterable[str]) -> PolyRing:

@@ -30,11 +30,11 @@ class Quotient:
     def lowest(self) -> LowestTerms:
         """Both written out in lowest terms; LimitError when that would be too long."""
         n, d = self.numerator, self.denominator
-        ring = d.factor.ring
+        ring = d.generators.ring
         if n.diagram.is_zero:
             return LowestTerms(ring, ring.zero, ring.one, ())
         found = reduce(n.primitive, d.primitive, ring, lambda point: self.modulo(point, SMALL_PRIME))
-        return replace(found, hidden=_without(found.hidden, d.factor))
+        return replace(found, hidden=_without(found.hidden, d.generators.element(d.factor)))
 
     @property
     def terms(self) -> tuple[int, int]:

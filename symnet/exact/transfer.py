@@ -74,9 +74,9 @@ class Transfer(Displayed):
 
         A name of the ring that has cancelled is not among them, unless H is too long to be written out.
         """
-        names = [str(symbol) for symbol in self.ring.symbols[1:]]
+        names = self.naming.generators.names[1:]
         if not self.quotient.is_writable:
-            return tuple(names)
+            return names
         lowest = self.quotient.lowest
         top, bottom = (degrees_of(side) for side in (lowest.top, lowest.bottom))
         return tuple(name for name, a, b in zip(names, top[1:], bottom[1:], strict=True) if a or b)
@@ -162,8 +162,8 @@ class Transfer(Displayed):
         anything = (Fraction(prime) for prime in count(1_000_003, 2))
         top, bottom = self.quotient.numbers(
             [
-                self.values[str(symbol)] if str(symbol) in self.values else next(anything)
-                for symbol in self.ring.symbols[1:]
+                self.values[name] if name in self.values else next(anything)
+                for name in self.naming.generators.names[1:]
             ]
         )
         if not any(bottom):

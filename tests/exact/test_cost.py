@@ -12,7 +12,7 @@ from sympy import fibonacci
 import symnet as sn
 from symnet.errors import LimitError
 from symnet.exact import determinant, expansion
-from symnet.exact.determinant import MOST_TERMS
+from symnet.exact.determinant import MOST_TERMS, Determinant
 from symnet.exact.trees import Diagram
 from tests.speed.engine import bridged_t, complete_graph, rc_ladder
 
@@ -44,13 +44,19 @@ def with_values(sections: int) -> str:
     return "\n".join([rc_ladder(sections), *values])
 
 
+def elements(det: Determinant) -> tuple[list[Any], list[Any]]:
+    """The weights, take and leave, as ring elements."""
+    take, leave = ([det.generators.element(terms) for terms in side] for side in (det.take, det.leave))
+    return take, leave
+
+
 @pytest.mark.parametrize("text", [rc_ladder(3), rc_ladder(9), bridged_t(2), bridged_t(3), complete_graph(6)])
 def test_the_number_of_terms_is_known_without_expanding(text: str) -> None:
     """Law: where every part has its own symbol, terms and paths are one to one."""
     H = derived(text)
     counted = H.terms
     written = [
-        det.diagram.evaluate(det.take, det.leave, H.ring.one)
+        det.diagram.evaluate(*elements(det), H.ring.one)
         for det in (H.quotient.numerator, H.quotient.denominator)
     ]
     assert counted == tuple(map(len, written))

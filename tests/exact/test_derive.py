@@ -248,7 +248,7 @@ def test_a_wrong_h_does_not_pass_the_confirmation(sections: int) -> None:
     net = sn.network("\n".join([*lines, "drive n0", "read n1"]))
     H = sn.derive(net)
     n, d = H.quotient.numerator, H.quotient.denominator
-    wrong = Quotient(replace(n, factor=2 * n.factor), d)
+    wrong = Quotient(replace(n, factor=((2, ()),)), d)
     with pytest.raises(UnconfirmedError, match="must not be used"):
         confirm(net, H.naming, H.drive, H.read, wrong)
 

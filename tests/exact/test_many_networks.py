@@ -134,7 +134,10 @@ def assert_agrees_modulo(sketch: Sketch, H: Transfer, seed: int) -> None:
 def assert_paths_are_monomials(sketch: Sketch, H: Transfer) -> None:
     """As many terms as paths in each determinant, every coefficient +1 or -1: nothing has cancelled."""
     for determinant in (H.quotient.numerator, H.quotient.denominator):
-        written = determinant.diagram.evaluate(determinant.take, determinant.leave, H.ring.one)
+        take, leave = (
+            map(H.naming.generators.element, side) for side in (determinant.take, determinant.leave)
+        )
+        written = determinant.diagram.evaluate(list(take), list(leave), H.ring.one)
         assert len(written) == determinant.diagram.count(), sketch.text
         assert {abs(int(c)) for c in written.values()} <= {1}, sketch.text
 

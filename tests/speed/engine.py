@@ -101,7 +101,7 @@ def with_symnet(net: sn.Network) -> int:
     """From the network to its determinant, written out; the number of terms."""
     pieces = Pieces.of(net)
     diagram = build(pieces.size, pieces.pieces)
-    return len(Determinant(diagram, pieces.take, pieces.leave, pieces.naming.ring.one).primitive.part)
+    return len(Determinant(pieces.naming.generators, diagram, pieces.take, pieces.leave).primitive.part)
 
 
 def with_sympy_ring(net: sn.Network) -> int:

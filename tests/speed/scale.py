@@ -66,10 +66,9 @@ def by_diagram(net: sn.Network, s: Points) -> tuple[Transfer, Scaled, dict[str, 
     own = len(quotient.denominator.take)  # the denominator's pieces are the first of the numerator's
     n, n_taken = shares(quotient.numerator.diagram, take, leave)
     d, d_taken = shares(quotient.denominator.diagram, take[:own], leave[:own])
-    names = [str(symbol) for symbol in H.ring.symbols]
+    names = H.naming.generators.names
     sensitivities = {name: np.zeros(len(s), dtype=np.complex128) for name in names[1:]}
-    takes, leaves = quotient.denominator.weights
-    for i, sides in enumerate(zip(takes, leaves, strict=True)):
+    for i, sides in enumerate(zip(quotient.denominator.take, quotient.denominator.leave, strict=True)):
         # in T/(T + L) the shares of leaving are one minus those of taking: the difference only turns its sign
         difference = n_taken[i] - d_taken[i]
         for terms, share in zip(sides, (difference, -difference), strict=True):

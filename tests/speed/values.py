@@ -76,7 +76,7 @@ def equal_sections(rounds: int) -> tuple[str, float, str, float]:
     def determinant() -> int:
         pieces = Pieces.of(net)
         diagram = build(pieces.size, pieces.pieces)
-        return len(Determinant(diagram, pieces.take, pieces.leave, pieces.naming.ring.one).primitive.part)
+        return len(Determinant(pieces.naming.generators, diagram, pieces.take, pieces.leave).primitive.part)
 
     ours = fastest(determinant, max(5, rounds))
 
