@@ -19,6 +19,7 @@ from symnet.circuit.parts import (
     OpAmp,
     VoltageDrive,
     VoltageLaw,
+    class_letter,
 )
 from symnet.circuit.reading import read_expression, read_reading
 from symnet.errors import Fault, LimitError, NotationError
@@ -93,7 +94,7 @@ def load(path: str | PathLike[str]) -> Network:
 
 def _branch(word: str, name: str, nodes: tuple[str, str], value: ValueLike) -> Network:
     letter = _WORDS[word]
-    if name[:1] != letter:
+    if class_letter(name) != letter:
         raise NotationError(
             Fault(
                 f"{name} is no name for {word}",
@@ -102,7 +103,7 @@ def _branch(word: str, name: str, nodes: tuple[str, str], value: ValueLike) -> N
             )
         )
     for node in nodes:
-        if not node or node[0] in CLASS_LETTERS:
+        if class_letter(node) in {"", *CLASS_LETTERS}:
             raise NotationError(
                 Fault(
                     f"{node or 'an empty name'} cannot be the name of a node",

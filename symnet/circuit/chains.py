@@ -15,8 +15,9 @@ from symnet.circuit.drafts import Draft, RightSide
 from symnet.circuit.formulas import Formed, Formulas
 from symnet.circuit.lines import Line
 from symnet.circuit.meanings import RESERVED, is_part_name
-from symnet.circuit.parts import CLASS_LETTERS, GROUND
+from symnet.circuit.parts import CLASS_LETTERS, class_letter
 from symnet.circuit.series import Beside, Group, Leaf, Series, leaves, wire
+from symnet.circuit.words import node_fault, plain_fault
 from symnet.errors import Span, SymnetError
 from symnet.expressions import Number
 from symnet.quantities import read_number
@@ -53,42 +54,24 @@ class Chains(Formulas):
 
     def node(self, word: Leaf) -> str:
         """The word as a node, faults noted."""
-        name, span = word.name, word.span
-        if name[0] in "0123456789.":
-            if name.strip("0") == "":
-                self.fault(f"{name} is no node; the reference is called {GROUND}", f"write {GROUND}", span)
-            elif not name.isdigit() or name[0] == "0":
-                self.fault(f"{name} is no node", "a node has a name, or a whole number from 1", span)
-            return name
-        if name != GROUND and name.lower() in {GROUND, "ground"}:
-            self.fault(f"the reference is called {GROUND}", f"write {GROUND} for {name}", span)
-        elif is_part_name(name):
-            self.fault(
-                f"{name} stands where a node must stand", f"names that begin with {name[0]} are parts", span
-            )
-        elif name != GROUND:
-            self.plain(name, span, "a node")
-        return name
+        said = node_fault(word.name)
+        if said is not None:
+            self.fault(*said, word.span)
+        return word.name
 
     def plain(self, name: str, span: Span | None, what: str) -> None:
         """Note a fault when the name means something else already."""
-        if name == "s":
-            self.fault(f"s is the Laplace variable and cannot be {what}", "choose another name", span)
-        elif name == GROUND:
-            self.fault(f"{GROUND} is the reference and cannot be {what}", "choose another name", span)
-        elif name in RESERVED:
-            self.fault(f"{name} is a word of the notation and cannot be {what}", "choose another name", span)
-        elif name.startswith(("i_", "v_")) and name[2:]:
-            kind = "current through" if name[0] == "i" else "voltage of"
-            self.fault(
-                f"{name} means the {kind} {name[2:]} and cannot be {what}", f"call it {name[2:]}", span
-            )
+        said = plain_fault(name, what)
+        if said is not None:
+            self.fault(*said, span)
 
     def label(self, token: Token, what: str) -> str:
         """The name of a law, a device or a drive."""
         name, span = self.name(token), self.span_of(token)
         if is_part_name(name):
-            self.fault(f"{name} cannot be {what}", f"names that begin with {name[0]} are branches", span)
+            self.fault(
+                f"{name} cannot be {what}", f"names that begin with {class_letter(name)} are branches", span
+            )
         else:
             self.plain(name, span, what)
         return name

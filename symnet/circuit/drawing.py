@@ -9,6 +9,7 @@ from collections.abc import Iterable, Iterator
 from dataclasses import dataclass, field
 
 from symnet.circuit.parts import GROUND, Branch, Drive, Part, Value
+from symnet.circuit.sections import Instance
 from symnet.errors import Fault, UnknownNameError, nearest
 from symnet.expressions import Expression, names_in
 from symnet.quantities import Dimension
@@ -19,7 +20,8 @@ __all__ = ["Drawing"]
 @dataclass(frozen=True, slots=True)
 class Drawing:
     """What was drawn. ``values`` holds what each part or symbol is worth, in the order of writing; a part without
-    an entry stays a symbol. ``free`` are the symbols declared with ``free``; ``text`` is the text as typed.
+    an entry stays a symbol. ``free`` are the symbols declared with ``free``; ``instances`` the sections in their
+    places, whose parts are among the parts; ``text`` is the text as typed.
     """
 
     parts: tuple[Part, ...] = ()
@@ -27,13 +29,14 @@ class Drawing:
     reads: tuple[Expression, ...] = ()
     values: tuple[tuple[str, Value], ...] = ()
     free: tuple[tuple[str, Dimension | None], ...] = ()
+    instances: tuple[Instance, ...] = ()
     text: str | None = field(default=None, compare=False, repr=False)
 
     @property
     def nodes(self) -> tuple[str, ...]:
         """The nodes other than gnd, in order of appearance; those inside a series have a name with ``+``."""
         found: dict[str, None] = {}
-        for piece in (*self.parts, *self.drives):
+        for piece in (*self.parts, *self.drives, *self.instances):
             found.update(dict.fromkeys(piece.nodes))
         found.pop(GROUND, None)
         return tuple(found)

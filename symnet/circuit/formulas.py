@@ -87,8 +87,8 @@ class Formed:
 class Formulas:
     """Builds expressions from the trees of one line and collects what is wrong with them in ``faults``."""
 
-    #: Whether a value in Hz makes sense here. In a network s is in rad/s and 2 pi is no fraction.
-    takes_hertz = False
+    #: What a value in Hz is multiplied by; None where it is refused: s is in rad/s and 2 pi is no fraction.
+    in_hertz: Fraction | None = None
 
     def __init__(self, line: Line) -> None:
         self.line = line
@@ -149,7 +149,9 @@ class Formulas:
                 return replace(self._number(worth.value, worth.dimension, whole, "quantity"), code=text)
             self._no_unit(str(number), str(unit), unit_span)
             known = Fraction(1), NUMBER
-        elif known[1] == HERTZ and str(unit).endswith("Hz") and not self.takes_hertz:
+        elif known[1] == HERTZ and str(unit).endswith("Hz") and self.in_hertz is not None:
+            value *= self.in_hertz
+        elif known[1] == HERTZ and str(unit).endswith("Hz"):
             # 2 pi is rounded for the message only; no value is made from it.
             shown = engineering(value * known[0] * Fraction("6.283185307"), HERTZ, digits=7, unit="rad/s")
             self.fault(f"{number} {unit} is a frequency, but s is in rad/s", f"write {shown}", whole)

@@ -14,7 +14,7 @@ from fractions import Fraction
 from typing import Final
 
 from symnet.circuit.meanings import Meanings, Use
-from symnet.circuit.parts import CLASS_LETTERS
+from symnet.circuit.parts import dimension_of_class
 from symnet.circuit.spelling import write_expression
 from symnet.errors import Fault, Span
 from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Sum, names_in
@@ -197,7 +197,7 @@ class Inference:
                 f"the value of {name} has not the dimension of {name}", self._found(use), expression.span
             )
         message = f"{name} is {_in(there)}, its value is {_in(here)}"
-        hint = f"give {name} in {there}" if name[0] in CLASS_LETTERS else self._found(use)
+        hint = f"give {name} in {there}" if dimension_of_class(name) else self._found(use)
         if isinstance(expression, Number) and here == NUMBER:
             number = engineering(expression.value, exact=True)
             hint = f"write the unit: {number} {there}"

@@ -10,7 +10,16 @@ from collections.abc import Iterable, Iterator
 from dataclasses import dataclass
 from typing import TYPE_CHECKING, Final
 
-from symnet.circuit.parts import CLASS_LETTERS, GROUND, Branch, CurrentLaw, OpAmp, VoltageLaw
+from symnet.circuit.parts import (
+    CLASS_LETTERS,
+    GROUND,
+    Branch,
+    CurrentLaw,
+    OpAmp,
+    VoltageLaw,
+    class_letter,
+    dimension_of_class,
+)
 from symnet.circuit.series import is_hidden
 from symnet.errors import Span
 from symnet.expressions import Expression, Name, names_in
@@ -34,7 +43,7 @@ _LABELS: Final = {VoltageLaw: "a law", CurrentLaw: "a law", OpAmp: "an op amp"}
 
 def is_part_name(name: str) -> bool:
     """Whether a name is that of a branch: it begins with R, L, C, Z or Y."""
-    return name[:1] in CLASS_LETTERS
+    return class_letter(name) in CLASS_LETTERS
 
 
 @dataclass(frozen=True, slots=True)
@@ -49,7 +58,7 @@ class Use:
     @property
     def takes_s(self) -> bool:
         """Whether the Laplace variable may stand in it."""
-        return self.is_law or (self.where == "value" and self.target[0] in "ZY")
+        return self.is_law or (self.where == "value" and class_letter(self.target) in "ZY")
 
     @property
     def is_law(self) -> bool:
@@ -71,12 +80,15 @@ def uses(net: Drawing) -> Iterator[Use]:
 class Meanings:
     """Who is who in one network. ``doubtful`` names come from lines that could not be read."""
 
-    def __init__(self, net: Drawing, doubtful: Iterable[str] = ()) -> None:
+    def __init__(self, net: Drawing, doubtful: Iterable[str] = (), terminals: Iterable[str] = ()) -> None:
         self.doubtful = frozenset(doubtful)
         self.branches = {part.name: part for part in net.parts if isinstance(part, Branch)}
         self.labels = {part.name: _LABELS[type(part)] for part in net.parts if not isinstance(part, Branch)}
         self.labels |= {drive.name: "a drive" for drive in net.drives if drive.name}
-        self.nodes = {node: None for piece in (*net.parts, *net.drives) for node in piece.nodes}
+        self.nodes = {
+            node: None for piece in (*net.parts, *net.drives, *net.instances) for node in piece.nodes
+        }
+        self.nodes |= dict.fromkeys(terminals)
         self.nodes.pop(GROUND, None)
         self.declared = dict(net.free)
         self.assigned = dict(net.values)
@@ -118,7 +130,7 @@ class Meanings:
             case "current":
                 return AMPERE
             case "part" | "symbol" | "unknown":
-                return CLASS_LETTERS.get(name[0]) or self.declared.get(name)
+                return dimension_of_class(name) or self.declared.get(name)
         return None
 
     def free_symbols(self, net: Drawing) -> tuple[str, ...]:
@@ -187,7 +199,9 @@ def near_name(name: Name, meanings: Meanings, parts: NearNames, others: NearName
         if known in meanings.doubtful:
             continue
         same_case = known.lower() == text.lower()
-        both_parts = text[0] == known[0] and is_part_name(text) and known in meanings.branches
+        both_parts = (
+            class_letter(text) == class_letter(known) and is_part_name(text) and known in meanings.branches
+        )
         if same_case or both_parts or (len(text) >= 3 and len(known) >= 3 and not is_part_name(text)):
             return known
     return None

@@ -23,8 +23,6 @@ __all__ = ["DIAGNOSES", "RESERVED_LATER", "Said", "diagnose"]
 
 #: Words kept for statements of later releases, with what to do until then.
 RESERVED_LATER: Final = {
-    "define": "write out the parts of the section where it is used",
-    "done": "write out the parts of the section where it is used",
     "couple": "write the coupled coils as three uncoupled ones",
     "let": "give the symbol a value: g = 2*R1",
     "node": "node equations belong to a hand derivation",
@@ -38,6 +36,8 @@ _USAGE: Final = {
     "free": "write: free Z0, K or free gm in S",
     "notation": "write: notation 1",
     "device": "write: U1: opamp(plus=p, minus=m, out=o)",
+    "define": "write: define divider(in, out; R1, R2 = 10 kohm)",
+    "done": "done ends a section and stands alone",
 }
 
 _GIVEN_VALUE: Final = {"assignment", "hold", "push", "read", "value", "expression", "device"}

@@ -11,7 +11,7 @@ from typing import TYPE_CHECKING, Final
 from symnet.circuit.inference import Inference
 from symnet.circuit.laws import law_faults
 from symnet.circuit.meanings import Meanings, NearNames, Use, is_part_name, near_name, uses
-from symnet.circuit.parts import CLASS_LETTERS, Branch
+from symnet.circuit.parts import CLASS_LETTERS, Branch, class_letter
 from symnet.errors import Fault, Span, nearest
 from symnet.expressions import Name, Number, names_in
 from symnet.quantities import NUMBER, Dimension
@@ -77,17 +77,20 @@ def _rank(use: Use) -> int:
 
 
 def check(
-    net: Drawing, doubtful: Iterable[str] = (), places: Mapping[str, Span] | None = None
+    net: Drawing,
+    doubtful: Iterable[str] = (),
+    places: Mapping[str, Span] | None = None,
+    terminals: Iterable[str] = (),
 ) -> list[Fault]:
     """All faults of names, values and laws.
 
     ``doubtful`` names come from lines that could not be read; ``places`` says where names get their values or
-    are declared free.
+    are declared free; ``terminals`` are nodes although no part may touch them, as those of a section.
     Faults of topology are found elsewhere (symnet.circuit.wiring).
     """
     if len(net.parts) > MOST_PARTS:
         return [Fault(f"the network has {len(net.parts)} parts; at most {MOST_PARTS} are read")]
-    meanings = Meanings(net, doubtful)
+    meanings = Meanings(net, doubtful, terminals)
     faults = [*_clashes(net, meanings, places or {}), *_ties(meanings)]
     names = _Names(net, meanings, places or {})
     names.judge()
@@ -110,8 +113,11 @@ def _introduced(
     net: Drawing, meanings: Meanings, places: Mapping[str, Span]
 ) -> Iterator[tuple[str, str, Span | None]]:
     """Every name with what it is made to be, and where."""
+    for instance in net.instances:
+        yield instance.name, "a section", instance.span
+    placed = {part.name for instance in net.instances for part in instance.parts()}
     for part in net.parts:
-        if isinstance(part, Branch):
+        if isinstance(part, Branch) and part.name not in placed:
             yield part.name, "a part", part.span
     nodes: dict[str, Span | None] = {}
     for piece in (*net.parts, *net.drives):
@@ -120,7 +126,7 @@ def _introduced(
     for node, span in nodes.items():
         yield node, "a node", span
     for labelled in (*net.parts, *net.drives):
-        if labelled.name and not isinstance(labelled, Branch):
+        if labelled.name and not isinstance(labelled, Branch) and labelled.name not in placed:
             yield labelled.name, meanings.labels[labelled.name], labelled.span
     for name, _ in net.free:
         yield name, "a free symbol", places.get(name)
@@ -189,7 +195,7 @@ def _ties(meanings: Meanings) -> Iterator[Fault]:
                 yield Fault(message, "give one of them a value of its own", span, parts=tuple(circle[:-1]))
     for name, used_names in ties.items():
         # s written in the value itself is a fault of names, found where it stands.
-        if name in with_s and name[0] not in "ZY" and "s" not in used_names:
+        if name in with_s and class_letter(name) not in "ZY" and "s" not in used_names:
             other = next(used for used in used_names if used in with_s)
             message = f"{name} is tied to {other}, and {other} contains s"
             yield Fault(message, "only Z and Y may have s in their value", meanings.assigned[name].span)

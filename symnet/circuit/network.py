@@ -23,6 +23,7 @@ from symnet.circuit.parts import (
     dimension_of_class,
 )
 from symnet.circuit.reading import read_drawing, read_value
+from symnet.circuit.sections import kept, placed_values
 from symnet.circuit.series import settled
 from symnet.circuit.spelling import write_expression
 from symnet.circuit.writing import write_drive, write_network
@@ -96,15 +97,20 @@ class Network(Drawing, Displayed):
         return _sound(network)
 
     def without(self, *names: str) -> Network:
-        """A network without these parts, laws or devices; their values go with them.
+        """A network without these parts, laws, devices or sections; their values go with them.
 
         Raises NotationError when what remains still hangs on one of them: a tied value, or a law that names its
         voltage or current.
         """
+        placed = {instance.name: instance for instance in self.instances}
+        gone: set[str] = set()
         for name in names:
-            if name not in self:
-                raise self.unknown(name, self.part_names, "part")
-        gone = set(names)
+            if name in placed:
+                gone |= {*(part.name for part in placed[name].parts()), *dict(placed[name].values())}
+            elif name in self:
+                gone.add(name)
+            else:
+                raise self.unknown(name, (*self.part_names, *placed), "part or section" if placed else "part")
         left = replace(
             self,
             parts=tuple(part for part in self.parts if part.name not in gone),
@@ -180,6 +186,7 @@ class Network(Drawing, Displayed):
             (*self.reads, *other.reads),
             tuple(values.items()),
             free,
+            (*self.instances, *other.instances),
         )
 
     def _refuse_ambiguous(self, name: str, given: object) -> None:
@@ -210,8 +217,14 @@ class Network(Drawing, Displayed):
 
 
 def _sound(network: Network) -> Network:
-    """The same with the nodes inside series named afresh; NotationError for names and values that clash."""
-    network = replace(network, parts=settled(network.parts))
+    """The same with the nodes inside series named afresh; NotationError for names and values that clash.
+
+    Sections that still are as they were placed keep their values first, as reading their text would give them.
+    """
+    parts, values = settled(network.parts), dict(network.values)
+    instances = tuple(kept(network.instances, parts, values))
+    ordered = {**{name: values[name] for name in placed_values(instances)}, **values}
+    network = replace(network, parts=parts, values=tuple(ordered.items()), instances=instances)
     faults = check(network)
     if faults:
         raise NotationError([replace(fault, span=None) for fault in faults])

@@ -11,7 +11,7 @@ from fractions import Fraction
 from typing import TYPE_CHECKING, Final
 
 from symnet.circuit.meanings import Meanings, NearNames, uses
-from symnet.circuit.parts import CLASS_LETTERS, GROUND
+from symnet.circuit.parts import CLASS_LETTERS, GROUND, class_letter, dimension_of_class
 from symnet.circuit.series import is_hidden
 from symnet.expressions import Number, names_in
 from symnet.quantities import LEADING_CODE, Quantity, engineering, read_code
@@ -49,19 +49,23 @@ def _values(net: Drawing) -> list[str]:
     branches = {branch.name for branch in net.branches()}
     numbers = {name: value.expression for name, value in net.values if isinstance(value.expression, Number)}
     valued = {
-        name: number.value for name, number in numbers.items() if name in branches and name[0] in _RANGES
+        name: number.value
+        for name, number in numbers.items()
+        if name in branches and class_letter(name) in _RANGES
     }
-    normalised = any(name[0] in "LC" for name in valued) and all(
-        _within(abs(value), _NORMALISED[name[0]]) for name, value in valued.items()
+    normalised = any(class_letter(name) in "LC" for name in valued) and all(
+        _within(abs(value), _NORMALISED[class_letter(name)]) for name, value in valued.items()
     )
     if normalised:
         found.append("all values are near 1: this looks like a normalised prototype (1 ohm, 1 rad/s)")
     for name, value in valued.items():
         if value == 0:
-            found.append(f"{name} = 0: {'an open circuit' if name[0] == 'C' else 'a short circuit'}")
+            found.append(
+                f"{name} = 0: {'an open circuit' if class_letter(name) == 'C' else 'a short circuit'}"
+            )
         elif value < 0:
             found.append(f"{name} is negative: conditions that take parts as positive do not hold")
-        elif not normalised and not _within(value, _RANGES[name[0]]):
+        elif not normalised and not _within(value, _RANGES[class_letter(name)]):
             found.append(_unlikely(name, value))
     used = {name.name for use in uses(net) for name in names_in(use.expression)}
     found += [
@@ -77,7 +81,7 @@ def _within(value: Fraction, limits: tuple[Fraction, Fraction]) -> bool:
 
 
 def _unlikely(name: str, value: Fraction) -> str:
-    kind = name[0]
+    kind = class_letter(name)
     dimension = CLASS_LETTERS[kind]
     much = "much" if value > _RANGES[kind][1] else "little"
     text = f"{name} = {engineering(value, dimension)} is {much} for {_WORDS[kind]}"
@@ -139,11 +143,13 @@ def code_note(text: str, name: str) -> str:
     >>> code_note("m47", "C1")
     'm47 for C1 is read as 470 uF, which is unusual; please confirm'
     """
-    dimension = CLASS_LETTERS.get(name[:1])
+    dimension = dimension_of_class(name)
     code = text.strip()
     worth = read_code(code, dimension, leading=True) if LEADING_CODE.fullmatch(code) else None
     if worth is None:
         return ""
-    usual = {"R": "RkKMG", "L": "num", "C": "pnuU\N{MICRO SIGN}\N{GREEK SMALL LETTER MU}"}.get(name[:1])
+    usual = {"R": "RkKMG", "L": "num", "C": "pnuU\N{MICRO SIGN}\N{GREEK SMALL LETTER MU}"}.get(
+        class_letter(name)
+    )
     said = f"{code} for {name} is read as {Quantity(worth.value, worth.dimension)}"
     return said if usual is None or code[0] in usual else f"{said}, which is unusual; please confirm"

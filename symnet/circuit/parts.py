@@ -27,6 +27,7 @@ __all__ = [
     "Value",
     "VoltageDrive",
     "VoltageLaw",
+    "class_letter",
     "dimension_of_class",
 ]
 
@@ -36,9 +37,14 @@ GROUND: Final = "gnd"
 CLASS_LETTERS: Final[dict[str, Dimension]] = {"R": OHM, "L": HENRY, "C": FARAD, "Z": OHM, "Y": SIEMENS}
 
 
+def class_letter(name: str) -> str:
+    """The first letter of a name, that of R1 for ``A1.R1``, the R1 inside the section A1."""
+    return name[name.rfind(".") + 1 :][:1]
+
+
 def dimension_of_class(name: str) -> Dimension | None:
-    """The dimension that the first letter of a name gives it: R1 is ohm, C1 farad; None for other letters."""
-    return CLASS_LETTERS.get(name[:1])
+    """The dimension that the class letter of a name gives it: R1 is ohm, C1 farad; None for other letters."""
+    return CLASS_LETTERS.get(class_letter(name))
 
 
 def _span() -> Any:
@@ -57,7 +63,7 @@ class Branch:
     @property
     def kind(self) -> str:
         """The class letter: R, L, C, Z or Y."""
-        return self.name[0]
+        return class_letter(self.name)
 
     @property
     def nodes(self) -> tuple[str, str]:

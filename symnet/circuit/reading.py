@@ -9,25 +9,29 @@ from __future__ import annotations
 
 import re
 from collections.abc import Callable, Iterable
-from dataclasses import replace
+from dataclasses import dataclass, replace
+from fractions import Fraction
+from functools import lru_cache
 from typing import TYPE_CHECKING, Any, Final, TypeVar
 
-from symnet.circuit.drafts import Draft, RightSide, all_names, mentioned, value_of
+from symnet.circuit.definitions import Definition, Definitions
+from symnet.circuit.devices import device_source
+from symnet.circuit.drafts import Draft, Header, RightSide, mentioned, value_of
 from symnet.circuit.drawing import Drawing
 from symnet.circuit.formulas import Formed
 from symnet.circuit.lines import Line, logical_lines, single_line
 from symnet.circuit.names import MOST_PARTS, check
-from symnet.circuit.parts import CurrentLaw, Part, Value, VoltageLaw, dimension_of_class
+from symnet.circuit.parts import Value, dimension_of_class
+from symnet.circuit.sections import Section
 from symnet.circuit.statements import Statements
-from symnet.circuit.writing import default_labels
 from symnet.errors import Fault, NotationError, SymnetError
 from symnet.expressions import Expression
-from symnet.quantities import LEADING_CODE, Dimension, spread_code
+from symnet.quantities import LEADING_CODE, TWO_PI, Dimension, spread_code
 
 if TYPE_CHECKING:
     from lark import Token, Tree
 
-__all__ = ["parse", "read_drawing", "read_expression", "read_reading", "read_value"]
+__all__ = ["parse", "read_drawing", "read_expression", "read_reading", "read_sections", "read_value"]
 
 _T = TypeVar("_T")
 _STARTS: Final = ("statement", "value", "expression")
@@ -58,79 +62,109 @@ def read_drawing(text: str) -> Drawing:
     """
     _must_be_text(text)
     lines, broken = logical_lines(text)
-    draft = Draft()
-    faults = [fault for _, fault in broken]
-    doubtful = {name for line, _ in broken for name in mentioned(line.text)}
-    for line in lines:
-        found = _read_line(line, draft)
-        if found:
-            faults += found
-            doubtful |= mentioned(line.text)
-        if len(faults) > _MOST_FAULTS or len(draft.parts) > MOST_PARTS:
-            break
-    net, late = _settled(draft, text, doubtful)
-    faults += late
+    main, definitions = _gathered(lines, broken)
+    known = Definitions(definitions, _shipped)
+    known.doubtful |= main.doubtful
+    known.make_all()
+    net = known.drawing(main.draft, text)
+    faults = main.faults + known.faults
     if len(faults) <= _MOST_FAULTS:
-        faults += check(net, doubtful, {name: span for name, *_, span in (*draft.free, *draft.values)})
-    faults = sorted(dict.fromkeys(faults), key=_place)
-    if len(faults) > _MOST_FAULTS:
-        faults[_MOST_FAULTS:] = [Fault(f"reading stopped after {_MOST_FAULTS} faults", "is it a network?")]
-    if faults:
-        raise NotationError(faults, text=text)
+        places = {name: span for name, *_, span in (*main.draft.free, *main.draft.values)}
+        faults += check(net, known.doubtful, places)
+    _raise(faults, text)
     return net
 
 
-def _read_line(line: Line, draft: Draft) -> list[Fault]:
-    """Add one statement to the draft, or give its faults."""
+def read_sections(text: str, origin: str = "") -> dict[str, Section]:
+    """The sections that a text of definitions holds; NotationError with all its faults."""
+    lines, broken = logical_lines(text)
+    main, definitions = _gathered(lines, broken)
+    known = Definitions(definitions, _shipped)
+    made = known.make_all()
+    _raise(main.faults + known.faults, text)
+    return {name: replace(section, origin=origin) for name, section in made.items()}
+
+
+@lru_cache(maxsize=64)
+def _shipped(kind: str, given: frozenset[str]) -> Section | None:
+    """The section that ships with symnet under this name, in the form that these arguments choose."""
+    source = device_source(kind, given)
+    return read_sections(source, "symnet")[kind] if source is not None else None
+
+
+@dataclass(slots=True)
+class _Gathered:
+    """The statements outside of all definitions."""
+
+    draft: Draft
+    faults: list[Fault]
+    doubtful: set[str]
+
+
+def _gathered(
+    lines: Iterable[Line], broken: Iterable[tuple[Line, Fault]]
+) -> tuple[_Gathered, list[Definition]]:
+    """All statements, each read by itself, those between ``define`` and ``done`` apart from the others."""
+    main = _Gathered(Draft(), [], set())
+    for line, fault in broken:
+        main.faults.append(fault)
+        main.doubtful |= mentioned(line.text)
+    definitions: list[Definition] = []
+    inside: Definition | None = None
+    for line in lines:
+        own, faults = _read_line(line)
+        if own.header is not None or (faults and line.text.startswith("define ")):
+            if inside is not None:
+                hint = "end the one before with done; a section may place others, which are defined beside it"
+                fault = Fault("a definition stands inside another", hint, line.span(0, len(line.text)))
+                inside.faults.append(fault)
+            inside = Definition(own.header or Header("", (), (), line.span(0, 6)), Draft(), faults)
+            definitions.append(inside)
+        elif own.is_done:
+            if inside is None:
+                hint = "a section begins with define name(in, out)"
+                main.faults.append(Fault("done ends a section and none is open", hint, line.span(0, 4)))
+            inside = None
+        else:
+            place = inside or main
+            if inside is not None and (own.drives or own.reads):
+                hint = "drive and read belong to the network that places it"
+                whole = line.span(0, len(line.text))
+                faults.append(Fault("a section is neither driven nor read by itself", hint, whole))
+            if not faults:  # half a statement would give rise to faults that are none
+                place.draft.take(own)
+            place.faults += faults
+        if faults:
+            (inside or main).doubtful.update(mentioned(line.text))
+        if len(main.faults) > _MOST_FAULTS or len(main.draft.parts) > MOST_PARTS:
+            break
+    if inside is not None:
+        hint = "end it with the word done on a line of its own"
+        inside.faults.append(Fault("this definition has no end", hint, inside.header.span))
+    return main, definitions
+
+
+def _read_line(line: Line) -> tuple[Draft, list[Fault]]:
+    """One statement, and what is wrong with it."""
     statements = Statements(line, own := Draft())
     try:
         statements.build(parse(line, "statement"))
     except SymnetError as error:
         statements.faults.extend(error.faults)
-    if not statements.faults:  # half a statement would give rise to faults that are none
-        draft.take(own)
-    return statements.faults
+    return own, statements.faults
+
+
+def _raise(faults: Iterable[Fault], text: str) -> None:
+    """Raise NotationError with these faults in the order of writing, unless there is none."""
+    found = sorted(dict.fromkeys(faults), key=_place)
+    if len(found) > _MOST_FAULTS:
+        found[_MOST_FAULTS:] = [Fault(f"reading stopped after {_MOST_FAULTS} faults", "is it a network?")]
+    if found:
+        raise NotationError(found, text=text)
 
 
 def _place(fault: Fault) -> tuple[int, int]:
     return (fault.span.start, fault.span.end) if fault.span else (1 << 60, 0)
-
-
-def _settled(draft: Draft, text: str, doubtful: set[str]) -> tuple[Drawing, list[Fault]]:
-    """The network of a draft: laws named, values given the dimension of their names.
-
-    A name whose value is refused joins the ``doubtful`` ones.
-    """
-    faults: list[Fault] = []
-    free: dict[str, Dimension | None] = {}
-    for name, dimension, span in draft.free:
-        if name in free:
-            faults.append(Fault(f"{name} is declared free twice", "once is enough", span))
-        free[name] = dimension
-    values: dict[str, Value] = {}
-    for name, side, span in draft.values:
-        if name in values:
-            faults.append(Fault(f"{name} has a value already", "give one value only", span, parts=(name,)))
-            continue
-        try:
-            values[name] = value_of(name, side, dimension_of_class(name) or free.get(name))
-        except SymnetError as error:
-            faults += error.faults
-            doubtful.add(name)
-    parts = tuple(_labelled(draft))
-    drives, reads = tuple(draft.drives), tuple(draft.reads)
-    return Drawing(parts, drives, reads, tuple(values.items()), tuple(free.items()), text), faults
-
-
-def _labelled(draft: Draft) -> Iterable[Part]:
-    """The parts, laws without a name of their own called law1, law2, ..."""
-    nameless = [part for part in draft.parts if isinstance(part, VoltageLaw | CurrentLaw) and not part.name]
-    fresh = iter(default_labels(len(nameless), all_names(draft)) if nameless else ())
-    for part in draft.parts:
-        if isinstance(part, VoltageLaw | CurrentLaw) and not part.name:
-            yield replace(part, name=next(fresh))
-        else:
-            yield part
 
 
 def read_expression(text: str) -> Expression:
@@ -165,7 +199,8 @@ def read_value(text: str, name: str, dimension: Dimension | None = None) -> Valu
     """A whole right-hand side for ``name``: a quantity with or without tolerance, a code, a tie.
 
     Codes of IEC 60062 may begin with their letter here (``u47``, ``R47``, ``M47``), since nothing but a value
-    can stand. ``dimension`` is that of a symbol; that of a part follows from its name.
+    can stand. ``dimension`` is that of a symbol; that of a part follows from its name. The properties of a device
+    (``U1.gbw``) may be given in Hz, which stands for the angular frequency 2 pi times as large.
 
     >>> read_value("u47 ±5%", "C1").tolerance
     Fraction(1, 20)
@@ -178,17 +213,20 @@ def read_value(text: str, name: str, dimension: Dimension | None = None) -> Valu
     _must_be_text(text)
     code = re.match(r"\w+(?=\s*(?:$|±|\+\s*/?\s*-\s*\d))", text.strip())
     if code is None or not LEADING_CODE.fullmatch(code[0]):
-        return _alone(text, "value", made)
+        return _alone(text, "value", made, TWO_PI if "." in name else None)
     try:  # as a number with prefix, so that dimension and tolerance are treated as those of any other value
         return _alone(spread_code(code[0]) + text.strip()[code.end() :], "value", made)
     except NotationError as error:
         raise NotationError([replace(fault, span=None) for fault in error.faults], text=text) from None
 
 
-def _alone(text: str, start: str, made: Callable[[Statements, Any], _T]) -> _T:
+def _alone(
+    text: str, start: str, made: Callable[[Statements, Any], _T], in_hertz: Fraction | None = None
+) -> _T:
     _must_be_text(text)
     line = single_line(text)
     reader = Statements(line, Draft())
+    reader.in_hertz = in_hertz
     try:
         built: Formed | RightSide = reader.build(parse(line, start))
         if isinstance(built, Formed):

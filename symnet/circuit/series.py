@@ -231,9 +231,14 @@ def _moved(part: Part, names: Mapping[str, str]) -> Part:
     return replace(part, start=first, end=second)
 
 
-def runs(parts: Sequence[Part]) -> Iterator[Part | list[tuple[str, Group, str]]]:
-    """The network in its order: laws and devices as they are, unbroken runs of branches as groups."""
-    count = ends_at(parts)
+def runs(
+    parts: Sequence[Part], count: Counter[str] | None = None
+) -> Iterator[Part | list[tuple[str, Group, str]]]:
+    """Parts in their order: laws and devices as they are, unbroken runs of branches as groups.
+
+    ``count`` is that of the whole network (:func:`ends_at`) when these are only some of its parts; it is used up.
+    """
+    count = ends_at(parts) if count is None else count
     for is_branch, run in itertools.groupby(parts, key=lambda part: isinstance(part, Branch)):
         if is_branch:
             yield groups((part for part in run if isinstance(part, Branch)), count)

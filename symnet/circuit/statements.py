@@ -7,33 +7,40 @@ from fractions import Fraction
 from typing import TYPE_CHECKING, Any, Final
 
 from symnet.circuit.chains import Chains
-from symnet.circuit.drafts import RightSide
+from symnet.circuit.devices import OPAMP_TERMINALS
+from symnet.circuit.drafts import Header, Placement, RightSide, node_named
 from symnet.circuit.formulas import Formed
+from symnet.circuit.meanings import is_part_name
 from symnet.circuit.parts import (
-    CLASS_LETTERS,
     GROUND,
     CurrentDrive,
     CurrentLaw,
     OpAmp,
     VoltageDrive,
     VoltageLaw,
+    dimension_of_class,
 )
 from symnet.circuit.series import Leaf
 from symnet.errors import Span
 from symnet.expressions import Expression, Name, Number, Sum
-from symnet.quantities import NUMBER, Dimension, read_unit
+from symnet.quantities import NUMBER, TWO_PI, Dimension, read_unit
 
 if TYPE_CHECKING:
-    from lark import Token
+    from lark import Token, Tree
 
 __all__ = ["Statements"]
 
-_TERMINALS: Final = ("plus", "minus", "out")
-_OPAMP: Final = "write opamp(plus=p, minus=m, out=o)"
+_OPAMP: Final = "opamp(plus=p, minus=m, out=o)"
 
 
 class Statements(Chains):
     """Adds one statement to a draft."""
+
+    def build(self, tree: Tree[Token]) -> Any:
+        """What the statement comes to; the properties of a device may be given in Hz."""
+        if tree.data == "device":
+            self.in_hertz = TWO_PI
+        return super().build(tree)
 
     def on_free(self, children: Sequence[Any]) -> None:
         """Symbols that are free on purpose."""
@@ -42,7 +49,7 @@ class Statements(Chains):
         for token in names:
             name, span = self.name(token), self.span_of(token)
             self.plain(name, span, "a free symbol")
-            own = CLASS_LETTERS.get(name[0])
+            own = dimension_of_class(name)
             if own is not None and unit is not None and own != unit:
                 self.fault(
                     f"{name} is in {own} by its first letter", f"leave out the unit, or write in {own}", span
@@ -170,58 +177,64 @@ class Statements(Chains):
             hint = "this release of symnet reads notation 1"
             self.fault(f"notation {version} is not known", hint, self.span_of(version))
 
-    # -- devices ------------------------------------------------------------------------------------------------------
+    # -- sections and devices ----------------------------------------------------------------------------------------
+
+    def on_define(self, children: Sequence[Any]) -> None:
+        """Define divider(in, out; R, C = 10 nF)."""
+        kind = self.label(children[1], "the name of a section")
+        words = [child for child in children if isinstance(child, Leaf)]
+        for k, word in enumerate(words):
+            if word.name == GROUND:
+                self.fault(f"{GROUND} is the same inside and needs no terminal", "leave it out", word.span)
+            elif any(word.name == other.name for other in words[:k]):
+                self.fault(f"{word.name} is a terminal twice", "name it once", word.span)
+        terminals = tuple(self.node(word) for word in words)
+        parameters = tuple(child for child in children if isinstance(child, tuple))
+        for k, (name, _, span) in enumerate(parameters):
+            if any(name == other for other, *_ in parameters[:k]):
+                self.fault(f"{name} is a parameter twice", "name it once", span)
+        self.draft.header = Header(kind, terminals, parameters, self.whole_line())
+
+    def on_parameter(self, children: Sequence[Any]) -> tuple[str, RightSide | None, Span]:
+        """One parameter, with its default."""
+        token, _, side = children
+        name, span = self.name(token), self.span_of(token)
+        if not is_part_name(name):
+            self.plain(name, span, "a parameter")
+        return name, side, span
+
+    def on_done(self, _: Sequence[Token]) -> None:
+        """The end of a definition."""
+        self.draft.is_done = True
 
     def on_argument(self, children: Sequence[Any]) -> tuple[Token | None, RightSide]:
         """One terminal or property of a device."""
         return (children[0], children[2]) if len(children) == 3 else (None, children[0])
 
     def on_device(self, children: Sequence[Any]) -> None:
-        """U1: opamp(plus=p, minus=m, out=o)."""
+        """U1: opamp(plus=p, minus=m, out=o); A1: my_section(in=a, out=b, R=2 kohm)."""
         token, _, kind, *arguments = children
         name = self.label(token, "the name of a device")
-        if kind != "opamp":
-            hint = "this release of symnet knows one device: opamp(plus=p, minus=m, out=o)"
-            self.fault(f"{kind} is no device", hint, self.span_of(kind))
-            return
-        found: dict[str, str] = {}
-        before = len(self.faults)
+        named: list[tuple[str, RightSide | None, Span]] = []
         for argument in arguments:
-            if isinstance(argument, tuple):
-                self._terminal(argument, found)
-        missing = [terminal for terminal in _TERMINALS if terminal not in found]
-        if missing and len(self.faults) == before:
-            self.fault(f"{name} has no {' and no '.join(missing)}", _OPAMP, self.whole_line())
-        if not missing:
-            self.draft.parts.append(
-                OpAmp(name, found["plus"], found["minus"], found["out"], span=self.whole_line())
-            )
-
-    def _terminal(self, argument: tuple[Token | None, RightSide], found: dict[str, str]) -> None:
-        token, side = argument
-        if token is None:
-            self.fault("the terminals of a device are named", _OPAMP, side.formed.span)
+            if not isinstance(argument, tuple):
+                continue
+            word, side = argument
+            if word is not None:
+                named.append((str(word), side, self.span_of(word)))
+            elif isinstance(side.formed.expression, Name) and side.tolerance is None:
+                named.append((side.formed.expression.name, None, side.formed.span))
+            else:
+                hint = f"write {kind}(name=..., ...), such as {_OPAMP}"
+                self.fault("terminals and values of a device are named", hint, side.formed.span)
+        ends = {word: side for word, side, _ in named if side is not None and node_named(side)}
+        if kind == "opamp" and len(named) == 3 and {*ends} == {*OPAMP_TERMINALS}:
+            words = (Leaf(node_named(ends[t]) or "", ends[t].formed.span) for t in OPAMP_TERMINALS)
+            plus, minus, out = map(self.node, words)
+            self.draft.parts.append(OpAmp(name, plus, minus, out, span=self.whole_line()))
             return
-        span = self.span_of(token)
-        if token in {"gain", "gbw", "rout", "A0"}:
-            hint = "op amps are ideal in this release; a finite gain can be written as a law: hold out = A*(p - m)"
-            self.fault(f"{token}= is not in this release of the notation", hint, span)
-        elif token not in _TERMINALS:
-            self.fault(f"an opamp has no terminal {token}", _OPAMP, span)
-        elif token in found:
-            self.fault(f"{token} is given twice", _OPAMP, span)
-        else:
-            found[str(token)] = self._connected(str(token), side)
-
-    def _connected(self, terminal: str, side: RightSide) -> str:
-        if side.tolerance is None and not side.formed.code:
-            match side.formed.expression:
-                case Name(name=node):
-                    return self.node(Leaf(node, side.formed.span))
-                case Number(value=number, dimension=dimension) if dimension == NUMBER:
-                    return self.node(Leaf(str(number), side.formed.span))
-        self.fault(f"{terminal} is connected to a node", "write its name", side.formed.span)
-        return GROUND
+        place = self.span_of(kind)
+        self.draft.parts.append(Placement(name, str(kind), tuple(named), place, self.whole_line()))
 
     def whole_line(self) -> Span:
         """The place of the whole statement."""

@@ -6,11 +6,11 @@ written as one chain, and nameless nodes go back into the series they came from.
 
 from __future__ import annotations
 
+import itertools
 from collections.abc import Iterable, Iterator
 from typing import TYPE_CHECKING
 
 from symnet.circuit.parts import (
-    CLASS_LETTERS,
     GROUND,
     Branch,
     CurrentDrive,
@@ -21,11 +21,13 @@ from symnet.circuit.parts import (
     Value,
     VoltageDrive,
     VoltageLaw,
+    dimension_of_class,
 )
-from symnet.circuit.series import Group, Leaf, Series, runs, settled
+from symnet.circuit.sections import Instance, Section, placed_values
+from symnet.circuit.series import Group, Leaf, Series, ends_at, runs, settled
 from symnet.circuit.spelling import write_dimension, write_expression, write_quantity
 from symnet.expressions import Number
-from symnet.quantities import Dimension, engineering
+from symnet.quantities import HERTZ, TWO_PI, Dimension, engineering
 
 if TYPE_CHECKING:
     from symnet.circuit.drawing import Drawing
@@ -33,12 +35,14 @@ if TYPE_CHECKING:
 __all__ = [
     "default_labels",
     "write_drive",
+    "write_instance",
     "write_network",
     "write_part",
     "write_value",
 ]
 
 _LONGEST_CHAIN = 6  # parts in one line
+_SHORT_DIGITS = 12  # behind the point of a frequency that someone typed in Hz
 
 
 def write_network(net: Drawing) -> str:
@@ -49,7 +53,8 @@ def write_network(net: Drawing) -> str:
     in -- R1 -- out -- C1 || R2 -- gnd
     drive in
     """
-    lines = list(_parts(net))
+    lines = [line for section in _sections(net) for line in _definition(section)]
+    lines += _parts(net)
     lines += [write_drive(drive) for drive in net.drives]
     lines += [f"read {write_expression(read)}" for read in net.reads]
     lines += list(_free(net))
@@ -63,11 +68,67 @@ def write_network(net: Drawing) -> str:
 def _parts(net: Drawing) -> Iterator[str]:
     silent = _default_named(net)
     # A network that was changed in Python may have nameless nodes where no series is left.
-    for piece in runs(settled(net.parts)):
-        if isinstance(piece, list):
-            yield from _chains(piece)
+    parts = settled(net.parts)
+    count = ends_at(parts)
+    placed = {part.name: instance for instance in net.instances for part in instance.parts()}
+    for instance, own in itertools.groupby(parts, key=lambda part: placed.get(part.name)):
+        if instance is not None:
+            yield write_instance(instance)
+            continue
+        for piece in runs(tuple(own), count):
+            if isinstance(piece, list):
+                yield from _chains(piece)
+            else:
+                yield write_part(piece, label=piece.name not in silent)
+
+
+def _sections(net: Drawing) -> Iterator[Section]:
+    """The sections that a text must define, each after those that it places."""
+    seen: list[Section] = []
+    waiting = [(instance.section, False) for instance in reversed(net.instances)]
+    while waiting:
+        section, done = waiting.pop()
+        if section.origin or section in seen:
+            continue
+        if done:
+            seen.append(section)
+            yield section
         else:
-            yield write_part(piece, label=piece.name not in silent)
+            waiting.append((section, True))
+            waiting += [(inner.section, False) for inner in reversed(section.drawing.instances)]
+
+
+def _definition(section: Section) -> Iterator[str]:
+    free = dict(section.drawing.free)
+    given = [
+        name if default is None else f"{name} = {write_value(name, default, free.get(name))}"
+        for name, default in section.parameters
+    ]
+    parameters = f"; {', '.join(given)}" if given else ""
+    yield f"define {section.name}({', '.join(section.terminals)}{parameters})"
+    yield from (f"  {line}" for line in [*_parts(section.drawing), *_free(section.drawing)])
+    yield from (f"  {line}" for line in _values(section.drawing))
+    yield "done"
+
+
+def write_instance(instance: Instance) -> str:
+    """A section in its place as a statement."""
+    free = dict(instance.section.drawing.free)
+    arguments = [f"{terminal}={node}" for terminal, node in instance.connections]
+    for name, value in instance.arguments:
+        text = "" if value is None else _in_hertz(value) or write_value(name, value, free.get(name))
+        arguments.append(f"{name}={text}" if text else name)
+    return f"{instance.name}: {instance.section.name}({', '.join(arguments)})"
+
+
+def _in_hertz(value: Value) -> str:
+    """An angular frequency that was given in Hz, as it was given; empty for any other value."""
+    if not isinstance(value.expression, Number) or value.expression.dimension != HERTZ:
+        return ""
+    hertz = value.expression.value / TWO_PI
+    if 10**_SHORT_DIGITS % hertz.denominator:
+        return ""
+    return engineering(hertz, HERTZ, exact=True) + _tolerance(value)
 
 
 def write_part(part: Part, *, label: bool = True) -> str:
@@ -161,7 +222,10 @@ def write_drive(drive: Drive) -> str:
 
 def _free(net: Drawing) -> Iterator[str]:
     waiting: list[str] = []
+    placed = {name for instance in net.instances for name, _ in instance.free()}
     for name, dimension in net.free:
+        if name in placed:
+            continue
         if dimension is None:
             waiting.append(name)
             continue
@@ -176,9 +240,12 @@ def _free(net: Drawing) -> Iterator[str]:
 def _values(net: Drawing) -> Iterator[str]:
     """One line for each run of names with the same number."""
     declared = dict(net.free)
+    placed = placed_values(net.instances)
     names: list[str] = []
     last = ""
     for name, value in net.values:
+        if placed.get(name) == value:
+            continue
         text = write_value(name, value, declared.get(name))
         alike = isinstance(value.expression, Number) and text == last
         if names and not alike:
@@ -194,9 +261,13 @@ def write_value(name: str, value: Value, dimension: Dimension | None = None) -> 
     """What stands right of the equals sign; ``dimension`` is the one that the name has been declared with."""
     expression = value.expression
     if isinstance(expression, Number):
-        text = write_quantity(expression.value, expression.dimension, CLASS_LETTERS.get(name[0], dimension))
+        text = write_quantity(expression.value, expression.dimension, dimension_of_class(name) or dimension)
     else:
         text = write_expression(expression)
-    if value.tolerance is not None:
-        text += f" ±{engineering(value.tolerance * 100, exact=True)}%"
-    return text
+    return text + _tolerance(value)
+
+
+def _tolerance(value: Value) -> str:
+    if value.tolerance is None:
+        return ""
+    return f" ±{engineering(value.tolerance * 100, exact=True)}%"

@@ -387,6 +387,6 @@ def _law(network: Network, name: str, label: str) -> Equation:
         case OpAmp():
             return Equation(label, _voltage(part.minus), _voltage(part.plus))
         case _:
-            factors = ((1, Name("s")),) if part.name[0] == "L" else ()
+            factors = ((1, Name("s")),) if isinstance(part, Branch) and part.kind == "L" else ()
             right = Product((*factors, (1, Name(name)), (1, Name(f"i_{name}"))))
             return Equation(label, _difference(*part.nodes), right)

@@ -30,6 +30,7 @@ __all__ = [
     "LEADING_CODE",
     "MOST_EXPONENT",
     "PREFIXES",
+    "TWO_PI",
     "UNITS",
     "read_code",
     "read_number",
@@ -40,6 +41,9 @@ __all__ = [
 ]
 
 MOST_EXPONENT: Final = 99
+
+#: 2 pi to 40 digits: what a frequency in Hz is multiplied by where exact arithmetic needs an angular one.
+TWO_PI: Final = Fraction("6.283185307179586476925286766559005768394")
 
 #: Units that may follow a number, without prefix.
 UNITS: Final[dict[str, Dimension]] = {

@@ -3,7 +3,8 @@
 The messages are part of the product: a change of one is seen here as a change of text.
 """
 
-# The order is that of the notation: chains, nodes, sentences, devices, numbers, expressions, names, laws, hostile texts.
+# The order is that of the notation: chains, nodes, sentences, devices, numbers, expressions, names, laws, hostile
+# texts, sections.
 MALFORMED: tuple[tuple[str, str, str], ...] = (
     (
         "a node left out",
@@ -336,12 +337,12 @@ line 1, column 12: read is a word of the notation and cannot be a node
     ),
     (
         "a name with a point",
-        "a -- A1.R1 -- b",
+        "a -- R1.5 -- b",
         """\
-line 1, column 8: a point stands inside a number only
-    a -- A1.R1 -- b
-           ^
-    names are made of letters, digits and _""",
+line 1, column 8: = is missing between R1 and .5
+    a -- R1.5 -- b
+           ^^
+    write R1 = .5""",
     ),
     (
         "a name with an underscore before",
@@ -707,19 +708,19 @@ line 1, column 10: one is not expected in this notation statement
         "define",
         "define section(in, out; R, C = 10 nF)",
         """\
-line 1, column 1: define is not in this release of the notation
+line 1, column 1: this definition has no end
     define section(in, out; R, C = 10 nF)
-    ^^^^^^
-    write out the parts of the section where it is used""",
+    ^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^
+    end it with the word done on a line of its own""",
     ),
     (
         "done",
         "done",
         """\
-line 1, column 1: done is not in this release of the notation
+line 1, column 1: done ends a section and none is open
     done
     ^^^^
-    write out the parts of the section where it is used""",
+    a section begins with define name(in, out)""",
     ),
     (
         "couple",
@@ -770,10 +771,10 @@ line 1, column 4: in does not follow R1 in any statement
         "terminals without names",
         "U1: opamp(p)",
         """\
-line 1, column 11: the terminals of a device are named
+line 1, column 11: terminals and values of a device are named
     U1: opamp(p)
               ^
-    write opamp(plus=p, minus=m, out=o)""",
+    write U1: opamp(plus=..., minus=..., out=...), and if wanted gain, gbw, pole2, Rin, Cin, Rout""",
     ),
     (
         "a terminal left out",
@@ -782,7 +783,7 @@ line 1, column 11: the terminals of a device are named
 line 1, column 1: U1 has no out
     U1: opamp(plus=p, minus=m)
     ^^^^^^^^^^^^^^^^^^^^^^^^^^
-    write opamp(plus=p, minus=m, out=o)""",
+    write U1: opamp(plus=..., minus=..., out=...), and if wanted gain, gbw, pole2, Rin, Cin, Rout""",
     ),
     (
         "two terminals left out",
@@ -791,16 +792,16 @@ line 1, column 1: U1 has no out
 line 1, column 1: U1 has no minus and no out
     U1: opamp(plus=p)
     ^^^^^^^^^^^^^^^^^
-    write opamp(plus=p, minus=m, out=o)""",
+    write U1: opamp(plus=..., minus=..., out=...), and if wanted gain, gbw, pole2, Rin, Cin, Rout""",
     ),
     (
         "an unknown terminal",
         "U1: opamp(plus=p, minus=m, out=o, offset=x)",
         """\
-line 1, column 35: an opamp has no terminal offset
+line 1, column 35: an opamp has no terminal or parameter offset
     U1: opamp(plus=p, minus=m, out=o, offset=x)
                                       ^^^^^^
-    write opamp(plus=p, minus=m, out=o)""",
+    write U1: opamp(plus=..., minus=..., out=...), and if wanted gain, gbw, pole2, Rin, Cin, Rout""",
     ),
     (
         "a terminal twice",
@@ -809,25 +810,25 @@ line 1, column 35: an opamp has no terminal offset
 line 1, column 19: plus is given twice
     U1: opamp(plus=p, plus=m, out=o)
                       ^^^^
-    write opamp(plus=p, minus=m, out=o)""",
+    write U1: opamp(plus=..., minus=..., out=...), and if wanted gain, gbw, pole2, Rin, Cin, Rout""",
     ),
     (
-        "a gain",
-        "U1: opamp(plus=p, minus=m, out=o, gain=100k)",
+        "a property with a small letter",
+        "U1: opamp(plus=p, minus=m, out=o, rout=75)",
         """\
-line 1, column 35: gain= is not in this release of the notation
-    U1: opamp(plus=p, minus=m, out=o, gain=100k)
+line 1, column 35: an opamp has no terminal or parameter rout
+    U1: opamp(plus=p, minus=m, out=o, rout=75)
                                       ^^^^
-    op amps are ideal in this release; a finite gain can be written as a law: hold out = A*(p - m)""",
+    did you mean Rout?""",
     ),
     (
         "an unknown device",
         "T1: transformer(a=p, b=m)",
         """\
-line 1, column 5: transformer is no device
+line 1, column 5: transformer is no device or section
     T1: transformer(a=p, b=m)
         ^^^^^^^^^^^
-    this release of symnet knows one device: opamp(plus=p, minus=m, out=o)""",
+    there are opamp, and what you define""",
     ),
     (
         "a device without name",
@@ -1935,5 +1936,211 @@ line 1, column 1: a name begins with a letter
     __import__('os')
     ^
     names are made of letters, digits and _""",
+    ),
+    (
+        "a section without terminals",
+        "define stage()\na -- R1 -- b\ndone",
+        """\
+line 1, column 14: there is nothing inside the parenthesis
+    define stage()
+                 ^""",
+    ),
+    (
+        "a section without an end",
+        "define stage(in, out)\n  in -- R1 -- out",
+        """\
+line 1, column 1: this definition has no end
+    define stage(in, out)
+    ^^^^^^^^^^^^^^^^^^^^^
+    end it with the word done on a line of its own""",
+    ),
+    (
+        "a section inside a section",
+        "define stage(in, out)\ndefine t(in, out)\nin -- R1 -- out\ndone",
+        """\
+line 2, column 1: a definition stands inside another
+    define t(in, out)
+    ^^^^^^^^^^^^^^^^^
+    end the one before with done; a section may place others, which are defined beside it""",
+    ),
+    (
+        "a section defined twice",
+        "define stage(in, out)\nin -- R1 -- out\ndone\ndefine stage(in, out)\nin -- R1 -- out\ndone",
+        """\
+line 4, column 1: stage is defined twice
+    define stage(in, out)
+    ^^^^^^^^^^^^^^^^^^^^^
+    give one of them another name""",
+    ),
+    (
+        "an empty section",
+        "define stage(in, out)\ndone",
+        """\
+line 1, column 1: the section stage is empty
+    define stage(in, out)
+    ^^^^^^^^^^^^^^^^^^^^^
+    write its parts between define and done""",
+    ),
+    (
+        "a drive inside a section",
+        "define stage(in, out)\nin -- R1 -- out\ndrive in\ndone",
+        """\
+line 3, column 1: a section is neither driven nor read by itself
+    drive in
+    ^^^^^^^^
+    drive and read belong to the network that places it""",
+    ),
+    (
+        "a terminal that nothing touches",
+        "define stage(in, out, x)\nin -- R1 -- out\ndone",
+        """\
+line 1, column 1: nothing inside stage is connected to x
+    define stage(in, out, x)
+    ^^^^^^^^^^^^^^^^^^^^^^^^
+    connect it, or leave it out""",
+    ),
+    (
+        "a parameter that nothing hangs on",
+        "define stage(in, out; R, k)\nin -- R -- out\ndone",
+        """\
+line 1, column 26: nothing inside stage hangs on k
+    define stage(in, out; R, k)
+                             ^
+    use it, or leave it out""",
+    ),
+    (
+        "a terminal named twice",
+        "define stage(in, in)\nin -- R1 -- gnd\ndone",
+        """\
+line 1, column 18: in is a terminal twice
+    define stage(in, in)
+                     ^^
+    name it once""",
+    ),
+    (
+        "gnd as a terminal",
+        "define stage(in, gnd)\nin -- R1 -- gnd\ndone",
+        """\
+line 1, column 18: gnd is the same inside and needs no terminal
+    define stage(in, gnd)
+                     ^^^
+    leave it out""",
+    ),
+    (
+        "a parameter named twice",
+        "define stage(in; R, R)\nin -- R -- gnd\ndone",
+        """\
+line 1, column 21: R is a parameter twice
+    define stage(in; R, R)
+                        ^
+    name it once""",
+    ),
+    (
+        "a section placed in itself",
+        "define stage(in, out)\nin -- R1 -- out\nA: stage(in=in, out=out)\ndone",
+        """\
+line 3, column 4: stage is placed in itself
+    A: stage(in=in, out=out)
+       ^^^^^
+    a section may hold only others""",
+    ),
+    (
+        "sections in a circle",
+        "define stage(in, out)\nA: t(in=in, out=out)\ndone\ndefine t(in, out)\nA: stage(in=in, out=out)\ndone",
+        """\
+line 5, column 4: stage holds itself: stage -> t -> stage
+    A: stage(in=in, out=out)
+       ^^^^^
+    a section may hold only others""",
+    ),
+    (
+        "a wrong value of a parameter",
+        "define stage(in; R = 10 nF)\nin -- R -- gnd\ndone",
+        """\
+line 1, column 22: R is in ohm, its value is in F
+    define stage(in; R = 10 nF)
+                         ^^^^^
+    give R in ohm""",
+    ),
+    (
+        "a wrong argument",
+        "define stage(in; R)\nin -- R -- gnd\ndone\na -- R1 -- gnd\nA: stage(in=a, R=5 H)",
+        """\
+line 5, column 18: R is in ohm, its value is in H
+    A: stage(in=a, R=5 H)
+                     ^^^
+    give R in ohm""",
+    ),
+    (
+        "a misspelt section",
+        "define lowpass(in; R)\nin -- R -- gnd\ndone\na -- R1 -- gnd\nA: lowpas(in=a, R=5k)",
+        """\
+line 5, column 4: lowpas is no device or section
+    A: lowpas(in=a, R=5k)
+       ^^^^^^
+    did you mean lowpass?""",
+    ),
+    (
+        "a misspelt parameter",
+        "define lowpass(in; Ra)\nin -- Ra -- gnd\ndone\na -- R1 -- gnd\nA: lowpass(in=a, Rb=5k)",
+        """\
+line 5, column 18: a lowpass has no terminal or parameter Rb
+    A: lowpass(in=a, Rb=5k)
+                     ^^
+    write A: lowpass(in=...), and if wanted Ra""",
+    ),
+    (
+        "a terminal with a value",
+        "define stage(in; R)\nin -- R -- gnd\ndone\na -- R1 -- gnd\nA: stage(in=5k, R=5k)",
+        """\
+line 5, column 13: in is connected to a node
+    A: stage(in=5k, R=5k)
+                ^^
+    write its name""",
+    ),
+    (
+        "a fault inside a section",
+        "define stage(in, out)\nin -- R1 -- C1 -- out\ndone\nA: stage(in=a, out=b)\na -- R2 -- b",
+        """\
+line 2, column 13: C1 stands where a node must stand
+    in -- R1 -- C1 -- out
+                ^^
+    did you leave out the node between R1 and C1, or mean R1 + C1?""",
+    ),
+    (
+        "a name of the outside inside a section",
+        "define stage(in, out)\nin -- R1 -- out\nR1 = 2*Rq1\ndone\na -- Rq -- b\nA: stage(in=a, out=b)",
+        """\
+line 3, column 8: Rq1 is not known
+    R1 = 2*Rq1
+           ^^^
+    did you mean R1? If it is meant as a free symbol, say: free Rq1""",
+    ),
+    (
+        "a section's name for a part",
+        "define stage(in, out)\nin -- R1 -- out\ndone\nR5: stage(in=a, out=b)",
+        """\
+line 4, column 1: R5 cannot be the name of a device
+    R5: stage(in=a, out=b)
+    ^^
+    names that begin with R are branches""",
+    ),
+    (
+        "a placement with the name of a node",
+        "define stage(in, out)\nin -- R1 -- out\ndone\na: stage(in=a, out=b)",
+        """\
+line 4, column 1: a is already the name of a section
+    a: stage(in=a, out=b)
+    ^^^^^^^^^^^^^^^^^^^^^
+    choose another name""",
+    ),
+    (
+        "two placements with one name",
+        "define stage(in, out)\nin -- R1 -- out\ndone\nA: stage(in=a, out=b)\nA: stage(in=b, out=c)",
+        """\
+line 5, column 1: A is already the name of a section
+    A: stage(in=b, out=c)
+    ^^^^^^^^^^^^^^^^^^^^^
+    choose another name""",
     ),
 )
