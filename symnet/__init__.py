@@ -43,6 +43,7 @@ if TYPE_CHECKING:
     from symnet.shape.families.bessel import bessel
     from symnet.shape.families.butterworth import butterworth
     from symnet.shape.families.chebyshev import chebyshev
+    from symnet.shape.families.elliptic import elliptic
     from symnet.shape.figures import f3db
     from symnet.shape.forms import form
     from symnet.shape.normal import normalise
@@ -67,6 +68,7 @@ __all__ = [
     "derive_all",
     "dominant",
     "drive",
+    "elliptic",
     "equations",
     "f3db",
     "form",
@@ -106,6 +108,7 @@ _WHERE = {
     "symnet.shape.families.bessel": "bessel",
     "symnet.shape.families.butterworth": "butterworth",
     "symnet.shape.families.chebyshev": "chebyshev",
+    "symnet.shape.families.elliptic": "elliptic",
     "symnet.shape.figures": "f3db",
     "symnet.shape.forms": "form",
     "symnet.shape.normal": "normalise",

@@ -51,6 +51,7 @@ WORDS = {
     "derive_all",
     "dominant",
     "drive",
+    "elliptic",
     "equations",
     "f3db",
     "form",

@@ -102,7 +102,7 @@ def fit_by_poles(family: Family, target: Target) -> Fit:
 
     def distance(place: Floats) -> float:
         values = tuple(p.at(float(t)) for p, t in zip(parameters, place, strict=True))
-        return max(_pole_errors(*family.roots(order, values), target))
+        return max(_pole_errors(*family.near(order, values), target))
 
     places = _table(family, order).places
     best = min(places, key=distance).copy()
@@ -173,7 +173,7 @@ def _pass_band(order: int) -> Floats:
 
 def _curve(family: Family, order: int, values: tuple[float, ...]) -> Floats:
     """The attenuation of a member over its own pass band."""
-    poles, zeros = family.roots(order, values)
+    poles, zeros = family.near(order, values)
     known = [r.w for r in family.references(order, values) if r.name == W3DB]
     edge = known[0] if known else last_crossing(poles, zeros) or math.nan
     return attenuation(_pass_band(order) * edge, poles, zeros)

@@ -95,10 +95,6 @@ class Family(ABC):
         """Whether the family has members of that order; some have even orders only, or are tabulated up to one."""
         return True
 
-    def has(self, order: int) -> bool:
-        """Whether the family has members of that order at all."""
-        return order >= 1
-
     def finite_zeros(self, order: int) -> int:
         """How many finite zeros a member of that order has; 0 for an all-pole family."""
         return 0
@@ -106,6 +102,10 @@ class Family(ABC):
     @abstractmethod
     def roots(self, order: int, values: tuple[float, ...]) -> Roots:
         """Poles and finite zeros to full double precision, in the frequency scale of the definition."""
+
+    def near(self, order: int, values: tuple[float, ...]) -> Roots:
+        """The same to ten digits or more: for the steps of a fit, where the last digits take their time."""
+        return self.roots(order, values)
 
     def points(self, m: Any, order: int, values: tuple[float, ...]) -> Points:
         """Poles and finite zeros to the full precision of ``m``, an mpmath context."""
@@ -154,8 +154,10 @@ class Family(ABC):
 
 
 def build(family: Family, order: int, values: tuple[float, ...], *, exact: bool = True) -> Prototype:
-    """Put together a member from what its family tells; its exact denominator, which takes time, on request."""
-    poles, zeros = family.roots(order, values)
+    """Put together a member from what its family tells; what takes time, its exact denominator and the last digits of
+    its poles where they do, on request.
+    """
+    poles, zeros = family.roots(order, values) if exact else family.near(order, values)
     parameters = family.parameters(order)
     return Prototype(
         family=family.name,

@@ -24,6 +24,8 @@ from symnet.typeset.displayed import Displayed
 __all__ = [
     "HIGH_PASS",
     "LOW_PASS",
+    "PHASE_EDGE",
+    "PHASE_LINE",
     "RIPPLE_EDGE",
     "STOP_EDGE",
     "UNIT_DELAY",
@@ -45,6 +47,8 @@ W3DB: Final = "w3dB"
 W3DB_PEAK: Final = "w3dB_peak"
 RIPPLE_EDGE: Final = "ripple_edge"
 STOP_EDGE: Final = "stop_edge"
+PHASE_LINE: Final = "phase_line"
+PHASE_EDGE: Final = "phase_edge"
 UNIT_DELAY: Final = "unit_delay"
 
 _LABELS: Final = {
@@ -53,10 +57,14 @@ _LABELS: Final = {
     W3DB_PEAK: "-3.0103 dB relative to the ripple peak",
     RIPPLE_EDGE: "ripple edge",
     STOP_EDGE: "stop-band edge",
+    PHASE_LINE: "1/T, T the slope of the straight line that the phase keeps to",
+    PHASE_EDGE: "edge of the linear phase",
     UNIT_DELAY: "unit-delay frequency 1/T, T the group delay at DC",
 }
 _HIGH_PASS_LABELS: Final = _LABELS | {
     W3DB: "-3.0103 dB relative to infinite frequency",
+    PHASE_LINE: "T of the low-pass that s -> 1/s gives (the slope of its line of phase), as a frequency",
+    PHASE_EDGE: "edge of the linear phase of the low-pass that s -> 1/s gives",
     UNIT_DELAY: "T of the low-pass that s -> 1/s gives (its group delay at DC), as a frequency",
 }
 
