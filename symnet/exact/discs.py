@@ -1,10 +1,11 @@
 """Discs that are proven to hold one root each, of a polynomial with integer coefficients and simple roots.
 
-p and p' are computed exactly at dyadic points, so that clusters cost sweeps, never correctness. The proof: a disc
-around z of radius n*|p(z)/p'(z)| holds at least one root, since p'/p is the sum of the n terms 1/(z - root), one
-of which is at least as large as their mean. So n such discs that do not overlap hold exactly one root each. The
-set of discs is made symmetric about the real axis (and, for a polynomial in s^2, about the imaginary axis): a
-disc centred on an axis then holds a root that lies on that axis exactly, and conjugates are exactly conjugate.
+The disc around each point, by :mod:`symnet.exact.newton`, holds at least one root. So n such discs that do not
+overlap hold exactly one root each. Only points whose discs still overlap are moved, by Aberth's iteration with as
+many bits as p needs there, so that a cluster costs sweeps, never correctness, and what stands alone costs nothing
+more. The set of discs is made symmetric about the real axis (and, for a polynomial in s^2, about the imaginary
+axis): a disc centred on an axis then holds a root that lies on that axis exactly, and conjugates are exactly
+conjugate.
 
 Everything before the proof (starts, iteration, which point belongs on an axis) may be wrong without harm: the
 proof then fails and the iteration goes on with twice the bits.
@@ -14,42 +15,29 @@ from __future__ import annotations
 
 import math
 from collections.abc import Sequence
-from dataclasses import dataclass
-from typing import Final
+from typing import Final, TypeAlias
+
+import numpy as np
+from numpy.typing import NDArray
 
 from symnet.errors import Fault, LimitError
-from symnet.exact.aberth import Approximations, approximate, repulsion
+from symnet.exact.aberth import Approximations, approximate
 from symnet.exact.dense import Integers
 from symnet.exact.doubles import scaled
+from symnet.exact.newton import Newton, Point, Step, shifted
 
-__all__ = ["Point", "gap", "images", "isolate", "power_of_two", "refine"]
+Complexes: TypeAlias = NDArray[np.complex128]
+
+__all__ = ["gap", "images", "isolate", "power_of_two", "refine"]
 
 _FIRST_BITS: Final = 80  # of a coordinate: a double and a margin
+_ENOUGH: Final = 30  # bits of a step of the iteration, which takes its other part from doubles
+_CLOSE: Final = 2.0**-24  # of their size: points closer than that are subtracted exactly
 _MOST_BITS: Final = 1 << 14
 _MOST_SWEEPS: Final = 200
 _MOST_STEPS: Final = 40
 _BITS_PER_DIGIT: Final = math.log2(10)
 _DOUBLE: Final = 2.0**-53
-_SLACK: Final = 1e-6  # added to a log2 of a radius, far above the rounding of the log itself
-
-
-@dataclass(slots=True)
-class Point:
-    """The dyadic point (x + j*y) / 2^shift, shift >= 0, and log2 of n*|p/p'| there once it is known."""
-
-    x: int
-    y: int
-    shift: int
-    log_radius: float = math.inf
-
-    @property
-    def log_size(self) -> float:
-        """log2 of the distance from the origin."""
-        return math.log2(self.x * self.x + self.y * self.y) / 2 - self.shift
-
-    def as_complex(self, scale: int) -> complex:
-        """The point times 2^-scale as a double."""
-        return complex(scaled(self.x, -self.shift - scale), scaled(self.y, -self.shift - scale))
 
 
 def isolate(p: Integers, in_square: bool, digits: int) -> list[Point]:
@@ -59,14 +47,15 @@ def isolate(p: Integers, in_square: bool, digits: int) -> list[Point]:
     not exactly zero has a relative error below 10^-digits.
     """
     near = approximate(p)
+    newton = Newton(p)
     points = [_point(z, near.scale, _FIRST_BITS) for z in near.points]
     bits = _FIRST_BITS
     while bits <= _MOST_BITS:
-        points = _separate(p, points, near, bits)
+        points = _separate(newton, points, near, bits)
         chosen = _symmetric(points, in_square)
-        proven = [good for point in chosen if (good := refine(p, point, digits)) is not None]
+        proven = [good for point in chosen if (good := refine(newton, point, digits)) is not None]
         everyone = [image for point in proven for image in images(point, in_square)]
-        if len(everyone) == len(p) - 1 and _disjoint(everyone, near.scale):
+        if len(everyone) == len(p) - 1 and not _crowded(everyone, near.scale):
             return proven
         bits *= 2
     raise LimitError(
@@ -82,99 +71,43 @@ def _point(z: complex, scale: int, bits: int) -> Point:
     shift = bits - math.frexp(max(abs(z.real), abs(z.imag)))[1]
     x, y = int(math.ldexp(z.real, shift)), int(math.ldexp(z.imag, shift))
     places = min(0, shift - scale)
-    return Point(_shifted(x, -places), _shifted(y, -places), shift - scale - places)
+    return Point(shifted(x, -places), shifted(y, -places), shift - scale - places)
 
 
-def _moved(point: Point, bits: int, step: tuple[int, int, int] = (0, 0, 0)) -> Point:
-    """The point minus the step (u + j*v)*2^e, rounded to ``bits`` bits."""
-    u, v, e = step
-    size = max(abs(point.x), abs(point.y)).bit_length() - point.shift
-    shift = max(0, bits - size)
-    return Point(
-        _shifted(point.x, shift - point.shift) - _shifted(u, shift + e),
-        _shifted(point.y, shift - point.shift) - _shifted(v, shift + e),
-        shift,
-    )
-
-
-def _shifted(number: int, places: int) -> int:
-    return number << places if places >= 0 else number >> -places
-
-
-def _evaluate(p: Integers, point: Point) -> tuple[int, int, int, int]:
-    """P and p' at a point, exactly: real and imaginary parts, p times 2^(n*shift), p' times 2^((n-1)*shift)."""
-    x, y, shift = point.x, point.y, point.shift
-    up = 0
-    if y == 0:
-        value = slope = 0
-        for c in reversed(p):
-            slope = slope * x + value
-            value = value * x + (c << up)
-            up += shift
-        return value, 0, slope, 0
-    a = b = da = db = 0
-    for c in reversed(p):
-        da, db = da * x - db * y + a, da * y + db * x + b
-        a, b = a * x - b * y + (c << up), a * y + b * x
-        up += shift
-    return a, b, da, db
-
-
-def _newton(p: Integers, point: Point, bits: int) -> tuple[int, int, int] | None:
-    """p/p' at the point as (u + j*v)*2^e to more than ``bits`` bits; None if p' = 0. Sets the point's radius."""
-    a, b, c, d = _evaluate(p, point)
-    if not (c or d):
-        point.log_radius = math.inf
-        return None
-    if not (a or b):
-        point.log_radius = -math.inf
-        return 0, 0, 0
-    # Leading digits carry the quotient: cutting both to bits + 40 bits costs less than 2^-38 of it.
-    cut_value = max(0, max(a.bit_length(), b.bit_length()) - bits - 40)
-    cut_slope = max(0, max(c.bit_length(), d.bit_length()) - bits - 40)
-    a, b, c, d = a >> cut_value, b >> cut_value, c >> cut_slope, d >> cut_slope
-    real, imag, norm = a * c + b * d, b * c - a * d, c * c + d * d
-    up = max(0, norm.bit_length() - max(real.bit_length(), imag.bit_length()) + bits + 40)
-    u, v = (real << up) // norm, (imag << up) // norm
-    e = cut_value - cut_slope - up - point.shift
-    point.log_radius = math.log2(u * u + v * v) / 2 + e + math.log2(len(p) - 1) + _SLACK
-    return u, v, e
-
-
-def _separate(p: Integers, points: list[Point], near: Approximations, bits: int) -> list[Point]:
-    """The points moved by Aberth's iteration, p and p' exact, until their discs do not overlap."""
+def _separate(newton: Newton, points: list[Point], near: Approximations, bits: int) -> list[Point]:
+    """The points moved by Aberth's iteration until their discs do not overlap; those that stand alone stay."""
     points = list(points)
-    steps = [_newton(p, point, bits) for point in points]
-    move = bits > _FIRST_BITS  # coming back with more bits means that what there was did not do
+    steps = [newton.step(point, bits, _ENOUGH) for point in points]
+    z = np.array([point.as_complex(near.scale) for point in points])
     for _ in range(_MOST_SWEEPS):
-        if not move and _disjoint(points, near.scale):
-            break
-        move = False
-        largest = -math.inf
-        for i, point in enumerate(points):
-            here = point.as_complex(near.scale)
-            step = near.tamed(here, _repelled(points, i, steps[i], near.scale))
-            if point.log_radius == -math.inf or step == 0:
+        moved = False
+        for i in _crowded(points, near.scale):
+            here = complex(z[i])
+            step = near.tamed(here, _repelled(points, z, i, steps[i], near.scale))
+            if step == 0:
                 continue
             size = math.frexp(abs(step))[1]
-            largest = max(largest, size + near.scale - point.log_size)
+            moved |= size + near.scale - points[i].log_size >= 8 - bits
             u, v = (int(math.ldexp(part, 60 - size)) for part in (step.real, step.imag))
-            points[i] = _moved(point, bits, (u, v, size - 60 + near.scale))
-            steps[i] = _newton(p, points[i], bits)
-        if largest < 8 - bits:  # nothing moves at this precision
+            points[i] = points[i].moved(bits, (u, v, size - 60 + near.scale))
+            steps[i] = newton.step(points[i], bits, _ENOUGH)
+            z[i] = points[i].as_complex(near.scale)
+        if not moved:  # either all discs are apart, or nothing moves at this precision
             break
     return points
 
 
-def _repelled(points: list[Point], i: int, step: tuple[int, int, int] | None, scale: int) -> complex:
+def _repelled(points: list[Point], z: Complexes, i: int, step: Step | None, scale: int) -> complex:
     """Aberth's step at point i, in units of 2^scale: Newton's, with the other points pushing it away."""
     if step is None:
-        return points[i].as_complex(scale) * complex(1e-3, 1e-3)
+        return complex(z[i]) * complex(1e-3, 1e-3)
     u, v, e = step
     newton = complex(scaled(u, e - scale), scaled(v, e - scale))
-    nearly = 1 - newton * repulsion(
-        [gap(points[i], other, scale) for other in points if other is not points[i]]
-    )
+    gaps = z[i] - z
+    for k in np.flatnonzero(abs(gaps) <= _CLOSE * abs(z[i])):
+        gaps[k] = gap(points[i], points[k], scale)
+    with np.errstate(over="ignore", invalid="ignore"):
+        nearly = 1 - newton * complex((1 / gaps[gaps != 0]).sum())
     return newton / nearly if nearly else newton
 
 
@@ -186,26 +119,27 @@ def gap(a: Point, b: Point, scale: int) -> complex:
     return complex(scaled(x, -shift - scale), scaled(y, -shift - scale))
 
 
-def _disjoint(points: Sequence[Point], scale: int) -> bool:
-    """True when it is certain that no two of the discs overlap, with some room between them."""
-    if any(point.log_radius == math.inf for point in points):
-        return False
-    discs = [
-        (z, 2 * power_of_two(point.log_radius - scale) + 4 * _DOUBLE * abs(z), point)
-        for point in points
-        for z in (point.as_complex(scale),)
-    ]
-    for i, (z, reach, point) in enumerate(discs):
-        for other_z, other_reach, other in discs[:i]:
-            if abs(z - other_z) <= reach + other_reach:  # doubles cannot tell: the exact distance can
-                shift = max(point.shift, other.shift)
-                x = (point.x << (shift - point.shift)) - (other.x << (shift - other.shift))
-                y = (point.y << (shift - point.shift)) - (other.y << (shift - other.shift))
-                square = x * x + y * y
-                larger = max(point.log_radius, other.log_radius)
-                if not square or math.log2(square) / 2 - shift <= larger + 1.5:
-                    return False
-    return True
+def _crowded(points: Sequence[Point], scale: int) -> list[int]:
+    """The points whose discs may overlap another disc, or come near it."""
+    z = np.array([point.as_complex(scale) for point in points])
+    size = abs(z)
+    reach = np.array([2 * power_of_two(point.log_radius - scale) for point in points]) + 4 * _DOUBLE * size
+    distance = abs(z[:, None] - z)
+    near = distance <= reach[:, None] + reach
+    np.fill_diagonal(near, val=False)
+    # Where doubles cannot tell, the exact distance can.
+    for i, k in np.argwhere(near & (distance <= _CLOSE * size)).tolist():
+        near[i, k] = not _apart(points[i], points[k])
+    crowded: list[int] = np.flatnonzero(near.any(axis=1)).tolist()
+    return crowded
+
+
+def _apart(a: Point, b: Point) -> bool:
+    shift = max(a.shift, b.shift)
+    x = (a.x << (shift - a.shift)) - (b.x << (shift - b.shift))
+    y = (a.y << (shift - a.shift)) - (b.y << (shift - b.shift))
+    square = x * x + y * y
+    return square > 0 and math.log2(square) / 2 - shift > max(a.log_radius, b.log_radius) + 1.5
 
 
 def power_of_two(exponent: float) -> float:
@@ -243,7 +177,7 @@ def images(point: Point, in_square: bool) -> list[Point]:
     return [Point(x, y, point.shift, point.log_radius) for x, y in corners]
 
 
-def refine(p: Integers, point: Point, digits: int, absolute: float = math.inf) -> Point | None:
+def refine(newton: Newton, point: Point, digits: int, absolute: float = math.inf) -> Point | None:
     """The point after Newton steps until each of its coordinates is good to ``digits``; None if they stray.
 
     ``absolute`` is a log2 that the radius must fall below as well.
@@ -251,7 +185,7 @@ def refine(p: Integers, point: Point, digits: int, absolute: float = math.inf) -
     bits = _FIRST_BITS
     start = point.log_size
     for _ in range(_MOST_STEPS):
-        step = _newton(p, point, bits)
+        step = newton.step(point, bits, bits)
         smallest = min(math.log2(abs(c)) for c in (point.x, point.y) if c) - point.shift
         wanted = min(smallest - digits * _BITS_PER_DIGIT, absolute)
         if point.log_radius <= wanted:
@@ -260,7 +194,7 @@ def refine(p: Integers, point: Point, digits: int, absolute: float = math.inf) -
             return None
         good = point.log_size - point.log_radius
         bits = max(_FIRST_BITS, math.ceil(min(2 * good, point.log_size - wanted)) + 24)
-        point = _moved(point, bits, step)
+        point = point.moved(bits, step)
         if not (point.x or point.y):
             return None
     return None

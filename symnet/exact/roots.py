@@ -23,8 +23,9 @@ from typing import Final
 from symnet.errors import Fault, LimitError, UndefinedError
 from symnet.exact import dense
 from symnet.exact.dense import Integers
-from symnet.exact.discs import Point, images, isolate, power_of_two
+from symnet.exact.discs import images, isolate, power_of_two
 from symnet.exact.doubles import double
+from symnet.exact.newton import Point
 from symnet.exact.surds import Surd, closed_forms
 
 __all__ = ["Root", "Surd", "roots"]

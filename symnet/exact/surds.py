@@ -15,11 +15,16 @@ from typing import Final
 
 from symnet.exact import dense
 from symnet.exact.dense import Integers
-from symnet.exact.discs import Point, gap, images, refine
+from symnet.exact.discs import gap, images, refine
+from symnet.exact.newton import Newton, Point
 
 __all__ = ["Surd", "closed_forms"]
 
 _CLOSED_FORM_BITS: Final = 3000  # of the leading coefficient; beyond that closed forms are unreadable anyway
+
+_CERTAIN: Final = (
+    40  # bits after the point that must be zero in an integer: one in 10^12 of those tried is none
+)
 
 
 @dataclass(frozen=True, slots=True)
@@ -46,10 +51,11 @@ def closed_forms(p: Integers, points: list[Point], in_square: bool) -> list[Surd
     forms: list[Surd | None] = [None] * len(everyone)
     if lead.bit_length() > _CLOSED_FORM_BITS:
         return forms
-    fine = -(lead.bit_length() + max(0.0, *(point.log_size for point in points)) + 10)
+    fine = -(lead.bit_length() + max(0.0, *(point.log_size for point in points)) + _CERTAIN + 10)
+    newton = Newton(p)
     sharp: list[Point] = []
     for point in points:
-        better = point if point.log_radius <= fine else refine(p, point, 1, fine)
+        better = point if point.log_radius <= fine else refine(newton, point, 1, fine)
         sharp.extend(images(better or point, in_square))
     for i, point in enumerate(sharp):
         if point.y == 0:
@@ -72,9 +78,9 @@ def closed_forms(p: Integers, points: list[Point], in_square: bool) -> list[Surd
 
 
 def _integer(number: int, shift: int) -> int | None:
-    """The integer that number/2^shift is within 1/32 of, if any."""
+    """The integer that number/2^shift is all but equal to, if any."""
     nearest = (number + (1 << shift >> 1)) >> shift
-    return nearest if abs(number - (nearest << shift)) << 5 <= 1 << shift else None
+    return nearest if abs(number - (nearest << shift)) << _CERTAIN <= 1 << shift else None
 
 
 def _quadratic(p: Integers, lead: int, a: Point, b: Point) -> tuple[Fraction, Fraction] | None:

@@ -1,7 +1,7 @@
 """Ring elements as they stand: every term written, powers of s ascending, terms in the order of the ring.
 
-The readable, grouped forms are found in :mod:`symnet.exact.readable.forms`; this is the plain one, for tables of terms
-and for what is too long to group.
+The readable, grouped forms are found in :mod:`symnet.exact.readable.forms`; this is the plain one, for tables of
+terms and for what is too long to group.
 """
 
 from __future__ import annotations
