@@ -70,6 +70,7 @@ class Definitions:
             if name in free:
                 self.faults.append(Fault(f"{name} is declared free twice", "once is enough", span))
             free[name] = dimension
+        coupled = {coupling.name: coupling.dimension for coupling in draft.couplings}
         values: dict[str, Value] = {}
         for name, side, span in draft.values:
             if name in values:
@@ -77,7 +78,9 @@ class Definitions:
                 self.faults.append(Fault(f"{name} has a value already", hint, span, parts=(name,)))
                 continue
             try:
-                values[name] = value_of(name, side, dimension_of_class(name) or free.get(name))
+                values[name] = value_of(
+                    name, side, dimension_of_class(name) or coupled.get(name) or free.get(name)
+                )
             except SymnetError as error:
                 self.faults += error.faults
                 self.doubtful.add(name)
@@ -87,9 +90,16 @@ class Definitions:
             for name, value in instance.values():
                 given[name] = values.pop(name, value)
             free |= dict(instance.free())
-        drives, reads = tuple(draft.drives), tuple(draft.reads)
-        pairs = tuple({**given, **values}.items())
-        return Drawing(parts, drives, reads, pairs, tuple(free.items()), instances, text)
+        return Drawing(
+            parts,
+            tuple(draft.drives),
+            tuple(draft.reads),
+            tuple({**given, **values}.items()),
+            tuple(free.items()),
+            (*draft.couplings, *(coupling for instance in instances for coupling in instance.couplings())),
+            instances,
+            text,
+        )
 
     # -- parts ---------------------------------------------------------------------------------------------------
 
@@ -230,7 +240,7 @@ def _unused(header: Header, drawing: Drawing) -> Iterator[Fault]:
             hint = "connect it, or leave it out"
             yield Fault(f"nothing inside {header.kind} is connected to {terminal}", hint, header.span)
     named |= {name.name for _, value in drawing.values for name in names_in(value.expression)}
-    named |= set(drawing.part_names)
+    named |= {piece.name for piece in (*drawing.parts, *drawing.couplings)}
     for name, _, span in header.parameters:
         if name not in named:
             yield Fault(f"nothing inside {header.kind} hangs on {name}", "use it, or leave it out", span)

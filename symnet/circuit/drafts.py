@@ -11,7 +11,7 @@ from fractions import Fraction
 
 from symnet.circuit.clues import words_of
 from symnet.circuit.formulas import Formed, spelled
-from symnet.circuit.parts import CurrentLaw, Drive, Part, Value, VoltageLaw
+from symnet.circuit.parts import Coupling, CurrentLaw, Drive, Part, Value, VoltageLaw
 from symnet.errors import DimensionError, Fault, Span
 from symnet.expressions import Expression, Name, Number, names_in
 from symnet.quantities import NUMBER, Dimension, read_code
@@ -56,6 +56,7 @@ class Draft:
     """The network as far as it has been read. A law without a name has an empty one until all names are known."""
 
     parts: list[Part | Placement] = field(default_factory=list)
+    couplings: list[Coupling] = field(default_factory=list)
     drives: list[Drive] = field(default_factory=list)
     reads: list[Expression] = field(default_factory=list)
     values: list[tuple[str, RightSide, Span]] = field(default_factory=list)
@@ -68,6 +69,7 @@ class Draft:
     def take(self, other: Draft) -> None:
         """Add what another draft holds."""
         self.parts += other.parts
+        self.couplings += other.couplings
         self.drives += other.drives
         self.reads += other.reads
         self.values += other.values
@@ -115,6 +117,7 @@ def mentioned(text: str) -> set[str]:
 def all_names(draft: Draft) -> set[str]:
     """Every name in a draft, whatever it stands for."""
     found: set[str] = {name for name, _, _ in draft.values} | {name for name, _, _ in draft.free}
+    found |= {coupling.name for coupling in draft.couplings}
     expressions = list(draft.reads) + [side.formed.expression for _, side, _ in draft.values]
     for part in draft.parts:
         found.add(part.name)

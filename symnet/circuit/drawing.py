@@ -8,7 +8,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator
 from dataclasses import dataclass, field
 
-from symnet.circuit.parts import GROUND, Branch, Drive, Part, Value
+from symnet.circuit.parts import GROUND, Branch, Coupling, Drive, Part, Value
 from symnet.circuit.sections import Instance
 from symnet.errors import Fault, UnknownNameError, nearest
 from symnet.expressions import Expression, names_in
@@ -20,8 +20,8 @@ __all__ = ["Drawing"]
 @dataclass(frozen=True, slots=True)
 class Drawing:
     """What was drawn. ``values`` holds what each part or symbol is worth, in the order of writing; a part without
-    an entry stays a symbol. ``free`` are the symbols declared with ``free``; ``instances`` the sections in their
-    places, whose parts are among the parts; ``text`` is the text as typed.
+    an entry stays a symbol. ``free`` are the symbols declared with ``free``; ``couplings`` tie coils by
+    their flux; ``instances`` are the sections in their places, whose parts are among the parts; ``text`` is the text as typed.
     """
 
     parts: tuple[Part, ...] = ()
@@ -29,6 +29,7 @@ class Drawing:
     reads: tuple[Expression, ...] = ()
     values: tuple[tuple[str, Value], ...] = ()
     free: tuple[tuple[str, Dimension | None], ...] = ()
+    couplings: tuple[Coupling, ...] = ()
     instances: tuple[Instance, ...] = ()
     text: str | None = field(default=None, compare=False, repr=False)
 
@@ -84,6 +85,7 @@ class Drawing:
         for part in self.parts:
             if isinstance(part, Branch):
                 found[part.name] = None
+        found.update(dict.fromkeys(coupling.name for coupling in self.couplings))
         found.update(dict.fromkeys(name for name, _ in self.values))
         found.update(dict.fromkeys(name for name, _ in self.free))
         nodes, electric = set(self.nodes), set(self.electric_names())

@@ -90,6 +90,7 @@ class Meanings:
         }
         self.nodes |= dict.fromkeys(terminals)
         self.nodes.pop(GROUND, None)
+        self.couplings = {coupling.name: coupling for coupling in net.couplings}
         self.declared = dict(net.free)
         self.assigned = dict(net.values)
 
@@ -108,7 +109,7 @@ class Meanings:
             return "voltage"
         if name in self.branches:
             return "part"
-        if name in self.declared or name in self.assigned:
+        if name in self.declared or name in self.assigned or name in self.couplings:
             return "symbol"
         if name in self.doubtful or (name[1:2] == "_" and name[2:] in self.doubtful):
             return "doubtful"
@@ -130,6 +131,8 @@ class Meanings:
             case "current":
                 return AMPERE
             case "part" | "symbol" | "unknown":
+                if name in self.couplings:
+                    return self.couplings[name].dimension
                 return dimension_of_class(name) or self.declared.get(name)
         return None
 
@@ -137,11 +140,11 @@ class Meanings:
         """The symbols that are no parts: those declared, then those with a value, then those only used."""
         found = dict.fromkeys(self.declared)
         for name, _ in net.values:
-            if name not in self.branches:
+            if name not in self.branches and name not in self.couplings:
                 found[name] = None
         for use in uses(net):
             for used in names_in(use.expression):
-                if self.of(used.name) in {"symbol", "unknown"}:
+                if self.of(used.name) in {"symbol", "unknown"} and used.name not in self.couplings:
                     found[used.name] = None
         return tuple(found)
 

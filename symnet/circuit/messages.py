@@ -23,7 +23,6 @@ __all__ = ["DIAGNOSES", "RESERVED_LATER", "Said", "diagnose"]
 
 #: Words kept for statements of later releases, with what to do until then.
 RESERVED_LATER: Final = {
-    "couple": "write the coupled coils as three uncoupled ones",
     "let": "give the symbol a value: g = 2*R1",
     "node": "node equations belong to a hand derivation",
 }
@@ -33,6 +32,7 @@ _USAGE: Final = {
     "read": "write: read out, read a - b, or read i_R1",
     "hold": "write: hold out = mu*(p - m), or hold a - b = r*i_R1",
     "push": "write: push from d to c = gm*(g - c), or push into c = gm*g",
+    "couple": "write: couple L1 to L2 with k = 0.98, or with M = 1 mH",
     "free": "write: free Z0, K or free gm in S",
     "notation": "write: notation 1",
     "device": "write: U1: opamp(plus=p, minus=m, out=o)",

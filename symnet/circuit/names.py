@@ -8,6 +8,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator, Mapping
 from typing import TYPE_CHECKING, Final
 
+from symnet.circuit.couplings import coupling_faults
 from symnet.circuit.inference import Inference
 from symnet.circuit.laws import law_faults
 from symnet.circuit.meanings import Meanings, NearNames, Use, is_part_name, near_name, uses
@@ -44,12 +45,12 @@ def dimensions(net: Drawing) -> Mapping[str, Dimension | None]:
     """
     meanings = Meanings(net)
     inference = _inferred(net, meanings, set())
-    return inference.result((*meanings.branches, *meanings.free_symbols(net)))
+    return inference.result((*meanings.branches, *meanings.couplings, *meanings.free_symbols(net)))
 
 
 def names_of(net: Drawing) -> set[str]:
     """Every name in a network, whatever it stands for, those in expressions too."""
-    found = {name for name, _ in (*net.values, *net.free)}
+    found = {name for name, _ in (*net.values, *net.free)} | {each.name for each in net.couplings}
     for piece in (*net.parts, *net.drives):
         found |= {piece.name or "", *piece.nodes}
     for use in uses(net):
@@ -103,7 +104,7 @@ def check(
                 faults += found
                 bad.add(id(use.expression))
     inference = _inferred(net, meanings, bad)
-    return [*faults, *inference.faults, *inference.closing_faults()]
+    return [*faults, *inference.faults, *inference.closing_faults(), *coupling_faults(net)]
 
 
 # -- one name, one thing ----------------------------------------------------------------------------------------------
@@ -128,6 +129,8 @@ def _introduced(
     for labelled in (*net.parts, *net.drives):
         if labelled.name and not isinstance(labelled, Branch) and labelled.name not in placed:
             yield labelled.name, meanings.labels[labelled.name], labelled.span
+    for coupling in net.couplings:
+        yield coupling.name, "a coupling", coupling.span
     for name, _ in net.free:
         yield name, "a free symbol", places.get(name)
 
@@ -137,6 +140,8 @@ def _clashes(net: Drawing, meanings: Meanings, places: Mapping[str, Span]) -> It
     for name, kind, span in _introduced(net, meanings, places):
         if name not in first:
             first[name] = kind
+        elif first[name] == kind == "a coupling":
+            pass  # told with the couplings
         elif first[name] == kind == "a part":
             yield Fault(f"{name} is placed twice", "each part has a name of its own", span, parts=(name,))
         else:
@@ -215,7 +220,13 @@ class _Names:
         self._used = {name.name for use in self._uses for name in names_in(use.expression)}
         self._told: set[str] = set()
         self._parts = NearNames(meanings.branches)
-        self._known = [*meanings.nodes, *meanings.branches, *meanings.labels, *meanings.declared]
+        self._known = [
+            *meanings.nodes,
+            *meanings.branches,
+            *meanings.labels,
+            *meanings.couplings,
+            *meanings.declared,
+        ]
 
     def judge(self) -> None:
         """Collect the faults."""
@@ -239,7 +250,10 @@ class _Names:
         """Names that are given a value and are neither parts nor declared."""
         meanings, nothing = self.meanings, NearNames([])
         for target, value in self.net.values:
-            known = target in meanings.branches or target in meanings.declared or target in meanings.doubtful
+            known = any(
+                target in names
+                for names in (meanings.branches, meanings.couplings, meanings.declared, meanings.doubtful)
+            )
             if known or target in CLASS_LETTERS or target in self._told or meanings.of(target) != "symbol":
                 continue
             name = Name(target, self.places.get(target, value.span))

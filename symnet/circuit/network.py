@@ -106,8 +106,10 @@ class Network(Drawing, Displayed):
         gone: set[str] = set()
         for name in names:
             if name in placed:
-                gone |= {*(part.name for part in placed[name].parts()), *dict(placed[name].values())}
-            elif name in self:
+                section = placed[name]
+                gone |= {piece.name for piece in (*section.parts(), *section.couplings())}
+                gone |= set(dict(section.values()))
+            elif name in self or any(name == coupling.name for coupling in self.couplings):
                 gone.add(name)
             else:
                 raise self.unknown(name, (*self.part_names, *placed), "part or section" if placed else "part")
@@ -115,6 +117,7 @@ class Network(Drawing, Displayed):
             self,
             parts=tuple(part for part in self.parts if part.name not in gone),
             values=tuple((name, value) for name, value in self.values if name not in gone),
+            couplings=tuple(coupling for coupling in self.couplings if coupling.name not in gone),
             text=None,
         )
         for name, value in left.values:
@@ -186,6 +189,7 @@ class Network(Drawing, Displayed):
             (*self.reads, *other.reads),
             tuple(values.items()),
             free,
+            (*self.couplings, *other.couplings),
             (*self.instances, *other.instances),
         )
 

@@ -68,6 +68,7 @@ def _values(net: Drawing) -> list[str]:
         elif not normalised and not _within(value, _RANGES[class_letter(name)]):
             found.append(_unlikely(name, value))
     used = {name.name for use in uses(net) for name in names_in(use.expression)}
+    used |= {coupling.name for coupling in net.couplings}
     found += [
         f"{name} has a value and is used nowhere"
         for name, _ in net.values

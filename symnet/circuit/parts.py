@@ -13,12 +13,13 @@ from typing import Any, Final, TypeAlias
 
 from symnet.errors import Span
 from symnet.expressions import Expression
-from symnet.quantities import FARAD, HENRY, OHM, SIEMENS, Dimension
+from symnet.quantities import FARAD, HENRY, NUMBER, OHM, SIEMENS, Dimension
 
 __all__ = [
     "CLASS_LETTERS",
     "GROUND",
     "Branch",
+    "Coupling",
     "CurrentDrive",
     "CurrentLaw",
     "Drive",
@@ -69,6 +70,36 @@ class Branch:
     def nodes(self) -> tuple[str, str]:
         """Its terminals in the order of writing."""
         return (self.start, self.end)
+
+
+@dataclass(frozen=True, slots=True)
+class Coupling:
+    """``couple L1 to L2 with k = 0.98``: two coils share flux; each has its dot where the pencil entered it.
+
+    A name that begins with k is the coupling coefficient, k = M/sqrt(L1 L2); one that begins with M the mutual
+    inductance itself. The equations hold M, a symbol of its own called ``M_k`` where k was given.
+    """
+
+    name: str
+    first: str
+    second: str
+    span: Span | None = _span()
+
+    @property
+    def is_coefficient(self) -> bool:
+        """Whether k was given, and not M."""
+        return class_letter(self.name) == "k"
+
+    @property
+    def mutual(self) -> str:
+        """The symbol of the mutual inductance."""
+        path, dot, own = self.name.rpartition(".")
+        return f"{path}{dot}M_{own}" if self.is_coefficient else self.name
+
+    @property
+    def dimension(self) -> Dimension:
+        """That of the value: henry for M, none for k."""
+        return NUMBER if self.is_coefficient else HENRY
 
 
 @dataclass(frozen=True, slots=True)

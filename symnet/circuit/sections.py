@@ -17,7 +17,7 @@ from dataclasses import dataclass, field, replace
 from fractions import Fraction
 from typing import TYPE_CHECKING
 
-from symnet.circuit.parts import GROUND, Branch, CurrentLaw, OpAmp, Part, Value, VoltageLaw
+from symnet.circuit.parts import GROUND, Branch, Coupling, CurrentLaw, OpAmp, Part, Value, VoltageLaw
 from symnet.errors import Span
 from symnet.expressions import (
     Expression,
@@ -72,6 +72,16 @@ class Instance:
         """The parts of the section under the names that they have here."""
         place = _Place(self)
         return tuple(place.part(part) for part in self.section.drawing.parts)
+
+    def couplings(self) -> tuple[Coupling, ...]:
+        """The couplings of its coils under the names that they have here."""
+        place = _Place(self)
+        return tuple(
+            replace(
+                each, name=place.name(each.name), first=place.name(each.first), second=place.name(each.second)
+            )
+            for each in self.section.drawing.couplings
+        )
 
     def values(self) -> tuple[tuple[str, Value], ...]:
         """What the names of the section are worth here: arguments as given, then defaults, then its own values."""

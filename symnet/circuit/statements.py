@@ -13,11 +13,13 @@ from symnet.circuit.formulas import Formed
 from symnet.circuit.meanings import is_part_name
 from symnet.circuit.parts import (
     GROUND,
+    Coupling,
     CurrentDrive,
     CurrentLaw,
     OpAmp,
     VoltageDrive,
     VoltageLaw,
+    class_letter,
     dimension_of_class,
 )
 from symnet.circuit.series import Leaf
@@ -135,6 +137,24 @@ class Statements(Chains):
         label = self.label(name, "the name of a law") if name else ""
         law = CurrentLaw(label, self.node(start), self.node(end), self.law(value), span=self.whole_line())
         self.draft.parts.append(law)
+
+    def on_couple(self, children: Sequence[Any]) -> None:
+        """Couple L1 to L2 with k = 0.98."""
+        _, first, _, second, _, token, _, side = children
+        one, two, name = self.name(first), self.name(second), self.name(token)
+        for coil, word in ((one, first), (two, second)):
+            if class_letter(coil) != "L":
+                self.fault(f"{coil} is no coil", "inductors are coupled: couple L1 to L2", self.span_of(word))
+        if one == two:
+            self.fault(f"{one} is coupled to itself", "name two coils", self.span_of(second))
+        span = self.span_of(token)
+        self.plain(name, span, "a coupling")
+        if class_letter(name) not in {"k", "M"}:
+            hint = "write k or k12 for the coefficient, M or M12 for the mutual inductance"
+            self.fault(f"{name} says not whether it is k or M", hint, span)
+        self.draft.couplings.append(Coupling(name, one, two, span=self.whole_line()))
+        if side is not None:
+            self.draft.values.append((name, side, span))
 
     def law(self, formed: Formed) -> Expression:
         """The right-hand side of a law."""

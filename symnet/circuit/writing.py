@@ -55,6 +55,7 @@ def write_network(net: Drawing) -> str:
     """
     lines = [line for section in _sections(net) for line in _definition(section)]
     lines += _parts(net)
+    lines += _couplings(net)
     lines += [write_drive(drive) for drive in net.drives]
     lines += [f"read {write_expression(read)}" for read in net.reads]
     lines += list(_free(net))
@@ -82,6 +83,13 @@ def _parts(net: Drawing) -> Iterator[str]:
                 yield write_part(piece, label=piece.name not in silent)
 
 
+def _couplings(net: Drawing) -> Iterator[str]:
+    placed = {coupling for instance in net.instances for coupling in instance.couplings()}
+    for coupling in net.couplings:
+        if coupling not in placed:
+            yield f"couple {coupling.first} to {coupling.second} with {coupling.name}"
+
+
 def _sections(net: Drawing) -> Iterator[Section]:
     """The sections that a text must define, each after those that it places."""
     seen: list[Section] = []
@@ -106,8 +114,9 @@ def _definition(section: Section) -> Iterator[str]:
     ]
     parameters = f"; {', '.join(given)}" if given else ""
     yield f"define {section.name}({', '.join(section.terminals)}{parameters})"
-    yield from (f"  {line}" for line in [*_parts(section.drawing), *_free(section.drawing)])
-    yield from (f"  {line}" for line in _values(section.drawing))
+    inside = section.drawing
+    lines = [*_parts(inside), *_couplings(inside), *_free(inside), *_values(inside)]
+    yield from (f"  {line}" for line in lines)
     yield "done"
 
 

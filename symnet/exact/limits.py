@@ -208,7 +208,11 @@ def _resistive(network: Network, where: str) -> tuple[Network | None, list[str]]
         said.append(f"{', '.join(changed)} at the limit of its expression")
     if not possible:
         return None, [*said, "a law holds s"]
-    return replace(network, parts=tuple(parts), values=tuple(values.items()), text=None), said
+    if network.couplings and where != "DC":  # coils without current still pass voltage to one another
+        return None, ["coupled coils pass voltage to one another though no current flows"]
+    kept = {each.name for each in network.couplings}
+    worth = tuple((name, value) for name, value in values.items() if name not in kept)
+    return replace(network, parts=tuple(parts), values=worth, couplings=(), instances=(), text=None), said
 
 
 def _holds_s(network: Network, name: str) -> bool:

@@ -133,6 +133,14 @@ def stamp(network: Network, arithmetic: Arithmetic) -> Stamped:
                 else:
                     add(("v", part.start), unknown, weight)
                     add(("v", part.end), unknown, -weight)
+    for coupling in network.couplings:
+        one_coil, other, mutual = (
+            ("i", coupling.first),
+            ("i", coupling.second),
+            arithmetic.name(coupling.mutual),
+        )
+        add(one_coil, other, -(s * mutual))
+        add(other, one_coil, -(s * mutual))
     sources: dict[str, dict[int, Any]] = {}
     for name, drive in zip(network.drive_names, network.drives, strict=True):
         if isinstance(drive, VoltageDrive):
@@ -387,6 +395,22 @@ def _law(network: Network, name: str, label: str) -> Equation:
         case OpAmp():
             return Equation(label, _voltage(part.minus), _voltage(part.plus))
         case _:
+            if coupled := _coupled(network, name):
+                return Equation(label, _difference(*part.nodes[:2]), coupled)
             factors = ((1, Name("s")),) if isinstance(part, Branch) and part.kind == "L" else ()
             right = Product((*factors, (1, Name(name)), (1, Name(f"i_{name}"))))
             return Equation(label, _difference(*part.nodes), right)
+
+
+def _coupled(network: Network, coil: str) -> Expression | None:
+    """S L i plus s M i for every coil that shares flux; None for a coil that shares none."""
+    terms = [(Name(coil), coil)]
+    for coupling in network.couplings:
+        if coil in (coupling.first, coupling.second):
+            other = coupling.second if coil == coupling.first else coupling.first
+            terms.append((Name(coupling.mutual), other))
+    if len(terms) == 1:
+        return None
+    return Sum(
+        tuple((1, Product(((1, Name("s")), (1, value), (1, Name(f"i_{other}"))))) for value, other in terms)
+    )

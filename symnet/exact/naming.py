@@ -22,9 +22,10 @@ from symnet.circuit.network import Network
 from symnet.circuit.parts import Branch
 from symnet.errors import Fault, NotationError, SingularError
 from symnet.exact.linear import fraction_of
+from symnet.exact.mutual import root, squared_mutuals
 from symnet.exact.polynomials import ONE, Generators, Terms, sparse_terms
 from symnet.expressions import Expression, Name, Number, evaluate, names_in
-from symnet.quantities import SECOND, Dimension
+from symnet.quantities import HENRY, SECOND, Dimension
 
 if TYPE_CHECKING:
     from sympy.polys.fields import FracElement, FracField
@@ -103,6 +104,7 @@ class Naming:
     def dimensions(self) -> Mapping[str, Dimension | None]:
         """The dimension of s (1/second) and of every name in the ring; None where nothing tells it."""
         found = {**dimensions(self._network), "s": SECOND**-1}
+        found |= {coupling.mutual: HENRY for coupling in self._network.couplings}
         return MappingProxyType({name: found.get(name) for name in self.generators.names})
 
     @classmethod
@@ -143,6 +145,9 @@ class Naming:
                 for inner in names_in(part.value):
                     if inner.name not in electric:
                         appear(inner.name)
+        for coupling in network.couplings:
+            appear(coupling.mutual)
+        numbers |= _mutual(network)
         for read in network.reads:
             for inner in names_in(read):
                 if inner.name not in electric:
@@ -181,7 +186,17 @@ class Naming:
                 )
             else:
                 numbers[name] = _number(name, value.expression)
+        for coupling in network.couplings:
+            if coupling.is_coefficient:
+                numbers.pop(coupling.mutual, None)
+        numbers |= {name: number for name, number in _mutual(network).items() if name in self.names}
         return replace(self, numbers=MappingProxyType(numbers), _network=network)
+
+    @cached_property
+    def irrational(self) -> Mapping[str, Fraction]:
+        """The square, with the sign of the root, of each mutual inductance that is no fraction."""
+        found = {coupling.mutual: square for coupling, square in squared_mutuals(self._network)}
+        return {name: square for name, square in found.items() if root(square) ** 2 != abs(square)}
 
     def value(self, name: str) -> FracElement:
         """What a name stands for, as a fraction of ring elements."""
@@ -207,6 +222,11 @@ def _worth(name: str, value: Expression, generators: Generators, known: Mapping[
     words = Words(generators, known, {inner.name for inner in names_in(value)})
     fraction = fraction_of(value, words.field, words.fraction, f"the value of {name}")
     return words.terms(fraction.numer), words.terms(fraction.denom)
+
+
+def _mutual(network: Network) -> dict[str, Fraction]:
+    """The mutual inductance k sqrt(L1 L2) of each coupling whose k, L1 and L2 are numbers, to 60 digits."""
+    return {coupling.mutual: root(square) for coupling, square in squared_mutuals(network)}
 
 
 def _number(name: str, expression: Expression) -> Fraction:

@@ -8,8 +8,10 @@ resistor, inductor        admittance 1/R, 1/(sL): take 1, leave R or sL
 capacitor                 admittance sC: take sC, leave 1
 impedance p/q             take q, leave p
 admittance p/q            take p, leave q
+coupling of two coils     take -sM, in the row of either the current of the other
 branch whose current      its current into the two rows; its row v = (p/q) i or i = (p/q) v
-a law or the read names
+a law, a coupling or the
+read names
 voltage source or law     its current into the two rows, its voltage in its own row
 op amp                    its output current into one row, the row v_plus - v_minus = 0
 current law p/q           take p, leave q; with a row of its own when it has several fractions
@@ -29,6 +31,7 @@ from symnet.circuit.network import Network
 from symnet.circuit.parts import (
     GROUND,
     Branch,
+    Coupling,
     CurrentDrive,
     CurrentLaw,
     Drive,
@@ -173,7 +176,8 @@ class _Stamping:
         self.network = network
         self.naming = Naming.of(network, symbols)
         self.nodes = {node: k for k, node in enumerate(network.nodes)}
-        named = named_currents(network) | currents
+        coupled = {coil for each in network.couplings for coil in (each.first, each.second)}
+        named = named_currents(network) | currents | coupled
         carriers = [
             name
             for name, drive in zip(network.drive_names, network.drives, strict=True)
@@ -209,6 +213,8 @@ class _Stamping:
                     at = self.currents[part.name]
                     self._add(Piece(None, self.nodes.get(part.out), at, None))
                     self._row(part.name, *self._columns(part.plus, part.minus))
+        for coupling in self.network.couplings:
+            self._coupling(coupling)
         return replace(self.frame, pieces=tuple(self.pieces), take=tuple(self.take), leave=tuple(self.leave))
 
     def _columns(self, plus: str, minus: str) -> tuple[int | None, int | None]:
@@ -266,6 +272,13 @@ class _Stamping:
             numerator, denominator = admittance
             self._row(part.name, at, None)
             self._add(Piece(at, None, *voltage), negated(numerator), denominator)
+
+    def _coupling(self, coupling: Coupling) -> None:
+        """The voltage s M i of each coil from the current of the other."""
+        p, q = self.naming.terms(coupling.mutual)
+        one, two = self.currents[coupling.first], self.currents[coupling.second]
+        self._add(Piece(one, None, two, None), negated(times_s(p)), q)
+        self._add(Piece(two, None, one, None), negated(times_s(p)), q)
 
     def _value(self, part: Branch) -> tuple[tuple[Terms, Terms], tuple[Terms, Terms] | None]:
         """Numerator and denominator of the impedance, and of the admittance for C and Y."""

@@ -6,7 +6,7 @@ that needs numbers only is computed from the diagrams directly, in exact integer
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
 from functools import cached_property
@@ -19,6 +19,7 @@ from symnet.errors import Fault, MissingValueError, SingularError, UnknownNameEr
 from symnet.exact.confirm import Confirmation, undetermined
 from symnet.exact.determinant import count_in_words
 from symnet.exact.lowest import degrees_of
+from symnet.exact.mutual import coefficients
 from symnet.exact.quotient import Quotient
 from symnet.exact.ratio import Ratio
 from symnet.exact.readable.forms import readable_transfer
@@ -158,6 +159,9 @@ class Transfer(Displayed):
                     parts=tuple(missing),
                 )
             )
+        if self.naming.irrational:
+            polynomials = (self.numerator, self.denominator)
+            return self._ratio(*coefficients(polynomials, self.values, self.naming.irrational))
         # a name that has cancelled may have any number, as long as it leaves N and D defined
         anything = (Fraction(prime) for prime in count(1_000_003, 2))
         top, bottom = self.quotient.numbers(
@@ -166,6 +170,9 @@ class Transfer(Displayed):
                 for name in self.naming.generators.names[1:]
             ]
         )
+        return self._ratio(top, bottom)
+
+    def _ratio(self, top: Sequence[int | Fraction], bottom: Sequence[int | Fraction]) -> Ratio:
         if not any(bottom):
             fault = undetermined(self.network, self.naming, self.values)
             raise SingularError(replace(fault, message=f"for these values {fault.message}"))

@@ -25,7 +25,7 @@ from symnet.circuit.parts import (
 )
 from symnet.circuit.series import spoken
 from symnet.circuit.spelling import write_expression
-from symnet.expressions import Expression, Name, dimension_of, names_in
+from symnet.expressions import Expression, Name, Number, dimension_of, names_in
 from symnet.present.blocks import Block, Heading, Items, Line, Table, Typed
 from symnet.present.formulas import amount
 from symnet.quantities import NUMBER
@@ -56,7 +56,17 @@ def parts_table(network: Network, numbers: Mapping[str, Fraction]) -> Table:
         (part.name, _kind(part), _where(part), _worth(network, part, numbers), _tolerance(network, part.name))
         for part in shown
     ]
-    known = set(network.part_names)
+    rows += [
+        (
+            each.name,
+            "coupling",
+            f"{each.first}, {each.second}",
+            _value(each.name, worth, numbers) if (worth := network.value(each.name)) else "symbol, no value",
+            _tolerance(network, each.name),
+        )
+        for each in network.couplings
+    ]
+    known = {*network.part_names, *(each.name for each in network.couplings)}
     rows += [
         (name, "symbol", "", _value(name, value, numbers), _tolerance(network, name))
         for name, value in network.values
@@ -104,6 +114,8 @@ def _value(name: str, value: Value, numbers: Mapping[str, Fraction]) -> Line:
         return ("= ", tree_of(value.expression))
     dimension = dimension_of_class(name) or dimension_of(value.expression, {}) or NUMBER
     number = numbers.get(name)
+    if number is None and isinstance(value.expression, Number):
+        number = value.expression.value
     return ("= ", tree_of(value.expression)) if number is None else amount(number, dimension, digits=6)
 
 
@@ -137,6 +149,17 @@ def notes(network: Network) -> Iterator[Line]:
             else "a number"
         )
         yield f"{name} is a free symbol ({unit}): no part and no node has this name."
+    for each in network.couplings:
+        pair = f"{each.first} and {each.second}"
+        mutual = (
+            f"{each.mutual} = {each.name} sqrt({each.first} {each.second})"
+            if each.is_coefficient
+            else each.name
+        )
+        yield (
+            f"{pair} share flux: {mutual} is their mutual inductance; each has its dot at the end where its chain "
+            "enters it."
+        )
     valueless = [part.name for part in network.branches() if network.value(part.name) is None]
     if valueless and any(network.value(name) for name in network.part_names):
         yield f"Without a value: {', '.join(valueless)}; figures that need one are left out."

@@ -723,15 +723,6 @@ line 1, column 1: done ends a section and none is open
     a section begins with define name(in, out)""",
     ),
     (
-        "couple",
-        "couple L1 to L2 with k = 0.98",
-        """\
-line 1, column 1: couple is not in this release of the notation
-    couple L1 to L2 with k = 0.98
-    ^^^^^^
-    write the coupled coils as three uncoupled ones""",
-    ),
-    (
         "let",
         "let g = 1 + s*R1*C1",
         """\
@@ -2142,5 +2133,113 @@ line 5, column 1: A is already the name of a section
     A: stage(in=b, out=c)
     ^^^^^^^^^^^^^^^^^^^^^
     choose another name""",
+    ),
+    (
+        "a coupling of a coil that is not there",
+        "couple L1 to L3 with k=0.5; a -- L1 -- gnd; a -- L2 -- gnd",
+        """\
+line 1, column 1: the network has no coil L3
+    couple L1 to L3 with k=0.5; a -- L1 -- gnd; a -- L2 -- gnd
+    ^^^^^^^^^^^^^^^^^^^^^^^^^^
+    place it: a -- L3 -- b""",
+    ),
+    (
+        "a coefficient above one",
+        "couple L1 to L2 with k=1.5; a -- L1 -- gnd; a -- L2 -- gnd",
+        """\
+line 1, column 1: k = 1.5: a coupling coefficient lies between -1 and 1
+    couple L1 to L2 with k=1.5; a -- L1 -- gnd; a -- L2 -- gnd
+    ^^^^^^^^^^^^^^^^^^^^^^^^^^
+    k = M/sqrt(L1 L2)""",
+    ),
+    (
+        "a mutual inductance that is too large",
+        "couple L1 to L2 with M=3 mH; a -- L1 = 1m -- gnd; a -- L2 = 2m -- gnd",
+        """\
+line 1, column 1: M = 3 mH is more than L1 and L2 allow
+    couple L1 to L2 with M=3 mH; a -- L1 = 1m -- gnd; a -- L2 = 2m -- gnd
+    ^^^^^^^^^^^^^^^^^^^^^^^^^^^
+    M^2 is at most L1 L2: a coil pair stores no negative energy""",
+    ),
+    (
+        "a coupling without k or M",
+        "couple L1 to L2 with q; a -- L1 -- gnd; a -- L2 -- gnd",
+        """\
+line 1, column 22: q says not whether it is k or M
+    couple L1 to L2 with q; a -- L1 -- gnd; a -- L2 -- gnd
+                         ^
+    write k or k12 for the coefficient, M or M12 for the mutual inductance""",
+    ),
+    (
+        "a coupled capacitor",
+        "couple L1 to C2 with k; a -- L1 -- gnd; a -- C2 -- gnd",
+        """\
+line 1, column 14: C2 is no coil
+    couple L1 to C2 with k; a -- L1 -- gnd; a -- C2 -- gnd
+                 ^^
+    inductors are coupled: couple L1 to L2""",
+    ),
+    (
+        "a coil coupled to itself",
+        "couple L1 to L1 with k; a -- L1 -- gnd",
+        """\
+line 1, column 14: L1 is coupled to itself
+    couple L1 to L1 with k; a -- L1 -- gnd
+                 ^^
+    name two coils""",
+    ),
+    (
+        "coils coupled twice",
+        "couple L1 to L2 with k; couple L2 to L1 with k2; a -- L1 -- gnd; a -- L2 -- gnd",
+        """\
+line 1, column 25: L2 and L1 are coupled already, by k
+    couple L1 to L2 with k; couple L2 to L1 with k2; a -- L1 -- gnd; a -- L2 -- gnd
+                            ^^^^^^^^^^^^^^^^^^^^^^^
+    one coupling is enough""",
+    ),
+    (
+        "one name for two couplings",
+        "couple L1 to L2 with k; couple L2 to L3 with k\na -- L1 -- gnd; a -- L2 -- gnd; a -- L3 -- gnd",
+        """\
+line 1, column 25: k is the name of two couplings
+    couple L1 to L2 with k; couple L2 to L3 with k
+                            ^^^^^^^^^^^^^^^^^^^^^^
+    each coupling has a name of its own; a common value is given by a tie: k2 = k1""",
+    ),
+    (
+        "three coils that cannot be so close",
+        "couple L1 to L2 with k12 = 0.9; couple L2 to L3 with k23 = 0.9\ncouple L1 to L3 with k13 = 0.1\na -- L1 -- gnd; a -- L2 -- gnd; a -- L3 -- gnd",
+        """\
+line 2, column 1: no coils can have the couplings k12, k13, k23 together
+    couple L1 to L3 with k13 = 0.1
+    ^^^^^^^^^^^^^^^^^^^^^^^^^^^^^^
+    coils that are each close to a third are close to each other: check L1, L2, L3""",
+    ),
+    (
+        "a mutual inductance in ohm",
+        "couple L1 to L2 with M = 5 ohm; a -- L1 -- gnd; a -- L2 -- gnd",
+        """\
+line 1, column 26: M is in H, its value is in ohm
+    couple L1 to L2 with M = 5 ohm; a -- L1 -- gnd; a -- L2 -- gnd
+                             ^^^^^
+    give M in H""",
+    ),
+    (
+        "a coupling with a coil in the wrong place",
+        "couple L1 with L2; a -- L1 -- gnd",
+        """\
+line 1, column 11: with is not expected in this couple statement
+    couple L1 with L2; a -- L1 -- gnd
+              ^^^^
+    write: couple L1 to L2 with k = 0.98, or with M = 1 mH""",
+    ),
+    (
+        "a coupling without a value",
+        "couple L1 to L2; a -- L1 -- gnd",
+        """\
+line 1, column 16: this couple statement is not complete
+    couple L1 to L2; a -- L1 -- gnd
+                   ^
+    write: couple L1 to L2 with k = 0.98, or with M = 1 mH""",
     ),
 )
