@@ -20,8 +20,9 @@ from symnet.present import writers
 from symnet.present.blocks import Block, Heading, Paragraph
 from symnet.present.conventions import conventions
 from symnet.present.network import network_blocks
+from symnet.present.recognition import recognition_blocks
 from symnet.present.response import response_blocks
-from symnet.present.results import conditions_blocks, limits_table, recognition_blocks, transfer_blocks
+from symnet.present.results import conditions_blocks, limits_table, transfer_blocks
 from symnet.present.shapes import normal_blocks, sections_blocks
 from symnet.quantities import NUMBER
 from symnet.typeset.displayed import Displayed

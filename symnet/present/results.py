@@ -21,8 +21,7 @@ from symnet.present.blocks import (
     without_empty_columns,
 )
 from symnet.present.formulas import amount, label_tree, with_power_of_s
-from symnet.quantities import AMPERE, HERTZ, NUMBER, SECOND, VOLT, Dimension
-from symnet.shape.families.prototype import LOW_PASS, UNIT_DELAY
+from symnet.quantities import AMPERE, NUMBER, VOLT, Dimension
 from symnet.typeset.notation import tree_of
 from symnet.typeset.numbers import Written, complex_quantity, plain_number, quantity
 from symnet.typeset.polynomials import collected
@@ -33,15 +32,12 @@ if TYPE_CHECKING:
     from symnet.exact.mna import Equations
     from symnet.exact.roots import Root
     from symnet.exact.transfer import Transfer
-    from symnet.shape.families.prototype import Reference
     from symnet.shape.stated import Alternative, Condition, Conditions
-    from symnet.shape.verdict import Candidate, Recognition
 
 __all__ = [
     "conditions_blocks",
     "equations_blocks",
     "limits_table",
-    "recognition_blocks",
     "shortened",
     "transfer_blocks",
     "transfer_formula",
@@ -220,22 +216,6 @@ def _limit_value(limit: Limit, values: Mapping[str, Fraction], dimension: Dimens
 # -- recognition --------------------------------------------------------------------------------------------------
 
 
-def recognition_blocks(found: Recognition) -> tuple[Block, ...]:
-    """The verdict, the candidates with their distances, and their frequencies beside those of this H."""
-    blocks: list[Block] = [Paragraph(found.verdict)]
-    if found.candidates:
-        header = ("candidate", "poles within", "pass band within", "group delay within", "")
-        blocks.append(
-            Table(header, tuple(_candidate_row(found, candidate) for candidate in found.candidates))
-        )
-    if found.own:
-        blocks.append(_references(found))
-    if found.normalised_to:
-        said = ", ".join(reference.label for reference in found.normalised_to)
-        blocks.append(Paragraph(f"normalised so that 1 rad/s is: {said}"))
-    return tuple(blocks)
-
-
 def conditions_blocks(found: Conditions) -> tuple[Block, ...]:
     """One row for each family: when H is a member of it, and its frequencies then."""
     rows: list[tuple[Line, ...]] = [_condition_row(condition) for condition in found.conditions]
@@ -273,59 +253,6 @@ def _way(way: Alternative) -> Iterator[str | Tree | Written]:
         yield from piece
     if way.needed:
         yield f" (where {', '.join(way.needed)} must be positive)"
-
-
-def _candidate_row(found: Recognition, candidate: Candidate) -> tuple[Line, ...]:
-    if candidate is found.match:
-        role = f"match, exact: {candidate.exact}" if candidate.exact else "match"
-    else:
-        role = "fits too" if candidate.matches else "runner-up"
-    poles, response, delay = (
-        Written(text, text.replace("%", r"\%"), text)
-        for text in (
-            f"{_bound(candidate.pole_error_percent)} %",
-            f"{_bound(candidate.response_error_db)} dB",
-            f"{_bound(candidate.delay_error_percent)} %",
-        )
-    )
-    return (candidate.name, poles, response, delay, role)
-
-
-def _references(found: Recognition) -> Table:
-    """Every frequency reference, of this H and of the nearest candidate, whose scale was fitted."""
-    own = {reference.name: reference for reference in found.own}
-    candidate = found.candidates[0] if found.candidates else None
-    theirs = {} if candidate is None else {r.name: r for r in candidate.prototype.references}
-    columns = [own] if candidate is None else [own, theirs]
-    header = (
-        "reference",
-        "of this H",
-        "",
-        *(() if candidate is None else (f"of the {candidate.prototype.family}", "")),
-    )
-    rows = []
-    for name, reference in {**own, **theirs}.items():
-        label = (
-            "T, the group delay at DC" if name == UNIT_DELAY and found.band == LOW_PASS else reference.label
-        )
-        rows.append((label, *(cell for column in columns for cell in _reference_cells(column.get(name)))))
-    return Table(header, tuple(rows))
-
-
-def _reference_cells(reference: Reference | None) -> tuple[Line, Line]:
-    if reference is None:
-        return ("", "")
-    if reference.name == UNIT_DELAY:
-        return (amount(1 / reference.w, SECOND, 5), "")
-    return (amount(reference.f, HERTZ, 5, angular=False), amount(reference.w, HERTZ, 5))
-
-
-def _bound(value: float) -> str:
-    """Two digits, rounded up; what is below 1e-9 is rounding."""
-    if value < 1e-9:
-        return "1e-9"
-    places = 1 - math.floor(math.log10(value))
-    return plain_number(math.ceil(value * 10.0**places) / 10.0**places, 2, pad=True).text
 
 
 # -- equations ----------------------------------------------------------------------------------------------------

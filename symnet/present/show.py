@@ -19,12 +19,12 @@ from symnet.present.brief import Brief
 from symnet.present.difference import comparison_blocks
 from symnet.present.dominant import dominant_blocks, split_blocks
 from symnet.present.network import network_blocks
+from symnet.present.recognition import recognition_blocks
 from symnet.present.response import half_power_rows
 from symnet.present.results import (
     conditions_blocks,
     equations_blocks,
     limits_table,
-    recognition_blocks,
     shortened,
     transfer_blocks,
     transfer_formula,

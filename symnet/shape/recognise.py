@@ -1,23 +1,20 @@
 """Which filter family H(s) is, how nearly, and at which frequencies: the verdict on numbers.
 
-Shapes are compared, not tables: H is divided by its w0, a high-pass is turned into a low-pass by s -> 1/s, and
-every family of the catalogue that has members of that order and that number of finite zeros is fitted to it
-(:mod:`symnet.shape.matching`). Candidates are ranked by response, those that match before those that do not. The
-thresholds, here and in :mod:`symnet.shape.verdict`, say what counts as a match; the figures behind the verdict are
-always shown, so that nobody has to believe in the thresholds.
-
-A family with fewer fitted parameters stands before one with more that is hardly nearer, because a free parameter
-always makes something of the errors: Butterworth is the Chebyshev of zero ripple.
+Shapes are compared, not tables. H is seen as a low-pass in every way that its zeros allow: as it is, by s -> 1/s, as a
+band-pass or a band-stop (:mod:`symnet.shape.undoing`); an all-pass is judged by its denominator. Every family of the
+catalogue that has members of that order and that number of finite zeros is fitted (:mod:`symnet.shape.matching`),
+and the candidates are ranked (:mod:`symnet.shape.ranking`). What counts as a match is written down in one place
+(:mod:`symnet.shape.thresholds`); the figures behind the verdict are always shown, so that nobody has to believe in
+it. What no family stands behind is told by its own figures: shelves by levels and corners, second orders by Q.
 """
 
 from __future__ import annotations
 
 import math
-from collections.abc import Iterator, Sequence
-from dataclasses import replace
+from collections.abc import Sequence
 from decimal import Decimal
 from fractions import Fraction
-from typing import TYPE_CHECKING, Any, Final, TypeAlias
+from typing import TYPE_CHECKING, Any, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
@@ -25,11 +22,15 @@ from numpy.typing import NDArray
 from symnet.errors import Fault, NotationError
 from symnet.exact.ratio import Ratio
 from symnet.exact.roots import Root, roots
-from symnet.shape.families import CATALOGUE
-from symnet.shape.families.curves import attenuation
-from symnet.shape.families.family import LARGEST_ORDER, Family
-from symnet.shape.families.prototype import HIGH_PASS, LOW_PASS, W0, W3DB, Reference
-from symnet.shape.matching import Fit, Target, fit, fit_by_poles
+from symnet.shape.allpass import all_pass, is_all_pass
+from symnet.shape.cascades import equal_sections, halves
+from symnet.shape.families.family import LARGEST_ORDER
+from symnet.shape.families.prototype import BAND_PASS, HIGH_PASS, LOW_PASS
+from symnet.shape.frequencies import level_at_1, own_references
+from symnet.shape.ranking import candidates
+from symnet.shape.shelving import shelf
+from symnet.shape.thresholds import POLES_PERCENT, ZEROS_PERCENT
+from symnet.shape.undoing import View, views
 from symnet.shape.verdict import Candidate, Recognition, hertz
 
 if TYPE_CHECKING:
@@ -40,46 +41,43 @@ __all__ = ["Candidate", "Recognition", "recognise"]
 
 Number: TypeAlias = int | float | Fraction | Decimal | str
 
-#: "Exactly", where exact arithmetic does not decide: poles within this, far above the rounding of doubles and far
-#: below any printed digits.
-EXACT_PERCENT: Final = 1e-7
-
-#: A match with fewer fitted parameters stands first when its response error is below the first of these, which is
-#: what 1 % parts do to it, or below that of the other times the second: with 5 % parts the fit of a ripple halves
-#: the response error of a Butterworth ladder in every second draw without meaning anything.
-SIMPLER_DB: Final = 0.05
-SIMPLER_RATIO: Final = 10.0
-#: Where nothing matches, a nearest one with more parameters must at least halve the error of the simpler one.
-SIMPLER_RATIO_WITHOUT_MATCH: Final = 2.0
-
 
 def recognise(
-    h_or_descending: Transfer | Ratio | Sequence[Number] | NDArray[Any],
+    h_or_descending: Transfer | Ratio | Sequence[Number] | NDArray[Any] | None = None,
+    *,
+    numerator: Sequence[Number] | NDArray[Any] | None = None,
+    poles: Sequence[complex] | NDArray[Any] | None = None,
+    zeros: Sequence[complex] | NDArray[Any] = (),
 ) -> Recognition | Conditions:
-    """Which family H(s) is: Butterworth, Bessel or Chebyshev, low-pass or high-pass, of any order, or none of these.
+    """Which family H(s) is, in which band and of which order, or none of these.
 
     Parameters
     ----------
     h_or_descending
         A transfer function; or the coefficients of a denominator D(s) in *descending* powers of s, as textbooks
-        print them ([1, 6, 15, 15] is s^3 + 6 s^2 + 15 s + 15), for the low-pass 1/D(s). Decimal numbers are taken
-        as printed, so 0.1 is 1/10.
+        print them ([1, 6, 15, 15] is s^3 + 6 s^2 + 15 s + 15). Decimal numbers are taken as printed, so 0.1 is 1/10.
+    numerator
+        The coefficients of N(s), likewise, where coefficients of D(s) are given; a constant if it is left out.
+    poles, zeros
+        Instead of all that: every pole and every finite zero in rad/s, repeated ones repeated, conjugates both.
 
     Returns
     -------
     Recognition
         When every value is known: the verdict, the candidates by growing response error, their frequencies in
-        rad/s and Hz, and three distances (:class:`Candidate` defines them). The words: "exactly" when the
+        rad/s and Hz, and their distances (:class:`Candidate` defines them). The words: "exactly" when the
         coefficients satisfy the family's equations in exact arithmetic or the poles agree within 1e-9; "nearest"
         when H agrees in response (0.1 dB and 3 % of the group delay over the pass band) or in its poles (5 %, and
-        0.5 dB in response; or 2 % alone); else "none of these". Order 1 has one shape only and is called first order; order 2 is a matter of Q.
+        0.5 dB in response; or 2 % alone), and in its finite zeros (5 %); else "none of these". Order 1 has one
+        shape only and is called first order; order 2 is a matter of Q. Bands: low-pass, high-pass, band-pass,
+        band-stop, all-pass; shelves and peaks are told by their levels and corners.
     Conditions
         When H has symbols without a value: the exact conditions on them for each family.
 
     Raises
     ------
     NotationError
-        Coefficients that are no numbers, or none that is not 0.
+        Coefficients or roots that are no numbers, or none that is not 0; a root without its conjugate.
 
     Examples
     --------
@@ -98,15 +96,33 @@ def recognise(
     >>> print(recognise([1, 1.25291, 1.53490, 0.71569]).match.name)
     Chebyshev, order 3, ripple 0.5 dB, low-pass
 
-    Two equal Butterworth sections of order 2 are no Butterworth of order 4:
+    A band-pass, by its poles, with its centre and its bandwidth in rad/s:
 
-    >>> print(recognise([1, 2 * 2**0.5, 4, 2 * 2**0.5, 1]))
-    none of these; nearest is ...
+    >>> from symnet.shape.families.bessel import bessel
+    >>> made = bessel(2).scaled("w3dB", 1.0).band_pass(1000.0, 100.0)
+    >>> found = recognise(poles=made.poles, zeros=made.zeros)
+    >>> found.match.name, round(found.centre.w, 6), round(found.bandwidth.w, 6)
+    ('Bessel, order 2, band-pass', 1000.0, 100.0)
     """
+    if poles is not None:
+        if h_or_descending is not None or numerator is not None:
+            raise NotationError(
+                "a response is given by H, by coefficients or by poles and zeros, not by two of them"
+            )
+        return _on_numbers(Ratio.of(_product(zeros, "zeros"), _product(poles, "poles")))
+    if h_or_descending is None:
+        raise NotationError(
+            Fault("there is nothing to recognise", hint="give H, the coefficients of D(s), or poles=[...]")
+        )
+    if isinstance(h_or_descending, Sequence | np.ndarray):
+        den = _ascending(h_or_descending, "a denominator")
+        return _on_numbers(
+            Ratio.of((Fraction(1),) if numerator is None else _ascending(numerator, "a numerator"), den)
+        )
+    if numerator is not None:
+        raise NotationError("a numerator goes with the coefficients of a denominator, not with an H")
     if isinstance(h_or_descending, Ratio):
         return _on_numbers(h_or_descending)
-    if isinstance(h_or_descending, Sequence | np.ndarray):
-        return _on_numbers(_all_pole(h_or_descending))
     if not h_or_descending.is_numeric:
         from symnet.shape.conditions import conditions
 
@@ -114,20 +130,54 @@ def recognise(
     return _on_numbers(h_or_descending.numeric())
 
 
-def _all_pole(descending: Sequence[Number] | NDArray[Any]) -> Ratio:
-    """1/D(s) from the coefficients of D, highest power first."""
+def _ascending(descending: Sequence[Number] | NDArray[Any], what: str) -> tuple[Fraction, ...]:
+    """Coefficients as exact numbers, lowest power first."""
     try:
         ascending = [Fraction(str(c)) if not isinstance(c, Fraction) else c for c in descending][::-1]
     except (ValueError, ZeroDivisionError):
         raise NotationError(
             Fault(
-                f"the coefficients of a denominator are numbers, highest power first; these are not: {descending!r}",
+                f"the coefficients of {what} are numbers, highest power first; these are not: {descending!r}",
                 hint="write 1 kohm * 1 nF as its value in seconds, 1e-6",
             )
         ) from None
     if isinstance(descending, str) or not any(ascending):
-        raise NotationError(f"a denominator has a coefficient that is not 0; {descending!r} has none")
-    return Ratio.of((Fraction(1),), tuple(ascending))
+        raise NotationError(f"{what} has a coefficient that is not 0; {descending!r} has none")
+    return tuple(ascending)
+
+
+def _product(given: Sequence[complex] | NDArray[Any], what: str) -> tuple[Fraction, ...]:
+    """The polynomial with these roots, doubles taken as the exact numbers they are; pairs within 1e-9 are conjugates."""
+    try:
+        left = [complex(r) for r in given]
+    except (TypeError, ValueError):
+        left = [complex(math.nan)]
+    if not all(math.isfinite(abs(r)) for r in left):
+        raise NotationError(
+            Fault(
+                f"{what} are finite numbers in rad/s; these are not: {given!r}",
+                hint="write [-1, -1+2j, -1-2j]",
+            )
+        )
+    total = [Fraction(1)]
+    while left:
+        r = left.pop(0)
+        factor = [-Fraction(r.real), Fraction(1)]
+        if r.imag:
+            partner = min(left, key=lambda other: abs(other - r.conjugate()), default=None)
+            if partner is None or abs(partner - r.conjugate()) > 1e-9 * abs(r):
+                raise NotationError(
+                    Fault(f"{what}: {r:.6g} rad/s is without its conjugate", hint=f"add {r.conjugate():.6g}")
+                )
+            left.remove(partner)
+            a, b = Fraction(r.real), Fraction(abs(r.imag))
+            factor = [a * a + b * b, -2 * a, Fraction(1)]
+        product = [Fraction(0)] * (len(total) + len(factor) - 1)
+        for i, x in enumerate(total):
+            for j, y in enumerate(factor):
+                product[i + j] += x * y
+        total = product
+    return tuple(total)
 
 
 def _on_numbers(h: Ratio) -> Recognition:
@@ -135,28 +185,47 @@ def _on_numbers(h: Ratio) -> Recognition:
     refusal = _not_compared(h, order)
     if refusal:
         return Recognition(refusal, order)
-    poles = _values(roots(h.den))
-    views = [
-        (band, target, _candidates(target, band, h, order)) for band, target in _as_low_pass(h, order, poles)
-    ]
-    views = [view for view in views if view[2] or (order == 1 and not view[1].zeros)]
-    if not views:
-        return Recognition(_other_zeros(h, order), order)
-    band, target, candidates = min(views, key=lambda view: view[2][0].response_error_db if view[2] else 0.0)
-    own = _own_references(target, band)
-    level = _level_at_1(target)
-    if order == 1:
+    poles, zeros = _values(roots(h.den)), _values(roots(h.num))
+    if is_all_pass(poles, zeros):
+        return all_pass(h, poles, zeros)
+    both_ends = len(zeros) == order and all(zeros)
+    if both_ends and any(100 * abs(z.real) > ZEROS_PERCENT * abs(z) for z in zeros):
+        return shelf(h, poles, zeros)
+    seen = [(view, _candidates(view, h)) for view in views(poles, zeros) if view.order <= LARGEST_ORDER]
+    seen = [(view, found) for view, found in seen if found or (view.order == 1 and not len(view.low_zeros))]
+    if not seen:
+        return _without_family(poles, zeros)
+    view, found = min(seen, key=_nearness)
+    own, level = own_references(view), level_at_1(view)
+    q = _quality(poles) if order == 2 else None
+    if view.order == 1:
         return Recognition(
-            f"first order, {band}: f0 = f3dB = {hertz(own[0].w)}", 1, band, (), None, own, level
+            _first_order(view, own, q),
+            order,
+            view.band,
+            (),
+            q,
+            own,
+            level,
+            misfit_percent=view.misfit_percent,
+            poles=poles,
         )
-    q = _quality(h) if order == 2 else None
-    return Recognition(_verdict(candidates, q), order, band, candidates, q, own, level)
+    notes = _notes(view, poles, zeros, found)
+    verdict = _verdict(view, found, q if view.order == 2 else None, notes)
+    return Recognition(verdict, order, view.band, found, q, own, level, notes, view.misfit_percent, poles)
 
 
-def _own_references(target: Target, band: str) -> tuple[Reference, ...]:
-    """w0 and the -3.0103 dB frequency of H itself; those of the low-pass are the inverses for a high-pass."""
-    edges = ((W0, target.w0), (W3DB, target.w3dB * target.w0))
-    return tuple(Reference.named(name, w if band == LOW_PASS else 1 / w, band=band) for name, w in edges)
+def _candidates(view: View, h: Ratio) -> tuple[Candidate, ...]:
+    return candidates(view, h.den) if view.order > 1 else ()
+
+
+def _nearness(seen: tuple[View, tuple[Candidate, ...]]) -> tuple[bool, float]:
+    found = seen[1]
+    return (
+        (False, found[0].response)
+        if found and not found[0].matches
+        else (not found, found[0].response if found else 0.0)
+    )
 
 
 def _values(found: Sequence[Root]) -> tuple[complex, ...]:
@@ -167,8 +236,10 @@ def _not_compared(h: Ratio, order: int) -> str:
     """Why nothing can be said, or an empty text."""
     if not h.num:
         return "H is 0: there is no response to recognise"
-    if order > LARGEST_ORDER:
-        return f"order {order}: shapes are compared up to order {LARGEST_ORDER}"
+    if order > 2 * LARGEST_ORDER:
+        return (
+            f"order {order}: shapes are compared up to order {LARGEST_ORDER}, of a band-pass up to twice that"
+        )
     if order == 0 and len(h.num) == 1:
         return "H is a constant: order 0, no poles, no filter family"
     if len(h.num) - 1 > order:
@@ -185,127 +256,125 @@ def _not_compared(h: Ratio, order: int) -> str:
     return ""
 
 
-def _other_zeros(h: Ratio, order: int) -> str:
+def _without_family(poles: tuple[complex, ...], zeros: tuple[complex, ...]) -> Recognition:
     """What kind of response it is that no family of the catalogue has."""
-    n, z = len(h.num) - 1, next(k for k, c in enumerate(h.num) if c)
-    mirrored = [c if k % 2 == 0 else -c for k, c in enumerate(h.num)]
-    if n == order and all(a * h.den[0] == b * mirrored[0] for a, b in zip(mirrored, h.den, strict=True)):
-        kind = "an all-pass"
-    elif z and n == z and n < order:
-        kind = f"a band-pass ({_times(z)} at s = 0, {_times(order - n)} at infinite frequency)"
+    order, origin = len(poles), sum(1 for z in zeros if not z)
+    infinity = order - len(zeros)
+    finite = len(zeros) - origin
+    if order > LARGEST_ORDER:
+        kind = f"order {order}: shapes are compared up to order {LARGEST_ORDER}"
+        return Recognition(kind, order, poles=poles)
+    band = BAND_PASS if origin and infinity else HIGH_PASS if origin else LOW_PASS
+    ends = f"{_times(origin)} at s = 0, {_times(infinity)} at infinite frequency"
+    if band == BAND_PASS and not finite:
+        kind = f"a band-pass ({ends}) that is no transformed low-pass"
+        if order % 2 == 0 and origin == infinity:
+            kind = f"a band-pass ({ends})"
     else:
-        kind = f"a response with {_times(n - z)} at finite frequencies other than 0"
-    return f"{kind}: not a low-pass or high-pass without finite zeros, so not compared in this release"
+        kind = f"a {band} with {_times(finite)} at finite frequencies other than 0"
+    notes = _product_notes(poles, zeros) if band == BAND_PASS and not finite else ()
+    verdict = (
+        f"{kind}: {notes[0][1]}" if notes else f"{kind}: none of these families has members of this kind"
+    )
+    return Recognition(verdict, order, band, notes=notes, poles=poles)
 
 
 def _times(n: int) -> str:
-    return "one zero" if n == 1 else f"{n} zeros"
+    return "one zero" if n == 1 else f"{n or 'no'} zeros"
 
 
-def _as_low_pass(h: Ratio, order: int, poles: tuple[complex, ...]) -> Iterator[tuple[str, Target]]:
-    """H as a low-pass to compare: itself if H(0) is not 0, and by s -> 1/s if H is not 0 at infinite frequency."""
-    zeros = [z for z in _values(roots(h.num)) if z]
-    if h.num[0]:
-        target = Target.of(poles, zeros)
-        if target is not None:
-            yield LOW_PASS, target
-    if len(h.num) - 1 == order:
-        target = Target.of([1 / p.conjugate() for p in poles], [1 / z.conjugate() for z in zeros])
-        if target is not None:
-            yield HIGH_PASS, target
-
-
-def _candidates(target: Target, band: str, h: Ratio, order: int) -> tuple[Candidate, ...]:
-    if order < 2:
-        return ()
-    ascending = h.den if band == LOW_PASS else h.den[::-1]
-    found = []
-    for family in CATALOGUE:
-        if not family.has_order(order) or family.finite_zeros(order) != len(target.zeros):
-            continue
-        found.append(_candidate(family, fit(family, target), band))
-    if not any(c.matches for c in found):
-        by_poles = [
-            _candidate(c.family, fit_by_poles(c.family, target), band) for c in found if c.prototype.settings
-        ]
-        found = [next((p for p in by_poles if p.family is c.family and p.matches), c) for c in found]
-    # a ripple that vanishes is Butterworth, and is said once
-    simplest = min((len(c.prototype.settings) for c in found), default=0)
-    found = [c for c in found if not c.is_degenerate or len(c.prototype.settings) == simplest]
-    return _ranked([_with_exactness(c, ascending, target) for c in found])
-
-
-def _with_exactness(candidate: Candidate, ascending: Sequence[Fraction], target: Target) -> Candidate:
-    if candidate.pole_error_percent > EXACT_PERCENT:
-        return candidate
-    if not candidate.is_tested:
-        return replace(candidate, exact="as any shape of that order and Q is")
-    exact = "in exact arithmetic" if _is_exact(candidate.family, ascending, target) else "poles within 1e-9"
-    return replace(candidate, exact=exact)
-
-
-def _candidate(family: Family, result: Fit, band: str) -> Candidate:
-    return Candidate(
-        family,
-        result.prototype if band == LOW_PASS else result.prototype.high_pass(),
-        result.uncertainties,
-        result.response_error_db,
-        result.delay_error_percent,
-        result.pole_error_percent,
-    )
-
-
-def _is_exact(family: Family, ascending: Sequence[Fraction], target: Target) -> bool:
-    """Whether the coefficients satisfy the equations of the family in exact arithmetic."""
-    conditions = None if target.zeros else family.conditions(ascending)
-    return conditions is not None and not any(conditions) and all(p > 0 for p in family.positives(ascending))
-
-
-def _ranked(candidates: list[Candidate]) -> tuple[Candidate, ...]:
-    """Matches first, then by response; then a simpler one before one with more parameters that is hardly nearer."""
-    ranked: list[Candidate] = []
-    for candidate in sorted(candidates, key=lambda c: (not c.matches, c.response_error_db)):
-        place = len(ranked)
-        while place and _stands_before(candidate, ranked[place - 1]):
-            place -= 1
-        ranked.insert(place, candidate)
-    return tuple(ranked)
-
-
-def _stands_before(simpler: Candidate, other: Candidate) -> bool:
-    """Whether a candidate with the larger response error goes first all the same, for having fewer parameters."""
-    if len(simpler.prototype.settings) >= len(other.prototype.settings):
-        return False
-    if simpler.matches:
-        return simpler.response_error_db <= max(SIMPLER_DB, SIMPLER_RATIO * other.response_error_db)
+def _first_order(view: View, own: Sequence[Any], q: float | None) -> str:
+    """The only shape of order 1, in its band; as a band-pass or band-stop it has two poles and a Q."""
+    if not view.is_two_sided:
+        return f"first order, {view.band}: f0 = f3dB = {hertz(own[0].w)}"
+    centre, bandwidth = own[0].w, own[1].w
     return (
-        not other.matches
-        and simpler.response_error_db <= SIMPLER_RATIO_WITHOUT_MATCH * other.response_error_db
+        f"second order, {view.band}: f0 = {hertz(centre)}, Q = {q:.4g}, "
+        f"-3.0103 dB bandwidth f0/Q = {hertz(bandwidth)}"
     )
 
 
-def _verdict(candidates: tuple[Candidate, ...], q: float | None) -> str:
-    best = candidates[0]
-    quality = "" if q is None else f"; Q = {q:.4g}"
+def _notes(
+    view: View, poles: tuple[complex, ...], zeros: tuple[complex, ...], found: tuple[Candidate, ...]
+) -> tuple[tuple[str, str], ...]:
+    """Findings besides the families: equal sections, a product of two filters, pole pairs that do not fit."""
+    notes: list[tuple[str, str]] = []
+    matched = bool(found) and found[0].matches
+    if view.is_two_sided and view.misfit_percent > POLES_PERCENT:
+        notes.append(
+            (
+                "transformed low-pass",
+                f"no: pole pairs differ by up to {view.misfit_percent:.2g} % (as low-pass poles, in the mean centre)",
+            )
+        )
+    if view.band == BAND_PASS and not matched:
+        notes += _product_notes(poles, zeros)
+    if not view.is_two_sided and not len(view.zeros):
+        equal = equal_sections([complex(p) * (view.w0 if view.band == LOW_PASS else 1) for p in view.poles])
+        if equal is not None:
+            notes.append(("equal sections", _equal(view, *equal)))
+    return tuple(notes)
+
+
+def _equal(view: View, m: int, few: tuple[complex, ...]) -> str:
+    back = [p if view.band == LOW_PASS else view.w0 / p.conjugate() for p in few]
+    section = _of_poles(back, len(back) if view.band == HIGH_PASS else 0)
+    return f"{m} equal sections, each {section.verdict}"
+
+
+def _product_notes(poles: tuple[complex, ...], zeros: tuple[complex, ...]) -> tuple[tuple[str, str], ...]:
+    origin = sum(1 for z in zeros if not z)
+    parts = halves(poles, origin) if len(zeros) == origin else None
+    if parts is None:
+        return ()
+    high, low = _of_poles(parts[0], len(parts[0])), _of_poles(parts[1], 0)
+    known = all(part.match or part.order == 1 for part in (high, low))
+    if not known or _corner(high) >= _corner(low):
+        return ()
+    said = f"{_with_corner(high)}, times {_with_corner(low)}"
+    return (("a product", said),)
+
+
+def _of_poles(poles: Sequence[complex], at_origin: int) -> Recognition:
+    return _on_numbers(Ratio.of((0,) * at_origin + (1,), _product(poles, "poles")))
+
+
+def _corner(part: Recognition) -> float:
+    return (part.match.prototype.reference("w3dB") if part.match else part.own[0]).w
+
+
+def _with_corner(part: Recognition) -> str:
+    if part.match is None:
+        return part.verdict
+    return f"{part.match.name} (f3dB = {hertz(_corner(part))})"
+
+
+def _verdict(
+    view: View, found: tuple[Candidate, ...], q: float | None, notes: tuple[tuple[str, str], ...]
+) -> str:
+    best = found[0]
+    quality = "" if q is None or view.is_two_sided else f"; Q = {q:.4g}"
+    where = _where(best) if view.is_two_sided else ""
     if not best.matches:
-        return f"none of these; nearest is {best.name}: {best.distance}{quality}"
+        extra = "".join(f"; {label}: {text}" for label, text in notes if label != "equal sections")
+        return f"none of these; nearest is {best.name}: {best.distance}{where}{quality}{extra}"
     if best.exact and best.is_tested:
-        return f"{best.name}, exactly{quality}"
+        also = "".join(f"; exactly {c.name}" for c in found[1:] if c.exact and c.is_tested)
+        return f"{best.name}, exactly{where}{quality}{also}"
     if best.exact:
-        return f"{best.name}{quality}, for which some {best.prototype.settings[0].name} can always be found"
-    also = "".join(f"; exactly {c.name}" for c in candidates[1:] if c.exact and c.is_tested)
-    return f"nearest: {best.name}; {best.distance}{quality}{also}"
+        return f"{best.name}{where}{quality}, for which some {best.prototype.settings[0].name} can always be found"
+    also = "".join(f"; exactly {c.name}" for c in found[1:] if c.exact and c.is_tested)
+    return f"nearest: {best.name}; {best.distance}{where}{quality}{also}"
 
 
-def _quality(h: Ratio) -> float:
-    """Q of the second order: Q^2 = a0 a2/a1^2."""
-    return math.sqrt(h.den[0] * h.den[2] / h.den[1] ** 2)
+def _where(best: Candidate) -> str:
+    p = best.prototype
+    return f"; centre {hertz(p.reference('centre').w)}, -3.0103 dB bandwidth {hertz(p.reference('w3dB_bandwidth').w)}"
 
 
-def _level_at_1(target: Target) -> float:
-    """|H| in dB at 1 rad/s relative to the pass-band gain."""
-    w = 1 / target.w0  # the target is a low-pass divided by its w0; s -> 1/s leaves 1 rad/s where it is
-    return -float(attenuation(np.asarray(w), target.poles, target.zeros))
+def _quality(poles: tuple[complex, ...]) -> float:
+    """Q of a second order: w0/(sum of the pole magnitudes on the real axis)."""
+    return math.sqrt(abs(poles[0] * poles[1])) / -(poles[0] + poles[1]).real
 
 
 def _point(s: complex) -> str:

@@ -6,11 +6,11 @@ import pytest
 
 import symnet as sn
 from symnet.present import writers
+from symnet.present.recognition import recognition_blocks
 from symnet.present.results import (
     conditions_blocks,
     equations_blocks,
     limits_table,
-    recognition_blocks,
     transfer_blocks,
     unit_of,
 )

@@ -29,7 +29,11 @@ def geometric_mean(roots: Sequence[complex] | NDArray[np.complex128]) -> float:
     return float(np.exp(np.mean(np.log(np.abs(np.asarray(roots, dtype=complex))))))
 
 
-def attenuation(w: Floats, poles: Sequence[complex], zeros: Sequence[complex] = ()) -> Floats:
+def attenuation(
+    w: Floats,
+    poles: Sequence[complex] | NDArray[np.complex128],
+    zeros: Sequence[complex] | NDArray[np.complex128] = (),
+) -> Floats:
     """The attenuation in dB relative to DC at the angular frequencies w (any shape); infinite at a zero.
 
     a(w) = 10 log10( prod |1 - jw/p|^2 / prod |1 - jw/z|^2 ), over the poles p and the zeros z.
@@ -40,7 +44,7 @@ def attenuation(w: Floats, poles: Sequence[complex], zeros: Sequence[complex] = 
     return total * _DB_PER_NEPER_SQUARED
 
 
-def _log_of_squares(w: Floats, roots: Sequence[complex]) -> Floats:
+def _log_of_squares(w: Floats, roots: Sequence[complex] | NDArray[np.complex128]) -> Floats:
     r = np.asarray(roots, dtype=complex)
     squares = (r.real**2 + (np.asarray(w)[..., None] - r.imag) ** 2) / (r.real**2 + r.imag**2)
     with np.errstate(divide="ignore"):
@@ -62,7 +66,9 @@ def _delay(w: Floats, roots: Sequence[complex]) -> Floats:
 
 
 def last_crossing(
-    poles: Sequence[complex], zeros: Sequence[complex] = (), level_db: float = HALF_POWER_DB
+    poles: Sequence[complex] | NDArray[np.complex128],
+    zeros: Sequence[complex] | NDArray[np.complex128] = (),
+    level_db: float = HALF_POWER_DB,
 ) -> float | None:
     """The highest angular frequency at which the attenuation relative to DC is ``level_db``; None if there is none.
 
@@ -92,10 +98,14 @@ def last_crossing(
     return w
 
 
-def _slope(w: float, poles: Sequence[complex], zeros: Sequence[complex]) -> float:
+def _slope(
+    w: float,
+    poles: Sequence[complex] | NDArray[np.complex128],
+    zeros: Sequence[complex] | NDArray[np.complex128],
+) -> float:
     """The derivative of the attenuation in dB per rad/s."""
 
-    def part(roots: Sequence[complex]) -> float:
+    def part(roots: Sequence[complex] | NDArray[np.complex128]) -> float:
         r = np.asarray(roots, dtype=complex)
         return float((2 * (w - r.imag) / (r.real**2 + (w - r.imag) ** 2)).sum())
 

@@ -8,6 +8,7 @@ poles are sorted and come in conjugate pairs; every reference belongs to exactly
 
 from __future__ import annotations
 
+import cmath
 import math
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass, field, replace
@@ -22,10 +23,15 @@ from symnet.shape.families.curves import geometric_mean, group_delay, last_cross
 from symnet.typeset.displayed import Displayed
 
 __all__ = [
+    "ALL_PASS",
+    "BAND_PASS",
+    "BAND_STOP",
+    "CENTRE",
     "HIGH_PASS",
     "LOW_PASS",
     "PHASE_EDGE",
     "PHASE_LINE",
+    "PASS_BAND",
     "RIPPLE_EDGE",
     "STOP_EDGE",
     "UNIT_DELAY",
@@ -41,6 +47,9 @@ __all__ = [
 
 LOW_PASS: Final = "low-pass"  # noqa: S105 - a band
 HIGH_PASS: Final = "high-pass"  # noqa: S105
+BAND_PASS: Final = "band-pass"  # noqa: S105
+BAND_STOP: Final = "band-stop"
+ALL_PASS: Final = "all-pass"  # noqa: S105
 
 W0: Final = "w0"
 W3DB: Final = "w3dB"
@@ -50,6 +59,16 @@ STOP_EDGE: Final = "stop_edge"
 PHASE_LINE: Final = "phase_line"
 PHASE_EDGE: Final = "phase_edge"
 UNIT_DELAY: Final = "unit_delay"
+CENTRE: Final = "centre"
+
+#: Where the level of the pass band is counted from.
+PASS_BAND: Final = {
+    LOW_PASS: "DC",
+    HIGH_PASS: "infinite frequency",
+    BAND_PASS: "the centre",
+    BAND_STOP: "DC",
+    ALL_PASS: "every frequency",
+}
 
 _LABELS: Final = {
     W0: "w0, geometric mean of the pole magnitudes",
@@ -233,6 +252,65 @@ class Prototype(Displayed):
         poles, zeros = self.refined(digits)
         return in_order(poles), in_order(zeros)
 
+    def band_pass(self, centre: float, width: float) -> Prototype:
+        """The band-pass that s -> (s/c + c/s) c/b makes: centre c in rad/s; 1 rad/s of this low-pass becomes the width b.
+
+        Each pole q gives the two roots of p^2 - q b p + c^2 = 0, each zero likewise, each zero at infinity one at the
+        origin. Every frequency reference becomes two edges and their difference, the bandwidth, all in rad/s; their
+        geometric mean is c.
+
+        >>> from symnet.shape.families.butterworth import butterworth
+        >>> p = butterworth(2).band_pass(1000.0, 100.0)
+        >>> round(p.reference("w3dB_bandwidth").w, 9), round(p.reference("w3dB_upper").w, 4)
+        (100.0, 1051.2492)
+        >>> round(p.decibels(1000.0), 9), round(p.decibels(p.reference("w3dB_lower").w), 4)
+        (0.0, -3.0103)
+        """
+        return self._between(BAND_PASS, centre, width)
+
+    def band_stop(self, centre: float, width: float) -> Prototype:
+        """The band-stop that s -> b/(s + c^2/s) makes: centre c in rad/s; 1 rad/s of this low-pass becomes the width b.
+
+        The inverse of each pole and zero goes through the same equation as for :meth:`band_pass`; zeros at infinity
+        come to s = +-jc.
+
+        >>> from symnet.shape.families.butterworth import butterworth
+        >>> p = butterworth(1).band_stop(1000.0, 100.0)
+        >>> p.zeros, p.decibels(0.0), round(p.reference("w3dB_bandwidth").w, 9)
+        ((1000j, -1000j), 0.0, 100.0)
+        """
+        return self._between(BAND_STOP, centre, width)
+
+    def _between(self, band: str, centre: float, width: float) -> Prototype:
+        if self.band != LOW_PASS:
+            raise NotationError(f"{self} is not a low-pass, so it does not become a {band}")
+        if not (centre > 0 and width > 0 and math.isfinite(centre) and math.isfinite(width)):
+            raise NotationError(
+                f"a {band} has a positive centre and width in rad/s, not {centre!r} and {width!r}"
+            )
+        stops = band == BAND_STOP
+
+        def split(roots: tuple[complex, ...]) -> Iterable[complex]:
+            for root in roots:
+                yield from _two_roots(width / root if stops else width * root, centre)
+
+        at_infinity = self.order - len(self.zeros)
+        far = (1j * centre, -1j * centre) * at_infinity if stops else (0j,) * at_infinity
+        references = [Reference(CENTRE, centre, "centre, geometric mean of the edges")]
+        for r in self.references:
+            if r.name not in {W0, UNIT_DELAY}:
+                references += _edges(r, centre, width / r.w if stops else width * r.w)
+        return replace(
+            self,
+            poles=in_order(split(self.poles)),
+            zeros=far + in_order(split(self.zeros)),
+            references=tuple(references),
+            equation=f"{self.equation}, transformed to a {band}" if self.equation else "",
+            band=band,
+            exact=None,
+            refined=None,
+        )
+
     @overload
     def __call__(self, s: complex) -> complex: ...
     @overload
@@ -240,6 +318,11 @@ class Prototype(Displayed):
     def __call__(self, s: complex | _Complexes) -> complex | _Complexes:
         """H(s) of this prototype, its largest magnitude in the pass band being 1; s in rad/s, a number or an array."""
         at = np.asarray(s, dtype=complex)
+        if self.band in {BAND_PASS, BAND_STOP}:
+            value = self._relative(at) * (
+                self.gain / abs(self._relative(np.asarray(0j if self.band == BAND_STOP else self._centre)))
+            )
+            return value if value.ndim else complex(value)
         value = np.full(at.shape, self.gain, dtype=complex)
         for k, p in enumerate(self.poles):
             z = self.zeros[k] if k < len(self.zeros) else None
@@ -248,6 +331,18 @@ class Prototype(Displayed):
             else:
                 value *= (1 if z is None else 1 - at / z) / (1 - at / p)
         return value if value.ndim else complex(value)
+
+    @property
+    def _centre(self) -> complex:
+        return 1j * self.reference(CENTRE).w
+
+    def _relative(self, at: _Complexes) -> _Complexes:
+        """The product of (s - z) over that of (s - p), each divided by the centre frequency."""
+        unit = abs(self._centre)
+        value = np.ones(at.shape, dtype=complex)
+        for k, p in enumerate(self.poles):
+            value *= (((at - self.zeros[k]) / unit) if k < len(self.zeros) else 1) / ((at - p) / unit)
+        return value
 
     def decibels(self, w: float) -> float:
         """20 log10 |H(jw)| in dB at the angular frequency w in rad/s, relative to the largest |H| of the pass band."""
@@ -307,12 +402,7 @@ class Prototype(Displayed):
         for z in self.zeros:
             if z.imag >= 0:
                 rows.append(("zero", f"s = {_complex_text(z)} rad/s"))
-        rows.append(
-            (
-                "|H| at DC" if self.band == LOW_PASS else "|H| at infinite frequency",
-                f"{self.gain:.6g} of the peak",
-            )
-        )
+        rows.append((f"|H| at {PASS_BAND[self.band]}", f"{self.gain:.6g} of the peak"))
         return tuple(rows)
 
 
@@ -321,6 +411,26 @@ def _complex_text(z: complex) -> str:
         return f"{z.real:.6g}"
     real = f"{z.real:.6g} " if z.real else ""
     return f"{real}+- j{z.imag:.6g}"
+
+
+def _two_roots(sum_of_both: complex, centre: float) -> tuple[complex, complex]:
+    """The roots of p^2 - sum p + centre^2 = 0, neither of them lost by cancellation."""
+    half = sum_of_both / 2
+    root = cmath.sqrt(half * half - centre * centre)
+    larger = half + root if abs(half + root) >= abs(half - root) else half - root
+    return larger, centre * centre / larger
+
+
+def _edges(r: Reference, centre: float, width: float) -> tuple[Reference, Reference, Reference]:
+    """The two frequencies that the transformation makes of a reference, and their difference."""
+    upper = width / 2 + math.hypot(width / 2, centre)
+    label = r.label.replace(" relative to DC", " relative to the pass band")
+    label = label if "DC" not in label else label.partition(" (")[0]
+    return (
+        Reference(f"{r.name}_bandwidth", width, f"bandwidth, {label}"),
+        Reference(f"{r.name}_lower", centre * centre / upper, f"lower edge, {label}"),
+        Reference(f"{r.name}_upper", upper, f"upper edge, {label}"),
+    )
 
 
 def with_common_references(

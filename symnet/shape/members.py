@@ -1,0 +1,145 @@
+"""The catalogue as arrays: where the members of an order have their poles, and what they do in their pass band.
+
+The matcher goes through every family for every H, so the members of all families of one order, spread over the
+whole range of their parameters, are laid out once as one table. Poles and zeros are divided by the geometric mean of
+the pole magnitudes and ordered by their imaginary part, which lines them up with those of an H that is a little off.
+The curves are sums over roots, so they keep full double precision at any order.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import lru_cache
+from itertools import product
+from typing import Final, TypeAlias
+
+import numpy as np
+from numpy.typing import NDArray
+
+from symnet.shape.families import CATALOGUE
+from symnet.shape.families.curves import HALF_POWER_DB
+from symnet.shape.families.family import Family
+
+__all__ = ["Members", "curves", "families_of", "log_curves", "members", "shape_at", "unit_band"]
+
+Floats: TypeAlias = NDArray[np.float64]
+Complexes: TypeAlias = NDArray[np.complex128]
+
+#: Members along each parameter in the table of starts, for 0, 1 and 2 parameters.
+_POINTS: Final = (1, 33, 9)
+#: Of squared magnitudes given by their natural logarithm.
+_DB: Final = 10 / np.log(10)
+
+
+@dataclass(frozen=True, slots=True)
+class Members:
+    """Members of every family that has this order and this number of finite zeros; M members, one row each."""
+
+    families: tuple[Family, ...]
+    index: NDArray[np.int64]
+    """(M,): which of the families each row belongs to."""
+    places: Floats
+    """(M, k): coordinates between 0 and 1 of the parameters, unused ones 0."""
+    poles: Complexes
+    """(M, n)"""
+    zeros: Complexes
+    """(M, z)"""
+    edges: Floats
+    """(M,): where each is 3.0103 dB down for the last time, to about four digits."""
+    curves: Floats
+    """(M, m): attenuation in dB over the own pass band, at :func:`unit_band` times the edge."""
+
+
+def families_of(order: int, zeros: int) -> tuple[Family, ...]:
+    """The families that have members of that order with that number of finite zeros."""
+    return tuple(f for f in CATALOGUE if f.has_order(order) and f.finite_zeros(order) == zeros)
+
+
+def unit_band(order: int) -> Floats:
+    """Points of a pass band of width 1, enough for every ripple of that order."""
+    return np.linspace(0, 1, max(48, 8 * order) + 1)[1:]
+
+
+def shape_at(family: Family, order: int, place: Floats) -> tuple[Complexes, Complexes]:
+    """Poles and zeros of the member at these coordinates, divided by the geometric mean of the pole magnitudes."""
+    values = tuple(p.at(float(t)) for p, t in zip(family.parameters(order), place, strict=False))
+    poles, zeros = (np.asarray(r, dtype=complex) for r in family.near(order, values))
+    mean = np.exp(np.log(np.abs(poles)).mean())
+    return _lined_up(poles) / mean, _lined_up(zeros) / mean
+
+
+def _lined_up(roots: Complexes) -> Complexes:
+    return roots[np.lexsort((roots.real, roots.imag))]
+
+
+@lru_cache(maxsize=64)
+def members(order: int, zeros: int) -> Members:
+    """The table for that order and that number of finite zeros, remembered."""
+    families = families_of(order, zeros)
+    width = max((len(f.parameters(order)) for f in families), default=0)
+    index, places, poles, finite = [], [], [], []
+    for k, family in enumerate(families):
+        own = len(family.parameters(order))
+        ticks = np.linspace(0, 1, _POINTS[min(own, len(_POINTS) - 1)]).tolist()
+        for place in product(ticks, repeat=own):
+            padded = np.asarray((*place, *[0.0] * (width - own)))
+            p, z = shape_at(family, order, padded)
+            index.append(k)
+            places.append(padded)
+            poles.append(p)
+            finite.append(z)
+    rows = len(index)
+    p, z = (
+        np.asarray(roots, dtype=complex).reshape(rows, size)
+        for roots, size in ((poles, order), (finite, zeros))
+    )
+    edges = _edges(p, z)
+    return Members(
+        families,
+        np.asarray(index, dtype=np.int64),
+        np.asarray(places, dtype=float).reshape(rows, width),
+        p,
+        z,
+        edges,
+        curves(p, z, unit_band(order) * edges[:, None]),
+    )
+
+
+def curves(poles: Complexes, zeros: Complexes, w: Floats) -> Floats:
+    """Attenuation in dB relative to DC, one row for each row of roots: (F, n), (F, z) and w as (F, m) give (F, m)."""
+    total = log_curves(poles, w)
+    if zeros.shape[-1]:
+        total = total - log_curves(zeros, w)
+    level: Floats = total * _DB
+    return level
+
+
+def log_curves(roots: Complexes, w: Floats) -> Floats:
+    """The logarithm of prod |1 - jw/r|^2, one row for each row of roots; products of 32 factors at a time stay in range."""
+    total = np.zeros(w.shape)
+    size = roots.real**2 + roots.imag**2
+    with np.errstate(divide="ignore"):
+        for first in range(0, roots.shape[-1], 32):
+            part = np.ones(w.shape)
+            for k in range(first, min(first + 32, roots.shape[-1])):
+                part *= (roots.real[..., k, None] ** 2 + (w - roots.imag[..., k, None]) ** 2) / size[
+                    ..., k, None
+                ]
+            total += np.log(part)
+    return total
+
+
+def _edges(poles: Complexes, zeros: Complexes) -> Floats:
+    """The last crossing of half power of each row, from a grid and a few steps of halving: good enough for a start."""
+    if not len(poles):
+        return np.zeros(0)
+    grid = np.geomspace(0.02, 20, 241)
+    levels = curves(poles, zeros, np.broadcast_to(grid, (len(poles), len(grid))))
+    last = len(grid) - 1 - np.argmax(levels[:, ::-1] < HALF_POWER_DB, axis=1)
+    low, high = grid[last], grid[np.minimum(last + 1, len(grid) - 1)]
+    for _ in range(8):
+        middle = np.sqrt(low * high)
+        below = curves(poles, zeros, middle[:, None])[:, 0] < HALF_POWER_DB
+        low, high = np.where(below, middle, low), np.where(below, high, middle)
+    edge: Floats = np.sqrt(low * high)
+    return edge

@@ -1,0 +1,103 @@
+"""Candidates in their order: those that match first, then by response, the simpler one where that decides nothing.
+
+A family with fewer fitted parameters stands before one with more that is hardly nearer, because a free parameter
+always makes something of the errors: Butterworth is the Chebyshev of zero ripple. A family whose parameter ran to
+the end of its range, and which is there another family of the catalogue, is not listed twice.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import replace
+from fractions import Fraction
+
+from symnet.shape.families.family import Family
+from symnet.shape.families.prototype import ALL_PASS, HIGH_PASS, LOW_PASS
+from symnet.shape.matching import Fit, fits
+from symnet.shape.pairing import distance_of_roots
+from symnet.shape.thresholds import (
+    EXACT_PERCENT,
+    SAME_SHAPE_PERCENT,
+    SIMPLER_DB,
+    SIMPLER_RATIO,
+    SIMPLER_RATIO_WITHOUT_MATCH,
+)
+from symnet.shape.undoing import View
+from symnet.shape.verdict import Candidate
+
+__all__ = ["candidates", "ranked"]
+
+
+def candidates(view: View, ascending: Sequence[Fraction] = ()) -> tuple[Candidate, ...]:
+    """Every family fitted to this view of H, ranked. ``ascending`` is the exact denominator of H, for exact equations."""
+    found = [_candidate(f) for f in fits(view)]
+    if not any(c.matches for c in found):
+        by_poles = {f.family: _candidate(f) for f in fits(view, by_poles=True)}
+        found = [p if (p := by_poles.get(c.family)) is not None and p.matches else c for c in found]
+    found = [c for c in found if not _is_another(c, found)]
+    return ranked([_with_exactness(c, view, ascending) for c in found])
+
+
+def _candidate(fit: Fit) -> Candidate:
+    return Candidate(
+        fit.family,
+        fit.prototype,
+        fit.uncertainties,
+        fit.response_error_db,
+        fit.delay_error_percent,
+        fit.pole_error_percent,
+        fit.zero_error_percent,
+    )
+
+
+def _is_another(candidate: Candidate, found: Sequence[Candidate]) -> bool:
+    """Whether a fitted parameter came to the end of its range, where the family is another one with fewer."""
+    if not candidate.is_at_the_end:
+        return False
+    poles = candidate.prototype.poles
+    return any(
+        len(other.prototype.settings) < len(candidate.prototype.settings)
+        and 100 * distance_of_roots(poles, other.prototype.poles) <= SAME_SHAPE_PERCENT
+        for other in found
+    )
+
+
+def _with_exactness(candidate: Candidate, view: View, ascending: Sequence[Fraction]) -> Candidate:
+    if max(candidate.pole_error_percent, candidate.zero_error_percent, view.misfit_percent) > EXACT_PERCENT:
+        return candidate
+    if not candidate.is_tested:
+        return replace(candidate, exact="as any shape of that order and Q is")
+    if view.band in {LOW_PASS, HIGH_PASS} and not len(view.zeros) and ascending:
+        low_pass = ascending if view.band == LOW_PASS else ascending[::-1]
+        if _is_exact(candidate.family, low_pass):
+            return replace(candidate, exact="in exact arithmetic")
+    what = "poles and zeros" if len(view.zeros) else "poles"
+    return replace(candidate, exact=f"{what} within 1e-9")
+
+
+def _is_exact(family: Family, ascending: Sequence[Fraction]) -> bool:
+    """Whether the coefficients satisfy the equations of the family in exact arithmetic."""
+    conditions = family.conditions(ascending)
+    return conditions is not None and not any(conditions) and all(p > 0 for p in family.positives(ascending))
+
+
+def ranked(found: Sequence[Candidate]) -> tuple[Candidate, ...]:
+    """Matches first, then by response; then a simpler one before one with more parameters that is hardly nearer."""
+    order: list[Candidate] = []
+    for candidate in sorted(found, key=lambda c: (not c.matches, c.response)):
+        place = len(order)
+        while place and _stands_before(candidate, order[place - 1]):
+            place -= 1
+        order.insert(place, candidate)
+    return tuple(order)
+
+
+def _stands_before(simpler: Candidate, other: Candidate) -> bool:
+    """Whether a candidate with the larger response error goes first all the same, for having fewer parameters."""
+    if len(simpler.prototype.settings) >= len(other.prototype.settings):
+        return False
+    if simpler.matches:
+        # of an all-pass the response is the delay in per cent, which parts of 1 % change by about as many per cent
+        least = SIMPLER_DB * (20 if simpler.prototype.band == ALL_PASS else 1)
+        return simpler.response <= max(least, SIMPLER_RATIO * other.response)
+    return not other.matches and simpler.response <= SIMPLER_RATIO_WITHOUT_MATCH * other.response

@@ -1,0 +1,63 @@
+"""Every threshold of the verdict, with what it was measured on.
+
+They decide the word only. The figures behind it are always shown, so that nobody has to believe in them. How often
+each of them is right is counted by ``tests/shape/confusion.py``, whose tables stand in DEVELOPERS.md.
+"""
+
+from __future__ import annotations
+
+from typing import Final
+
+__all__ = [
+    "DELAY_PERCENT",
+    "EXACT_PERCENT",
+    "NORMALISED_WITHIN",
+    "POLES_ALONE_PERCENT",
+    "POLES_PERCENT",
+    "POLES_RESPONSE_DB",
+    "RESPONSE_DB",
+    "SIMPLER_DB",
+    "SIMPLER_RATIO",
+    "SIMPLER_RATIO_WITHOUT_MATCH",
+    "TIE_RATIO",
+    "ZEROS_PERCENT",
+]
+
+#: "Exactly", where exact arithmetic does not decide: poles and zeros within this, far above the rounding of doubles and
+#: far below any printed digits.
+EXACT_PERCENT: Final = 1e-7
+
+#: A match by response needs both of these. Measured: parts rounded to four digits stay within 0.0004 dB and 0.04 %
+#: for published ladders up to order 10; parts of 1 % (60 random draws of Butterworth, Bessel and Chebyshev ladders
+#: of order 3, 5 and 7) within 0.041 dB and 2.1 %.
+RESPONSE_DB: Final = 0.1
+DELAY_PERCENT: Final = 3.0
+
+#: A match by poles, for a network whose parts are a few per cent off: the pole error, and not more than this in the
+#: response. With a free ripple the poles of a stranger can come near by accident: those of the Gaussian-to-6-dB set of
+#: order 8 lie within 4.6 % of a Chebyshev filter's, 2.6 dB apart in response; the next nearest is at 7.7 %.
+POLES_PERCENT: Final = 5.0
+POLES_RESPONSE_DB: Final = 0.5
+#: A match by poles alone, far below those accidents. Poles of high Q moved by 1 % change the response by some dB.
+POLES_ALONE_PERCENT: Final = 2.0
+
+#: Finite zeros hardly change the pass band and decide the stop band, so they are asked for in every match.
+ZEROS_PERCENT: Final = 5.0
+
+#: A match with fewer fitted parameters stands first when its response error is below the first of these, which is
+#: what 1 % parts do to it, or below that of the other times the second: with 5 % parts the fit of a ripple halves
+#: the response error of a Butterworth ladder in every second draw without meaning anything.
+SIMPLER_DB: Final = 0.05
+SIMPLER_RATIO: Final = 10.0
+#: Where nothing matches, a nearest one with more parameters must at least halve the error of the simpler one.
+SIMPLER_RATIO_WITHOUT_MATCH: Final = 2.0
+
+#: Two matches with equally many parameters whose response errors differ by less than this factor are called a tie.
+TIE_RATIO: Final = 1.5
+
+#: A fitted parameter at the end of its range whose poles are this near to those of a family with fewer parameters is
+#: that family, and is said once.
+SAME_SHAPE_PERCENT: Final = 1.5
+
+#: A reference that lies this near to 1 rad/s is what the coefficients are normalised to (tables print 5 digits).
+NORMALISED_WITHIN: Final = 1e-4
