@@ -29,9 +29,9 @@ __all__ = [
     "CENTRE",
     "HIGH_PASS",
     "LOW_PASS",
+    "PASS_BAND",
     "PHASE_EDGE",
     "PHASE_LINE",
-    "PASS_BAND",
     "RIPPLE_EDGE",
     "STOP_EDGE",
     "UNIT_DELAY",
@@ -298,7 +298,7 @@ class Prototype(Displayed):
         far = (1j * centre, -1j * centre) * at_infinity if stops else (0j,) * at_infinity
         references = [Reference(CENTRE, centre, "centre, geometric mean of the edges")]
         for r in self.references:
-            if r.name not in {W0, UNIT_DELAY}:
+            if r.name not in {W0, UNIT_DELAY, PHASE_LINE}:
                 references += _edges(r, centre, width / r.w if stops else width * r.w)
         return replace(
             self,
