@@ -38,6 +38,7 @@ if TYPE_CHECKING:
     from symnet.exact.transfer import Transfer
     from symnet.present.brief import brief
     from symnet.response.frequency import group_delay, phase
+    from symnet.review.verify import verify
     from symnet.shape.difference import compare
     from symnet.shape.dominant import dominant
     from symnet.shape.families.bessel import bessel
@@ -89,6 +90,7 @@ __all__ = [
     "scale",
     "sections",
     "split_poles",
+    "verify",
 ]
 
 #: module -> the public names that it defines
@@ -103,6 +105,7 @@ _WHERE = {
     "symnet.exact.transfer": "Transfer",
     "symnet.present.brief": "brief",
     "symnet.response.frequency": "group_delay phase",
+    "symnet.review.verify": "verify",
     "symnet.shape.difference": "compare",
     "symnet.shape.dominant": "dominant",
     "symnet.shape.families.bessel": "bessel",

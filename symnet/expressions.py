@@ -22,7 +22,9 @@ __all__ = [
     "Parallel",
     "Power",
     "Product",
+    "Root",
     "Sum",
+    "children",
     "dimension_of",
     "evaluate",
     "names_in",
@@ -85,7 +87,15 @@ class Parallel:
     span: Span | None = _span()
 
 
-Expression: TypeAlias = Number | Name | Sum | Product | Power | Parallel
+@dataclass(frozen=True, slots=True)
+class Root:
+    """``sqrt(base)``, the positive square root; in hand derivations only."""
+
+    base: Expression
+    span: Span | None = _span()
+
+
+Expression: TypeAlias = Number | Name | Sum | Product | Power | Parallel | Root
 
 
 def negative(expression: Expression) -> Expression:
@@ -105,7 +115,7 @@ def children(expression: Expression) -> tuple[Expression, ...]:
             return tuple(term for _, term in terms)
         case Product(factors=factors):
             return tuple(factor for _, factor in factors)
-        case Power(base=base):
+        case Power(base=base) | Root(base=base):
             return (base,)
         case Parallel(branches=branches):
             return branches
@@ -134,6 +144,8 @@ def substitute(expression: Expression, replace: Callable[[Name], Expression]) ->
             return Product(tuple((power, substitute(factor, replace)) for power, factor in factors), span)
         case Power(base, exponent, span):
             return Power(substitute(base, replace), exponent, span)
+        case Root(base, span):
+            return Root(substitute(base, replace), span)
         case Parallel(branches, span):
             return Parallel(tuple(substitute(branch, replace) for branch in branches), span)
         case _:
@@ -143,7 +155,8 @@ def substitute(expression: Expression, replace: Callable[[Name], Expression]) ->
 def evaluate(expression: Expression, value_of: Callable[[Name], Any], number: Callable[[Number], Any]) -> Any:
     """The value of the expression in whatever arithmetic ``value_of`` and ``number`` bring.
 
-    The arithmetic needs ``+ - * /`` and integer powers. ZeroDivisionError is passed on as it comes.
+    The arithmetic needs ``+ - * /`` and integer powers, and ``root()`` where square roots are written.
+    ZeroDivisionError is passed on as it comes.
     """
     match expression:
         case Number():
@@ -168,6 +181,8 @@ def evaluate(expression: Expression, value_of: Callable[[Name], Any], number: Ca
             return total
         case Power(base, exponent):
             return evaluate(base, value_of, number) ** exponent
+        case Root(base):
+            return evaluate(base, value_of, number).root()
         case Parallel(branches):
             values = [evaluate(branch, value_of, number) for branch in branches]
             total = values[0]
@@ -200,6 +215,16 @@ def dimension_of(expression: Expression, known: Mapping[str, Dimension]) -> Dime
         case Power(base=base, exponent=exponent):
             of_base = dimension_of(base, known)
             return None if of_base is None else of_base**exponent
+        case Root(base=base):
+            of_base = dimension_of(base, known)
+            if of_base is None:
+                return None
+            half = Dimension(of_base.v // 2, of_base.a // 2, of_base.t // 2)
+            if half * half != of_base:
+                raise DimensionError(
+                    Fault(f"the square root of {in_words(of_base)} has no unit", span=base.span)
+                )
+            return half
         case Sum():
             return _common([term for _, term in expression.terms], known, "added to")
         case Parallel(branches=branches):

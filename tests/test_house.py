@@ -72,6 +72,7 @@ WORDS = {
     "scale",
     "sections",
     "split_poles",
+    "verify",
 }
 
 

@@ -7,19 +7,18 @@ gets a sentence about the node that was left out instead of a syntax error.
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from fractions import Fraction
 from typing import TYPE_CHECKING, Any
 
 from symnet.circuit.drafts import Draft, RightSide
-from symnet.circuit.formulas import Formed, Formulas
+from symnet.circuit.formulas import Formulas
 from symnet.circuit.lines import Line
 from symnet.circuit.meanings import RESERVED, is_part_name
 from symnet.circuit.parts import CLASS_LETTERS, class_letter
 from symnet.circuit.series import Beside, Group, Leaf, Series, leaves, wire
 from symnet.circuit.words import node_fault, plain_fault
 from symnet.errors import Span, SymnetError
-from symnet.expressions import Number
 from symnet.quantities import read_number
 
 if TYPE_CHECKING:
@@ -177,16 +176,6 @@ class Chains(Formulas):
     def on_value(self, children: Sequence[Any]) -> RightSide:
         """An expression with or without tolerance."""
         return RightSide(self.whole(children[0]), children[1])
-
-    def whole(self, formed: Formed) -> Formed:
-        """The expression as a whole right-hand side: one without names becomes a number."""
-        if formed.worth is not None:
-            number = Number(formed.worth.value, formed.worth.dimension, formed.span)
-            return replace(formed, expression=number)
-        if formed.seconds is not None:
-            hint = "a product is written 2*s; seconds can be written as 1000 ms"
-            self.fault("s is the Laplace variable and no unit inside an expression", hint, formed.seconds)
-        return formed
 
     def on_assignment(self, children: Sequence[Any]) -> None:
         """R1, R2 = 4.7 kohm ±1 %."""

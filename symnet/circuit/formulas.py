@@ -293,6 +293,16 @@ class Formulas:
             return 1, span
         return (-int(token) if minus else int(token)), span
 
+    def whole(self, formed: Formed) -> Formed:
+        """The expression as a whole right-hand side: one without names becomes a number."""
+        if formed.worth is not None:
+            number = Number(formed.worth.value, formed.worth.dimension, formed.span)
+            return replace(formed, expression=number)
+        if formed.seconds is not None:
+            hint = "a product is written 2*s; seconds can be written as 1000 ms"
+            self.fault("s is the Laplace variable and no unit inside an expression", hint, formed.seconds)
+        return formed
+
     # -- shared -----------------------------------------------------------------------------------------------------
 
     def _combined(

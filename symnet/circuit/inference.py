@@ -17,7 +17,7 @@ from symnet.circuit.meanings import Meanings, Use
 from symnet.circuit.parts import dimension_of_class
 from symnet.circuit.spelling import write_expression
 from symnet.errors import Fault, Span
-from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Sum, names_in
+from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Root, Sum, names_in
 from symnet.quantities import AMPERE, NUMBER, VOLT, Dimension, engineering, in_words
 
 __all__ = ["MOST_UNKNOWN", "Inference"]
@@ -118,6 +118,9 @@ class Inference:
             case Power(base=base, exponent=exponent):
                 form = self._of(base)
                 return None if form is None else _Form().plus(form, exponent)
+            case Root(base=base):
+                form = self._of(base)
+                return None if form is None else _Form().plus(form, Fraction(1, 2))
             case Sum(terms=terms):
                 return self._common([term for _, term in terms], "added")
             case Parallel(branches=branches):

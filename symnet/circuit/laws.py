@@ -11,7 +11,18 @@ from typing import Final
 
 from symnet.circuit.meanings import Meanings, Use
 from symnet.errors import Fault
-from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Sum, children, names_in
+from symnet.expressions import (
+    Expression,
+    Name,
+    Number,
+    Parallel,
+    Power,
+    Product,
+    Root,
+    Sum,
+    children,
+    names_in,
+)
 from symnet.quantities import NUMBER
 
 __all__ = ["law_faults"]
@@ -52,6 +63,8 @@ class _Walk:
                 if inner is _Class.SIGNAL and exponent != 1:
                     self._fault("a power of a voltage or current is not linear", "", expression)
                 return inner
+            case Root(base=base):
+                return _Class.UNKNOWN if self.classify(base) is _Class.UNKNOWN else _Class.CONSTANT
             case Parallel(branches=branches):
                 kinds = [self.classify(branch) for branch in branches]
                 if _Class.SIGNAL in kinds:

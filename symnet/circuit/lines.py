@@ -76,13 +76,11 @@ class Line:
         return Span(self.start + start, self.start + end)
 
 
-def check_length(text: str) -> None:
+def check_length(text: str, hint: str = "is it a network?") -> None:
     """Raise LimitError for a text that is longer than symnet reads."""
     if len(text) > MOST_CHARACTERS:
         raise LimitError(
-            Fault(
-                f"the text has {len(text)} characters; at most {MOST_CHARACTERS} are read", "is it a network?"
-            )
+            Fault(f"the text has {len(text)} characters; at most {MOST_CHARACTERS} are read", hint)
         )
 
 
@@ -92,13 +90,13 @@ def single_line(text: str) -> Line:
     return Line(_dashes(_COMMENT.sub(_blank, text.translate(_PASTED)).replace("\n", " "), formula=True))
 
 
-def logical_lines(text: str) -> tuple[list[Line], list[tuple[Line, Fault]]]:
+def logical_lines(text: str, hint: str = "is it a network?") -> tuple[list[Line], list[tuple[Line, Fault]]]:
     r"""The statements of a text, and those that no parser need see, each with its fault.
 
     >>> [line.text for line in logical_lines("a -- R1 -- b  # first\nZ1 = (R +\n 2 ohm); drive a")[0]]
     ['a -- R1 -- b', 'Z1 = (R +  2 ohm)', 'drive a']
     """
-    check_length(text)
+    check_length(text, hint)
     text = _COMMENT.sub(_blank, text.translate(_PASTED))
     closed = _closed(text)
     lines: list[Line] = []

@@ -9,7 +9,7 @@ this module.
 from __future__ import annotations
 
 from collections.abc import Callable
-from typing import TYPE_CHECKING, Final, NamedTuple
+from typing import TYPE_CHECKING, Final, NamedTuple, TypeAlias
 
 from symnet.circuit.clues import Clue, clue_at
 from symnet.circuit.lines import SENTENCE_WORDS, Line
@@ -19,7 +19,7 @@ from symnet.quantities import read_unit
 if TYPE_CHECKING:
     from lark.exceptions import UnexpectedInput
 
-__all__ = ["DIAGNOSES", "RESERVED_LATER", "Said", "diagnose"]
+__all__ = ["DIAGNOSES", "RESERVED_LATER", "Diagnoses", "Said", "diagnose"]
 
 #: Words kept for statements of later releases, with what to do until then.
 RESERVED_LATER: Final = {
@@ -40,10 +40,12 @@ _USAGE: Final = {
     "done": "done ends a section and stands alone",
 }
 
-_GIVEN_VALUE: Final = {"assignment", "hold", "push", "read", "value", "expression", "device"}
+_GIVEN_VALUE: Final = {"assignment", "hold", "push", "read", "value", "expression", "device", "line"}
 
 
-def diagnose(error: UnexpectedInput, line: Line, start: str = "statement") -> Fault:
+def diagnose(
+    error: UnexpectedInput, line: Line, start: str = "statement", diagnoses: Diagnoses | None = None
+) -> Fault:
     """The fault that a person can act on, for the place where the parser stopped."""
     from lark.exceptions import UnexpectedToken
 
@@ -51,7 +53,7 @@ def diagnose(error: UnexpectedInput, line: Line, start: str = "statement") -> Fa
     if isinstance(error, UnexpectedToken):
         at = len(line.text) if error.token.type == "$END" else error.token.start_pos or 0
     clue = clue_at(line.text, at, start)
-    said = next((said for recognise in DIAGNOSES if (said := recognise(clue))), None)
+    said = next((said for recognise in diagnoses or DIAGNOSES if (said := recognise(clue))), None)
     if said is None:
         said = Said(f"{clue.found.text if clue.found else 'the end of the line'} is not expected here")
     at_word = clue.near(said.step)
@@ -70,6 +72,9 @@ class Said(NamedTuple):
     hint: str = ""
     step: int = 0
 
+
+#: Entries of the table, in the order in which they are asked.
+Diagnoses: TypeAlias = "tuple[Callable[[Clue], Said | None], ...]"
 
 _CHAIN: Final = frozenset({"--", "\N{EM DASH}"})
 _OPERATORS: Final = frozenset(
@@ -313,7 +318,7 @@ def _side_by_side(clue: Clue) -> Said | None:
 
 
 def _behind_equals(clue: Clue) -> bool:
-    if clue.kind in {"value", "expression", "device"}:
+    if clue.kind in {"value", "expression", "device", "line"}:
         return True
     return clue.kind == "read" or any(word.text == "=" for word in clue.words[: clue.index])
 
@@ -374,7 +379,7 @@ def _usage(clue: Clue) -> Said | None:
 
 
 #: In order: the first that recognises the slip speaks.
-DIAGNOSES: Final[tuple[Callable[[Clue], Said | None], ...]] = (
+DIAGNOSES: Final[Diagnoses] = (
     _reserved,
     _call,
     _comma,

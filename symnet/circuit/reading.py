@@ -31,24 +31,41 @@ from symnet.quantities import LEADING_CODE, TWO_PI, Dimension, spread_code
 if TYPE_CHECKING:
     from lark import Token, Tree
 
-__all__ = ["parse", "read_drawing", "read_expression", "read_reading", "read_sections", "read_value"]
+    from symnet.circuit.messages import Diagnoses
+
+__all__ = [
+    "must_be_text",
+    "parse",
+    "raise_all",
+    "read_drawing",
+    "read_expression",
+    "read_reading",
+    "read_sections",
+    "read_value",
+]
 
 _T = TypeVar("_T")
 _STARTS: Final = ("statement", "value", "expression")
 _MOST_FAULTS: Final = 100
 
 
-def parse(line: Line, start: str, grammar: str = "network", starts: tuple[str, ...] = _STARTS) -> Tree[Token]:
+def parse(
+    line: Line,
+    start: str,
+    grammar: str = "network",
+    starts: tuple[str, ...] = _STARTS,
+    diagnoses: Diagnoses | None = None,
+) -> Tree[Token]:
     """The tree of one line; NotationError with one fault, in an engineer's words, when it has none."""
     from lark.exceptions import UnexpectedInput
 
-    from symnet.circuit.messages import diagnose
+    from symnet.circuit.messages import DIAGNOSES, diagnose
     from symnet.grammar_files import parser
 
     try:
         return parser(grammar, *starts).parse(line.text, start=start)
     except UnexpectedInput as error:
-        raise NotationError(diagnose(error, line, start)) from None
+        raise NotationError(diagnose(error, line, start, diagnoses or DIAGNOSES)) from None
 
 
 def read_drawing(text: str) -> Drawing:
@@ -60,7 +77,7 @@ def read_drawing(text: str) -> Drawing:
     >>> read_drawing("in -- R1 -- out -- C1 = 22 nF -- gnd; drive in; read out").nodes
     ('in', 'out')
     """
-    _must_be_text(text)
+    must_be_text(text)
     lines, broken = logical_lines(text)
     main, definitions = _gathered(lines, broken)
     known = Definitions(definitions, _shipped)
@@ -71,7 +88,7 @@ def read_drawing(text: str) -> Drawing:
     if len(faults) <= _MOST_FAULTS:
         places = {name: span for name, *_, span in (*main.draft.free, *main.draft.values)}
         faults += check(net, known.doubtful, places)
-    _raise(faults, text)
+    raise_all(faults, text)
     return net
 
 
@@ -81,7 +98,7 @@ def read_sections(text: str, origin: str = "") -> dict[str, Section]:
     main, definitions = _gathered(lines, broken)
     known = Definitions(definitions, _shipped)
     made = known.make_all()
-    _raise(main.faults + known.faults, text)
+    raise_all(main.faults + known.faults, text)
     return {name: replace(section, origin=origin) for name, section in made.items()}
 
 
@@ -154,11 +171,11 @@ def _read_line(line: Line) -> tuple[Draft, list[Fault]]:
     return own, statements.faults
 
 
-def _raise(faults: Iterable[Fault], text: str) -> None:
+def raise_all(faults: Iterable[Fault], text: str, hint: str = "is it a network?") -> None:
     """Raise NotationError with these faults in the order of writing, unless there is none."""
     found = sorted(dict.fromkeys(faults), key=_place)
     if len(found) > _MOST_FAULTS:
-        found[_MOST_FAULTS:] = [Fault(f"reading stopped after {_MOST_FAULTS} faults", "is it a network?")]
+        found[_MOST_FAULTS:] = [Fault(f"reading stopped after {_MOST_FAULTS} faults", hint)]
     if found:
         raise NotationError(found, text=text)
 
@@ -210,7 +227,7 @@ def read_value(text: str, name: str, dimension: Dimension | None = None) -> Valu
     def made(_: Statements, side: Any) -> Value:
         return value_of(name, side, dimension)
 
-    _must_be_text(text)
+    must_be_text(text)
     code = re.match(r"\w+(?=\s*(?:$|±|\+\s*/?\s*-\s*\d))", text.strip())
     if code is None or not LEADING_CODE.fullmatch(code[0]):
         return _alone(text, "value", made, TWO_PI if "." in name else None)
@@ -223,7 +240,7 @@ def read_value(text: str, name: str, dimension: Dimension | None = None) -> Valu
 def _alone(
     text: str, start: str, made: Callable[[Statements, Any], _T], in_hertz: Fraction | None = None
 ) -> _T:
-    _must_be_text(text)
+    must_be_text(text)
     line = single_line(text)
     reader = Statements(line, Draft())
     reader.in_hertz = in_hertz
@@ -239,7 +256,7 @@ def _alone(
     return result
 
 
-def _must_be_text(text: object) -> None:
+def must_be_text(text: object, hint: str = "write it as in symnet.network('in -- R1 -- out')") -> None:
+    """Refuse what is no text, with an example of what is."""
     if not isinstance(text, str):
-        hint = "write it as in symnet.network('in -- R1 -- out')"
         raise NotationError(Fault(f"a text is needed, not {type(text).__name__}", hint))

@@ -26,6 +26,7 @@ from symnet.expressions import (
     Parallel,
     Power,
     Product,
+    Root,
     Sum,
 )
 
@@ -164,6 +165,8 @@ class _Place:
                 return Power(self.expression(base), exponent, span)
             case Parallel(branches, span):
                 return Parallel(tuple(self.expression(branch) for branch in branches), span)
+            case Root(base, span):
+                return Root(self.expression(base), span)
             case Number():
                 return expression
 

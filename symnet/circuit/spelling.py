@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from fractions import Fraction
 
-from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Sum
+from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Root, Sum
 from symnet.quantities import HERTZ, NUMBER, WRITTEN_UNITS, Dimension, engineering
 
 __all__ = ["write_dimension", "write_expression", "write_quantity"]
@@ -43,6 +43,8 @@ def _written(expression: Expression) -> tuple[str, int]:
             return " || ".join(_inside(branch, _POWER) for branch in branches), _PARALLEL
         case Power(base=base, exponent=exponent):
             return f"{_inside(base, _ATOM)}^{exponent}", _POWER
+        case Root(base=base):
+            return f"sqrt({_written(base)[0]})", _ATOM
 
 
 def _factor(power: int, factor: Expression) -> str:

@@ -31,7 +31,7 @@ if TYPE_CHECKING:
     from symnet.exact.quotient import Quotient
     from symnet.expressions import Expression
 
-__all__ = ["Confirmation", "UnconfirmedError", "confirm", "undetermined"]
+__all__ = ["Confirmation", "UnconfirmedError", "confirm", "random_point", "solve_at", "undetermined"]
 
 _POINTS: Final = 2
 _MOST_TRIES: Final = 20
@@ -81,8 +81,8 @@ def confirm(
     place = network.drives.index(drive)
     done = 0
     for trial in range(_MOST_TRIES):
-        point = _point(naming, trial)
-        solved = _solved(network, naming, place, trial)
+        point = random_point(naming, trial)
+        solved = solve_at(network, naming, place, trial)
         if solved is None:
             continue
         system, solution = solved
@@ -150,17 +150,17 @@ def _at(network: Network, naming: Naming, point: list[int]) -> Stamped:
     return stamp(network, Arithmetic(number, name))
 
 
-def _point(naming: Naming, trial: int) -> list[int]:
+def random_point(naming: Naming, trial: int) -> list[int]:
     """A random value of s and of every name; the same for every H of a network, so that solutions are shared."""
     random = Random("|".join(("symnet", str(trial), *naming.generators.names)))
     return [random.randrange(1, PRIME) for _ in naming.generators.names]
 
 
 @lru_cache(maxsize=32)
-def _solved(network: Network, naming: Naming, drive: int, trial: int) -> tuple[Stamped, list[int]] | None:
-    """The equations and their solution for one drive, by Gaussian elimination; None where they are singular."""
+def solve_at(network: Network, naming: Naming, drive: int, trial: int) -> tuple[Stamped, list[int]] | None:
+    """The equations and their solution for one drive of value 1 at that random point; None where they are singular."""
     try:
-        system = _at(network, naming, _point(naming, trial))
+        system = _at(network, naming, random_point(naming, trial))
     except ZeroDivisionError:
         return None
     size = len(system.unknowns)

@@ -21,7 +21,7 @@ from symnet.exact.trees import Piece, build
 from symnet.expressions import Expression, Name, dimension_of, names_in
 from symnet.quantities import AMPERE, VOLT, Dimension
 
-__all__ = ["derive", "derive_all", "derive_from"]
+__all__ = ["derive", "derive_all", "derive_from", "quotient_of"]
 
 
 def derive(
@@ -118,17 +118,7 @@ def derive_from(
         for name in kept:
             if name not in known:
                 raise network.unknown(name, known, "part or symbol")
-    pieces, denominator = _prepared(network, kept, named_currents(network, read))
-    factor, terms = pieces.form(read, "the read")
-    border = [(Piece(pieces.size, None, plus, minus), weight) for weight, plus, minus in terms]
-    border.append((Piece(*pieces.drive_rows(drive), pieces.size, None), negated(ONE)))
-    numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _ in border)))
-    takes = (*pieces.take, *(take for _, take in border))
-    leaves = (*pieces.leave, *(ONE for _ in border))
-    quotient = Quotient(
-        Determinant(pieces.naming.generators, numerator, takes, leaves),
-        denominator if factor == ONE else replace(denominator, factor=factor),
-    )
+    pieces, quotient = quotient_of(network, drive, read, kept)
     return Transfer(
         network,
         drive,
@@ -138,6 +128,26 @@ def derive_from(
         pieces.naming,
         quotient,
         confirm(network, pieces.naming, drive, read, quotient),
+    )
+
+
+def quotient_of(
+    network: Network, drive: Drive, read: Expression, symbols: frozenset[str] | None = None
+) -> tuple[Pieces, Quotient]:
+    """The two determinants of H, and the pieces they are made of, not confirmed and not in lowest terms.
+
+    Reads without currents of branches share their denominator, which is the same object.
+    """
+    pieces, denominator = _prepared(network, symbols, named_currents(network, read))
+    factor, terms = pieces.form(read, "the read")
+    border = [(Piece(pieces.size, None, plus, minus), weight) for weight, plus, minus in terms]
+    border.append((Piece(*pieces.drive_rows(drive), pieces.size, None), negated(ONE)))
+    numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _ in border)))
+    takes = (*pieces.take, *(take for _, take in border))
+    leaves = (*pieces.leave, *(ONE for _ in border))
+    return pieces, Quotient(
+        Determinant(pieces.naming.generators, numerator, takes, leaves),
+        denominator if factor == ONE else replace(denominator, factor=factor),
     )
 
 

@@ -207,6 +207,10 @@ class Naming:
         """The same as the terms of its numerator and of its denominator."""
         return self._worth[name]
 
+    def knows(self, name: str) -> bool:
+        """Whether a name stands for something that the parts, laws or reads hang on."""
+        return name in self._worth
+
     def words(self, expression: Expression) -> Words:
         """The field of the names that occur in an expression."""
         return Words(self.generators, self._worth, {name.name for name in names_in(expression)})

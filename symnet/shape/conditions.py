@@ -33,7 +33,7 @@ if TYPE_CHECKING:
 
     from symnet.exact.transfer import Transfer
 
-__all__ = ["Alternative", "Condition", "Conditions", "Formula", "conditions", "conditions_of"]
+__all__ = ["Alternative", "Condition", "Conditions", "Formula", "alternative", "conditions", "conditions_of"]
 
 #: Terms of one product of two coefficients; beyond it the conditions would be pages long.
 _MOST_TERMS: Final = 3000
@@ -220,7 +220,7 @@ def _judged(
         return Condition(name, "if", (by_root,), formulas=formulas)
     if not wanted:
         return Condition(name, "if", (Alternative((), relations),), formulas=formulas)
-    ways = [_alternative(branch, undecided) for branch in solve(wanted)]
+    ways = [alternative(branch, undecided) for branch in solve(wanted)]
     alternatives = tuple(way for way in ways if way is not None)
     if not alternatives:
         return Condition(name, "never", reason="no positive parts fulfil all it needs")
@@ -283,7 +283,7 @@ def _relation(p: PolyElement, sign: str) -> Relation:
     return readable(left), sign, readable(right) if right else number(0)
 
 
-def _alternative(branch: Branch, positives: Sequence[PolyElement]) -> Alternative | None:
+def alternative(branch: Branch, positives: Sequence[PolyElement]) -> Alternative | None:
     """The branch with what must be positive besides, in the symbols that stay free; None if that cannot be."""
     values = [(_name(s), readable_ratio(s.numerator, s.denominator)) for s in branch.solved]
     relations = []

@@ -5,7 +5,7 @@ Order and shape stay as typed; only ``a*b/c`` becomes one fraction when nothing 
 
 from __future__ import annotations
 
-from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Sum
+from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Root, Sum
 from symnet.quantities import NUMBER, engineering
 from symnet.typeset import tree as shown
 
@@ -32,6 +32,8 @@ def tree_of(expression: Expression) -> shown.Tree:
                 return shown.Sum(tuple((sign, convert(term)) for sign, term in terms))
             case Power(base=base, exponent=exponent):
                 return shown.Power(convert(base), exponent)
+            case Root(base=base):
+                return shown.Root(convert(base))
             case Parallel(branches=branches):
                 return shown.Parallel(tuple(convert(branch) for branch in branches))
             case Product(factors=factors):

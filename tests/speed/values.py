@@ -35,7 +35,7 @@ def ladder(sections: int, values: str = "") -> sn.Network:
 def forget() -> None:
     """Nothing is answered from a cache."""
     derive._prepared.cache_clear()
-    confirm._solved.cache_clear()
+    confirm.solve_at.cache_clear()
 
 
 def fastest(work: Callable[[], Any], rounds: int) -> float:
