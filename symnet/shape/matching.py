@@ -412,7 +412,7 @@ def _in_band(view: View, low: Prototype, scale: float, centre: float) -> Prototy
         return low.scaled(W0, scale / view.w0).high_pass()
     c = view.w0 * math.exp(centre)
     low = low.scaled(W0, scale)
-    return low.band_pass(c, view.width * c) if view.band == BAND_PASS else low.band_stop(c, view.width * c)
+    return low.moved(view.band, c, view.width * c)
 
 
 def _without(normal: Floats, stuck: Bools) -> Floats:

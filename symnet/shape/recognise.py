@@ -99,7 +99,7 @@ def recognise(
     A band-pass, by its poles, with its centre and its bandwidth in rad/s:
 
     >>> from symnet.shape.families.bessel import bessel
-    >>> made = bessel(2).scaled("w3dB", 1.0).band_pass(1000.0, 100.0)
+    >>> made = bessel(2).band_pass(w0="1 krad/s", bandwidth="100 rad/s")
     >>> found = recognise(poles=made.poles, zeros=made.zeros)
     >>> found.match.name, round(found.centre.w, 6), round(found.bandwidth.w, 6)
     ('Bessel, order 2, band-pass', 1000.0, 100.0)

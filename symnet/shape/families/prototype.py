@@ -2,24 +2,51 @@
 
 Filter tables disagree about what "unit frequency" means: the -3 dB point, the edge of the ripple, the inverse of
 the delay, the geometric mean of the poles. A :class:`Prototype` therefore carries all of them as data, each with
-a label that says what it is, and is moved from one to another by :meth:`Prototype.scaled` alone. Invariants:
-poles are sorted and come in conjugate pairs; every reference belongs to exactly these poles.
+a label that says what it is, and is put at a frequency by :meth:`Prototype.at` (text with its unit) or
+:meth:`Prototype.scaled` (rad/s), and moved to another band by :meth:`Prototype.high_pass`, ``band_pass`` and
+``band_stop``. Invariants: poles are sorted and come in conjugate pairs; every reference belongs to exactly these
+poles.
 """
 
 from __future__ import annotations
 
-import cmath
 import math
 from collections.abc import Callable, Iterable
 from dataclasses import dataclass, field, replace
-from typing import Any, Final, TypeAlias, overload
+from typing import Any, TypeAlias, overload
 
 import numpy as np
 from numpy.typing import NDArray
 from sympy import Expr
 
-from symnet.errors import Fault, NotationError, UnknownNameError, nearest
-from symnet.shape.families.curves import geometric_mean, group_delay, last_crossing
+from symnet.errors import Fault, NotationError
+from symnet.shape.families.curves import group_delay
+from symnet.shape.families.references import (
+    ALL_PASS,
+    BAND_PASS,
+    BAND_STOP,
+    CENTRE,
+    HIGH_PASS,
+    LOW_PASS,
+    PASS_BAND,
+    PHASE_EDGE,
+    PHASE_LINE,
+    RIPPLE_EDGE,
+    STOP_EDGE,
+    UNIT_DELAY,
+    W0,
+    W3DB,
+    W3DB_PEAK,
+    W6DB,
+    Reference,
+    angular,
+    of_band,
+    read_band,
+    read_frequency,
+    unknown,
+    with_common_references,
+)
+from symnet.shape.families.transformation import to_band_pass, to_band_stop
 from symnet.typeset.displayed import Displayed
 
 __all__ = [
@@ -38,6 +65,7 @@ __all__ = [
     "W0",
     "W3DB",
     "W3DB_PEAK",
+    "W6DB",
     "Prototype",
     "Reference",
     "Setting",
@@ -45,69 +73,7 @@ __all__ = [
     "with_common_references",
 ]
 
-LOW_PASS: Final = "low-pass"  # noqa: S105 - a band
-HIGH_PASS: Final = "high-pass"  # noqa: S105
-BAND_PASS: Final = "band-pass"  # noqa: S105
-BAND_STOP: Final = "band-stop"
-ALL_PASS: Final = "all-pass"  # noqa: S105
-
-W0: Final = "w0"
-W3DB: Final = "w3dB"
-W3DB_PEAK: Final = "w3dB_peak"
-RIPPLE_EDGE: Final = "ripple_edge"
-STOP_EDGE: Final = "stop_edge"
-PHASE_LINE: Final = "phase_line"
-PHASE_EDGE: Final = "phase_edge"
-UNIT_DELAY: Final = "unit_delay"
-CENTRE: Final = "centre"
-
-#: Where the level of the pass band is counted from.
-PASS_BAND: Final = {
-    LOW_PASS: "DC",
-    HIGH_PASS: "infinite frequency",
-    BAND_PASS: "the centre",
-    BAND_STOP: "DC",
-    ALL_PASS: "every frequency",
-}
-
-_LABELS: Final = {
-    W0: "w0, geometric mean of the pole magnitudes",
-    W3DB: "-3.0103 dB relative to DC",
-    W3DB_PEAK: "-3.0103 dB relative to the ripple peak",
-    RIPPLE_EDGE: "ripple edge",
-    STOP_EDGE: "stop-band edge",
-    PHASE_LINE: "1/T, T the slope of the straight line that the phase keeps to",
-    PHASE_EDGE: "edge of the linear phase",
-    UNIT_DELAY: "unit-delay frequency 1/T, T the group delay at DC",
-}
-_HIGH_PASS_LABELS: Final = _LABELS | {
-    W3DB: "-3.0103 dB relative to infinite frequency",
-    PHASE_LINE: "T of the low-pass that s -> 1/s gives (the slope of its line of phase), as a frequency",
-    PHASE_EDGE: "edge of the linear phase of the low-pass that s -> 1/s gives",
-    UNIT_DELAY: "T of the low-pass that s -> 1/s gives (its group delay at DC), as a frequency",
-}
-
 _Complexes: TypeAlias = NDArray[np.complex128]
-
-
-@dataclass(frozen=True, slots=True)
-class Reference:
-    """One frequency that a table may be normalised to: its name, the angular frequency w in rad/s, its label."""
-
-    name: str
-    w: float
-    label: str
-
-    @classmethod
-    def named(cls, name: str, w: float, note: str = "", band: str = LOW_PASS) -> Reference:
-        """The reference of that name with its usual label, and a note in brackets where there is more to say."""
-        label = (_LABELS if band == LOW_PASS else _HIGH_PASS_LABELS)[name]
-        return cls(name, w, label + (f" ({note})" if note else ""))
-
-    @property
-    def f(self) -> float:
-        """The frequency in Hz."""
-        return self.w / (2 * math.pi)
 
 
 @dataclass(frozen=True, slots=True)
@@ -131,7 +97,8 @@ def in_order(roots: Iterable[Any]) -> tuple[Any, ...]:
 class Prototype(Displayed):
     """A member of a filter family: poles, zeros, gain and frequency references.
 
-    ``poles`` and ``zeros`` are in rad/s. ``gain`` is |H| at DC (of a high-pass: at infinite frequency) when the
+    ``poles`` and ``zeros`` are in rad/s; ``order`` is that of the low-pass, also when a band-pass has twice as many
+    poles. ``gain`` is |H| at DC (of a high-pass: at infinite frequency; of a band-pass: at the centre) when the
     largest |H| in the pass band is 1. ``exact`` holds the denominator as exact numbers, ascending powers of s,
     where they can be read by a person; otherwise it is None. More digits than doubles have: :meth:`precise`.
 
@@ -164,19 +131,51 @@ class Prototype(Displayed):
 
     def __str__(self) -> str:
         settings = "".join(f", {setting}" for setting in self.settings)
-        return f"{self.family}, order {self.order}{settings}, {self.band}"
+        poles = f" ({len(self.poles)} poles)" if len(self.poles) != self.order else ""
+        return f"{self.family}, order {self.order}{settings}, {self.band}{poles}"
 
     def reference(self, name: str) -> Reference:
-        """The reference of that name. Raises :class:`~symnet.errors.UnknownNameError` for one it does not have."""
-        for reference in self.references:
-            if reference.name == name:
-                return reference
+        """The reference of that name; f3dB is another way to write w3dB.
+
+        Raises :class:`~symnet.errors.UnknownNameError` for one it does not have.
+
+        >>> from symnet.shape.families.bessel import bessel
+        >>> bessel(3).at(f3dB="20 kHz").reference("f3dB").f.__round__(6)
+        20000.0
+        """
         known = [reference.name for reference in self.references]
-        guess = nearest(name, known)
-        hint = f"did you mean {guess[0]}? It" if guess else "it"
-        raise UnknownNameError(
-            Fault(f"{self} has no frequency reference {name!r}", hint=f"{hint} has {', '.join(known)}")
-        )
+        wanted = angular(name, known)
+        for reference in self.references:
+            if reference.name == wanted:
+                return reference
+        raise unknown(str(self), name, known)
+
+    def at(self, **reference: str) -> Prototype:
+        """The same shape with one of its references at a stated frequency: ``at(f3dB="20 kHz")``.
+
+        The keyword is the name of a reference. Those that begin with w take rad/s, and the same name with f takes
+        hertz: ``at(w3dB="125.7 krad/s")``; the others take either: ``at(ripple_edge="3.4 kHz")``. A delay is given
+        as the time it is: ``at(delay="50 us")``, the group delay at DC.
+
+        Raises :class:`~symnet.errors.NotationError` for anything but one positive frequency with its unit and
+        :class:`~symnet.errors.UnknownNameError` for a reference that the prototype does not have.
+
+        >>> from symnet.shape.families.bessel import bessel
+        >>> p = bessel(3).at(f3dB="20 kHz")
+        >>> [f"{r.f:.0f} Hz: {r.label.partition(',')[0]}" for r in p.references]
+        ['28094 Hz: w0', '20000 Hz: -3.0103 dB relative to DC', '11392 Hz: unit-delay frequency 1/T']
+        >>> f"{bessel(3).at(delay='10 us').reference('f3dB').f:.0f} Hz"
+        '27942 Hz'
+        """
+        if len(reference) != 1:
+            raise NotationError(
+                Fault(
+                    f"a prototype is put at one frequency, not at {len(reference)}",
+                    hint='name one reference: at(f3dB="20 kHz")',
+                )
+            )
+        ((name, text),) = reference.items()
+        return self.scaled(self.reference(name).name, read_frequency(name, text))
 
     def scaled(self, reference: str, w: float) -> Prototype:
         """The same shape with the named reference at the angular frequency w in rad/s: s -> s * (reference / w).
@@ -199,7 +198,7 @@ class Prototype(Displayed):
             self,
             poles=tuple(p * k for p in self.poles),
             zeros=tuple(z * k for z in self.zeros),
-            references=tuple(replace(r, w=r.w * k) for r in self.references),
+            references=tuple(r.scaled(k) for r in self.references),
             equation=f"{self.equation}, with s for s*{1 / k:.17g}" if self.equation else "",
             exact=None,
             refined=None,
@@ -212,18 +211,16 @@ class Prototype(Displayed):
         >>> p = butterworth(2).high_pass()
         >>> p.zeros, p.reference("w3dB").label
         ((0j, 0j), '-3.0103 dB relative to infinite frequency')
+        >>> butterworth(2).high_pass().at(f3dB="80 Hz").reference("f0").f.__round__(9)
+        80.0
         """
-        if self.band != LOW_PASS:
-            raise NotationError(f"{self} is not a low-pass, so s -> 1/s does not make a high-pass of it")
+        self._is_low_pass("s -> 1/s does not make a high-pass of it")
         at_infinity = self.order - len(self.zeros)
         return replace(
             self,
             poles=in_order((1 / p).conjugate() for p in self.poles),
             zeros=(0j,) * at_infinity + in_order((1 / z).conjugate() for z in self.zeros),
-            references=tuple(
-                replace(r, w=1 / r.w, label=r.label.replace(_LABELS[r.name], _HIGH_PASS_LABELS[r.name]))
-                for r in self.references
-            ),
+            references=tuple(r.inverted() for r in self.references),
             equation=f"{self.equation}, with 1/s for s" if self.equation else "",
             band=HIGH_PASS,
             exact=self.exact[::-1] if self.exact and not self.zeros else None,
@@ -252,97 +249,96 @@ class Prototype(Displayed):
         poles, zeros = self.refined(digits)
         return in_order(poles), in_order(zeros)
 
-    def band_pass(self, centre: float, width: float) -> Prototype:
-        """The band-pass that s -> (s/c + c/s) c/b makes: centre c in rad/s; 1 rad/s of this low-pass becomes the width b.
+    def band_pass(self, *, bandwidth: str, f0: str = "", w0: str = "", edges: str = W3DB) -> Prototype:
+        """The band-pass that s -> r (s^2 + w0^2)/(B s) gives, B the bandwidth between the edges named by ``edges``.
 
-        Each pole q gives the two roots of p^2 - q b p + c^2 = 0, each zero likewise, each zero at infinity one at the
-        origin. Every frequency reference becomes two edges and their difference, the bandwidth, all in rad/s; their
-        geometric mean is c.
+        The centre is given in hertz as ``f0`` or in rad/s as ``w0``; it is the geometric mean of both edges. The
+        bandwidth is a frequency or a part of the centre ("10 %"), and r is the low-pass frequency that becomes the
+        edges, ``edges`` its name: the -3.0103 dB frequency unless said otherwise. Order n stays the order of the
+        low-pass; the band-pass has 2n poles. Its references are the centre, the unit delay there, and for every
+        other one of the low-pass its lower edge, upper edge and bandwidth.
+
+        Raises :class:`~symnet.errors.NotationError` for a frequency without its unit or a prototype that is no
+        low-pass, and :class:`~symnet.errors.UnknownNameError` for edges that the low-pass does not have.
+
+        >>> from symnet.shape.families.chebyshev import chebyshev
+        >>> p = chebyshev(3, "0.5 dB").band_pass(f0="10 kHz", bandwidth="10 %", edges="ripple_edge")
+        >>> print(p)
+        Chebyshev, order 3, ripple 0.5 dB, band-pass (6 poles)
+        >>> for name in ("ripple_edge_lower", "ripple_edge_upper", "ripple_edge_bandwidth", "w3dB_bandwidth"):
+        ...     print(f"{name}: {p.reference(name).f:.2f} Hz")
+        ripple_edge_lower: 9512.49 Hz
+        ripple_edge_upper: 10512.49 Hz
+        ripple_edge_bandwidth: 1000.00 Hz
+        w3dB_bandwidth: 1167.49 Hz
+        """
+        centre, width = read_band(bandwidth, f0, w0)
+        return self.moved(BAND_PASS, centre, width, self.reference(edges).w)
+
+    def band_stop(self, *, bandwidth: str, f0: str = "", w0: str = "", edges: str = W3DB) -> Prototype:
+        """The band-stop that s -> r B s/(s^2 + w0^2) gives; arguments as for :meth:`band_pass`.
+
+        The zeros that the low-pass has at infinite frequency come to the centre, +- j w0.
 
         >>> from symnet.shape.families.butterworth import butterworth
-        >>> p = butterworth(2).band_pass(1000.0, 100.0)
-        >>> round(p.reference("w3dB_bandwidth").w, 9), round(p.reference("w3dB_upper").w, 4)
-        (100.0, 1051.2492)
-        >>> round(p.decibels(1000.0), 9), round(p.decibels(p.reference("w3dB_lower").w), 4)
-        (0.0, -3.0103)
+        >>> p = butterworth(1).band_stop(f0="50 Hz", bandwidth="5 Hz")
+        >>> [f"{p.decibels(p.reference(name).w):.4f} dB" for name in ("f3dB_lower", "f3dB_upper")]
+        ['-3.0103 dB', '-3.0103 dB']
+        >>> p.decibels(p.reference("f0").w)
+        -inf
         """
-        return self._between(BAND_PASS, centre, width)
+        centre, width = read_band(bandwidth, f0, w0)
+        return self.moved(BAND_STOP, centre, width, self.reference(edges).w)
 
-    def band_stop(self, centre: float, width: float) -> Prototype:
-        """The band-stop that s -> b/(s + c^2/s) makes: centre c in rad/s; 1 rad/s of this low-pass becomes the width b.
-
-        The inverse of each pole and zero goes through the same equation as for :meth:`band_pass`; zeros at infinity
-        come to s = +-jc.
-
-        >>> from symnet.shape.families.butterworth import butterworth
-        >>> p = butterworth(1).band_stop(1000.0, 100.0)
-        >>> p.zeros, p.decibels(0.0), round(p.reference("w3dB_bandwidth").w, 9)
-        ((1000j, -1000j), 0.0, 100.0)
-        """
-        return self._between(BAND_STOP, centre, width)
-
-    def _between(self, band: str, centre: float, width: float) -> Prototype:
-        if self.band != LOW_PASS:
-            raise NotationError(f"{self} is not a low-pass, so it does not become a {band}")
+    def moved(self, band: str, centre: float, width: float, edge: float = 1.0) -> Prototype:
+        """The band-pass or band-stop with everything in rad/s: ``edge`` of this low-pass becomes the edges of the width."""
+        self._is_low_pass(f"it does not become a {band}")
         if not (centre > 0 and width > 0 and math.isfinite(centre) and math.isfinite(width)):
             raise NotationError(
                 f"a {band} has a positive centre and width in rad/s, not {centre!r} and {width!r}"
             )
-        stops = band == BAND_STOP
-
-        def split(roots: tuple[complex, ...]) -> Iterable[complex]:
-            for root in roots:
-                yield from _two_roots(width / root if stops else width * root, centre)
-
         at_infinity = self.order - len(self.zeros)
-        far = (1j * centre, -1j * centre) * at_infinity if stops else (0j,) * at_infinity
-        references = [Reference(CENTRE, centre, "centre, geometric mean of the edges")]
-        for r in self.references:
-            if r.name not in {W0, UNIT_DELAY, PHASE_LINE}:
-                references += _edges(r, centre, width / r.w if stops else width * r.w)
+        if band == BAND_PASS:
+            transform, ratio, zeros = to_band_pass, width / edge, (0j,) * at_infinity
+            what = f"{edge:.17g}*(s^2 + {centre:.17g}^2)/({width:.17g}*s) for s"
+        else:
+            transform, ratio = to_band_stop, width * edge
+            zeros = (complex(0.0, centre), complex(0.0, -centre)) * at_infinity
+            what = f"{edge:.17g}*{width:.17g}*s/(s^2 + {centre:.17g}^2) for s"
         return replace(
             self,
-            poles=in_order(split(self.poles)),
-            zeros=far + in_order(split(self.zeros)),
-            references=tuple(references),
-            equation=f"{self.equation}, transformed to a {band}" if self.equation else "",
+            poles=in_order(transform(self.poles, centre, ratio)),
+            zeros=zeros + in_order(transform(self.zeros, centre, ratio)),
+            references=of_band(self.references, band, centre, ratio),
+            equation=f"{self.equation}, with {what}" if self.equation else "",
             band=band,
             exact=None,
             refined=None,
         )
+
+    def _is_low_pass(self, otherwise: str) -> None:
+        if self.band != LOW_PASS:
+            raise NotationError(f"{self} is not a low-pass, so {otherwise}")
 
     @overload
     def __call__(self, s: complex) -> complex: ...
     @overload
     def __call__(self, s: _Complexes) -> _Complexes: ...
     def __call__(self, s: complex | _Complexes) -> complex | _Complexes:
-        """H(s) of this prototype, its largest magnitude in the pass band being 1; s in rad/s, a number or an array."""
+        """H(s) of this prototype, its largest magnitude in the pass band being 1; s in rad/s, a number or an array.
+
+        H is ``gain`` at DC, of a high-pass at infinite frequency, of a band-pass at its centre.
+        """
         at = np.asarray(s, dtype=complex)
-        if self.band in {BAND_PASS, BAND_STOP}:
-            value = self._relative(at) * (
-                self.gain / abs(self._relative(np.asarray(0j if self.band == BAND_STOP else self._centre)))
-            )
-            return value if value.ndim else complex(value)
         value = np.full(at.shape, self.gain, dtype=complex)
+        centre = 1j * self.reference(CENTRE).w if self.band == BAND_PASS else 0j
         for k, p in enumerate(self.poles):
             z = self.zeros[k] if k < len(self.zeros) else None
             if self.band == HIGH_PASS:
                 value *= (at - (z or 0j)) / (at - p)
             else:
-                value *= (1 if z is None else 1 - at / z) / (1 - at / p)
+                value *= (centre - p) / (at - p) * (1 if z is None else (at - z) / (centre - z))
         return value if value.ndim else complex(value)
-
-    @property
-    def _centre(self) -> complex:
-        return 1j * self.reference(CENTRE).w
-
-    def _relative(self, at: _Complexes) -> _Complexes:
-        """The product of (s - z) over that of (s - p), each divided by the centre frequency."""
-        unit = abs(self._centre)
-        value = np.ones(at.shape, dtype=complex)
-        for k, p in enumerate(self.poles):
-            value *= (((at - self.zeros[k]) / unit) if k < len(self.zeros) else 1) / ((at - p) / unit)
-        return value
 
     def decibels(self, w: float) -> float:
         """20 log10 |H(jw)| in dB at the angular frequency w in rad/s, relative to the largest |H| of the pass band."""
@@ -411,40 +407,3 @@ def _complex_text(z: complex) -> str:
         return f"{z.real:.6g}"
     real = f"{z.real:.6g} " if z.real else ""
     return f"{real}+- j{z.imag:.6g}"
-
-
-def _two_roots(sum_of_both: complex, centre: float) -> tuple[complex, complex]:
-    """The roots of p^2 - sum p + centre^2 = 0, neither of them lost by cancellation."""
-    half = sum_of_both / 2
-    root = cmath.sqrt(half * half - centre * centre)
-    larger = half + root if abs(half + root) >= abs(half - root) else half - root
-    return larger, centre * centre / larger
-
-
-def _edges(r: Reference, centre: float, width: float) -> tuple[Reference, Reference, Reference]:
-    """The two frequencies that the transformation makes of a reference, and their difference."""
-    upper = width / 2 + math.hypot(width / 2, centre)
-    label = r.label.replace(" relative to DC", " relative to the pass band")
-    label = label if "DC" not in label else label.partition(" (")[0]
-    return (
-        Reference(f"{r.name}_bandwidth", width, f"bandwidth, {label}"),
-        Reference(f"{r.name}_lower", centre * centre / upper, f"lower edge, {label}"),
-        Reference(f"{r.name}_upper", upper, f"upper edge, {label}"),
-    )
-
-
-def with_common_references(
-    poles: tuple[complex, ...], zeros: tuple[complex, ...], own: tuple[Reference, ...]
-) -> tuple[Reference, ...]:
-    """The references that every low-pass has (w0, -3.0103 dB, unit delay) and the family's own, in a fixed order.
-
-    A family that knows one of the common ones in closed form gives it among its own.
-    """
-    found = {reference.name: reference for reference in own}
-    if W0 not in found:
-        found[W0] = Reference.named(W0, geometric_mean(poles))
-    if W3DB not in found and (w := last_crossing(poles, zeros)) is not None:
-        found[W3DB] = Reference.named(W3DB, w)
-    if UNIT_DELAY not in found and (delay := float(group_delay(np.asarray(0.0), poles, zeros))) > 0:
-        found[UNIT_DELAY] = Reference.named(UNIT_DELAY, 1 / delay)
-    return tuple(found[name] for name in _LABELS if name in found)
