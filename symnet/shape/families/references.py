@@ -229,7 +229,7 @@ def of_band(references: Sequence[Reference], band: str, centre: float, ratio: fl
 
 def unknown(owner: str, name: str, known: Sequence[str]) -> UnknownNameError:
     """The error that says which references there are."""
-    guess = nearest(name, [*known])
+    guess = nearest(name, [*known, *("f" + k[1:] for k in known if k[0] == "w")])
     hint = f"did you mean {guess[0]}? It" if guess else "it"
     return UnknownNameError(
         Fault(f"{owner} has no frequency reference {name!r}", hint=f"{hint} has {', '.join(known)}")
