@@ -272,6 +272,7 @@ class Prototype(Displayed):
         ripple_edge_bandwidth: 1000.00 Hz
         w3dB_bandwidth: 1167.49 Hz
         """
+        self._is_low_pass("it does not become a band-pass")
         centre, width = read_band(bandwidth, f0, w0)
         return self.moved(BAND_PASS, centre, width, self.reference(edges).w)
 
@@ -287,6 +288,7 @@ class Prototype(Displayed):
         >>> p.decibels(p.reference("f0").w)
         -inf
         """
+        self._is_low_pass("it does not become a band-stop")
         centre, width = read_band(bandwidth, f0, w0)
         return self.moved(BAND_STOP, centre, width, self.reference(edges).w)
 

@@ -130,14 +130,14 @@ class TestBands:
             (low.band_pass(w0=f"{centre!r} rad/s", bandwidth=width, edges=name), centre),
             (low.band_stop(w0=f"{centre!r} rad/s", bandwidth=width, edges=name), 0.0),
         ):
-            assert made.reference("w0").w == centre
+            assert made.reference("centre").w == centre
             assert math.exp(np.mean(np.log(np.abs(made.poles)))) == pytest.approx(centre, rel=1e-14)
-            assert made.reference(f"{name}_width").w == pytest.approx(part * centre, rel=1e-14)
+            assert made.reference(f"{name}_bandwidth").w == pytest.approx(part * centre, rel=1e-14)
             for reference in low.references:
                 if reference.name in {"w0", "unit_delay"}:
                     continue
                 lower, upper, between = (
-                    made.reference(f"{reference.name}_{k}").w for k in ("lower", "upper", "width")
+                    made.reference(f"{reference.name}_{k}").w for k in ("lower", "upper", "bandwidth")
                 )
                 assert lower * upper == pytest.approx(centre**2, rel=1e-14)
                 assert upper - lower == pytest.approx(between, rel=1e-12 / part + 1e-14)
@@ -174,14 +174,14 @@ class TestBands:
     def test_labels(self) -> None:
         low = chebyshev(4, "1 dB")
         labels = [r.label for r in low.band_pass(f0="1 kHz", bandwidth="100 Hz").references]
-        assert labels[0] == "w0, centre: geometric mean of the edges and of the pole magnitudes"
-        assert labels[1] == (
-            "lower edge: -3.0103 dB relative to the centre (a ripple minimum, 1 dB below the peak)"
+        assert labels[0] == "centre, geometric mean of the edges and of the pole magnitudes"
+        assert labels[2] == (
+            "lower edge, -3.0103 dB relative to the centre (a ripple minimum, 1 dB below the peak)"
         )
         assert "unit-delay frequency 1/T, T the group delay at the centre" in labels
         assert not [label for label in labels if "DC" in label]
         stop = low.band_stop(f0="1 kHz", bandwidth="100 Hz")
-        assert stop.reference("f3dB_upper").label.startswith("upper edge: -3.0103 dB relative to DC")
+        assert stop.reference("f3dB_upper").label.startswith("upper edge, -3.0103 dB relative to DC")
         assert ("|H| at the centre", "0.891251 of the peak") in low.band_pass(
             f0="1 kHz", bandwidth="9 %"
         ).rows()
