@@ -1,7 +1,8 @@
 """Ladders with finite transmission zeros: inverse Chebyshev and elliptic, digits as printed.
 
-The families themselves are not in the package yet; what can be recomputed from the network is: zeros, poles by
-their closed form (inverse Chebyshev), pass-band ripple and least stop-band loss (elliptic).
+``tests/shape/families/test_elliptic.py`` holds them to the prototypes of the package, ``test_ladders`` beside this
+file to what can be had without it: zeros, poles by their closed form (inverse Chebyshev), pass-band ripple and least
+stop-band loss (elliptic).
 """
 
 from __future__ import annotations

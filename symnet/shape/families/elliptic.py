@@ -13,7 +13,7 @@ from __future__ import annotations
 import math
 from typing import Any, ClassVar, Final, NamedTuple
 
-from symnet.errors import Fault, NotationError
+from symnet.errors import Fault, LimitError, NotationError
 from symnet.shape.families.arithmetic import measured
 from symnet.shape.families.chebyshev import LARGEST_RIPPLE_DB, ripple_of, squared_epsilon
 from symnet.shape.families.curves import HALF_POWER_DB, last_crossing
@@ -67,7 +67,8 @@ def elliptic(
 
     Raises :class:`~symnet.errors.NotationError` for a ripple or an attenuation that is not a number of dB in its
     range (the attenuation more than 3.0103 dB above the ripple), for both attenuation and edge, for a variant "b" or
-    "c" of an order that is odd or 2; :class:`~symnet.errors.LimitError` for an order beyond 60.
+    "c" of an order that is odd or 2; :class:`~symnet.errors.LimitError` for an order beyond 60 or a stop band that
+    begins within 1e-9 of the ripple edge.
 
     >>> p = elliptic(3, "0.5 dB", "40 dB")
     >>> for r in p.references[1:4]:
@@ -100,6 +101,15 @@ def elliptic(
             what="a stop-band attenuation",
             above=ripple_db + HALF_POWER_DB,
             up_to=LARGEST_ATTENUATION_DB,
+        )
+    edge = 1 / _Shape.of(math, order, ripple_db, db).selectivity.k
+    if edge < _NEAREST_EDGE:
+        raise LimitError(
+            Fault(
+                f"order {order}, ripple {ripple_db:g} dB, attenuation {db:g} dB: the stop band would begin within "
+                "1e-9 of the ripple edge, where doubles cannot tell the two apart",
+                hint="take a lower order or a deeper stop band",
+            )
         )
     return member(family, order, (ripple_db, db))
 
@@ -145,7 +155,10 @@ def _attenuation_for(family: _Elliptic, order: int, ripple: float, edge: float) 
         if not low < middle < high:
             break
         low, high = (middle, high) if edge_at(middle) < edge else (low, middle)
-    db = 10 * math.log10(1 + e2 / shape_at(high).discrimination.k ** 2)
+    if order * high > 200:  # k1 = 4 sqrt(q1), and soon too small for a double
+        db = 10 * math.log10(e2 / 16) + 10 / math.log(10) * order * high
+    else:
+        db = 10 * math.log10(1 + e2 / shape_at(high).discrimination.k ** 2)
     if not ripple + HALF_POWER_DB < db <= LARGEST_ATTENUATION_DB:
         raise NotationError(
             Fault(
