@@ -39,6 +39,7 @@ if TYPE_CHECKING:
     from symnet.present.brief import brief
     from symnet.response.frequency import group_delay, phase
     from symnet.review.verify import verify
+    from symnet.shape import prototypes
     from symnet.shape.difference import compare
     from symnet.shape.dominant import dominant
     from symnet.shape.families.bessel import bessel
@@ -83,6 +84,7 @@ __all__ = [
     "normalise",
     "opamp",
     "phase",
+    "prototypes",
     "push",
     "read",
     "recognise",
@@ -120,14 +122,18 @@ _WHERE = {
     "symnet.shape.split": "split_poles",
 }
 
+#: public names that are modules
+_MODULES = {"prototypes": "symnet.shape.prototypes"}
+
 _MODULE_OF = {name: module for module, names in _WHERE.items() for name in names.split()}
 
 
 def __getattr__(name: str) -> Any:
-    module = _MODULE_OF.get(name)
+    module = _MODULES.get(name) or _MODULE_OF.get(name)
     if module is None:
         raise AttributeError(f"module 'symnet' has no attribute {name!r}")
-    value = globals()[name] = getattr(import_module(module), name)
+    found: Any = import_module(module)
+    value = globals()[name] = found if name in _MODULES else getattr(found, name)
     return value
 
 

@@ -65,6 +65,7 @@ WORDS = {
     "normalise",
     "opamp",
     "phase",
+    "prototypes",
     "push",
     "read",
     "recognise",

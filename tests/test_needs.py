@@ -16,6 +16,7 @@ from symnet.errors import NotationError, SingularError, WiringError
 from symnet.exact.ratio import Ratio
 from symnet.exact.transfer import Transfer
 from symnet.response.frequency import phase
+from symnet.shape.families import Prototype
 from symnet.shape.figures import f3db, turning_points
 from symnet.shape.forms import Style
 from tests.reference.comparing import assert_same_figure, assert_same_function
@@ -473,3 +474,38 @@ class TestHertzAndRadians:
         (crossing,) = f3db(sn.derive(net))
         assert (crossing.w.value, crossing.f) == pytest.approx((1e5, 1e5 / (2 * pi)))
         assert phase(sn.derive(net), 1e5) == pytest.approx(-45)
+
+
+class TestFrequencyReferences:
+    """A cut-off frequency says what it is (N11, N12), and table coefficients know what they are normalised to (N17)."""
+
+    @pytest.mark.parametrize(
+        ("made", "reference", "level_at_1", "w3"),
+        [
+            (sn.bessel(3), "unit_delay", -0.903, 1.7557),
+            (sn.bessel(3), "w0", -6.24, None),
+            (sn.bessel(3), "w3dB", -3.01, 1.0),
+            (sn.butterworth(3), "w0", -3.01, 1.0),
+            (sn.chebyshev(3, "0.5 dB"), "ripple_edge", -0.5, 1.1675),
+        ],
+    )
+    def test_what_the_same_shape_has_at_1_rad_per_second(
+        self, made: Prototype, reference: str, level_at_1: float, w3: float | None
+    ) -> None:
+        at_1 = made.at(**{reference: "1 rad/s"})
+        assert at_1.decibels(1.0) == pytest.approx(level_at_1, abs=5e-3)
+        if w3 is not None:
+            assert at_1.reference("w3dB").w == pytest.approx(w3, abs=5e-5)
+
+    def test_3_db_of_an_even_chebyshev_is_counted_from_two_levels(self) -> None:
+        made = sn.chebyshev(2, "1 dB")
+        assert made.reference("w3dB_peak").w == pytest.approx(1.2176, abs=5e-5)
+        assert made.reference("w3dB_peak").label.endswith("relative to the ripple peak")
+        assert "DC" in made.reference("w3dB").label
+
+    def test_denormalised_coefficients_stop_with_the_normalised_ones(self) -> None:
+        with pytest.raises(
+            NotationError,
+            match=r"denormalised \(w0 = 7930 rad/s\); normalised they are a = 0.91094, b = 1.41253",
+        ):
+            sn.prototypes.table_section("6078.04", "62884481", "-44518803", f="1.5 kHz")

@@ -36,6 +36,7 @@ from symnet.quantities import NUMBER
 from symnet.shape.difference import Comparison
 from symnet.shape.dominant import Dominant
 from symnet.shape.families.prototype import Prototype
+from symnet.shape.families.tabled import TableSection
 from symnet.shape.figures import HalfPower
 from symnet.shape.forms import Form
 from symnet.shape.normal import NormalForm
@@ -107,6 +108,11 @@ def _half_power(value: HalfPower) -> Bundle:
 
 @formats(Prototype)
 def _prototype(value: Prototype) -> Bundle:
+    return bundle((Table((), value.rows()),))
+
+
+@formats(TableSection)
+def _table_section(value: TableSection) -> Bundle:
     return bundle((Table((), value.rows()),))
 
 
