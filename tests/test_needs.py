@@ -6,7 +6,7 @@ One class for one need. Networks are invented; values are round so that a reader
 from __future__ import annotations
 
 from fractions import Fraction
-from math import pi, sqrt
+from math import log10, pi, sqrt
 
 import pytest
 
@@ -509,3 +509,99 @@ class TestFrequencyReferences:
             match=r"denormalised \(w0 = 7930 rad/s\); normalised they are a = 0.91094, b = 1.41253",
         ):
             sn.prototypes.table_section("6078.04", "62884481", "-44518803", f="1.5 kHz")
+
+
+class TestParasitics:
+    """Parasitics are named add-ons (N28), also in a supply filter (N29)."""
+
+    def test_the_series_resistance_of_a_capacitor(self) -> None:
+        ideal = sn.network("in -- R1 = 68 -- out -- C1 = 5 uF -- gnd; drive in; read out")
+        H = sn.derive(ideal.with_parasitics("C1", ESR="1 ohm"))
+        assert_same_function(H, "(1 + s*R_C1*C1)/(1 + s*(R1 + R_C1)*C1)")
+        h = H.numeric()
+        (zero,), (pole,) = h.zeros(), h.poles()
+        assert -zero.value.real / (2 * pi) == pytest.approx(31.8e3, rel=2e-3)
+        assert -pole.value.real / (2 * pi) == pytest.approx(461, rel=1e-3)
+        assert 20 * log10(abs(h(2j * pi * 1e12))) == pytest.approx(-36.8, abs=0.05)
+
+    def test_resonance_of_a_bypass_capacitor(self) -> None:
+        ideal = sn.network("in -- R1 = 50 -- out -- C1 = 100 nF -- gnd; drive in; read out")
+        real = sn.derive(ideal.with_parasitics("C1", ESL="5 nH", ESR="20 mohm")).numeric()
+        plain = sn.derive(ideal).numeric()
+        resonance = 1 / (2 * pi * sqrt(5e-9 * 100e-9))
+        assert resonance == pytest.approx(7.118e6, rel=1e-4)
+        for f, with_them, without in ((resonance, -68.0, -47.0), (100e6, -24.1, -69.9)):
+            assert 20 * log10(abs(real(2j * pi * f))) == pytest.approx(with_them, abs=0.05)
+            assert 20 * log10(abs(plain(2j * pi * f))) == pytest.approx(without, abs=0.05)
+
+    @pytest.mark.parametrize(
+        ("name", "parasitics"),
+        [("C1", {"ESR": None}), ("C1", {"ESL": None, "ESR": None}), ("L1", {"DCR": None, "Cw": None})],
+    )
+    def test_without_them_h_is_the_earlier_one(self, name: str, parasitics: dict[str, None]) -> None:
+        ideal = sn.network("in -- R1 -- a -- L1 -- out -- C1 || RL -- gnd; drive in; read out")
+        real = ideal.with_parasitics(name, **parasitics)
+        added = [part for part in real.part_names if part not in ideal.part_names]
+        assert len(added) == len(parasitics)
+        none = sn.derive(real.with_values(dict.fromkeys(added, 0)), symbols="R1 L1 C1 RL")
+        assert none == sn.derive(ideal)
+
+    def test_a_supply_filter_and_the_peak_of_its_output_impedance(self) -> None:
+        net = sn.network(
+            "in -- L1 = 10 uH -- out -- C1 = 100 uF -- gnd; out -- R = 1 -- gnd; drive in; read out"
+        )
+        real = net.with_parasitics("L1", DCR="30 mohm").with_parasitics("C1", ESR="5 mohm")
+        H = sn.derive(real)
+        assert_same_function(
+            H,
+            "R*(1 + s*R_C1*C1)/(R + R_L1 + s*(L1 + C1*(R*R_C1 + R*R_L1 + R_C1*R_L1)) + s^2*L1*C1*(R + R_C1))",
+        )
+        h = H.numeric()
+        pole = next(root.value for root in h.poles() if root.value.imag > 0)
+        assert abs(pole) / (2 * pi) == pytest.approx(5.095e3, rel=1e-4)
+        assert abs(pole) / (-2 * pole.real) == pytest.approx(2.38, abs=0.005)
+        assert -h.zeros()[0].value.real / (2 * pi) == pytest.approx(318e3, rel=2e-3)
+        assert h.num[0] / h.den[0] == pytest.approx(0.9709, abs=5e-5)
+        shorted = real.add("drive current into out as Iout")
+        zout = sn.derive(shorted, drive="Iout", read="out").numeric()
+        peak = max(abs(zout(2j * pi * f)) for f in range(4800, 5400, 5))
+        assert peak == pytest.approx(0.743, abs=5e-4)
+
+    def test_what_cannot_be_made_real(self) -> None:
+        net = sn.network("in -- R1 -- out -- C1 -- gnd; drive in; read out")
+        with pytest.raises(NotationError, match="R1 is no capacitor or inductor"):
+            net.with_parasitics("R1", ESR="1 ohm")
+        with pytest.raises(NotationError, match="C1 has no DCR"):
+            net.with_parasitics("C1", DCR="1 ohm")
+
+
+class TestPotentiometer:
+    """A potentiometer is a part with a wiper (N34); its ends are limits, not divisions by zero."""
+
+    NETWORK = "P1: potentiometer(top=in, wiper=out, bottom=gnd, Rt, x); out -- RL -- gnd; drive in; read out"
+
+    def test_loaded_wiper(self) -> None:
+        H = derive(self.NETWORK)
+        assert str(H) == "out/in = P1.x*RL/(RL + P1.x*(1 - P1.x)*P1.Rt)"
+        half = H.with_values({"P1.x": "0.5", "P1.Rt": "10k", "RL": "10k"}).numeric()
+        assert half.num[0] / half.den[0] == Fraction(2, 5)
+
+    @pytest.mark.parametrize(("x", "gain"), [("0", 0), ("1", 1)])
+    def test_the_ends_are_exact(self, x: str, gain: int) -> None:
+        network = sn.network(self.NETWORK).with_values({"P1.x": x, "P1.Rt": "10k", "RL": "10k"})
+        for H in (sn.derive(network), sn.derive(network, symbols="RL")):
+            assert H.numeric() == Ratio.of((Fraction(gain),), (Fraction(1),))
+
+
+class TestProbe:
+    """The probe is part of the network (N40)."""
+
+    def test_before_and_after(self) -> None:
+        net = sn.network("in -- R1 = 1 Mohm -- out -- C1 = 10 pF -- gnd; drive in; read out")
+        probed = net.with_probe("out", R="10 Mohm", C="10 pF")
+        before, after = (f3db(sn.derive(n).numeric())[0].f for n in (net, probed))
+        assert before == pytest.approx(15.92e3, rel=3e-4)
+        assert after == pytest.approx(8.754e3, rel=1e-4)
+        h = sn.derive(probed).numeric()
+        assert h.num[0] / h.den[0] == pytest.approx(0.909, abs=5e-4)
+        assert "added R_probe, C_probe" in repr(sn.compare(net, probed))

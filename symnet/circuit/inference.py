@@ -171,7 +171,12 @@ class Inference:
     # -- uses --------------------------------------------------------------------------------------------------------
 
     def add(self, use: Use) -> None:
-        """Take in what one law, read or value says."""
+        """Take in what one law, read or value says; a fault without a place of its own gets that of the whole."""
+        found = len(self.faults)
+        self._add(use)
+        self.faults[found:] = [fault.at(use.span) for fault in self.faults[found:]]
+
+    def _add(self, use: Use) -> None:
         found = len(self.faults)
         form = self._of(use.expression)
         if len(self.faults) > found or len(self._seen) > MOST_UNKNOWN or form is None or use.where == "read":

@@ -91,6 +91,7 @@ class Meanings:
         self.nodes |= dict.fromkeys(terminals)
         self.nodes.pop(GROUND, None)
         self.couplings = {coupling.name: coupling for coupling in net.couplings}
+        self.parameters = {name for instance in net.instances for name in instance.parameters()}
         self.declared = dict(net.free)
         self.assigned = dict(net.values)
 
@@ -109,7 +110,8 @@ class Meanings:
             return "voltage"
         if name in self.branches:
             return "part"
-        if name in self.declared or name in self.assigned or name in self.couplings:
+        known = (self.declared, self.assigned, self.couplings, self.parameters)
+        if any(name in names for names in known):
             return "symbol"
         if name in self.doubtful or (name[1:2] == "_" and name[2:] in self.doubtful):
             return "doubtful"

@@ -104,7 +104,19 @@ def check(
                 faults += found
                 bad.add(id(use.expression))
     inference = _inferred(net, meanings, bad)
-    return [*faults, *inference.faults, *inference.closing_faults(), *coupling_faults(net)]
+    found = [*faults, *inference.faults, *inference.closing_faults(), *coupling_faults(net)]
+    return list(_one_for_each_shipped(net, found))
+
+
+def _one_for_each_shipped(net: Drawing, faults: Iterable[Fault]) -> Iterator[Fault]:
+    """The faults, but only the first of those at a section that ships with symnet: its inside is not the writer's."""
+    shipped = {instance.span for instance in net.instances if instance.section.origin and instance.span}
+    told: set[Span] = set()
+    for fault in faults:
+        if fault.span not in told:
+            yield fault
+        if fault.span in shipped:
+            told.add(fault.span)
 
 
 # -- one name, one thing ----------------------------------------------------------------------------------------------
@@ -252,7 +264,13 @@ class _Names:
         for target, value in self.net.values:
             known = any(
                 target in names
-                for names in (meanings.branches, meanings.couplings, meanings.declared, meanings.doubtful)
+                for names in (
+                    meanings.branches,
+                    meanings.couplings,
+                    meanings.parameters,
+                    meanings.declared,
+                    meanings.doubtful,
+                )
             )
             if known or target in CLASS_LETTERS or target in self._told or meanings.of(target) != "symbol":
                 continue

@@ -12,7 +12,7 @@ from dataclasses import dataclass, fields, replace
 from decimal import Decimal
 from fractions import Fraction
 from math import isfinite
-from typing import TypeAlias
+from typing import Final, TypeAlias
 
 from symnet.circuit.drawing import Drawing
 from symnet.circuit.names import check, dimensions
@@ -33,6 +33,8 @@ from symnet.quantities import NUMBER, Dimension
 from symnet.typeset.displayed import Displayed
 
 __all__ = ["Network", "ValueLike", "read_network", "value_for"]
+
+_PARASITICS: Final = {"C": {"ESR": "R", "ESL": "L"}, "L": {"DCR": "R", "Cw": "C"}}
 
 ValueLike: TypeAlias = str | int | Fraction | Decimal | float | None
 
@@ -166,6 +168,54 @@ class Network(Drawing, Displayed):
             free=(*kept.free, *(entry for entry in by.free if entry not in kept.free)),
         )
         return _sound(network)
+
+    def with_parasitics(self, name: str, /, **values: ValueLike) -> Network:
+        """A network in which a capacitor or inductor is a real one; the part keeps its name, and its value.
+
+        A capacitor takes ``ESR`` and ``ESL`` in series, called ``R_C1`` and ``L_C1``; an inductor ``DCR`` in series,
+        ``R_L1``, and ``Cw``, the capacitance of the winding, beside both, ``C_L1``. A value is given as to
+        :meth:`with_values`; None leaves a symbol. With all of them at zero H is the one of the ideal part.
+
+        Raises UnknownNameError for a part the network does not have, NotationError for a part or a property of
+        another kind.
+
+        >>> import symnet as sn
+        >>> net = sn.network("in -- R1 -- out -- C1 -- gnd; drive in; read out")
+        >>> print(sn.derive(net.with_parasitics("C1", ESR="1 ohm")))
+        out/in = (1 + s*R_C1*C1)/(1 + s*(R1 + R_C1)*C1)
+        """
+        part = self[name]
+        known = _PARASITICS.get(part.kind) if isinstance(part, Branch) else None
+        if known is None:
+            hint = "real parts are made of capacitors (ESR, ESL) and inductors (DCR, Cw)"
+            raise NotationError(Fault(f"{name} is no capacitor or inductor", hint, parts=(name,)))
+        strange = [word for word in values if word not in known]
+        if strange or not values:
+            listed = ", ".join(known)
+            said = f"{name} has no {strange[0]}" if strange else f"no property of {name} is given"
+            raise NotationError(Fault(said, f"a real one has {listed}"))
+        path, dot, own = name.rpartition(".")
+        called = {word: f"{path}{dot}{known[word]}_{own}" for word in known if word in values}
+        text = " + ".join([name, *(new for word, new in called.items() if word != "Cw")])
+        if "Cw" in called:
+            text = f"({text}) || {called['Cw']}"
+        return self.replace(name, text).with_values({called[word]: value for word, value in values.items()})
+
+    def with_probe(self, node: str, R: ValueLike, C: ValueLike, name: str = "probe") -> Network:
+        """A network with a probe on a node: its resistance (ohm) and its capacitance (farad) to gnd.
+
+        The parts are called ``R_probe`` and ``C_probe``; ``sn.compare(net, net.with_probe(...))`` shows what the
+        measurement changes.
+
+        >>> import symnet as sn
+        >>> net = sn.network("in -- R1 = 1 Mohm -- out -- C1 = 10 pF -- gnd; drive in; read out")
+        >>> sn.f3db(sn.derive(net.with_probe("out", R="10 Mohm", C="10 pF")))
+        <-3.0103 dB relative to DC: <8753.52 Hz, falling>>
+        """
+        if node not in self.nodes:
+            raise self.unknown(node, self.nodes, "node")
+        parts = f"{node} -- R_{name} || C_{name} -- gnd"
+        return self.add(parts).with_values({f"R_{name}": R, f"C_{name}": C})
 
     def _add_text(self, text: str) -> Network:
         prefix = self.to_text() + "\n"

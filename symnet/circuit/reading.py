@@ -105,8 +105,8 @@ def read_sections(text: str, origin: str = "") -> dict[str, Section]:
 @lru_cache(maxsize=64)
 def _shipped(kind: str, given: frozenset[str]) -> Section | None:
     """The section that ships with symnet under this name, in the form that these arguments choose."""
-    source = device_source(kind, given)
-    return read_sections(source, "symnet")[kind] if source is not None else None
+    found = device_source(kind, given)
+    return read_sections(found[0], origin=found[1])[kind] if found is not None else None
 
 
 @dataclass(slots=True)

@@ -69,6 +69,13 @@ class Instance:
         """Each terminal with the node it is connected to."""
         return tuple(zip(self.section.terminals, self.nodes, strict=True))
 
+    def parameters(self) -> Iterator[str]:
+        """The parameters of the section, and of those that it places, under the names that they have here."""
+        for name, _ in self.section.parameters:
+            yield f"{self.name}.{name}"
+        for inner in self.section.drawing.instances:
+            yield from (f"{self.name}.{name}" for name in inner.parameters())
+
     def parts(self) -> tuple[Part, ...]:
         """The parts of the section under the names that they have here."""
         place = _Place(self)

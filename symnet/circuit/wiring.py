@@ -138,6 +138,8 @@ def _islands(network: Network) -> Iterator[Fault]:
         group.join(part.start, part.end)
     for _, a, b, _ in _voltage_pairs(network):
         group.join(a, b)
+    laws = (part.value for part in network.parts if isinstance(part, VoltageLaw | CurrentLaw))
+    sensed = {node for value in laws for node in _sensed(network, value)}
     for members in group.all():
         if GROUND in members:
             continue
@@ -145,6 +147,8 @@ def _islands(network: Network) -> Iterator[Fault]:
         sources = [
             (said, piece) for said, a, b, piece in _current_pairs(network) if (a in members) != (b in members)
         ]
+        if sensed & set(members) and any(isinstance(piece, CurrentLaw) for _, piece in sources):
+            continue  # laws may do together what a part does, as in a gyrator; the equations will tell
         touching = tuple(part.name for part in inside)
         at = _places(members)
         be, it = ("is", "it") if len(members) == 1 else ("are", "them")

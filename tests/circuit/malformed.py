@@ -814,12 +814,12 @@ line 1, column 35: an opamp has no terminal or parameter rout
     ),
     (
         "an unknown device",
-        "T1: transformer(a=p, b=m)",
+        "T1: triode(a=p, b=m)",
         """\
-line 1, column 5: transformer is no device or section
-    T1: transformer(a=p, b=m)
-        ^^^^^^^^^^^
-    there are opamp, and what you define""",
+line 1, column 5: triode is no device or section
+    T1: triode(a=p, b=m)
+        ^^^^^^
+    there are opamp, ota, cfa, bjt, fet, transformer, tapped_transformer, gyrator, nic, fdnr, crystal, potentiometer, and what you define""",
     ),
     (
         "a device without name",
