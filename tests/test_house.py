@@ -20,6 +20,7 @@ PACKAGE = TOP / "symnet"
 #: The rooms from the ground up; each may import from itself and from those before it.
 ROOMS = (
     "errors",
+    "progress",
     "quantities",
     "expressions",
     "grammar_files",

@@ -25,6 +25,7 @@ from symnet.exact.aberth import Approximations, approximate
 from symnet.exact.dense import Integers
 from symnet.exact.doubles import scaled
 from symnet.exact.newton import Newton, Point, Step, shifted
+from symnet.progress import Progress
 
 Complexes: TypeAlias = NDArray[np.complex128]
 
@@ -51,7 +52,8 @@ def isolate(p: Integers, in_square: bool, digits: int) -> list[Point]:
     points = [_point(z, near.scale, _FIRST_BITS) for z in near.points]
     bits = _FIRST_BITS
     while bits <= _MOST_BITS:
-        points = _separate(newton, points, near, bits)
+        with Progress("finding roots", "roots apart", len(points)) as at:
+            points = _separate(newton, points, near, bits, at)
         chosen = _symmetric(points, in_square)
         proven = [good for point in chosen if (good := refine(newton, point, digits)) is not None]
         everyone = [image for point in proven for image in images(point, in_square)]
@@ -74,14 +76,18 @@ def _point(z: complex, scale: int, bits: int) -> Point:
     return Point(shifted(x, -places), shifted(y, -places), shift - scale - places)
 
 
-def _separate(newton: Newton, points: list[Point], near: Approximations, bits: int) -> list[Point]:
+def _separate(
+    newton: Newton, points: list[Point], near: Approximations, bits: int, at: Progress
+) -> list[Point]:
     """The points moved by Aberth's iteration until their discs do not overlap; those that stand alone stay."""
     points = list(points)
     steps = [newton.step(point, bits, _ENOUGH) for point in points]
     z = np.array([point.as_complex(near.scale) for point in points])
     for _ in range(_MOST_SWEEPS):
         moved = False
-        for i in _crowded(points, near.scale):
+        crowded = _crowded(points, near.scale)
+        for i in crowded:
+            at(len(points) - len(crowded))
             here = complex(z[i])
             step = near.tamed(here, _repelled(points, z, i, steps[i], near.scale))
             if step == 0:

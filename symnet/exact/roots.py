@@ -3,7 +3,7 @@
 Floating-point root finders lose half the digits of a double root and two thirds of those of a triple one, and
 turn four equal RC poles into complex pairs. Here the polynomial stays exact. Roots at the origin, repeated factors
 (Yun) and factors in s^2 (the common factors of the even and the odd part, where every pair on the jw axis is) are
-split off first. What is left has simple roots: doubles find where they are (:mod:`symnet.exact.aberth`), exact
+split off first. What is left has simple roots: doubles find where they are (:mod:`symnet.exact.aberth`), integer
 arithmetic proves it (:mod:`symnet.exact.discs`), and those with a short closed form are recognised
 (:mod:`symnet.exact.surds`).
 
