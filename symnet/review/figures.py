@@ -15,7 +15,7 @@ if TYPE_CHECKING:
     from symnet.exact.readable.packed import Polynomial
     from symnet.review.solution import Solution
 
-__all__ = ["denominator_of", "figure"]
+__all__ = ["denominator_of", "figure", "lowest"]
 
 _MOST_TERMS = 2000
 
@@ -58,18 +58,21 @@ def denominator_of(solution: Solution, transfer: Value) -> list[Polynomial]:
     """The coefficients of s^0, s^1, ... of the denominator in lowest terms, powers of s that stand alone left out."""
     top, bottom = solution.substituted(transfer)
     algebra = solution.algebra
-    if max(len(top), len(bottom)) > _MOST_TERMS:
-        raise LimitError(
-            Fault(f"this transfer has {max(len(top), len(bottom))} terms; figures of it are not looked for")
-        )
-    bottom = _lowest(solution, top, bottom)
+    _, bottom = lowest(solution, top, bottom)
     parts = algebra.split(bottom, ("s",))
     low, high = min(k for (k,) in parts), max(k for (k,) in parts)
     return [parts.get((k,), {}) for k in range(low, high + 1)]
 
 
-def _lowest(solution: Solution, top: Polynomial, bottom: Polynomial) -> Polynomial:
-    """The denominator without what it has in common with the numerator."""
+def lowest(solution: Solution, top: Polynomial, bottom: Polynomial) -> tuple[Polynomial, Polynomial]:
+    """Numerator and denominator without what they have in common; LimitError when they are too long for that."""
+    if max(len(top), len(bottom)) > _MOST_TERMS:
+        raise LimitError(
+            Fault(
+                f"this transfer has {max(len(top), len(bottom))} terms; figures of it are not looked for",
+                "give some of the parts values",
+            )
+        )
     from sympy import ZZ, symbols
     from sympy.polys.rings import PolyRing
 
@@ -80,8 +83,12 @@ def _lowest(solution: Solution, top: Polynomial, bottom: Polynomial) -> Polynomi
         ring.from_dict({tuple(space.unpack(m)[k] for k in used): ZZ(c) for m, c in side.items()})
         for side in (top, bottom)
     )
-    _, _, rest = n.cofactors(d)
-    if rest.LC < 0:
-        rest = -rest
+    _, n, d = n.cofactors(d)
+    if d.LC < 0:
+        n, d = -n, -d
     units = [space.unit(k) for k in used]
-    return {sum(e * u for e, u in zip(m, units, strict=True)): int(c) for m, c in rest.items()}
+    above, below = (
+        {sum(e * u for e, u in zip(m, units, strict=True)): int(c) for m, c in side.items()}
+        for side in (n, d)
+    )
+    return above, below

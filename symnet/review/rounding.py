@@ -20,7 +20,7 @@ if TYPE_CHECKING:
     from symnet.exact.readable.packed import Polynomial
     from symnet.review.algebra import Algebra
 
-__all__ = ["can_vanish", "pi_to_60_digits"]
+__all__ = ["approximations", "can_vanish", "pi_to_60_digits"]
 
 _DIGITS: Final = 60
 
@@ -38,20 +38,26 @@ def _root(number: int) -> Fraction:
     return Fraction(isqrt(number * 10 ** (2 * _DIGITS)), 10**_DIGITS)
 
 
-def can_vanish(algebra: Algebra, polynomial: Polynomial) -> bool:
-    """Whether every coefficient of a polynomial in the names can be zero within the rounding of the numbers."""
-    approximations = {"pi": pi_to_60_digits()}
+def approximations(algebra: Algebra) -> dict[str, Fraction]:
+    """The generators that are numbers, pi and roots of numbers, to 60 digits."""
+    known = {"pi": pi_to_60_digits()}
     for k, radicand in enumerate(algebra.radicands):
         if set(radicand) == {0} and radicand[0] > 0:
-            approximations[f"root {k}"] = _root(radicand[0])
+            known[f"root {k}"] = _root(radicand[0])
+    return known
+
+
+def can_vanish(algebra: Algebra, polynomial: Polynomial) -> bool:
+    """Whether every coefficient of a polynomial in the names can be zero within the rounding of the numbers."""
+    known = approximations(algebra)
     rounded = {f"rounded:{k}" for k in range(ROUNDED)}
     middle: dict[tuple[tuple[str, int], ...], Fraction] = {}
     reach: dict[tuple[tuple[str, int], ...], Fraction] = {}
     for monomial, coefficient in polynomial.items():
         value, kept, uncertain = Fraction(coefficient), [], False
         for name, exponent in algebra.exponents(monomial).items():
-            if name in approximations:
-                value *= approximations[name] ** exponent
+            if name in known:
+                value *= known[name] ** exponent
             elif name in rounded:
                 uncertain = True
             else:

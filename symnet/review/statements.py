@@ -23,7 +23,10 @@ from symnet.review.working import (
 )
 
 if TYPE_CHECKING:
-    from lark import Token
+    from lark import Token, Tree
+
+    from symnet.circuit.lines import Line
+    from symnet.errors import Span
 
 __all__ = ["Statements"]
 
@@ -42,6 +45,27 @@ class Statements(Formulas):
         if formed.worth is None:
             self.whole(formed)  # a bare unit s beside names
         return formed.expression
+
+    def __init__(self, line: Line) -> None:
+        super().__init__(line)
+        self._decibels: list[Span] = []
+
+    def build(self, tree: Tree[Token]) -> Any:
+        """What a line says."""
+        made = super().build(tree)
+        for span in self._decibels:
+            self.fault("dB stands behind the ripple of a family and behind within", "values are ratios", span)
+        return made
+
+    def on_number(self, children: Sequence[Any]) -> Formed:
+        """A number; dB and deg are units of the settings of a family."""
+        number, unit = children
+        if unit is None or str(unit) not in {"dB", "deg"}:
+            return super().on_number(children)
+        formed = super().on_number((number, None))
+        span = formed.span.to(self.span_of(unit))
+        self._decibels.append(span)
+        return replace(formed, expression=replace(formed.expression, span=span), span=span, rule="quantity")
 
     def on_group(self, children: Sequence[Formed]) -> Formed:
         """A parenthesis; the numbers in it stay as they were written, since their digits count."""
@@ -180,6 +204,7 @@ class Statements(Formulas):
         """One figure or parameter of the family."""
         token, _, formed = children
         name = self.name(token)
+        self._decibels.clear()
         if name in FIGURES:
             self._convention(FIGURES[name], formed)
         return FIGURES.get(name, name), self.side(formed)

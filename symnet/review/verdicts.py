@@ -5,13 +5,14 @@ from __future__ import annotations
 from collections.abc import Iterator
 from dataclasses import dataclass, field
 from enum import Enum
+from typing import Final
 
 from symnet.circuit.network import Network
 from symnet.review.working import Line, Working
 from symnet.shape.stated import Alternative
 from symnet.typeset.displayed import Displayed
 
-__all__ = ["Judgement", "Review", "Verdict"]
+__all__ = ["Judgement", "Review", "Verdict", "worst"]
 
 
 class Verdict(Enum):
@@ -69,6 +70,20 @@ class Judgement:
             many = "s" if len(self.follows) > 1 else ""
             text += f", but follows from the wrong line{many} {' and '.join(map(str, self.follows))}"
         return f"{text}; {self.note}" if self.note else text
+
+
+_ORDER: Final = {
+    Verdict.NOTHING: 0,
+    Verdict.IDENTITY: 1,
+    Verdict.VALUES: 2,
+    Verdict.CONDITION: 3,
+    Verdict.FALSE: 4,
+}
+
+
+def worst(judgements: list[Judgement]) -> Judgement:
+    """The judgement on a whole line from those on its parts: the first of the worst."""
+    return max(judgements, key=lambda judgement: _ORDER[judgement.verdict])
 
 
 @dataclass(frozen=True, slots=True, repr=False)

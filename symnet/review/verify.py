@@ -8,12 +8,25 @@ from typing import TYPE_CHECKING
 from symnet.circuit.network import Network
 from symnet.circuit.reading import raise_all
 from symnet.errors import Fault, SymnetError
+from symnet.review.approximating import judge_approximation
+from symnet.review.checked import value_of
+from symnet.review.claims import half_power_claim, judge_family, judge_half_power
 from symnet.review.judge import Judge
+from symnet.review.limiting import judge_limit
 from symnet.review.reading import read_working
 from symnet.review.scope import Scope, given_network, name_faults
 from symnet.review.solution import Solution
 from symnet.review.verdicts import Judgement, Review, Verdict
-from symnet.review.working import Assumption, Definition, Equation, Line, Working
+from symnet.review.working import (
+    Approximation,
+    Assumption,
+    Definition,
+    Equation,
+    Family,
+    Limit,
+    Line,
+    Working,
+)
 
 if TYPE_CHECKING:
     from symnet.expressions import Expression
@@ -59,7 +72,7 @@ class _Reviewer:
             try:
                 match line.statement:
                     case Definition(name=name, value=value):
-                        judge.value(value)
+                        value_of(judge.scope, value)
                         self.definitions[name] = value
                         judgements.append(Judgement(line, Verdict.IDENTITY, note="a definition"))
                     case Assumption() as assumption:
@@ -78,9 +91,18 @@ class _Reviewer:
 
     def _judged(self, judge: Judge, line: Line) -> Judgement:
         match line.statement:
-            case Equation() as statement:
-                return judge.equation(line, statement)
-        raise SymnetError(Fault("not judged yet", span=line.span))
+            case Equation() as equation if half_power_claim(judge, equation):
+                return judge_half_power(judge, line, equation)
+            case Equation() as equation:
+                return judge.equation(line, equation)
+            case Limit() as limit:
+                return judge_limit(judge, line, limit)
+            case Approximation() as approximation:
+                return judge_approximation(judge, line, approximation)
+            case Family() as family:
+                return judge_family(judge, line, family)
+            case _:
+                return Judgement(line, Verdict.IDENTITY)
 
     def _judge(self, network: Network) -> Judge:
         solution = Solution.of(network)

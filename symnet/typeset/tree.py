@@ -31,6 +31,7 @@ __all__ = [
     "Tree",
     "evaluate",
     "minus",
+    "names_of",
     "number",
     "over",
     "plus",
@@ -109,6 +110,27 @@ Tree: TypeAlias = Atom | Constant | Sum | Product | Quotient | Power | Parallel 
 
 ZERO = Constant(Fraction(0))
 ONE = Constant(Fraction(1))
+
+
+def names_of(tree: Tree) -> set[str]:
+    """Every name in a tree.
+
+    >>> sorted(names_of(Quotient(Atom("R1"), Sum(((1, Atom("R2")), (-1, ONE))))))
+    ['R1', 'R2']
+    """
+    match tree:
+        case Atom(name):
+            return {name}
+        case Sum(terms):
+            return set().union(*(names_of(term) for _, term in terms))
+        case Product(factors) | Parallel(factors):
+            return set().union(*map(names_of, factors))
+        case Quotient(numerator, denominator):
+            return names_of(numerator) | names_of(denominator)
+        case Power(base) | Root(base):
+            return names_of(base)
+        case _:
+            return set()
 
 
 def number(value: int | Fraction) -> Constant:
