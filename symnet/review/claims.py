@@ -38,7 +38,7 @@ if TYPE_CHECKING:
     from symnet.shape.families import Family as CatalogueFamily
     from symnet.shape.verdict import Candidate
 
-__all__ = ["half_power_claim", "judge_family", "judge_half_power"]
+__all__ = ["gives_transfer", "half_power_claim", "judge_family", "judge_half_power"]
 
 _HALF_POWER: Final = ("f3dB", "w3dB")
 
@@ -49,6 +49,13 @@ def half_power_claim(judge: Judge, statement: Equation) -> bool:
     if not isinstance(first, Name) or FIGURES.get(first.name) not in _HALF_POWER:
         return False
     return first.name not in judge.scope.definitions and first.name not in judge.scope.network.symbols()
+
+
+def gives_transfer(scope: Scope, statement: Equation) -> bool:
+    """Whether a line gives H: H = ..., or what is read over what drives."""
+    if not scope.network.reads or statement.node is not None or statement.of is not None:
+        return False
+    return not (value_of(scope, statement.sides[0]) - scope.transfer()).numerator
 
 
 def judge_half_power(judge: Judge, line: Line, statement: Equation) -> Judgement:
@@ -156,7 +163,7 @@ def judge_family(judge: Judge, line: Line, claim: Family) -> Judgement:
             if name in _HALF_POWER:
                 found.append(_half_power(judge, line, name, value, where))
             elif name in FIGURES:
-                found.append(judge.equation(line, Equation((Name(name), value), of=where)))
+                found.append(judge.alone(line, Equation((Name(name), value), of=where)))
             else:
                 message = f"{name} is compared in numbers only, and there is a name without value"
                 raise LimitError(Fault(message, "give every part a value", line.span)) from None

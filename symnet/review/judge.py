@@ -46,25 +46,34 @@ class Judge:
     said: list[Said] = field(default_factory=list)
 
     def equation(self, line: Line, statement: Equation) -> Judgement:
-        """The verdict on an equation, or on a chain of them."""
-        links = list(pairwise(statement.sides))
-        differences = tuple(self.difference(left, right, statement.of) for left, right in links)
-        found = []
-        for place, (link, difference) in enumerate(zip(links, differences, strict=True)):
-            verdict = self._link(line, link, statement.of, difference)
-            if verdict.verdict is Verdict.NOTHING and place:
-                verdict = Judgement(line, Verdict.IDENTITY)  # a step of algebra
-            found.append(replace(verdict, link=place))
-        judgement = worst(found)
+        """The verdict on an equation or a chain of them, as it stands among the lines before it."""
+        differences = self.differences(statement)
+        judgement = self.alone(line, statement, differences)
         said = Said(line, differences)
         if judgement.holds:
             judgement = self._repeated(said, judgement)
         self.said.append(said)
         return judgement
 
-    def difference(self, left: Expression, right: Expression, of: Expression | None = None) -> Value:
-        """Left minus right in the unknowns; SingularError at the place where it divides by zero."""
-        return value_of(self.scope, left, of) - value_of(self.scope, right, of)
+    def differences(self, statement: Equation) -> tuple[Value, ...]:
+        """Left minus right in the unknowns for each equals sign; SingularError where a side divides by zero."""
+        values = [value_of(self.scope, side, statement.of) for side in statement.sides]
+        return tuple(left - right for left, right in pairwise(values))
+
+    def alone(
+        self, line: Line, statement: Equation, differences: tuple[Value, ...] | None = None
+    ) -> Judgement:
+        """The verdict on an equation whatever was said before."""
+        if differences is None:
+            differences = self.differences(statement)
+        links = list(pairwise(statement.sides))
+        found = []
+        for place, (link, difference) in enumerate(zip(links, differences, strict=True)):
+            verdict = self._link(line, link, statement.of, difference)
+            if verdict.verdict is Verdict.NOTHING and place:
+                verdict = Judgement(line, Verdict.IDENTITY)  # a step of algebra
+            found.append(replace(verdict, link=place))
+        return worst(found)
 
     def _link(
         self, line: Line, sides: tuple[Expression, Expression], of: Expression | None, difference: Value
@@ -114,7 +123,7 @@ class Judge:
                 and old.differences[0].numerator
                 and _proportional(old.differences[0], new)
             ):
-                return replace(judgement, verdict=Verdict.NOTHING, same_as=old.line.number)
+                return replace(judgement, verdict=Verdict.NOTHING, same_as=old.line)
         return judgement
 
 

@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
-from dataclasses import dataclass, field
+from dataclasses import dataclass
 from enum import Enum
 from typing import Final
 
 from symnet.circuit.network import Network
+from symnet.review.completeness import Completeness
+from symnet.review.polarity import Polarity
 from symnet.review.working import Line, Working
 from symnet.shape.stated import Alternative
 from symnet.typeset.displayed import Displayed
@@ -32,8 +34,7 @@ class Judgement:
     ``conditions`` are the ways in which a line that is not true in general can be true, for positive values (with
     the verdict FALSE: in which the given values do not make it true). ``rounded`` says that the line is true to
     the digits it gives, and no further. ``link`` is the place of the first equals sign that does not hold, from 0.
-    ``same_as`` is the number of an earlier line that says the same; ``follows`` are the numbers of the wrong lines
-    that a false line follows from. ``jump`` marks a true line that does not follow from the lines above it.
+    ``same_as`` is an earlier line that says the same; ``follows`` are the wrong lines that a false line follows from. ``jump`` marks a true line that does not follow from the lines above it.
     ``note`` is what else there is to say, in a sentence.
     """
 
@@ -42,8 +43,8 @@ class Judgement:
     conditions: tuple[Alternative, ...] = ()
     rounded: bool = False
     link: int = 0
-    same_as: int | None = None
-    follows: tuple[int, ...] = ()
+    same_as: Line | None = None
+    follows: tuple[Line, ...] = ()
     jump: bool = False
     note: str = ""
 
@@ -65,10 +66,12 @@ class Judgement:
                 else f"{text}, to the digits given"
             )
         if self.same_as is not None:
-            text += f": it says what line {self.same_as} says"
+            text += f": it says what line {self.same_as.label} says"
         if self.follows:
             many = "s" if len(self.follows) > 1 else ""
-            text += f", but follows from the wrong line{many} {' and '.join(map(str, self.follows))}"
+            text += (
+                f", but follows from the wrong line{many} {' and '.join(line.label for line in self.follows)}"
+            )
         return f"{text}; {self.note}" if self.note else text
 
 
@@ -90,6 +93,9 @@ def worst(judgements: list[Judgement]) -> Judgement:
 class Review(Displayed):
     """What :func:`symnet.verify` found: a judgement for every line; true when every line holds.
 
+    ``completeness`` says whether the lines lead to the last equation; None where there is nothing above it.
+    ``polarity`` holds the op amps whose feedback is net positive, or may be.
+
     >>> import symnet as sn
     >>> net = sn.network("in -- R1 -- out -- C1 -- gnd; drive in; read out")
     >>> review = sn.verify(net, "node out: (out - in)/R1 + s*C1*out = 0; out/in = 1/(1 + s*R1*C1)")
@@ -99,7 +105,9 @@ class Review(Displayed):
 
     network: Network
     working: Working
-    judgements: tuple[Judgement, ...] = field(default=())
+    judgements: tuple[Judgement, ...]
+    completeness: Completeness | None = None
+    polarity: tuple[Polarity, ...] = ()
 
     def __bool__(self) -> bool:
         return all(judgement.holds for judgement in self.judgements)

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from typing import TYPE_CHECKING
 
 from symnet.circuit.network import Network
@@ -10,10 +10,14 @@ from symnet.circuit.reading import raise_all
 from symnet.errors import Fault, SymnetError
 from symnet.review.approximating import judge_approximation
 from symnet.review.checked import value_of
-from symnet.review.claims import half_power_claim, judge_family, judge_half_power
+from symnet.review.claims import gives_transfer, half_power_claim, judge_family, judge_half_power
+from symnet.review.completeness import completeness
+from symnet.review.following import Follower
 from symnet.review.judge import Judge
 from symnet.review.limiting import judge_limit
+from symnet.review.polarity import polarities
 from symnet.review.reading import read_working
+from symnet.review.rows import Row, Rows
 from symnet.review.scope import Scope, given_network, name_faults
 from symnet.review.solution import Solution
 from symnet.review.verdicts import Judgement, Review, Verdict
@@ -57,6 +61,79 @@ def verify(network: Network, working: str | Working) -> Review:
 
 
 @dataclass
+class _Stage:
+    """The lines between one assumption and the next: a network, its judge, and what follows from what."""
+
+    judge: Judge
+    follower: Follower
+    said: list[tuple[Line, Row]] = field(default_factory=list)
+    claimed: tuple[Line, Expression] | None = None  # the H of the last line that gave one, when it was wrong
+
+    @classmethod
+    def of(cls, network: Network, definitions: dict[str, Expression], text: str) -> _Stage:
+        solution = Solution.of(network)
+        numeric = None
+        if solution.naming.numbers:
+            numeric = Scope(Solution.of(network, frozenset()), definitions)
+        judge = Judge(Scope(solution, definitions), text, numeric)
+        return cls(judge, Follower(Rows(judge.scope)))
+
+    def judged(self, line: Line) -> Judgement:
+        """The verdict on a line that is neither a definition nor an assumption."""
+        match line.statement:
+            case Equation() as equation if half_power_claim(self.judge, equation):
+                judgement = judge_half_power(self.judge, line, equation)
+            case Equation() as equation:
+                return self._equation(line, equation)
+            case Limit() as limit:
+                return judge_limit(self.judge, line, limit)
+            case Approximation() as approximation:
+                return judge_approximation(self.judge, line, approximation)
+            case Family() as family:
+                judgement = judge_family(self.judge, line, family)
+            case _:
+                return Judgement(line, Verdict.IDENTITY)
+        return judgement if judgement.holds else self._of_claimed(line, judgement)
+
+    def _equation(self, line: Line, equation: Equation) -> Judgement:
+        judgement = self.judge.equation(line, equation)
+        differences = self.judge.said[-1].differences
+        rows = [row for difference in differences if (row := self.follower.row(difference)) is not None]
+        if rows and judgement.verdict is not Verdict.VALUES:
+            self.said.append((line, rows[0]))
+        if judgement.holds:
+            if judgement.verdict in {Verdict.IDENTITY, Verdict.NOTHING} and not judgement.rounded:
+                judgement = replace(judgement, jump=self.follower.true(differences))
+        else:
+            judgement = replace(judgement, follows=self.follower.false(line, differences))
+            if not judgement.follows:
+                judgement = self._of_claimed(line, judgement)
+        if gives_transfer(self.judge.scope, equation):
+            root = judgement.follows[0] if judgement.follows else line
+            self.claimed = None if judgement.holds else (root, equation.sides[-1])
+        return judgement
+
+    def _of_claimed(self, line: Line, judgement: Judgement) -> Judgement:
+        """A false claim about H that is true of the wrong H of a line above."""
+        if self.claimed is None:
+            return judgement
+        root, transfer = self.claimed
+        try:
+            match line.statement:
+                case Equation(of=None) as equation if half_power_claim(self.judge, equation):
+                    found = judge_half_power(self.judge, line, replace(equation, of=transfer))
+                case Equation(of=None) as equation:
+                    found = self.judge.alone(line, replace(equation, of=transfer))
+                case Family() as family:
+                    found = judge_family(self.judge, line, replace(family, value=transfer))
+                case _:
+                    return judgement
+        except SymnetError:
+            return judgement
+        return replace(judgement, follows=(root,)) if found.holds else judgement
+
+
+@dataclass
 class _Reviewer:
     """Goes through the lines of a working, from one set of assumptions and definitions to the next."""
 
@@ -66,47 +143,32 @@ class _Reviewer:
     faults: list[tuple[type[SymnetError], Fault]] = field(default_factory=list)
 
     def review(self) -> Review:
-        judge = self._judge(self.network)
+        stage = _Stage.of(self.network, self.definitions, self.working.text)
         judgements: list[Judgement] = []
         for line in self.working:
             try:
                 match line.statement:
                     case Definition(name=name, value=value):
-                        value_of(judge.scope, value)
+                        value_of(stage.judge.scope, value)
                         self.definitions[name] = value
                         judgements.append(Judgement(line, Verdict.IDENTITY, note="a definition"))
                     case Assumption() as assumption:
-                        judge = self._judge(given_network(judge.scope.network, assumption))
+                        network = given_network(stage.judge.scope.network, assumption)
+                        stage = _Stage.of(network, self.definitions, self.working.text)
                         judgements.append(
                             Judgement(line, Verdict.IDENTITY, note="an assumption, taken as given")
                         )
                     case _:
-                        judgements.append(self._judged(judge, line))
+                        judgements.append(stage.judged(line))
             except SymnetError as error:
                 self.faults += [(type(error), fault.at(line.span)) for fault in error.faults]
         if self.faults:
             kind = self.faults[0][0]
             raise kind([fault for _, fault in self.faults], text=self.working.text)
-        return Review(self.network, self.working, tuple(judgements))
-
-    def _judged(self, judge: Judge, line: Line) -> Judgement:
-        match line.statement:
-            case Equation() as equation if half_power_claim(judge, equation):
-                return judge_half_power(judge, line, equation)
-            case Equation() as equation:
-                return judge.equation(line, equation)
-            case Limit() as limit:
-                return judge_limit(judge, line, limit)
-            case Approximation() as approximation:
-                return judge_approximation(judge, line, approximation)
-            case Family() as family:
-                return judge_family(judge, line, family)
-            case _:
-                return Judgement(line, Verdict.IDENTITY)
-
-    def _judge(self, network: Network) -> Judge:
-        solution = Solution.of(network)
-        numeric = None
-        if solution.naming.numbers:
-            numeric = Scope(Solution.of(network, frozenset()), self.definitions)
-        return Judge(Scope(solution, self.definitions), self.working.text, numeric)
+        return Review(
+            self.network,
+            self.working,
+            tuple(judgements),
+            completeness(stage.follower.rows, stage.said),
+            tuple(p for p in polarities(self.network) if p.feedback != "negative"),
+        )
