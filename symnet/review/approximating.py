@@ -116,7 +116,7 @@ def _never_negative(p: list[Fraction], low: Fraction, high: Fraction) -> bool:
         if (
             times % 2
             and factor.degree()
-            and factor.count_roots(*ends) > sum(factor.eval(end) == 0 for end in ends)
+            and factor.count_roots(*ends) > sum(factor(end) == 0 for end in ends)
         ):
             return False
     middle = (low + high) / 2
