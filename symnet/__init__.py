@@ -37,6 +37,7 @@ if TYPE_CHECKING:
     from symnet.exact.scaling import scale
     from symnet.exact.transfer import Transfer
     from symnet.present.brief import brief
+    from symnet.present.explain import explain
     from symnet.response.frequency import group_delay, phase
     from symnet.review.verify import verify
     from symnet.shape import prototypes
@@ -72,6 +73,7 @@ __all__ = [
     "drive",
     "elliptic",
     "equations",
+    "explain",
     "f3db",
     "form",
     "group_delay",
@@ -106,6 +108,7 @@ _WHERE = {
     "symnet.exact.scaling": "scale",
     "symnet.exact.transfer": "Transfer",
     "symnet.present.brief": "brief",
+    "symnet.present.explain": "explain",
     "symnet.response.frequency": "group_delay phase",
     "symnet.review.verify": "verify",
     "symnet.shape.difference": "compare",

@@ -64,7 +64,7 @@ def complex_number(value: Fraction) -> complex:
 
 
 def arithmetic(text: str, names: Mapping[str, Any], number: Arithmetic = Fraction) -> Any:
-    """The value of plain arithmetic in text (``+ - * / ^``, parentheses, ``sqrt``), exact for fractions.
+    """The value of plain arithmetic in text (``+ - * / ^``, parentheses, ``(x || y)``, ``sqrt``), exact for fractions.
 
     >>> arithmetic("2*R^2/(1 + 0.5)", {"R": Fraction(3)})
     Fraction(12, 1)
@@ -75,7 +75,7 @@ def arithmetic(text: str, names: Mapping[str, Any], number: Arithmetic = Fractio
 
 def _python(text: str) -> str:
     """The text as Python reads it; names get an underscore, since a node may well be called ``in``."""
-    return re.sub(r"(?<![\w.])[A-Za-z]\w*", r"\g<0>_", text).replace("^", "**")
+    return re.sub(r"(?<![\w.])[A-Za-z]\w*", r"\g<0>_", text).replace("^", "**").replace("||", "|")
 
 
 def _walk(node: ast.expr, source: str, names: Mapping[str, Any], number: Arithmetic) -> Any:
@@ -100,6 +100,8 @@ def _walk(node: ast.expr, source: str, names: Mapping[str, Any], number: Arithme
                     return x * y
                 case ast.Div():
                     return x / y
+                case ast.BitOr():
+                    return x * y / (x + y)
         case ast.Call(func=ast.Name(id="sqrt_"), args=[argument]):
             return mpmath.sqrt(_walk(argument, source, names, number))
     raise ValueError(f"not plain arithmetic: {ast.dump(node)}")

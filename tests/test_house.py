@@ -54,6 +54,7 @@ WORDS = {
     "drive",
     "elliptic",
     "equations",
+    "explain",
     "f3db",
     "form",
     "group_delay",

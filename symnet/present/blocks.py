@@ -22,6 +22,8 @@ __all__ = [
     "Items",
     "Line",
     "Paragraph",
+    "Row",
+    "Steps",
     "Table",
     "Typed",
     "without_empty_columns",
@@ -92,4 +94,21 @@ class Folded:
     blocks: tuple[Block, ...]
 
 
-Block: TypeAlias = Heading | Paragraph | Formula | Table | Items | Typed | Folded
+@dataclass(frozen=True, slots=True)
+class Row:
+    """``left = right`` with a word before it and a reason behind; without ``left`` it goes on from the row above."""
+
+    left: Tree | None
+    right: Tree
+    label: str = ""
+    reason: str = ""
+
+
+@dataclass(frozen=True, slots=True)
+class Steps:
+    """A derivation: equations below each other, their equals signs in one column."""
+
+    rows: tuple[Row, ...]
+
+
+Block: TypeAlias = Heading | Paragraph | Formula | Table | Items | Typed | Folded | Steps

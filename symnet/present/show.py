@@ -18,6 +18,7 @@ from symnet.present.blocks import Block, Formula, Table
 from symnet.present.brief import Brief
 from symnet.present.difference import comparison_blocks
 from symnet.present.dominant import dominant_blocks, split_blocks
+from symnet.present.explain import Explanation
 from symnet.present.network import network_blocks
 from symnet.present.recognition import recognition_blocks
 from symnet.present.response import half_power_rows
@@ -64,6 +65,11 @@ def bundle(blocks: Sequence[Block]) -> Bundle:
 
 @formats(Brief)
 def _brief(value: Brief) -> Bundle:
+    return bundle(value.blocks)
+
+
+@formats(Explanation)
+def _explanation(value: Explanation) -> Bundle:
     return bundle(value.blocks)
 
 

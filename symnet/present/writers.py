@@ -8,7 +8,7 @@ escaped on its way into Markdown, HTML and LaTeX.
 from __future__ import annotations
 
 import re
-from collections.abc import Sequence
+from collections.abc import Iterator, Sequence
 from itertools import zip_longest
 from textwrap import wrap
 from typing import Final
@@ -21,6 +21,8 @@ from symnet.present.blocks import (
     Items,
     Line,
     Paragraph,
+    Row,
+    Steps,
     Table,
     Typed,
 )
@@ -101,8 +103,37 @@ def _text(block: Block) -> str:
             return "\n".join("\n  ".join(_wrapped(f"- {_line_text(line)}")) for line in lines)
         case Typed():
             return "\n".join(f"    {name_text(row)}".rstrip() for row in _typed(block))
+        case Steps(rows):
+            return "\n".join(_steps_text(rows))
         case Folded(title, blocks):
             return f"{title}:\n\n{text(blocks)}"
+
+
+#: A left side longer than this stands on a line of its own.
+_LONGEST_LEFT: Final = 24
+
+
+def _steps_text(rows: Sequence[Row]) -> Iterator[str]:
+    """Equations with their equals signs below each other; what is too long goes on behind the equals sign."""
+    before = 2 + max((len(name_text(row.label)) for row in rows), default=0)
+    lefts = [to_text(row.left) if row.left is not None else "" for row in rows]
+    column = max((len(left) for left in lefts if len(left) <= _LONGEST_LEFT), default=0)
+    for row, left in zip(rows, lefts, strict=True):
+        head = f"{name_text(row.label):<{before}}"
+        if len(left) > _LONGEST_LEFT:
+            first, *more = _wrapped(left, WIDTH - before)
+            yield head + first
+            yield from (" " * before + line for line in more)
+            head, left = " " * before, ""
+        room = WIDTH - before - column - 3
+        lines = _wrapped(to_text(row.right), room)
+        reason = f"   ({name_text(row.reason)})" if row.reason else ""
+        if len(lines[-1]) + len(reason) > room:
+            lines += _wrapped(reason, room)
+        else:
+            lines[-1] += reason
+        yield f"{head}{left:<{column}} = {lines[0]}".rstrip()
+        yield from (" " * (before + column + 3) + line for line in lines[1:])
 
 
 def _table_text(table: Table) -> str:
@@ -191,6 +222,8 @@ def _markdown(block: Block) -> str:
         case Typed():
             fence = "`" * max(3, 1 + max(map(len, re.findall("`+", block.text)), default=0))
             return "\n".join([f"{fence}text", *map(name_text, _typed(block)), fence])
+        case Steps(rows):
+            return f"$$\n{_steps_latex(rows, 'aligned')}\n$$"
         case Folded(title, blocks):
             return f"<details>\n<summary>{escape_html(title)}</summary>\n\n{markdown(blocks)}\n\n</details>"
 
@@ -244,8 +277,37 @@ def _html(block: Block) -> str:
             return (
                 '<pre style="font-family:monospace">' + "\n".join(map(escape_html, _typed(block))) + "</pre>"
             )
+        case Steps(rows):
+            return (
+                '<div style="overflow-x:auto"><table style="margin:0.6em 0;border-collapse:collapse">\n'
+                f"{_steps_html(rows)}\n</table></div>"
+            )
         case Folded(title, blocks):
             return f"<details><summary>{escape_html(title)}</summary>\n{_blocks_html(blocks)}\n</details>"
+
+
+_STEP: Final = 'style="text-align:{};padding:0.3em {};white-space:nowrap;border:0;background:none"'
+
+
+def _steps_html(rows: Sequence[Row]) -> str:
+    """One row of a table for each equation: label, left side, equals sign with the right side and the reason."""
+    label, left, right = (
+        _STEP.format(side, padding)
+        for side, padding in (("left", "1.2em 0.3em 0"), ("right", "0"), ("left", "0"))
+    )
+    shown = []
+    for row in rows:
+        start = "" if row.left is None else to_mathml(row.left)
+        equals = f'<math displaystyle="true"><mo>=</mo>{inner_mathml(row.right)}</math>'
+        reason = (
+            f'<span style="color:#666;padding-left:2em">{escape_html(row.reason)}</span>'
+            if row.reason
+            else ""
+        )
+        shown.append(
+            f"<tr><td {label}>{escape_html(row.label)}</td><td {left}>{start}</td><td {right}>{equals}{reason}</td></tr>"
+        )
+    return "\n".join(shown)
 
 
 # -- LaTeX ------------------------------------------------------------------------------------------------------
@@ -284,6 +346,17 @@ def _line_latex(line: Line) -> str:
     )
 
 
+def _steps_latex(rows: Sequence[Row], environment: str) -> str:
+    """Equations aligned at their equals signs, labels and reasons as text beside them."""
+    lines = []
+    for row in rows:
+        label = rf"\text{{{escape_latex(row.label)}}}\quad " if row.label else ""
+        left = "" if row.left is None else to_latex(row.left)
+        reason = rf" && \text{{{escape_latex(row.reason)}}}" if row.reason else ""
+        lines.append(f"{label}{left} &= {to_latex(row.right)}{reason}")
+    return f"\\begin{{{environment}}}\n" + " \\\\\n".join(lines) + f"\n\\end{{{environment}}}"
+
+
 def _latex(block: Block) -> str:
     match block:
         case Heading(title, level):
@@ -309,5 +382,7 @@ def _latex(block: Block) -> str:
         case Typed():
             spaced = (_words_latex(row).replace("  ", "~~") for row in _typed(block))
             return "\\begin{quote}\\ttfamily\n" + " \\\\\n".join(spaced) + "\n\\end{quote}"
+        case Steps(rows):
+            return _steps_latex(rows, "align*")
         case Folded(title, blocks):
             return f"\\paragraph{{{_words_latex(title)}}}\n\n{latex(blocks)}"
