@@ -189,6 +189,10 @@ RECOGNISED = {
     "chebyshev": "Chebyshev",
     "chebyshev_3db": "Chebyshev",
     "chebyshev_3db_dcref": "Chebyshev",
+    "papoulis": "Legendre-Papoulis",
+    "inverse_chebyshev": "inverse Chebyshev",
+    "inverse_chebyshev_3db": "inverse Chebyshev",
+    "elliptic": "elliptic",
 }
 
 
@@ -200,17 +204,25 @@ def test_the_family_of_the_table_is_recognised(case: Ladder) -> None:
         assert str(found).startswith("first order, low-pass")
         return
     assert found.match is not None
-    assert found.match.name.startswith(f"{RECOGNISED[case.family]}, order {case.order}")
+    # even orders between equal terminations are variant c, the one that has them
+    variant = ", variant c" if case.family == "elliptic" and case.order % 2 == 0 else ""
+    assert found.match.name.startswith(f"{RECOGNISED[case.family]}{variant}, order {case.order}")
     assert found.match.name.endswith("high-pass" if "-hp-" in case.id else "low-pass")
     if case.ripple_db:
         assert found.match.prototype.settings[0].value == pytest.approx(case.ripple_db, rel=2e-3)
+    if case.family.startswith("inverse"):
+        assert found.match.prototype.settings[0].value == pytest.approx(case.stop_db, abs=0.01)
+    if case.stop_w:
+        made = found.match.prototype
+        assert made.reference("ripple_edge").w == pytest.approx(1, abs=1e-3)
+        assert made.reference("stop_edge").w == pytest.approx(case.stop_w, rel=1e-3)
 
 
 @pytest.mark.parametrize(
     "case", [case for case in CASES if case.family not in RECOGNISED and case.order > 2], ids=name
 )
 def test_what_is_no_family_of_the_catalogue_gets_no_name(case: Ladder) -> None:
-    # Gaussian, Papoulis, squared Butterworth, inverse Chebyshev, elliptic: near to one, but not one
+    # Gaussian, squared Butterworth: near to one, but not one
     found = sn.recognise(derived(case)[0])
     assert isinstance(found, Recognition)
     assert found.match is None

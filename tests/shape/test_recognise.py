@@ -78,8 +78,13 @@ MEMBERS = [make(n) for n in ORDERS for make in (butterworth, bessel)] + [
     chebyshev(n, ripple) for n in ORDERS for ripple in RIPPLES
 ]
 
-#: Without order 2, where every Q is some ripple, and poles that 1 % would carry across the jw axis.
-SHAKEN = [m for m in MEMBERS if m.order > 2 and min(-p.real / abs(p) for p in m.poles) > 0.01]
+#: Without order 2, where every Q is some ripple; poles that 1 % would carry across the jw axis; and the one that comes
+#: within 2 % of another family: Chebyshev 5 with 0.1 dB is nearly Legendre-Papoulis.
+SHAKEN = [
+    m
+    for m in MEMBERS
+    if m.order > 2 and min(-p.real / abs(p) for p in m.poles) > 0.01 and m != chebyshev(5, "0.1 dB")
+]
 
 
 class TestNormalisations:
@@ -143,6 +148,7 @@ FAMILIES = {
     "chebyshev": "Chebyshev",
     "chebyshev_3db": "Chebyshev",
     "chebyshev_3db_dcref": "Chebyshev",
+    "papoulis": "Legendre-Papoulis",
 }
 EVERY = (
     *doubly_terminated.CASES,
@@ -160,7 +166,9 @@ class TestPublishedNetworks:
         found = verdict(numeric(case))
         assert found.match is not None, found.verdict
         assert found.match.prototype.family == FAMILIES[case.family]
-        assert found.match.response_error_db < 0.003
+        assert found.match.response_error_db < (
+            0.01 if case.nominal_f else 0.003
+        )  # crossovers have four digits
         if case.ripple_db is not None:
             assert found.match.prototype.settings[0].value == pytest.approx(case.ripple_db, rel=0.002)
         if case.family == "chebyshev_3db_dcref":  # these tables count 3 dB from DC, also for an even order
@@ -181,7 +189,7 @@ class TestPublishedNetworks:
 
     @pytest.mark.parametrize("case", STRANGERS, ids=lambda c: c.id)
     def test_is_none_of_these(self, case: Ladder) -> None:
-        """Gaussian, Legendre, squared Butterworth, linear phase: no member of the catalogue, and said so."""
+        """Gaussian, squared Butterworth, linear phase: no member of the catalogue, and said so."""
         found = verdict(numeric(case))
         assert not found
         assert found.verdict.startswith("none of these; nearest is ")

@@ -11,7 +11,10 @@ from typing import Final
 from symnet.shape.families.bessel import BESSEL
 from symnet.shape.families.butterworth import BUTTERWORTH
 from symnet.shape.families.chebyshev import CHEBYSHEV
+from symnet.shape.families.elliptic import ELLIPTIC, ELLIPTIC_B, ELLIPTIC_C
 from symnet.shape.families.family import Family, Parameter
+from symnet.shape.families.inverse_chebyshev import INVERSE_CHEBYSHEV
+from symnet.shape.families.legendre import LEGENDRE
 from symnet.shape.families.prototype import Prototype, Reference, Setting
 
 __all__ = [
@@ -23,4 +26,13 @@ __all__ = [
     "Setting",
 ]
 
-CATALOGUE: Final[tuple[Family, ...]] = (BUTTERWORTH, BESSEL, CHEBYSHEV)
+CATALOGUE: Final[tuple[Family, ...]] = (
+    BUTTERWORTH,
+    BESSEL,
+    LEGENDRE,
+    CHEBYSHEV,
+    INVERSE_CHEBYSHEV,
+    ELLIPTIC,
+    ELLIPTIC_B,
+    ELLIPTIC_C,
+)

@@ -101,6 +101,10 @@ class _Legendre(Family):
     name: ClassVar[str] = "Legendre-Papoulis"
     source: ClassVar[str] = "A. Papoulis, Proc. IRE 46 (1958), 606-609, and 47 (1959), 332-333"
 
+    def has_order(self, order: int) -> bool:
+        """Orders 1 and 2 are Butterworth, and are called so."""
+        return order >= 3
+
     def roots(self, order: int, values: tuple[float, ...]) -> Roots:
         """The square roots, in the left half plane, of the roots of an exact polynomial in s^2."""
         return _poles(order), ()

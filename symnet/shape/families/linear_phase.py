@@ -20,7 +20,7 @@ from symnet.shape.families.family import (
     member,
     with_conjugates,
 )
-from symnet.shape.families.phase_ripple import Swings, polished, swings
+from symnet.shape.families.phase_ripple import Swings, interpolated, polished, swings
 from symnet.shape.families.prototype import PHASE_EDGE, PHASE_LINE, Prototype, Reference
 
 __all__ = ["LINEAR_PHASE", "linear_phase"]
@@ -116,7 +116,7 @@ class _LinearPhase(Family):
 
     def near(self, order: int, values: tuple[float, ...]) -> Roots:
         """The same without the last digits."""
-        poles, _ = _points(swings(order, values[0]).x.tolist(), order)
+        poles, _ = _points(interpolated(order, values[0]).x.tolist(), order)
         return tuple(complex(*p) for p in poles), ()
 
     def points(self, m: Any, order: int, values: tuple[float, ...]) -> Points:

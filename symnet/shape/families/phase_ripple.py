@@ -8,7 +8,7 @@ move along.
 
 No closed form is known. What makes it work at every order and error: order n starts from order n - 2, whose poles
 keep their places seen from the edge while the spacing in the middle tends to pi (a uniform row of poles has a
-phase of uniform ripple); errors are reached from 0.5 degree in steps of 2, and between those steps by
+phase of uniform ripple); errors are reached from 0.5 degree in steps of 2^(1/4), and between those steps by
 interpolation in the logarithm of the error. The equations are as well conditioned as the error is large: about
 1e-16/error (in rad) is lost in doubles, so the last digits come from residuals in more digits (:func:`polished`),
 with the slopes still in doubles: each round adds ten digits or more.
@@ -26,15 +26,18 @@ from numpy.typing import NDArray
 
 from symnet.errors import UndefinedError
 
-__all__ = ["Swings", "polished", "swings"]
+__all__ = ["Swings", "interpolated", "polished", "swings"]
 
 Floats: TypeAlias = NDArray[np.float64]
 
 _FIRST_DEGREES: Final = 0.5
 _FIRST: Final = {2: ([1.245, 1.012], [0.7, 1.7]), 3: ([1.608, 1.3576, 2.2047], [0.51, 1.5, 2.29])}
-_DOUBLINGS: Final = (-10, 5)  # of 0.5 degree: 0.0005 to 16 degrees
+_PER_OCTAVE: Final = 4  # steps from one error to its double
+_NODES: Final = 10  # of an interpolation between the steps: 1e-12 of the poles
 _MOST_STEPS: Final = 40
 _NOISE: Final = 1e-13
+_CLOSE: Final = 3e-6  # a relative step after which the next one, about its square, is not needed
+_STILL: Final = 1e-7  # rad/s; an extreme that is so far off has the right height to 1e-14
 
 
 @dataclass(frozen=True, slots=True)
@@ -116,36 +119,54 @@ class Swings:
             at = np.clip(at - wrong / slope, low, high)
         return Swings(self.order, self.x, at)
 
+    def tracked(self) -> Swings | None:
+        """The same poles with the extremes that are near; None where they are not found one by one.
+
+        There are never more than n, since the delay is 1 where a polynomial of degree n in w^2 vanishes.
+        """
+        at = self.at
+        for _ in range(3):
+            wrong, slope = self.delay_error(at)
+            if not np.all(slope * _signs(self.order) < 0):
+                return None
+            move = wrong / slope
+            at = at - move
+            if at[0] <= 0 or not np.all(at[1:] > at[:-1]):
+                return None
+            if np.abs(move).max() < _STILL:
+                break
+        return Swings(self.order, self.x, at)
+
     def residual(self, height: float) -> Floats:
         """The errors at the extremes minus what they should be."""
         return self.error(self.at) - height * _signs(self.order)
 
 
+@lru_cache(maxsize=64)
 def _signs(order: int) -> Floats:
     return np.array([(-1.0) ** (order - 1 - i) for i in range(order)])
 
 
-def _newton(start: Swings, degrees: float) -> Swings:
-    """The member with that error, from one near to it."""
+def _newton(start: Swings | None, degrees: float) -> Swings:
+    """The member with that error, from one near to it with its extremes."""
     height = math.radians(degrees)
-    now = start.at_extremes()
-    size = math.inf
+    now = start
     for _ in range(_MOST_STEPS):
         if now is None:
             break
         residual = now.residual(height)
-        last, size = size, float(np.abs(residual).max())
-        if size <= _NOISE and size > last / 2:
-            return now
+        size = float(np.abs(residual).max())
         step = np.asarray(np.linalg.solve(now.slopes(), -residual), dtype=np.float64)
         length, found = 1.0, None
         while found is None and length > 1e-4:
-            found = now.moved(length * step).at_extremes()
+            found = now.moved(length * step).tracked()
             if found is not None and np.abs(found.residual(height)).max() > 2 * max(size, _NOISE):
                 found = None
             length /= 2
         now = found
-    raise UndefinedError(f"order {start.order} with a phase error of {degrees:g} deg was not reached")
+        if now is not None and np.abs(step / now.x).max() < _CLOSE:
+            return now
+    raise UndefinedError(f"a phase error of {degrees:g} deg was not reached")
 
 
 def _at_fixed_frequencies(start: Swings, height: float) -> Swings:
@@ -168,7 +189,7 @@ def _at_fixed_frequencies(start: Swings, height: float) -> Swings:
 def _first(order: int) -> Swings:
     """The member with an error of 0.5 degree."""
     if order in _FIRST:
-        return _newton(Swings(order, *map(np.array, _FIRST[order])), _FIRST_DEGREES)
+        return _newton(Swings(order, *map(np.array, _FIRST[order])).at_extremes(), _FIRST_DEGREES)
     smaller = _first(order - 2)
     (a, v), w = smaller.pairs, smaller.at
     spacing = 2.5 if order == 4 else 3.05 - 1.1 / order
@@ -183,29 +204,53 @@ def _first(order: int) -> Swings:
     ]
     at = np.array([1.04 * w[0], 3.1 * w[0], *(w + spacing)])
     rough = _at_fixed_frequencies(Swings(order, np.array(x), at), math.radians(_FIRST_DEGREES))
-    return _newton(rough, _FIRST_DEGREES)
-
-
-@lru_cache(maxsize=512)
-def _step(order: int, doublings: int) -> Swings:
-    """The member whose error is 0.5 degree times that power of 2."""
-    if doublings == 0:
-        return _first(order)
-    nearer = doublings - 1 if doublings > 0 else doublings + 1
-    return _newton(_step(order, nearer), _FIRST_DEGREES * 2.0**doublings)
+    return _newton(rough.at_extremes(), _FIRST_DEGREES)
 
 
 @lru_cache(maxsize=1024)
+def _step(order: int, i: int) -> Swings:
+    """The member whose error is 0.5 degree times 2^(i/4), from those before it by extrapolation."""
+    if i == 0:
+        return _first(order)
+    ahead = 1 if i > 0 else -1
+    before = [_step(order, i - ahead * k) for k in range(1, min(abs(i), 4) + 1)]
+    weights = [(-1) ** k * math.comb(len(before), k + 1) for k in range(len(before))]
+    x, at = (sum(c * part for c, part in zip(weights, parts, strict=True)) for parts in _parts(before))
+    start = Swings(order, np.asarray(x), np.asarray(at)).tracked()
+    return _newton(start or before[0], _degrees(i))
+
+
+def _parts(steps: list[Swings]) -> tuple[list[Floats], list[Floats]]:
+    return [step.x for step in steps], [step.at for step in steps]
+
+
+def _degrees(i: float) -> float:
+    return float(_FIRST_DEGREES * 2.0 ** (i / _PER_OCTAVE))
+
+
+@lru_cache(maxsize=1024)
+def _nodes(order: int, low: int) -> Floats:
+    """Poles and extremes of neighbouring steps, one row each."""
+    steps = (_step(order, i) for i in range(low, low + _NODES))
+    return np.array([np.concatenate([step.x, step.at]) for step in steps])
+
+
+def interpolated(order: int, degrees: float) -> Swings:
+    """The member of that order (2 or more) and error, to ten digits; errors from 0.001 to 5 degrees."""
+    place = _PER_OCTAVE * math.log2(degrees / _FIRST_DEGREES)
+    low = math.floor(place) - _NODES // 2 + 1
+    at = place - low
+    weights = np.array(
+        [math.prod((at - j) / (i - j) for j in range(_NODES) if j != i) for i in range(_NODES)]
+    )
+    found = weights @ _nodes(order, low)
+    return Swings(order, found[:order], found[order:])
+
+
+@lru_cache(maxsize=256)
 def swings(order: int, degrees: float) -> Swings:
-    """The member of that order (2 or more) and error, to ten digits or more; errors from 0.0005 to 16 degrees."""
-    doublings = math.log2(degrees / _FIRST_DEGREES)
-    low = min(max(math.floor(doublings) - 1, _DOUBLINGS[0]), _DOUBLINGS[1] - 3)
-    x = np.zeros(order)
-    for i in range(low, low + 4):  # cubic interpolation
-        others = [j for j in range(low, low + 4) if j != i]
-        weight = math.prod((doublings - j) / (i - j) for j in others)
-        x = x + weight * _step(order, i).x
-    return _newton(Swings(order, x, x), degrees)
+    """The same to the last digits that doubles give it."""
+    return _newton(interpolated(order, degrees).tracked(), degrees)
 
 
 def polished(m: Any, order: int, degrees: Any, near: Swings) -> list[Any]:
