@@ -30,10 +30,12 @@ from symnet.present.results import (
     transfer_blocks,
     transfer_formula,
 )
+from symnet.present.review import review_blocks
 from symnet.present.scaling import scaling_blocks
 from symnet.present.shapes import form_blocks, normal_blocks, sections_blocks
 from symnet.present.writers import formula_latex, html, latex, markdown, text
 from symnet.quantities import NUMBER
+from symnet.review.verdicts import Review
 from symnet.shape.difference import Comparison
 from symnet.shape.dominant import Dominant
 from symnet.shape.families.prototype import Prototype
@@ -150,6 +152,11 @@ def _split_poles(value: SplitPoles) -> Bundle:
 @formats(Scaling)
 def _scaling(value: Scaling) -> Bundle:
     return bundle(scaling_blocks(value))
+
+
+@formats(Review)
+def _review(value: Review) -> Bundle:
+    return bundle(review_blocks(value))
 
 
 @formats(Comparison)

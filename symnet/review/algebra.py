@@ -238,6 +238,11 @@ class Algebra:
         return self.space.unit(len(self.names) + self._radicands.index(radicand))
 
     @property
+    def roots(self) -> tuple[tuple[int, Polynomial], ...]:
+        """The monomial of each root so far, and what it is the root of."""
+        return tuple((self.space.unit(len(self.names) + k), p) for k, p in enumerate(self._radicands))
+
+    @property
     def radicands(self) -> tuple[Polynomial, ...]:
         """What the roots so far are roots of."""
         return tuple(self._radicands)
@@ -342,6 +347,13 @@ class Value:
             raise ZeroDivisionError
         algebra = self.algebra
         number, monomial, rest = algebra.space.content(self.numerator)
+        roots = [unit for unit, _ in algebra.roots if monomial // unit & 1]
+        if roots:  # 1/r is r/(r*r), so that no root stands below the fraction bar by itself
+            rooted, product = self, algebra.number(1)
+            for unit in roots:
+                rooted = rooted * Value(algebra, {unit: 1})
+                product = product * Value(algebra, {unit: 1})
+            return rooted.inverse() * product
         top: Polynomial = {self.monomial: self.number if number > 0 else -self.number}
         for factor, exponent in self.factors:
             for _ in range(exponent):

@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import TYPE_CHECKING
 
 from symnet.errors import Fault, LimitError, SingularError, SymnetError
-from symnet.expressions import Expression, children
+from symnet.expressions import Expression, Product, children
 from symnet.review.scope import Rounded, Scope
 from symnet.review.solution import ROUNDED
 
@@ -35,7 +35,7 @@ def value_of(
         raise _divides(scope, expression, of) from None
     except SymnetError as error:
         raise type(error)([fault.at(expression.span) for fault in error.faults]) from None
-    if any(is_zero(scope, factor) for factor, _ in value.factors):
+    if _divides_by_zero(scope, value):
         raise _divides(scope, expression, of)
     return value
 
@@ -51,6 +51,13 @@ def rounding(scope: Scope, text: str, *sides: Expression, of: Expression | None 
     return values
 
 
+def _divides_by_zero(scope: Scope, value: Value) -> bool:
+    """Whether the denominator is zero in the network, as that of out/m is where m is at virtual ground."""
+    return any(
+        is_zero(scope, factor) for factor in ({value.monomial: 1}, *(factor for factor, _ in value.factors))
+    )
+
+
 def _divides(scope: Scope, expression: Expression, of: Expression | None) -> SingularError:
     inner = expression
     while True:
@@ -58,7 +65,10 @@ def _divides(scope: Scope, expression: Expression, of: Expression | None) -> Sin
         if smaller is None:
             break
         inner = smaller
-    zero = next((child for child in children(inner) if _vanishes(scope, child, of)), inner)
+    below = children(inner)
+    if isinstance(inner, Product):
+        below = tuple(factor for power, factor in inner.factors if power < 0)
+    zero = next((child for child in below if _vanishes(scope, child, of)), inner)
     hint = "a difference that is zero here, such as that of an op amp's inputs, cannot be divided by"
     return SingularError(Fault("this divides by zero in this network", hint, zero.span or expression.span))
 
@@ -68,7 +78,7 @@ def _fails(scope: Scope, expression: Expression, of: Expression | None) -> bool:
         value = scope.value(expression, of)
     except ZeroDivisionError:
         return True
-    return any(is_zero(scope, factor) for factor, _ in value.factors)
+    return _divides_by_zero(scope, value)
 
 
 def _vanishes(scope: Scope, expression: Expression, of: Expression | None) -> bool:

@@ -8,6 +8,7 @@ from enum import Enum
 from typing import Final
 
 from symnet.circuit.network import Network
+from symnet.review.coefficients import Comparison
 from symnet.review.completeness import Completeness
 from symnet.review.polarity import Polarity
 from symnet.review.working import Line, Working
@@ -35,7 +36,7 @@ class Judgement:
     the verdict FALSE: in which the given values do not make it true). ``rounded`` says that the line is true to
     the digits it gives, and no further. ``link`` is the place of the first equals sign that does not hold, from 0.
     ``same_as`` is an earlier line that says the same; ``follows`` are the wrong lines that a false line follows from. ``jump`` marks a true line that does not follow from the lines above it.
-    ``note`` is what else there is to say, in a sentence.
+    ``note`` is what else there is to say, in a sentence. ``comparison`` holds the coefficients of a wrong H.
     """
 
     line: Line
@@ -47,6 +48,7 @@ class Judgement:
     follows: tuple[Line, ...] = ()
     jump: bool = False
     note: str = ""
+    comparison: Comparison | None = None
 
     @property
     def holds(self) -> bool:

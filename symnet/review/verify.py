@@ -2,18 +2,21 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass, field, replace
 from typing import TYPE_CHECKING
 
 from symnet.circuit.network import Network
 from symnet.circuit.reading import raise_all
 from symnet.errors import Fault, SymnetError
+from symnet.expressions import Name, Product
 from symnet.review.approximating import judge_approximation
 from symnet.review.checked import value_of
 from symnet.review.claims import gives_transfer, half_power_claim, judge_family, judge_half_power
+from symnet.review.coefficients import Comparison, compare_coefficients
 from symnet.review.completeness import completeness
 from symnet.review.following import Follower
-from symnet.review.judge import Judge
+from symnet.review.judge import Judge, Said
 from symnet.review.limiting import judge_limit
 from symnet.review.polarity import polarities
 from symnet.review.reading import read_working
@@ -34,6 +37,7 @@ from symnet.review.working import (
 
 if TYPE_CHECKING:
     from symnet.expressions import Expression
+    from symnet.review.algebra import Value
 
 __all__ = ["verify"]
 
@@ -78,6 +82,28 @@ class _Stage:
         judge = Judge(Scope(solution, definitions), text, numeric)
         return cls(judge, Follower(Rows(judge.scope)))
 
+    def replay(self, earlier: Sequence[Judgement]) -> None:
+        """Take in what was said before the assumption, as it reads under it."""
+        for judgement in earlier:
+            if isinstance(judgement.line.statement, Equation):
+                try:
+                    differences = self.judge.differences(judgement.line.statement)
+                except SymnetError:
+                    continue  # a figure that the network has no longer
+                self.judge.said.append(Said(judgement.line, differences))
+                self._take(judgement, differences)
+
+    def _take(self, judgement: Judgement, differences: Sequence[Value]) -> Judgement:
+        """A judgement with what follows from what, once the line is taken in."""
+        rows = [row for difference in differences if (row := self.follower.row(difference)) is not None]
+        if rows and judgement.verdict is not Verdict.VALUES:
+            self.said.append((judgement.line, rows[0]))
+        if not judgement.holds:
+            return replace(judgement, follows=self.follower.false(judgement.line, differences))
+        if judgement.verdict in {Verdict.IDENTITY, Verdict.NOTHING} and not judgement.rounded:
+            return replace(judgement, jump=self.follower.true(differences))
+        return judgement
+
     def judged(self, line: Line) -> Judgement:
         """The verdict on a line that is neither a definition nor an assumption."""
         match line.statement:
@@ -98,20 +124,21 @@ class _Stage:
     def _equation(self, line: Line, equation: Equation) -> Judgement:
         judgement = self.judge.equation(line, equation)
         differences = self.judge.said[-1].differences
-        rows = [row for difference in differences if (row := self.follower.row(difference)) is not None]
-        if rows and judgement.verdict is not Verdict.VALUES:
-            self.said.append((line, rows[0]))
-        if judgement.holds:
-            if judgement.verdict in {Verdict.IDENTITY, Verdict.NOTHING} and not judgement.rounded:
-                judgement = replace(judgement, jump=self.follower.true(differences))
-        else:
-            judgement = replace(judgement, follows=self.follower.false(line, differences))
-            if not judgement.follows:
-                judgement = self._of_claimed(line, judgement)
+        judgement = self._take(judgement, differences)
+        if not judgement.holds and not judgement.follows:
+            judgement = self._of_claimed(line, judgement)
+        if not judgement.holds and _is_transfer(equation):
+            judgement = replace(judgement, comparison=self._compared(equation))
         if gives_transfer(self.judge.scope, equation):
             root = judgement.follows[0] if judgement.follows else line
             self.claimed = None if judgement.holds else (root, equation.sides[-1])
         return judgement
+
+    def _compared(self, equation: Equation) -> Comparison | None:
+        try:
+            return compare_coefficients(self.judge.scope, equation.sides[0], equation.sides[-1])
+        except SymnetError:
+            return None  # too long, or figures that its order does not have: the verdict stands without it
 
     def _of_claimed(self, line: Line, judgement: Judgement) -> Judgement:
         """A false claim about H that is true of the wrong H of a line above."""
@@ -131,6 +158,14 @@ class _Stage:
         except SymnetError:
             return judgement
         return replace(judgement, follows=(root,)) if found.holds else judgement
+
+
+def _is_transfer(equation: Equation) -> bool:
+    """Whether a line says what H or the quotient of two voltages or currents is."""
+    left = equation.sides[0]
+    if equation.node is not None or equation.of is not None:
+        return False
+    return left == Name("H") or (isinstance(left, Product) and [p for p, _ in left.factors] == [1, -1])
 
 
 @dataclass
@@ -155,6 +190,7 @@ class _Reviewer:
                     case Assumption() as assumption:
                         network = given_network(stage.judge.scope.network, assumption)
                         stage = _Stage.of(network, self.definitions, self.working.text)
+                        stage.replay(judgements)
                         judgements.append(
                             Judgement(line, Verdict.IDENTITY, note="an assumption, taken as given")
                         )

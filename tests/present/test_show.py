@@ -33,6 +33,8 @@ RESULTS: dict[str, Any] = {
     "prototype": sn.bessel(4),
     "half power": f3db(H),
     "brief": sn.brief(NET),
+    "review": sn.verify(NET, "node x: (x - in)/R1 + s*C1*x = 0; p = out; out/in = 1/(1 + s*R1*C1); R1 = R2"),
+    "review in symbols": sn.verify(SYMBOLS, "R1 = R2; out/in = 1/(1 + s*C2*(R1 + R2) + s^2*R1*R2*C1*C2)"),
 }
 
 

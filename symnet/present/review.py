@@ -1,0 +1,125 @@
+"""A review as blocks: one verdict a line, then what is to be noted, then the full story of what does not hold."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from typing import TYPE_CHECKING, Final
+
+from symnet.circuit.spelling import write_expression
+from symnet.present.blocks import Block, Folded, Formula, Heading, Items, Line, Paragraph, Table
+from symnet.review.verdicts import Verdict
+from symnet.review.working import Equation
+from symnet.typeset.notation import tree_of
+from symnet.typeset.tree import Atom, Tree, power
+
+if TYPE_CHECKING:
+    from symnet.review.coefficients import Coefficient, Comparison
+    from symnet.review.verdicts import Judgement, Review
+
+__all__ = ["review_blocks"]
+
+_LONGEST: Final = 60  # characters of a line that a cell of the table shows typeset; longer ones are cut
+
+
+def review_blocks(review: Review) -> tuple[Block, ...]:
+    """The verdicts as a table, notes, and the story of every line that does not hold."""
+    rows = tuple((judgement.line.label, _said(judgement), _verdict(judgement)) for judgement in review)
+    blocks: list[Block] = [Paragraph(_summary(review)), Table(("line", "", "verdict"), rows)]
+    notes = tuple(_notes(review))
+    if notes:
+        blocks.append(Items(notes))
+    story = [block for judgement in review for block in _story(judgement)]
+    if story:
+        blocks.append(Folded("Coefficient by coefficient", tuple(story)))
+    return tuple(blocks)
+
+
+def _summary(review: Review) -> str:
+    wrong = [judgement for judgement in review if not judgement.holds]
+    if not len(review):
+        return "There is no line to check."
+    if not wrong:
+        return f"Every line holds ({len(review)} of {len(review)})."
+    own = [judgement.line.label for judgement in wrong if not judgement.follows]
+    text = f"The first line that does not hold is line {wrong[0].line.label}."
+    if len(own) > 1:
+        text += f" Wrong by themselves: lines {', '.join(own)}."
+    return text
+
+
+def _said(judgement: Judgement) -> Line:
+    """The line as it was typed, typeset where it is short enough for a cell."""
+    line = judgement.line
+    if isinstance(line.statement, Equation) and len(line.text) <= _LONGEST and line.statement.of is None:
+        pieces: list[str | Tree] = []
+        sides = line.statement.sides
+        if line.statement.node is not None:
+            pieces.append(f"node {line.statement.node}: ")
+        for k, side in enumerate(sides):
+            pieces += [" = "] * bool(k) + [tree_of(side)]
+        return tuple(pieces)
+    return line.text if len(line.text) <= _LONGEST else line.text[: _LONGEST - 3] + "..."
+
+
+def _verdict(judgement: Judgement) -> Line:
+    if judgement.verdict is not Verdict.CONDITION:
+        return str(judgement)
+    pieces: list[str | Tree] = ["true only if "]
+    for k, way in enumerate(judgement.conditions):
+        pieces += [" or "] * bool(k)
+        for j, (name, tree) in enumerate(way.values):
+            pieces += [" and "] * bool(j) + [Atom(name), " = ", tree]
+        for j, (left, sign, right) in enumerate(way.relations):
+            pieces += [" and "] * bool(j or way.values) + [left, f" {sign} ", right]
+    if judgement.follows:
+        pieces.append(f"; follows from line {judgement.follows[0].label}")
+    return tuple(pieces)
+
+
+def _notes(review: Review) -> Iterator[Line]:
+    for judgement in review:
+        if judgement.jump:
+            yield f"line {judgement.line.label} is true, but does not follow from the lines above it: a step is left out"
+    if review.completeness is not None:
+        yield str(review.completeness)
+    for polarity in review.polarity:
+        yield str(polarity)
+    if any(judgement.verdict is Verdict.CONDITION for judgement in review):
+        yield "conditions are for positive parts"
+    if any(judgement.jump or judgement.follows for judgement in review) or review.completeness is not None:
+        yield "what follows from what was decided by rank at a random point modulo 2^61 - 1; the verdicts are exact"
+
+
+def _story(judgement: Judgement) -> Iterator[Block]:
+    if judgement.comparison is None:
+        return
+    yield Heading(f"Line {judgement.line.label}")
+    yield _coefficients(judgement.comparison)
+    yield Paragraph("Right, in the form of the line:")
+    left = judgement.line.statement.sides[0] if isinstance(judgement.line.statement, Equation) else None
+    name = Atom(write_expression(left)) if left is not None else Atom("H")
+    yield Formula((name, judgement.comparison.exact))
+
+
+def _coefficients(comparison: Comparison) -> Table:
+    rows = tuple(
+        (
+            coefficient.side,
+            power(Atom("s"), coefficient.power),
+            coefficient.claimed,
+            coefficient.exact,
+            _remark(coefficient),
+        )
+        for coefficient in comparison.coefficients
+    )
+    return Table(("", "of", "claimed", "right", "remark"), rows)
+
+
+def _remark(coefficient: Coefficient) -> Line:
+    if coefficient.agrees:
+        return "agrees"
+    pieces: list[str | Tree] = []
+    for word, terms in (("missing: ", coefficient.missing), ("too many: ", coefficient.extra)):
+        for k, term in enumerate(terms):
+            pieces += [("; " if pieces else "") + word if not k else ", ", term]
+    return tuple(pieces)
