@@ -1,9 +1,9 @@
 """A second, independent route to H: the modified nodal equations, solved modulo a large prime.
 
-At a random point every name and s are integers modulo 2^61 - 1; the equations of :mod:`symnet.exact.mna` are
-solved there by elimination and the result is compared with H. A wrong H of degree d agrees at one point with
-probability at most d/2^61 (J. T. Schwartz, J. ACM 27, 1980); the points are independent. Stamping, elimination
-and the reading of laws share no code with the determinants.
+At a random point every name and s are integers modulo 2^127 - 1; the equations of :mod:`symnet.exact.mna` are
+solved there by elimination and the result is compared with H. A wrong H of degree d agrees there with probability
+at most d/2^127 (J. T. Schwartz, J. ACM 27, 1980). Stamping, elimination and the reading of laws share no code
+with the determinants.
 """
 
 from __future__ import annotations
@@ -23,7 +23,7 @@ from symnet.exact.modular import PRIME, SMALL_PRIME, Residue, terms_at
 from symnet.exact.polynomials import modulo
 
 if TYPE_CHECKING:
-    from collections.abc import Mapping
+    from collections.abc import Callable, Mapping
 
     from symnet.circuit.network import Network
     from symnet.circuit.parts import Drive
@@ -33,8 +33,7 @@ if TYPE_CHECKING:
 
 __all__ = ["Confirmation", "UnconfirmedError", "confirm", "random_point", "solve_at", "undetermined"]
 
-_POINTS: Final = 2
-_MOST_TRIES: Final = 20
+_MOST_TRIES: Final = 4
 #: Terms up to which the polynomials as written out are compared, and not the diagrams they come from.
 _MOST_TERMS_COMPARED: Final = 500
 
@@ -45,65 +44,58 @@ class UnconfirmedError(SymnetError, AssertionError):
 
 @dataclass(frozen=True, slots=True)
 class Confirmation:
-    """How an H was confirmed: the route, the number of random points, the largest degree in question."""
+    """How an H was confirmed: the route, and the largest degree in question."""
 
-    points: int
     degree: int
     what: str
 
     @property
     def short(self) -> str:
-        """Two words for a repr."""
-        return f"confirmed at {self.points} points mod p"
+        """A few words for a repr."""
+        return "confirmed mod 2^127 - 1"
 
     @property
     def exponent(self) -> int:
         """A wrong H passes with a probability below 10 to the minus this."""
-        return int(self.points * (log10(PRIME) - log10(max(1, self.degree))))
+        return int(log10(PRIME) - log10(max(1, self.degree)))
 
     def __str__(self) -> str:
         return (
-            f"{self.what} agree with the nodal equations, solved by elimination modulo 2^61 - 1, at {self.points} "
-            f"random points (a wrong H passes with probability below 1e-{self.exponent})"
+            f"{self.what} agree with the nodal equations, solved by elimination modulo 2^127 - 1, at a random "
+            f"point (a wrong H passes with probability below 1e-{self.exponent})"
         )
 
 
 def confirm(
     network: Network, naming: Naming, drive: Drive, read: Expression, quotient: Quotient
 ) -> Confirmation:
-    """Compare a quotient with the solution of the nodal equations at random points modulo a prime.
+    """Compare a quotient with the solution of the nodal equations at a random point modulo a prime.
 
     Raises :class:`UnconfirmedError` when they differ, and SingularError when the equations have no single solution.
     """
-    most = max(quotient.terms)
-    written_out = most <= _MOST_TERMS_COMPARED
-    what = "N and D as written out" if written_out else "the determinants, not written out,"
     place = network.drives.index(drive)
-    done = 0
     for trial in range(_MOST_TRIES):
-        point = random_point(naming, trial)
-        solved = solve_at(network, naming, place, trial)
-        if solved is None:
-            continue
-        system, solution = solved
-        weights = system.weights(read)
-        expected = sum(weight.value * solution[k] for k, weight in weights.items())
-        if written_out:
-            lowest = quotient.lowest
-            n, d = (modulo(p, point, PRIME) for p in (lowest.numerator, lowest.denominator))
-        else:
-            n, d = quotient.modulo(point, PRIME)
-            if not done and quotient.is_writable:
-                _compare_written_out(quotient, [value % SMALL_PRIME for value in point])
-                what = "N and D, compared as determinants and (once, modulo 2^31 - 1) as written out,"
-        if (n - expected * d) % PRIME or not d:
-            raise UnconfirmedError(_disagreement())
-        done += 1
-        if done == _POINTS:
+        point, solved = random_point(naming, trial), solve_at(network, naming, place, trial)
+        if solved is not None:
             break
     else:
         raise SingularError(undetermined(network, naming))
-    return Confirmation(_POINTS, _degree(network, quotient, written_out=written_out), what)
+    system, solution = solved
+    expected = sum(weight.value * solution(k) for k, weight in system.weights(read).items())
+    written_out = max(quotient.terms) <= _MOST_TERMS_COMPARED
+    if written_out:
+        what = "N and D as written out"
+        lowest = quotient.lowest
+        n, d = (modulo(p, point, PRIME) for p in (lowest.numerator, lowest.denominator))
+    else:
+        what = "the determinants, not written out,"
+        n, d = quotient.modulo(point, PRIME)
+        if quotient.is_writable:
+            _compare_written_out(quotient, [value % SMALL_PRIME for value in point])
+            what = "N and D, compared as determinants and (modulo 2^31 - 1) as written out,"
+    if (n - expected * d) % PRIME or not d:
+        raise UnconfirmedError(_disagreement())
+    return Confirmation(_degree(network, quotient, written_out=written_out), what)
 
 
 def _compare_written_out(quotient: Quotient, point: list[int]) -> None:
@@ -142,7 +134,8 @@ def _at(network: Network, naming: Naming, point: list[int]) -> Stamped:
         if word in values:
             return values[word]
         numerator, denominator = (terms_at(side, point, PRIME) for side in naming.terms(word))
-        return Residue(numerator) / Residue(denominator)
+        value = values[word] = Residue(numerator) / Residue(denominator)
+        return value
 
     def number(given: Fraction) -> Residue:
         return Residue.of(given.numerator, given.denominator)
@@ -157,8 +150,10 @@ def random_point(naming: Naming, trial: int) -> list[int]:
 
 
 @lru_cache(maxsize=32)
-def solve_at(network: Network, naming: Naming, drive: int, trial: int) -> tuple[Stamped, list[int]] | None:
-    """The equations and their solution for one drive of value 1 at that random point; None where they are singular."""
+def solve_at(
+    network: Network, naming: Naming, drive: int, trial: int
+) -> tuple[Stamped, Callable[[int], int]] | None:
+    """The equations at that random point and what each unknown is for one drive of value 1; None where singular."""
     try:
         system = _at(network, naming, random_point(naming, trial))
     except ZeroDivisionError:
@@ -171,14 +166,20 @@ def solve_at(network: Network, naming: Naming, drive: int, trial: int) -> tuple[
     pivots = _eliminate(rows, size)
     if len(pivots) < size:
         return None
-    return system, [rows[pivots[k]].get(size, 0) for k in range(size)]
+
+    def unknown(k: int) -> int:
+        row = rows[pivots[k]]
+        return (Residue(row.get(size, 0)) / Residue(row[k])).value
+
+    return system, unknown
 
 
 def _eliminate(rows: list[dict[int, int]], size: int) -> dict[int, int]:
     """Reduce sparse augmented rows in place, modulo the prime, until each pivot column has one entry.
 
     Returns the row of each pivot column. The row with the fewest entries is taken next, and in it the column
-    with the fewest: long networks fill in little, and are solved in time that grows with their length.
+    with the fewest: long networks fill in little, and are solved in time that grows with their length. Rows are
+    multiplied across, since a product costs far less than an inverse.
     """
     where: list[set[int]] = [set() for _ in range(size + 1)]
     for r, row in enumerate(rows):
@@ -198,11 +199,11 @@ def _eliminate(rows: list[dict[int, int]], size: int) -> dict[int, int]:
             continue
         column = min(candidates, key=lambda k: (len(where[k]), k))
         pivots[column] = r
-        inverse = pow(rows[r][column], -1, PRIME)
-        pivot = rows[r] = {k: value * inverse % PRIME for k, value in rows[r].items()}
+        pivot = rows[r]
+        head = pivot[column]
         for other in sorted(where[column] - {r}):
-            row = rows[other]
-            factor = row[column]
+            factor = rows[other][column]
+            row = rows[other] = {k: value * head % PRIME for k, value in rows[other].items()}
             for k, value in pivot.items():
                 left = (row.get(k, 0) - factor * value) % PRIME
                 if left:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable
 from dataclasses import replace
 from functools import lru_cache
+from random import Random
 
 from symnet.circuit.network import Network
 from symnet.circuit.parts import GROUND, CurrentDrive, Drive
@@ -13,6 +14,7 @@ from symnet.errors import Fault, NotationError, SingularError, WiringError, near
 from symnet.exact.confirm import confirm, undetermined
 from symnet.exact.determinant import Determinant
 from symnet.exact.modular import PRIME
+from symnet.exact.ordering import frontier_order
 from symnet.exact.pieces import Pieces, named_currents
 from symnet.exact.polynomials import ONE, negated
 from symnet.exact.quotient import Quotient
@@ -118,7 +120,7 @@ def derive_from(
         for name in kept:
             if name not in known:
                 raise network.unknown(name, known, "part or symbol")
-    pieces, quotient = quotient_of(network, drive, read, kept)
+    pieces, quotient = _quotient(network, drive, read, kept)
     return Transfer(
         network,
         drive,
@@ -136,13 +138,29 @@ def quotient_of(
 ) -> tuple[Pieces, Quotient]:
     """The two determinants of H, and the pieces they are made of, not confirmed and not in lowest terms.
 
-    Reads without currents of branches share their denominator, which is the same object.
+    Reads without currents of branches share their denominator, which is the same object. Raises SingularError
+    where it is zero for all values.
     """
-    pieces, denominator = _prepared(network, symbols, named_currents(network, read))
+    pieces, quotient = _quotient(network, drive, read, symbols)
+    random = Random("zero")
+    point = [random.randrange(1, PRIME) for _ in pieces.naming.generators.names]
+    if not quotient.denominator.modulo(point, PRIME):
+        raise SingularError(undetermined(network, pieces.naming))
+    return pieces, quotient
+
+
+def _quotient(
+    network: Network, drive: Drive, read: Expression, symbols: frozenset[str] | None
+) -> tuple[Pieces, Quotient]:
+    """The same, the denominator not looked at."""
+    pieces, order, denominator = _prepared(network, symbols, named_currents(network, read))
     factor, terms = pieces.form(read, "the read")
     border = [(Piece(pieces.size, None, plus, minus), weight) for weight, plus, minus in terms]
     border.append((Piece(*pieces.drive_rows(drive), pieces.size, None), negated(ONE)))
-    numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _ in border)))
+    own = len(pieces.pieces)
+    # what the border merges is merged first: from there on the order that suits D suits N
+    order = (*range(own, own + len(border)), *order)
+    numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _ in border)), order)
     takes = (*pieces.take, *(take for _, take in border))
     leaves = (*pieces.leave, *(ONE for _ in border))
     return pieces, Quotient(
@@ -154,27 +172,15 @@ def quotient_of(
 @lru_cache(maxsize=16)
 def _prepared(
     network: Network, symbols: frozenset[str] | None, currents: frozenset[str]
-) -> tuple[Pieces, Determinant]:
-    """What every drive and read of a network shares: its pieces and its determinant."""
+) -> tuple[Pieces, tuple[int, ...], Determinant]:
+    """What every drive and read of a network shares: its pieces, the order in which they are decided, D."""
     check_wiring(network)
     pieces = Pieces.of(network, symbols, currents)
-    determinant = Determinant(
-        pieces.naming.generators, build(pieces.size, pieces.pieces), pieces.take, pieces.leave
-    )
-    if determinant.diagram.is_zero or _vanishes(determinant):
+    order = frontier_order(pieces.size, pieces.pieces)
+    diagram = build(pieces.size, pieces.pieces, order)
+    if diagram.is_zero:
         raise SingularError(undetermined(network, pieces.naming))
-    return pieces, determinant
-
-
-def _vanishes(determinant: Determinant) -> bool:
-    """Whether the determinant is zero at two random points: for all purposes, identically."""
-    from random import Random
-
-    random = Random("zero")
-    count = len(determinant.generators)
-    return not any(
-        determinant.modulo([random.randrange(1, PRIME) for _ in range(count)], PRIME) for _ in range(2)
-    )
+    return pieces, tuple(order), Determinant(pieces.naming.generators, diagram, pieces.take, pieces.leave)
 
 
 def _read(network: Network, text: str) -> Expression:

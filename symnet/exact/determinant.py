@@ -16,10 +16,13 @@ from math import lcm, prod
 from typing import Any, Final
 
 from symnet.errors import Fault, LimitError
-from symnet.exact.expansion import Expansion, Primitive, expand_terms
+from symnet.exact.digits import packed, unpacked
+from symnet.exact.expansion import Expansion, Primitive
+from symnet.exact.kinds import Kinds
 from symnet.exact.modular import terms_at
 from symnet.exact.polynomials import ONE, Generators, Terms, highest_exponents
 from symnet.exact.trees import Diagram
+from symnet.exact.unfolding import unfold
 
 __all__ = ["MOST_TERMS", "Determinant", "count_in_words", "numeric_pair", "pair_modulo"]
 
@@ -46,11 +49,23 @@ class Determinant:
     def terms(self) -> int:
         """An upper bound of the number of terms written out, known without expanding.
 
-        The smaller of the number of paths, exact when every piece has a symbol of its own, and the number of
-        monomials that the degrees leave room for, which is small when parts are tied.
+        The smallest of the number of paths, exact when every piece has a symbol of its own, the number of monomials
+        that the degrees leave room for, and, where parts are equal, the number of ways to count them.
         """
         degrees = highest_exponents(len(self.generators), self.take, self.leave)
-        return min(self.diagram.count(), prod(degree + 1 for degree in degrees))
+        bound = min(self.paths, prod(degree + 1 for degree in degrees))
+        return len(self.factor) * (bound if self.kinds is None else min(bound, self.kinds.counts))
+
+    @cached_property
+    def paths(self) -> int:
+        """The number of paths of the diagram."""
+        return self.diagram.count()
+
+    @cached_property
+    def kinds(self) -> Kinds | None:
+        """The pieces by kind, where equal parts make it worth while to count them; else None."""
+        kinds = Kinds.of(self.diagram, self.take, self.leave)
+        return kinds if kinds is not None and kinds.is_short(self.paths) else None
 
     @cached_property
     def primitive(self) -> Primitive:
@@ -72,7 +87,9 @@ class Determinant:
                     'derive(net, symbols="R1 C1")',
                 )
             )
-        return expand_terms(self.diagram, len(self.generators), self.factor, self.take, self.leave)
+        if self.kinds is not None:
+            return self.kinds.expansion(len(self.generators), self.factor, self.paths)
+        return unfold(self.diagram, len(self.generators), self.factor, self.take, self.leave)
 
     def modulo(self, point: Sequence[Any], prime: int) -> Any:
         """The value at a point (s first, then the names in order), modulo a prime."""
@@ -143,32 +160,9 @@ def _polynomial(
 ) -> list[int]:
     bound = diagram.bound(list(map(_size, takes)), list(map(_size, leaves))) * _size(factor)
     bits = bound.bit_length() + 2
-    value = diagram.evaluate([_packed(w, bits) for w in takes], [_packed(w, bits) for w in leaves])
-    return _unpacked(value * _packed(factor, bits), bits)
+    value = diagram.evaluate([packed(w, bits) for w in takes], [packed(w, bits) for w in leaves])
+    return unpacked(value * packed(factor, bits), bits)
 
 
 def _size(coefficients: list[int]) -> int:
     return sum(map(abs, coefficients))
-
-
-def _packed(coefficients: list[int], bits: int) -> int:
-    return sum(c << (bits * k) for k, c in enumerate(coefficients))
-
-
-def _unpacked(value: int, bits: int) -> list[int]:
-    """The signed digits of an integer in base 2^bits, each below half the base in magnitude."""
-    if not value:
-        return []
-    count = abs(value).bit_length() // bits + 2
-    half, base = 1 << (bits - 1), 1 << bits
-    shifted = value + sum(half << (bits * k) for k in range(count))
-    size = (bits * count) // 8 + 16
-    data = shifted.to_bytes(size, "little")
-    out = []
-    for k in range(count):
-        start = bits * k
-        chunk = int.from_bytes(data[start // 8 : (start + bits + 15) // 8], "little") >> (start % 8)
-        out.append((chunk & (base - 1)) - half)
-    while out and not out[-1]:
-        out.pop()
-    return out

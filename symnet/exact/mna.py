@@ -120,11 +120,12 @@ def stamp(network: Network, arithmetic: Arithmetic) -> Stamped:
         if isinstance(part, Branch) and part.name not in carried:
             value = arithmetic.name(part.name)
             admittance = {"R": lambda v: one / v, "C": lambda v: s * v, "Y": lambda v: v}[part.kind](value)
+            mutual = -admittance
             a, b = ("v", part.start), ("v", part.end)
             add(a, a, admittance)
             add(b, b, admittance)
-            add(a, b, -admittance)
-            add(b, a, -admittance)
+            add(a, b, mutual)
+            add(b, a, mutual)
     for part in network.parts:
         if isinstance(part, VoltageLaw | CurrentLaw):
             for unknown, weight in _weights(network, arithmetic, part.value, place).items():

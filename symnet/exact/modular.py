@@ -13,8 +13,9 @@ if TYPE_CHECKING:
 
 __all__ = ["PRIME", "SMALL_PRIME", "Residue", "gcd_modulo", "interpolate", "terms_at", "weight_at"]
 
-#: A Mersenne prime: random points modulo it miss a wrong polynomial of degree d with probability d / 2^61.
-PRIME: Final = 2**61 - 1
+#: A Mersenne prime: a random point modulo it misses a wrong polynomial of degree d with probability d / 2^127. One
+#: point is so worth two modulo a prime of one machine word, at half the work: what costs time is not the digits.
+PRIME: Final = 2**127 - 1
 #: The largest prime whose products fit into 64-bit signed integers, so that numpy carries whole vectors.
 SMALL_PRIME: Final = 2**31 - 1
 

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from heapq import heappop, heappush
+from heapq import heapify, heappop, heappush
 from typing import TYPE_CHECKING
 
 if TYPE_CHECKING:
@@ -17,47 +17,76 @@ def frontier_order(size: int, pieces: Sequence[Piece]) -> list[int]:
 
     Greedy: again and again, close the row or column whose remaining pieces open the fewest new ones (ties: the
     one with fewest remaining pieces, then one that is open already, then the lowest number). The currents of
-    ideal sources, which one piece alone touches, are so decided first, and cost nothing.
+    ideal sources, which one piece alone touches, are so decided first, and cost nothing. A row and a column that
+    the same pieces touch, as at every node of R, L and C, are one site that counts twice.
     """
-    touched: list[tuple[int, ...]] = []
-    for piece in pieces:
-        sites = [end for end in (piece.row_plus, piece.row_minus) if end is not None]
-        sites += [size + end for end in (piece.column_plus, piece.column_minus) if end is not None]
-        touched.append(tuple(dict.fromkeys(sites)))
-    remaining: list[set[int]] = [set() for _ in range(2 * size)]
-    for index, touching in enumerate(touched):
-        for site in touching:
-            remaining[site].add(index)
-    is_open = [False] * (2 * size)
-    todo = {site for site in range(2 * size) if remaining[site]}
+    sites, counts = _sites(size, pieces)
+    touched: list[list[int]] = [[] for _ in pieces]
+    for site, touching in enumerate(sites):
+        for index in touching:
+            touched[index].append(site)
+    is_open = [False] * len(sites)
     order = [index for index, touching in enumerate(touched) if not touching]
 
     def price(site: int) -> tuple[int, int, bool, int]:
-        opened = {other for index in remaining[site] for other in touched[index]}
-        new = sum(1 for other in opened if not is_open[other] and other != site)
-        closed = sum(1 for other in opened if remaining[other] <= remaining[site])
-        return (new - closed, len(remaining[site]), not is_open[site], site)
+        rest = sites[site]
+        opened = {site}
+        for index in rest:
+            opened.update(touched[index])
+        balance = 0
+        for other in opened:
+            if not is_open[other]:
+                balance += counts[other] - (other == site)
+            left = sites[other]
+            if len(left) <= len(rest) and left <= rest:
+                balance -= counts[other]
+        return balance, len(rest), not is_open[site], site
 
-    prices = {site: price(site) for site in sorted(todo)}
-    waiting = sorted((cost, site) for site, cost in prices.items())
+    todo = {site for site, touching in enumerate(sites) if touching}
+    prices = {site: price(site) for site in todo}
+    waiting = list(prices.values())
+    heapify(waiting)
     while todo:
-        cost, site = heappop(waiting)
+        cost = heappop(waiting)
+        site = cost[-1]
         if site not in todo or prices[site] != cost:
             continue  # a price that has changed since
         affected: set[int] = set()
-        for index in sorted(remaining[site]):
+        for index in sorted(sites[site]):
             order.append(index)
             for other in touched[index]:
                 is_open[other] = True
                 affected.add(other)
                 if other != site:
-                    remaining[other].discard(index)
-        remaining[site].clear()
-        todo -= {other for other in affected if not remaining[other]}
-        neighbours = {o for other in affected for index in remaining[other] for o in touched[index]}
+                    sites[other].discard(index)
+        sites[site].clear()
+        todo.difference_update([other for other in affected if not sites[other]])
+        neighbours = {other for near in affected for index in sites[near] for other in touched[index]}
         for other in (affected | neighbours) & todo:
             cost = price(other)
             if cost != prices[other]:
                 prices[other] = cost
-                heappush(waiting, (cost, other))
+                heappush(waiting, cost)
     return order
+
+
+def _sites(size: int, pieces: Sequence[Piece]) -> tuple[list[set[int]], list[int]]:
+    """The pieces that touch each row and then each column, and how many of these a site stands for.
+
+    A column that the same pieces touch as the row of its number is left to that row.
+    """
+    rows: list[set[int]] = [set() for _ in range(size)]
+    columns: list[set[int]] = [set() for _ in range(size)]
+    for index, piece in enumerate(pieces):
+        for sites, ends in (
+            (rows, (piece.row_plus, piece.row_minus)),
+            (columns, (piece.column_plus, piece.column_minus)),
+        ):
+            for end in ends:
+                if end is not None:
+                    sites[end].add(index)
+    counts = [1] * (2 * size)
+    for k in range(size):
+        if rows[k] == columns[k]:
+            columns[k], counts[k] = set(), 2
+    return rows + columns, counts

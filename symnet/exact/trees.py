@@ -28,10 +28,10 @@ Invariants:
 from __future__ import annotations
 
 from bisect import bisect_left
-from collections.abc import Sequence
+from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
 from functools import cached_property
-from typing import TYPE_CHECKING, Any, TypeAlias
+from typing import TYPE_CHECKING, Any, NamedTuple, TypeAlias
 
 from symnet.exact.ordering import frontier_order
 
@@ -41,14 +41,12 @@ if TYPE_CHECKING:
 
 __all__ = ["Diagram", "Level", "Piece", "build"]
 
-State: TypeAlias = tuple[int, ...]
-_Moves: TypeAlias = tuple[State | None, State | None, int]
+State: TypeAlias = str
 
 _DEAD = -1
 
 
-@dataclass(frozen=True, slots=True)
-class Piece:
+class Piece(NamedTuple):
     """One rank-one piece: row ends (+, -) and column ends (+, -); None is gnd, where nothing is counted."""
 
     row_plus: int | None
@@ -120,12 +118,10 @@ class Diagram:
 
     def count(self) -> int:
         """The number of paths, without expanding: the number of terms when every piece has its own symbol."""
-        counts = [0] * (len(self.piece) + 1)
-        counts[-1] = 1
-        for k in range(len(self.piece) - 1, -1, -1):
-            leave, take = self.leave[k], self.take[k]
-            counts[k] = (counts[leave] if leave >= 0 else 0) + (counts[take] if take >= 0 else 0)
-        return counts[self.root] if self.root >= 0 else 0
+        counts = self._row(1, 0)
+        for k, _, leave, take, _ in self._upwards():
+            counts[k] = counts[leave] + counts[take]
+        return int(counts[self.root])
 
     def evaluate(self, take: Sequence[Any], leave: Sequence[Any], one: Any = 1) -> Any:
         """The determinant with these weights, in any arithmetic that knows ``+``, unary ``-`` and ``*``.
@@ -135,16 +131,12 @@ class Diagram:
         """
         if self.root < 0:
             return one * 0
-        values: list[Any] = [None] * (len(self.piece) + 1)
-        values[-1] = one
-        for k in range(len(self.piece) - 1, -1, -1):
-            i, to_leave, to_take = self.piece[k], self.leave[k], self.take[k]
-            total = None
-            if to_leave >= 0:
-                total = leave[i] * values[to_leave]
+        values = self._row(one, None)
+        for k, i, to_leave, to_take, sign in self._upwards():
+            total = leave[i] * values[to_leave] if to_leave >= 0 else None
             if to_take >= 0:
                 product = take[i] * values[to_take]
-                if self.sign[k] < 0:
+                if sign < 0:
                     product = -product
                 total = product if total is None else total + product
             values[k] = total
@@ -152,29 +144,43 @@ class Diagram:
 
     def bound(self, take: Sequence[int], leave: Sequence[int]) -> int:
         """The determinant with every sign plus: for magnitudes of weights, a bound on its magnitude."""
-        if self.root < 0:
-            return 0
-        values = [0] * (len(self.piece) + 1)
-        values[-1] = 1
-        for k in range(len(self.piece) - 1, -1, -1):
-            i, to_leave, to_take = self.piece[k], self.leave[k], self.take[k]
-            total = leave[i] * values[to_leave] if to_leave >= 0 else 0
-            values[k] = total + take[i] * values[to_take] if to_take >= 0 else total
-        return values[self.root]
+        values = self._row(1, 0)
+        for k, i, to_leave, to_take, _ in self._upwards():
+            values[k] = leave[i] * values[to_leave] + take[i] * values[to_take]
+        return int(values[self.root])
 
     def evaluate_modulo(self, take: Sequence[Any], leave: Sequence[Any], prime: int) -> Any:
         """The determinant modulo a prime; weights are ints, or int64 arrays if the prime is below 2^31."""
-        if self.root < 0:
-            return (take[0] if take else 0) * 0
-        values: list[Any] = [None] * (len(self.piece) + 1)
-        values[-1] = 1
-        for k in range(len(self.piece) - 1, -1, -1):
-            i, to_leave, to_take = self.piece[k], self.leave[k], self.take[k]
-            total = leave[i] * values[to_leave] % prime if to_leave >= 0 else 0
-            if to_take >= 0:
-                total = (total + self.sign[k] * (take[i] * values[to_take] % prime)) % prime
-            values[k] = total
+        signed = {1: take, -1: [prime - weight for weight in take]}
+        # of every R, L and C one of the two weights is 1
+        free_to_leave, free_to_take = ([_is_one(weight) for weight in side] for side in (leave, take))
+        values = self._row(1, 0)
+        for k, i, to_leave, to_take, sign in self._upwards():
+            left = values[to_leave] if free_to_leave[i] else leave[i] * values[to_leave]
+            if sign > 0 and free_to_take[i]:
+                values[k] = (left + values[to_take]) % prime
+            else:
+                values[k] = (left + signed[sign][i] * values[to_take]) % prime
         return values[self.root] * self.overall % prime
+
+    def _row(self, one: Any, nothing: Any) -> list[Any]:
+        """A value for every node, for the end, and last, where -1 points to, for what is not there."""
+        return [nothing] * len(self.piece) + [one, nothing]
+
+    def _upwards(self) -> Iterator[tuple[int, int, int, int, int]]:
+        """Number, piece, leave, take and sign of every node, children first."""
+        return zip(
+            range(len(self.piece) - 1, -1, -1),
+            reversed(self.piece),
+            reversed(self.leave),
+            reversed(self.take),
+            reversed(self.sign),
+            strict=True,
+        )
+
+
+def _is_one(weight: object) -> bool:
+    return isinstance(weight, int) and weight == 1
 
 
 def build(size: int, pieces: Sequence[Piece], order: Sequence[int] | None = None) -> Diagram:
@@ -184,67 +190,118 @@ def build(size: int, pieces: Sequence[Piece], order: Sequence[int] | None = None
     """
     if order is None:
         order = frontier_order(size, pieces)
-    rows = _Side(size, [(pieces[i].row_plus, pieces[i].row_minus) for i in order])
-    columns = _Side(size, [(pieces[i].column_plus, pieces[i].column_minus) for i in order])
+    rows = _Side(size, [(pieces[i].row_plus, pieces[i].row_minus) for i in order], 0)
+    columns = _Side(size, [(pieces[i].column_plus, pieces[i].column_minus) for i in order], size + 1)
     if rows.untouched or columns.untouched:
         return Diagram((), (), (), (), 0 if size == 0 else _DEAD)
-
     grown = _Growing()
-    states: list[tuple[State, State]] = [((), ())]
-    twins = _first_twin_level(rows, columns)
-    for level, index in enumerate(order):
-        rows.enter(level)
-        columns.enter(level)
-        if level >= twins and rows.open == columns.open and all(row == column for row, column in states):
-            parity = rows.parity * columns.parity
-            return _pruned(_grow_twins(grown, rows, [row for row, _ in states], order, level), parity)
-        row_moves: dict[State, _Moves] = {}
-        column_moves: dict[State, _Moves] = {}
-        following: dict[tuple[State, State], int] = {}
-        for row_state, column_state in states:
-            row = row_moves.get(row_state)
-            if row is None:
-                row = row_moves[row_state] = rows.moves(row_state)
-            column = column_moves.get(column_state)
-            if column is None:
-                column = column_moves[column_state] = columns.moves(column_state)
-            left = None if row[0] is None or column[0] is None else (row[0], column[0])
-            taken = None if row[1] is None or column[1] is None else (row[1], column[1])
-            grown.add(index, left, taken, row[2] * column[2], following)
-        states = list(following)
-        if not states:
-            return Diagram((), (), (), (), _DEAD)
+    level, states = _grow_pairs(grown, rows, columns, order)
+    if not states:
+        return Diagram((), (), (), (), _DEAD)
+    _grow_twins(grown, rows, states, order, level)
     return _pruned(grown, rows.parity * columns.parity)
 
 
-def _grow_twins(
-    grown: _Growing, side: _Side, states: list[State], order: Sequence[int], level: int
-) -> _Growing:
+def _grow_pairs(
+    grown: _Growing, rows: _Side, columns: _Side, order: Sequence[int]
+) -> tuple[int, list[State]]:
+    """The levels down to that from which on rows and columns are twins; gives it and the states of the rows there.
+
+    A state is that of the rows with that of the columns behind it. With it goes the set of the rows and columns
+    alive, as bits: a position is the number of bits below.
+    """
+    twins = _first_twin_level(rows, columns)
+    first_column = 1 << columns.base
+    states = [rows.start + columns.start]
+    alive = [first_column * first_column - 1]
+    leave, take, signs = grown.leave.append, grown.take.append, grown.sign.append
+    for level, index in enumerate(order):
+        if level >= twins and rows.frontier == columns.frontier and all(map(_is_twin(rows, columns), states)):
+            return level, [state[: len(rows.frontier)] for state in states]
+        states = rows.admitted(level, states, 0)
+        middle = len(rows.frontier)
+        states = columns.admitted(level, states, middle)
+        row_plus, row_minus, row_gone, row_alone = rows.decide(level, 0)
+        column_plus, column_minus, column_gone, column_alone = columns.decide(level, middle)
+        column_gone += middle
+        following: dict[State, int] = {}
+        next_alive: list[int] = []
+        number = grown.next
+        for state, bits in zip(states, alive, strict=True):
+            a, b, c, d = state[row_plus], state[row_minus], state[column_plus], state[column_minus]
+            if a == row_alone[0] or b == row_alone[1] or c == column_alone[0] or d == column_alone[1]:
+                leave(_DEAD)
+            else:
+                reached = following.setdefault(state[row_gone:middle] + state[column_gone:], number)
+                if reached == number:
+                    number += 1
+                    next_alive.append(bits)
+                leave(reached)
+            row_low, row_high = (a, b) if a < b else (b, a)
+            column_low, column_high = (c, d) if c < d else (d, c)
+            if row_high in (row_low, *row_alone) or column_high in (column_low, *column_alone):
+                take(_DEAD)
+                signs(1)
+                continue
+            merged = state.replace(row_low, row_high).replace(column_low, column_high)
+            row, column = 1 << ord(row_low), 1 << ord(column_low)
+            reached = following.setdefault(merged[row_gone:middle] + merged[column_gone:], number)
+            if reached == number:
+                number += 1
+                next_alive.append(bits ^ row ^ column)
+            take(reached)
+            below = bits & ((row - 1) | (column - first_column))
+            odd = below.bit_count() + (row_low != a) + (column_low != c)
+            signs(-1 if odd & 1 else 1)
+        grown.piece += [index] * len(states)
+        grown.next, states, alive = number, list(following), next_alive
+        if not states:
+            break
+    return len(order), states
+
+
+def _is_twin(rows: _Side, columns: _Side) -> Callable[[State], bool]:
+    """Whether in a state the columns are merged as the rows are."""
+    middle, shift = len(rows.frontier), columns.base - rows.base
+
+    def is_twin(state: State) -> bool:
+        return all(
+            ord(column) - ord(row) == shift
+            for row, column in zip(state[:middle], state[middle:], strict=True)
+        )
+
+    return is_twin
+
+
+def _grow_twins(grown: _Growing, side: _Side, states: list[State], order: Sequence[int], level: int) -> None:
     """The rest of a diagram whose two graphs are the same from here on, as in a network of R, L, C past its sources.
 
     Rows and columns then merge alike, one partition is the whole state, and every sign is plus, being a square.
     """
+    leave, take, number = grown.leave.append, grown.take.append, grown.next
     for here in range(level, len(order)):
-        if here > level:
-            side.enter(here)
+        states = side.admitted(here, states, 0)
+        plus, minus, gone, (plus_alone, minus_alone) = side.decide(here, 0)
         following: dict[State, int] = {}
+        for state in states:
+            a, b = state[plus], state[minus]
+            if a == plus_alone or b == minus_alone:
+                leave(_DEAD)
+            else:
+                reached = following.setdefault(state[gone:], number)
+                number += reached == number
+                leave(reached)
+            low, high = (a, b) if a < b else (b, a)
+            if high in (low, plus_alone, minus_alone):
+                take(_DEAD)
+            else:
+                reached = following.setdefault(state.replace(low, high)[gone:], number)
+                number += reached == number
+                take(reached)
         grown.piece += [order[here]] * len(states)
         grown.sign += [1] * len(states)
-        moves, leave, take, number = side.moves, grown.leave.append, grown.take.append, grown.next
-        for state in states:
-            left, taken, _ = moves(state, signed=False)
-            for target, reached in ((leave, left), (take, taken)):
-                if reached is None:
-                    target(_DEAD)
-                elif reached in following:
-                    target(following[reached])
-                else:
-                    following[reached] = number
-                    target(number)
-                    number += 1
-        grown.next = number
         states = list(following)
-    return grown
+    grown.next = number
 
 
 def _first_twin_level(rows: _Side, columns: _Side) -> int:
@@ -256,7 +313,7 @@ def _first_twin_level(rows: _Side, columns: _Side) -> int:
 
 
 class _Growing:
-    """The nodes made so far, in the order of their levels."""
+    """The nodes made so far, in the order of their levels; ``next`` is the number of the next new state."""
 
     def __init__(self) -> None:
         self.piece: list[int] = []
@@ -264,20 +321,6 @@ class _Growing:
         self.take: list[int] = []
         self.sign: list[int] = []
         self.next = 1
-
-    def add(self, piece: int, left: Any, taken: Any, sign: int, following: dict[Any, int]) -> None:
-        """One node: the states after leaving and taking the piece, None where there is none."""
-        self.piece.append(piece)
-        self.sign.append(sign)
-        for state, target in ((left, self.leave), (taken, self.take)):
-            if state is None:
-                target.append(_DEAD)
-                continue
-            number = following.get(state)
-            if number is None:
-                number = following[state] = self.next
-                self.next += 1
-            target.append(number)
 
 
 def _pruned(grown: _Growing, overall: int) -> Diagram:
@@ -313,9 +356,14 @@ def _pruned(grown: _Growing, overall: int) -> Diagram:
 
 
 class _Side:
-    """One of the two graphs while the diagram is built: which numbers are in the frontier, and how they merge."""
+    """One of the two graphs while the diagram is built: which numbers are in the frontier, and how they merge.
 
-    def __init__(self, size: int, ends: list[tuple[int | None, int | None]]) -> None:
+    A state is a string: for every number in the frontier, in ascending order with gnd at the end, the
+    representative of its class, each number being one character (from ``base`` on). So merging two classes is one
+    ``str.replace``, those that leave stand in front, and equal states are found by hashing.
+    """
+
+    def __init__(self, size: int, ends: list[tuple[int | None, int | None]], base: int) -> None:
         last = [_DEAD] * size
         first = [_DEAD] * size
         for level, pair in enumerate(ends):
@@ -324,69 +372,42 @@ class _Side:
                     last[end] = level
                     if first[end] < 0:
                         first[end] = level
-        self.untouched = any(level < 0 for level in last)
-        by_leaving = sorted(range(size), key=lambda end: (last[end], end))
-        number = {end: n for n, end in enumerate(by_leaving)}
+        self.untouched = _DEAD in last
+        by_leaving = sorted(range(size), key=last.__getitem__)
+        number = [0] * size
+        for n, end in enumerate(by_leaving):
+            number[end] = n
         self.parity = _parity(by_leaving)
-        self.ground = size
-        self.ends = [tuple(size if end is None else number[end] for end in pair) for pair in ends]
-        self._first = [first[end] for end in by_leaving]
-        self._last = [last[end] for end in by_leaving]
-        self._waiting = list(range(size))  # numbers that no piece has touched yet, ascending
-        self._frontier: list[int] = []
-        self.new: tuple[int, ...] = ()
+        self.base = base
+        self.start = chr(base + size)
+        self.ends = [
+            (size if plus is None else number[plus], size if minus is None else number[minus])
+            for plus, minus in ends
+        ]
+        self.frontier = [size]
+        self._first = [*(first[end] for end in by_leaving), _DEAD]
+        self._last = [*(last[end] for end in by_leaving), len(ends)]
 
-    def enter(self, level: int) -> None:
-        """Prepare for the piece of this level: who comes in, who leaves, which ends it has."""
-        plus, minus = self.ends[level]
-        fresh = sorted({end for end in (plus, minus) if end != self.ground and self._first[end] == level})
-        for end in fresh:
-            del self._waiting[bisect_left(self._waiting, end)]
-        self.new = tuple(fresh)
-        work = self._frontier + fresh
-        self._work = work
-        where = {end: place for place, end in enumerate(work)}
-        self._plus = where.get(plus, -1)
-        self._minus = where.get(minus, -1)
-        self._staying = [place for place, end in enumerate(work) if self._last[end] > level]
-        self._leaving = [place for place, end in enumerate(work) if self._last[end] <= level]
-        self._frontier = [work[place] for place in self._staying]
+    def admitted(self, level: int, states: list[State], start: int) -> list[State]:
+        """The states, where this side begins at ``start``, with what the piece of this level brings in."""
+        for end in set(self.ends[level]):
+            if self._first[end] == level:
+                place = bisect_left(self.frontier, end)
+                self.frontier.insert(place, end)
+                place, name = place + start, chr(self.base + end)
+                states = [state[:place] + name + state[place:] for state in states]
+        return states
 
-    @property
-    def open(self) -> tuple[list[int], list[int]]:
-        """The numbers in the state, and those that no piece has touched yet."""
-        return self._work, self._waiting
-
-    def moves(self, state: State, *, signed: bool = True) -> _Moves:
-        """The state after leaving the piece out, the state after taking it, and the sign of taking it.
-
-        None where a class that is alive would leave, or where the ends of the piece are one class already.
+    def decide(self, level: int, start: int) -> tuple[int, int, int, tuple[str, str]]:
+        """The places of the ends of the piece; how many of them leave; and what stands at each end that leaves if it
+        is a class alone (nothing where the end stays).
         """
-        work = state + self.new
-        names = self._work
-        left: State | None = tuple([work[place] for place in self._staying])
-        for place in self._leaving:
-            if work[place] == names[place]:
-                left = None
-                break
-        plus = self.ground if self._plus < 0 else work[self._plus]
-        minus = self.ground if self._minus < 0 else work[self._minus]
-        if plus == minus:
-            return left, None, 1
-        low, high = (plus, minus) if plus < minus else (minus, plus)
-        merged = [high if end == low else end for end in work]
-        for place in self._leaving:
-            if merged[place] == names[place]:
-                return left, None, 1
-        staying = tuple([merged[place] for place in self._staying])
-        if not signed:
-            return left, staying, 1
-        position = bisect_left(self._waiting, low)
-        for end, name in zip(work, names, strict=True):
-            if end == name and end < low:
-                position += 1
-        sign = 1 if (low == plus) == (position & 1 == 0) else -1
-        return left, staying, sign
+        plus, minus = self.ends[level]
+        places = start + bisect_left(self.frontier, plus), start + bisect_left(self.frontier, minus)
+        leaving = [end for end in {plus, minus} if self._last[end] == level]
+        del self.frontier[: len(leaving)]
+        alone = [chr(self.base + end) if end in leaving else "" for end in (plus, minus)]
+        return *places, len(leaving), (alone[0], alone[1])
 
 
 def _parity(permutation: list[int]) -> int:

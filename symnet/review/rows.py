@@ -1,8 +1,8 @@
 """Equations as rows: what a line, or the network itself, says about the unknowns at a random point modulo a prime.
 
 With every name a random number, an equation between unknowns is a row of coefficients; a nonlinear one is taken by
-its derivative at the solution. Whether a line follows from others is then a question of rank. Modulo 2^61 - 1 a
-wrong answer has a probability of about degree/2^61; whether a line is *true* is never decided here.
+its derivative at the solution. Whether a line follows from others is then a question of rank. Modulo 2^127 - 1 a
+wrong answer has a probability of about degree/2^127; whether a line is *true* is never decided here.
 """
 
 from __future__ import annotations

@@ -192,7 +192,7 @@ class Solution:
     # -- modulo a prime ----------------------------------------------------------------------------------------------------
 
     def point(self, trial: int = 0) -> Mapping[str, int]:
-        """Every generator at a random point modulo 2^61 - 1, the unknowns from the nodal equations solved there.
+        """Every generator at a random point modulo 2^127 - 1, the unknowns from the nodal equations solved there.
 
         The elimination shares no code with the determinants. SingularError when there is no single solution.
         """
@@ -212,10 +212,10 @@ class Solution:
                 raise SingularError(undetermined(self.network, self.naming))
             system, solution = found
             x = values.get(f"drive:{name}", 1)
-            for unknown, value in zip(system.unknowns, solution, strict=True):
+            for place, unknown in enumerate(system.unknowns):
                 generator = generator_of(unknown)
                 if generator in values:
-                    values[generator] = (values[generator] + x * value) % PRIME
+                    values[generator] = (values[generator] + x * solution(place)) % PRIME
             if f"x:{name}" in values:
                 values[f"x:{name}"] = x
         return values

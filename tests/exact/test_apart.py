@@ -17,7 +17,7 @@ from symnet.exact.polynomials import begins_negative, make_ring
 from tests import oracle
 from tests.networks import seeded
 
-from .test_expansion import written_out
+from .test_unfolding import written_out
 
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement

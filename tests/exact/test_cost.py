@@ -11,7 +11,7 @@ from sympy import fibonacci
 
 import symnet as sn
 from symnet.errors import LimitError
-from symnet.exact import determinant, expansion
+from symnet.exact import determinant, unfolding
 from symnet.exact.determinant import MOST_TERMS, Determinant
 from symnet.exact.trees import Diagram
 from tests.speed.engine import bridged_t, complete_graph, rc_ladder
@@ -23,14 +23,14 @@ THIRTY = 2504730781961
 @pytest.fixture
 def never_written_out(monkeypatch: pytest.MonkeyPatch) -> None:
     """Expanding a determinant of more than one path is an error."""
-    expand = expansion.expand_terms
+    unfold = unfolding.unfold
 
     def refuse(diagram: Diagram, *rest: Any) -> Any:
         if diagram.count() > 1:
             pytest.fail("a determinant was written out")
-        return expand(diagram, *rest)
+        return unfold(diagram, *rest)
 
-    monkeypatch.setattr(determinant, "expand_terms", refuse)
+    monkeypatch.setattr(determinant, "unfold", refuse)
 
 
 def derived(text: str, symbols: str | None = None) -> sn.Transfer:

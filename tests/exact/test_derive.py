@@ -268,5 +268,5 @@ def test_other_numbers_do_not_derive_anew() -> None:
 def test_every_h_says_how_it_was_confirmed() -> None:
     net = sn.network(TWO_SECTIONS)
     H = derive_from(net, net.drives[0], net.reads[0])
-    assert "solved by elimination modulo 2^61 - 1" in str(H.confirmation)
+    assert "solved by elimination modulo 2^127 - 1" in str(H.confirmation)
     assert H.confirmation.exponent > 30

@@ -15,7 +15,7 @@ from symnet.exact.lowest import LowestTerms, reduce
 from symnet.exact.modular import SMALL_PRIME, weight_at
 from symnet.exact.polynomials import begins_negative, make_ring
 
-from .test_expansion import written_out
+from .test_unfolding import written_out
 
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement

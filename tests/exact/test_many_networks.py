@@ -28,7 +28,7 @@ SMALL = 1000
 ALL = 2000
 BLOCK = 50
 
-#: Two primes below 2^31; the package uses 2^31 - 1 and 2^61 - 1.
+#: Two primes below 2^31; the package uses 2^31 - 1 and 2^127 - 1.
 PRIMES = (2147483629, 2147483587)
 
 #: What a part may be worth in the degenerate networks: a short, an open branch, equal values, 24 decades.

@@ -9,7 +9,7 @@ Middlebrook, "Low-entropy expressions: the key to design-oriented analysis", Fro
 memory), argues for the form: gain, poles and zeros in terms of the parts.
 
 Before a tree leaves this module its value is compared with the polynomials it was made from, at a random point
-modulo 2^61 - 1. Should the search ever go wrong, the plain fraction is shown, with a warning: what is displayed is
+modulo 2^127 - 1. Should the search ever go wrong, the plain fraction is shown, with a warning: what is displayed is
 what an engineer signs.
 
 Bounds: a coefficient of more than 60 terms is not grouped, H of more than 120 terms is not factored, and one of
