@@ -196,6 +196,29 @@ class TestConditions:
         assert family.conditions(b) == (0,) * 8
 
 
+class TestLevels:
+    """Even orders: whether a level counts from DC or from the ripple peak; 3 dB against 3.0103 dB."""
+
+    @pytest.mark.parametrize("order", [2, 4, 7, 10])
+    def test_3_db_of_ripple_and_half_power(self, order: int) -> None:
+        """3.000 dB: the half-power frequency lies beyond the edge, cosh(acosh(1/e)/n); 3.0103 dB: they are one."""
+        name = "w3dB" if order % 2 else "w3dB_peak"
+        three = chebyshev(order, "3 dB").reference(name).w
+        assert three == pytest.approx(math.cosh(math.acosh(1 / 0.9976283451109836) / order), rel=1e-12)
+        assert three > 1 + 1e-5
+        half = chebyshev(order, "3.010299956639812 dB").reference(name).w
+        assert half == pytest.approx(1, abs=1e-14)
+
+    @pytest.mark.parametrize("order", [2, 4, 8])
+    def test_even_order_says_from_where_a_level_counts(self, order: int) -> None:
+        made = chebyshev(order, "1 dB")
+        dc, peak = made.reference("w3dB"), made.reference("w3dB_peak")
+        assert dc.w > peak.w
+        assert "relative to DC (a ripple minimum, 1 dB below the peak)" in dc.label
+        assert "relative to the ripple peak" in peak.label
+        assert "relative to the peak" in made.reference("ripple_edge").label
+
+
 class TestScaling:
     def test_between_references(self) -> None:
         """Chebyshev 3, 0.5 dB: -3 dB at 1.1675 times the ripple edge; Bessel 3 at 1.7557/T."""

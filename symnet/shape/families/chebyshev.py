@@ -44,8 +44,9 @@ def chebyshev(order: int, ripple: str = "0.5 dB") -> Prototype:
     Definition: |H(jw)|^2 = 1/(1 + e^2 T_n(w)^2) with the Chebyshev polynomial T_n and e^2 = 10^(ripple/10 dB) - 1.
     With v = asinh(1/e)/n the poles are s = -sinh v sin t + j cosh v cos t, t = (2k - 1) pi/(2n), k = 1 ... n. The
     largest |H| is 1. An even order has its ripple minimum at DC, so that |H(0)| = 10^(-ripple/20 dB); "-3 dB" can
-    then be counted from DC or from the ripple peak, and both are given. The last frequency 3.0103 dB below the
-    peak is cosh(acosh(1/e)/n).
+    then be counted from DC or from the ripple peak, and both are given: singly terminated tables count from DC, doubly
+    terminated ones from the peak. The last frequency 3.0103 dB below the peak is cosh(acosh(1/e)/n). A ripple of
+    "3 dB" is 3.000 dB, e = 0.99763; "3.0103 dB" makes e = 1, and the edge of the ripple the half-power frequency.
 
     Source: G. L. Matthaei, L. Young and E. M. T. Jones, Microwave Filters, Impedance-Matching Networks, and
     Coupling Structures, McGraw-Hill 1964, section 4.05 (from memory); the closed form of the poles is there too.

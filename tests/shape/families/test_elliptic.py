@@ -47,7 +47,7 @@ class TestPrintedTables:
     def test_zeros_and_attenuation(self, row: published.Cauer) -> None:
         made = elliptic(row.order, row.ripple, edge=row.edge)
         assert made.reference("stop_edge").w == pytest.approx(row.edge, rel=1e-14)
-        # all but one to the last digit; that one, 4.130155, was printed with 5 right digits
+        # all but one to the last digit; that one, 4.130155, is a misprint (tests/reference/misprints.py)
         upper = sorted((z.imag for z in made.zeros if z.imag > 0), reverse=True)
         assert upper == pytest.approx(row.zeros, abs=1.1e-4 if row.id.endswith("n6-ws1.3") else 1.2e-6)
         assert math.floor(made.settings[1].value) == row.attenuation_db
