@@ -20,7 +20,7 @@ from numpy.typing import NDArray
 from sympy import Expr
 
 from symnet.errors import Fault, NotationError
-from symnet.shape.families.curves import group_delay
+from symnet.shape.families.curves import geometric_mean, group_delay
 from symnet.shape.families.references import (
     ALL_PASS,
     BAND_PASS,
@@ -46,6 +46,7 @@ from symnet.shape.families.references import (
     unknown,
     with_common_references,
 )
+from symnet.shape.families.steps import step
 from symnet.shape.families.transformation import to_band_pass, to_band_stop
 from symnet.typeset.displayed import Displayed
 
@@ -333,13 +334,13 @@ class Prototype(Displayed):
         """
         at = np.asarray(s, dtype=complex)
         value = np.full(at.shape, self.gain, dtype=complex)
-        centre = 1j * self.reference(CENTRE).w if self.band == BAND_PASS else 0j
+        middle = self._middle
         for k, p in enumerate(self.poles):
             z = self.zeros[k] if k < len(self.zeros) else None
             if self.band == HIGH_PASS:
                 value *= (at - (z or 0j)) / (at - p)
             else:
-                value *= (centre - p) / (at - p) * (1 if z is None else (at - z) / (centre - z))
+                value *= (middle - p) / (at - p) * (1 if z is None else (at - z) / (middle - z))
         return value if value.ndim else complex(value)
 
     def decibels(self, w: float) -> float:
@@ -350,6 +351,27 @@ class Prototype(Displayed):
     def delay(self, w: float) -> float:
         """The group delay in seconds at the angular frequency w in rad/s."""
         return float(group_delay(np.asarray(w, dtype=float), self.poles, self.zeros))
+
+    def step(self, end: float, points: int = 401) -> NDArray[np.float64]:
+        """The response to a unit step at that many times, equally spaced from 0 to ``end`` in seconds.
+
+        >>> from symnet.shape.families.butterworth import butterworth
+        >>> y = butterworth(3).step(40.0)
+        >>> f"overshoot {max(y) - 1:.1%}, final value {y[-1]:.6f}"
+        'overshoot 8.1%, final value 1.000000'
+        """
+        unit = self._middle.imag or geometric_mean(self.poles)
+        poles, zeros = ([r / unit for r in roots] for roots in (self.poles, self.zeros))
+        factor = self.gain + 0j
+        if self.band != HIGH_PASS:
+            factor *= complex(np.prod([self._middle / unit - p for p in poles]))
+            factor /= complex(np.prod([self._middle / unit - z for z in zeros]))
+        return step(poles, zeros, factor.real, end * unit, points)
+
+    @property
+    def _middle(self) -> complex:
+        """The s at which H is ``gain``, unless that is infinity."""
+        return 1j * self.reference(CENTRE).w if self.band == BAND_PASS else 0j
 
     def denominator(self) -> tuple[float, ...]:
         """The coefficients of D(s) in ascending powers of s, the highest one being 1; coefficient k in (rad/s)^(n-k).
