@@ -410,7 +410,7 @@ def _in_band(view: View, low: Prototype, scale: float, centre: float) -> Prototy
     if view.band == LOW_PASS:
         return low.scaled(W0, scale * view.w0)
     if view.band == HIGH_PASS:
-        return low.scaled(W0, scale / view.w0).high_pass()
+        return low.scaled(W0, view.w0 / scale).high_pass()
     c = view.w0 * math.exp(centre)
     low = low.scaled(W0, scale)
     return low.moved(view.band, c, view.width * c)

@@ -100,8 +100,9 @@ class Prototype(Displayed):
 
     ``poles`` and ``zeros`` are in rad/s; ``order`` is that of the low-pass, also when a band-pass has twice as many
     poles. ``gain`` is |H| at DC (of a high-pass: at infinite frequency; of a band-pass: at the centre) when the
-    largest |H| in the pass band is 1. ``exact`` holds the denominator as exact numbers, ascending powers of s,
-    where they can be read by a person; otherwise it is None. More digits than doubles have: :meth:`precise`.
+    largest |H| in the pass band is 1. ``unit`` is the w in rad/s at which it was put by one of its references.
+    ``exact`` holds the denominator as exact numbers, ascending powers of s, where they can be read by a person;
+    otherwise it is None. More digits than doubles have: :meth:`precise`.
 
     >>> from symnet.shape.families.bessel import bessel
     >>> p = bessel(3)
@@ -122,6 +123,7 @@ class Prototype(Displayed):
     settings: tuple[Setting, ...] = ()
     equation: str = field(default="", compare=False)
     band: str = LOW_PASS
+    unit: float = 1.0
     exact: tuple[Expr, ...] | None = field(default=None, compare=False, repr=False)
     refined: Callable[[int], tuple[tuple[Any, ...], tuple[Any, ...]]] | None = field(
         default=None, compare=False, repr=False
@@ -194,9 +196,10 @@ class Prototype(Displayed):
             raise NotationError(f"a prototype is scaled to a positive frequency, not to w = {w!r} rad/s")
         k = w / self.reference(reference).w
         if k == 1:
-            return self
+            return self if w == self.unit else replace(self, unit=w)
         return replace(
             self,
+            unit=w,
             poles=tuple(p * k for p in self.poles),
             zeros=tuple(z * k for z in self.zeros),
             references=tuple(r.scaled(k) for r in self.references),
@@ -206,23 +209,28 @@ class Prototype(Displayed):
         )
 
     def high_pass(self) -> Prototype:
-        """The high-pass that s -> 1/s gives: every frequency becomes its inverse, the missing zeros come to s = 0.
+        """The high-pass that s -> u^2/s gives: the frequency u that the prototype was put at stays, the others turn over.
+
+        u is where :meth:`at` or :meth:`scaled` put the reference that was named, 1 rad/s for a prototype as its
+        constructor gives it. The zeros at infinity come to s = 0.
 
         >>> from symnet.shape.families.butterworth import butterworth
         >>> p = butterworth(2).high_pass()
         >>> p.zeros, p.reference("w3dB").label
         ((0j, 0j), '-3.0103 dB relative to infinite frequency')
-        >>> butterworth(2).high_pass().at(f3dB="80 Hz").reference("f0").f.__round__(9)
+        >>> from symnet.shape.families.bessel import bessel
+        >>> bessel(4).at(f3dB="80 Hz").high_pass().reference("f3dB").f.__round__(9)
         80.0
         """
         self._is_low_pass("s -> 1/s does not make a high-pass of it")
+        square = self.unit**2
         at_infinity = self.order - len(self.zeros)
         return replace(
             self,
-            poles=in_order((1 / p).conjugate() for p in self.poles),
-            zeros=(0j,) * at_infinity + in_order((1 / z).conjugate() for z in self.zeros),
-            references=tuple(r.inverted() for r in self.references),
-            equation=f"{self.equation}, with 1/s for s" if self.equation else "",
+            poles=in_order((square / p).conjugate() for p in self.poles),
+            zeros=(0j,) * at_infinity + in_order((square / z).conjugate() for z in self.zeros),
+            references=tuple(r.inverted(self.unit) for r in self.references),
+            equation=f"{self.equation}, with {square:.17g}/s for s" if self.equation else "",
             band=HIGH_PASS,
             exact=self.exact[::-1] if self.exact and not self.zeros else None,
             refined=None,

@@ -115,11 +115,11 @@ class Reference:
         """The same reference where every frequency is k times as high."""
         return replace(self, w=self.w * k)
 
-    def inverted(self) -> Reference:
-        """The same reference of the high-pass that s -> 1/s gives."""
+    def inverted(self, unit: float) -> Reference:
+        """The same reference of the high-pass that s -> unit^2/s gives."""
         usual = _LABELS.get(self.name, self.label)
         label = self.label.replace(usual, _IN_HIGH_PASS.get(self.name, self.label))
-        return Reference(self.name, 1 / self.w, label)
+        return Reference(self.name, unit * (unit / self.w), label)
 
     def edges(self, band: str, centre: float, width: float) -> tuple[Reference, Reference, Reference]:
         """Bandwidth and both edges in rad/s, from the reference of the low-pass: lower * upper = centre^2."""

@@ -61,6 +61,25 @@ class TestAtAFrequency:
         assert made.reference("f3dB").f == pytest.approx(2200 * (math.sqrt(2) - 1) ** 0.25)
         assert made.high_pass().reference("w6dB").label == "-6.0206 dB relative to infinite frequency"
 
+    @pytest.mark.parametrize("low", LOW_PASSES, ids=str)
+    @pytest.mark.parametrize("name", ["f3dB", "f0"])
+    def test_a_high_pass_stays_where_the_low_pass_was_put(self, low: Prototype, name: str) -> None:
+        """s -> u^2/s: the reference stays at u, and |H_high(j u x)| = |H_low(j u/x)|."""
+        placed = low.at(**{name: "80 Hz"})
+        high = placed.high_pass()
+        assert high.reference(name).f == pytest.approx(80, rel=1e-14)
+        for x in (0.3, 1.0, 2.5):
+            u = 160 * math.pi
+            assert high.decibels(u * x) == pytest.approx(placed.decibels(u / x), abs=1e-9)
+        assert high.at(**{name: "1 kHz"}).reference(name).f == pytest.approx(1000)
+
+    def test_a_crossover_adds_up_at_its_frequency(self) -> None:
+        low = linkwitz_riley(4).at(f6dB="2.2 kHz")
+        s = np.asarray(2j * math.pi * np.geomspace(20, 20e3, 31), dtype=np.complex128)
+        assert np.abs(np.asarray(low(s)) + np.asarray(low.high_pass()(s))) == pytest.approx(
+            np.ones(31), abs=1e-12
+        )
+
     @pytest.mark.parametrize(
         ("arguments", "words"),
         [
