@@ -45,7 +45,9 @@ class Algebra:
         self.names = tuple(names)
         self._place = {name: k for k, name in enumerate(self.names)}
         self.space = Space((*self.names, *(f"root {k}" for k in range(_ROOTS))), _MOST_DEGREE)
+        self._shift = [self.space.unit(k).bit_length() - 1 for k in range(len(self.space.names))]
         self._radicands: list[Polynomial] = []
+        self._exponents: dict[int, Mapping[str, int]] = {}
         # Two exponents below the bound do not overflow their field when they are added; then this shows them.
         self._too_high = sum(self.space.unit(k) for k in range(len(self.names) + _ROOTS)) * _MOST_DEGREE
 
@@ -141,12 +143,17 @@ class Algebra:
         places = [self._place[name] for name in names]
         if roots:
             places += range(len(self.names), len(self.names) + len(self._radicands))
-        units = [self.space.unit(k) for k in places]
+        shifts = [self._shift[place] for place in places]
+        field = 2 * _MOST_DEGREE - 1
+        wanted = sum(field << shift for shift in shifts)
         out: dict[tuple[int, ...], Polynomial] = {}
+        known: dict[int, tuple[int, ...]] = {}
         for m, c in p.items():
-            exponents = tuple((m // unit) & (2 * _MOST_DEGREE - 1) for unit in units)
-            rest = m - sum(e * unit for e, unit in zip(exponents, units, strict=True) if e)
-            out.setdefault(exponents, {})[rest] = c
+            inside = m & wanted
+            exponents = known.get(inside)
+            if exponents is None:
+                exponents = known[inside] = tuple((inside >> shift) & field for shift in shifts)
+            out.setdefault(exponents, {})[m - inside] = c
         return out
 
     def modulo(self, p: Polynomial, point: Mapping[str, int], prime: int) -> int:
@@ -159,9 +166,12 @@ class Algebra:
             total += term
         return total % prime
 
-    def exponents(self, monomial: int) -> dict[str, int]:
+    def exponents(self, monomial: int) -> Mapping[str, int]:
         """The names in a monomial with their exponents; roots are called ``root k``."""
-        return self.space.exponents(monomial)
+        known = self._exponents.get(monomial)
+        if known is None:
+            known = self._exponents[monomial] = self.space.exponents(monomial)
+        return known
 
     # -- roots -------------------------------------------------------------------------------------------------------
 

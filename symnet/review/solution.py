@@ -6,13 +6,14 @@ network (:mod:`symnet.exact.derive`). An equation between unknowns is homogeneou
 that it holds exactly when each part of equal degree vanishes with the unknowns replaced by their N: no division,
 and D itself is needed only where parts of different degree must be told apart.
 
-Pieces of this are wanted one at a time, so each N is written out when it is first needed.
+The N come from one determinant, bordered by a row in which every unknown has a symbol of its own; in long networks
+each is written out when it is first needed.
 """
 
 from __future__ import annotations
 
 from collections.abc import Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from functools import cached_property
 from random import Random
 from typing import TYPE_CHECKING, Final, TypeAlias
@@ -25,7 +26,7 @@ from symnet.exact.confirm import UnconfirmedError, random_point, solve_at, undet
 from symnet.exact.derive import quotient_of
 from symnet.exact.modular import PRIME
 from symnet.exact.naming import Naming
-from symnet.expressions import Name, Number
+from symnet.expressions import Expression, Name, Number, Product, Sum
 from symnet.review.algebra import Algebra, Value
 
 if TYPE_CHECKING:
@@ -40,6 +41,10 @@ Unknown: TypeAlias = "tuple[str, str]"
 
 #: How many rounded numbers of one line get a generator for what the rounding took.
 ROUNDED: Final = 16
+
+_MOST_TOGETHER: Final = 40  # unknowns whose N are written out together,
+_MOST_TERMS_TOGETHER: Final = 20_000  # and the terms that they may have
+_WEIGHT: Final = "weight of "  # no name of a network has a space
 
 
 def generator_of(unknown: Unknown) -> str:
@@ -62,6 +67,8 @@ class Solution:
     symbols: frozenset[str] | None
     _numerators: dict[Unknown, Polynomial] = field(default_factory=dict, repr=False)
     _points: dict[int, Mapping[str, int]] = field(default_factory=dict, repr=False)
+    _together: dict[str, dict[Unknown, Polynomial] | None] = field(default_factory=dict, repr=False)
+    _below: Determinant | None = field(default=None, repr=False)
 
     @classmethod
     def of(cls, network: Network, symbols: frozenset[str] | None = None) -> Solution:
@@ -105,24 +112,58 @@ class Solution:
     def _of_drive(self, unknown: Unknown, name: str, drive: Drive) -> Polynomial:
         if unknown[0] == "x":
             return self.denominator if unknown[1] == name else {}
-        return self._written(self._determinant(unknown, drive))
+        if name not in self._together:
+            self._together[name] = self._all_of(drive)
+        together = self._together[name]
+        if together is not None:
+            return together[unknown]
+        return self._written(quotient_of(self.network, drive, _read(unknown), self.symbols)[1].numerator)
 
-    def _determinant(self, unknown: Unknown, drive: Drive) -> Determinant:
-        kind, word = unknown
-        read = Name(word) if kind == "v" else Name(f"i_{word}")
-        return quotient_of(self.network, drive, read, self.symbols)[1].numerator
+    @cached_property
+    def _weighted(self) -> tuple[Network, Expression]:
+        """The network read as the sum of all unknowns, each times a symbol of its own."""
+        terms = tuple(
+            (1, Product(((1, Name(_WEIGHT + generator_of(unknown))), (1, _read(unknown)))))
+            for unknown in self.unknowns
+            if unknown[0] != "x"
+        )
+        read = Sum(terms)
+        return replace(self.network, reads=(*self.network.reads, read), text=None), read
+
+    def _all_of(self, drive: Drive) -> dict[Unknown, Polynomial] | None:
+        """The N of all unknowns for one drive, from one determinant; None where that would be too long.
+
+        N of the weighted sum is the sum of the N, each times its weight.
+        """
+        if len(self.unknowns) > _MOST_TOGETHER:
+            return None
+        network, read = self._weighted
+        pieces, quotient = quotient_of(network, drive, read, self.symbols)
+        if quotient.numerator.terms > _MOST_TERMS_TOGETHER:
+            return None
+        self._below = quotient.denominator
+        out: dict[Unknown, Polynomial] = {unknown: {} for unknown in self.unknowns}
+        generators = pieces.naming.generators.names
+        own = len(self.naming.generators.names)
+        weights = [generators.index(_WEIGHT + generator_of(u)) if u[0] != "x" else 0 for u in self.unknowns]
+        pack = self.algebra.space.pack
+        for coefficient, exponents in quotient.numerator.written():
+            unknown = next(u for u, k in zip(self.unknowns, weights, strict=True) if k and exponents[k])
+            out[unknown][pack(exponents[:own])] = coefficient
+        return out
 
     @cached_property
     def denominator(self) -> Polynomial:
         """D, the determinant of the network, not in lowest terms with any N."""
-        return self._written(
-            quotient_of(self.network, self.network.drives[0], Name(self.network.nodes[0]), self.symbols)[
-                1
-            ].denominator
-        )
+        below = self._below
+        if below is None:
+            drive, read = self.network.drives[0], _read(self.unknowns[0])
+            below = quotient_of(self.network, drive, read, self.symbols)[1].denominator
+        return self._written(below)
 
     def _written(self, determinant: Determinant) -> Polynomial:
-        return self.algebra.polynomial((e, c) for c, e in determinant.written())
+        own = len(self.naming.generators.names)
+        return self.algebra.polynomial((e[:own], c) for c, e in determinant.written())
 
     def worth(self, name: str) -> Value:
         """What a part or symbol of the network stands for: itself, a tie, or its number."""
@@ -227,3 +268,9 @@ class Solution:
     def residue(self, polynomial: Polynomial, trial: int = 0) -> int:
         """The value of a polynomial without roots at the random point."""
         return self.algebra.modulo(polynomial, self.point(trial), PRIME)
+
+
+def _read(unknown: Unknown) -> Expression:
+    """What reads an unknown."""
+    kind, name = unknown
+    return Name(name) if kind == "v" else Name(f"i_{name}")
