@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Callable
 
+import mpmath
 import numpy as np
 import pytest
 from numpy.typing import NDArray
@@ -78,6 +79,18 @@ class TestTransitional:
         upper = [p for p in MAKERS[row.family](row.order).poles if p.imag >= 0]
         found = sorted((round(-p.real, 4), round(p.imag, 4)) for p in upper)
         assert found == sorted(row.sigma_omega)
+
+    @pytest.mark.parametrize("order", [2, 3, 4, 5, 9, 20])
+    @pytest.mark.parametrize("make", [gaussian_to_6db, gaussian_to_12db])
+    def test_more_digits_are_the_same_poles(self, make: Callable[[int], Prototype], order: int) -> None:
+        """They agree with the doubles, with each other, and with half power at 1 rad/s."""
+        made = make(order)
+        some, more = made.precise(30)[0], made.precise(45)[0]
+        assert [complex(p) for p in some] == pytest.approx(made.poles, rel=1e-12)
+        assert max(abs(p - q) for p, q in zip(some, more, strict=True)) < 1e-29 * max(map(abs, more))
+        with mpmath.workdps(50):
+            square = mpmath.fprod(abs(1 - 1j / p) ** 2 for p in more)
+            assert abs(square - 2) < mpmath.mpf(10) ** -42
 
     @pytest.mark.parametrize("row", [row for row in GAUSSIAN_POLES if row.heading], ids=lambda row: row.id)
     def test_the_heading_of_the_page_is_another_family(self, row: TransitionalPoles) -> None:
