@@ -50,7 +50,7 @@ _Touched: TypeAlias = dict[int, tuple[int, ...]]
 
 #: Nodes for each level: at so few nothing is gained by another order; above so many a longer search is repaid.
 _NARROW: Final = 4
-_WIDE: Final = 200
+_WIDE: Final = 1000
 _STARTS: Final = 8  # places from which the greedy order is then tried
 
 
