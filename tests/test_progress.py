@@ -10,6 +10,7 @@ from typing import Any
 import pytest
 
 from symnet.exact.roots import roots
+from symnet.exact.trees import Piece, build
 from symnet.progress import Progress
 
 WIPE = "\r\x1b[K"
@@ -122,4 +123,18 @@ def test_roots_of_high_order_tell_how_far_they_are(monkeypatch: pytest.MonkeyPat
         p = [k * a + b for a, b in zip([*p, 0], [0, *p], strict=True)]
     assert len(roots(p)) == 30
     assert " of 30 roots apart" in terminal.getvalue()
+    assert terminal.getvalue().endswith(WIPE)
+
+
+def test_a_diagram_tells_how_many_parts_are_decided(monkeypatch: pytest.MonkeyPatch) -> None:
+    clock, terminal = Clock(), Terminal()
+
+    def later() -> float:
+        clock.now += 1
+        return clock.now
+
+    monkeypatch.setattr(sys, "stderr", terminal)
+    monkeypatch.setattr("symnet.progress.time", SimpleNamespace(monotonic=later))
+    assert not build(3, [Piece(a, b, a, b) for a, b in ((0, 1), (1, 2), (2, None), (0, 2))]).is_zero
+    assert "building the diagram: 3 of 4 parts decided" in terminal.getvalue()
     assert terminal.getvalue().endswith(WIPE)

@@ -34,6 +34,7 @@ from functools import cached_property
 from typing import TYPE_CHECKING, Any, NamedTuple, TypeAlias
 
 from symnet.exact.ordering import frontier_order
+from symnet.progress import Progress
 
 if TYPE_CHECKING:
     import numpy as np
@@ -194,11 +195,12 @@ def build(size: int, pieces: Sequence[Piece], order: Sequence[int] | None = None
     columns = _Side(size, [(pieces[i].column_plus, pieces[i].column_minus) for i in order], size + 1)
     if rows.untouched or columns.untouched:
         return Diagram((), (), (), (), 0 if size == 0 else _DEAD)
-    grown = _Growing()
-    level, states = _grow_pairs(grown, rows, columns, order)
-    if not states:
-        return Diagram((), (), (), (), _DEAD)
-    _grow_twins(grown, rows, states, order, level)
+    with Progress("building the diagram", "parts decided", len(order)) as at:
+        grown = _Growing(at)
+        level, states = _grow_pairs(grown, rows, columns, order)
+        if not states:
+            return Diagram((), (), (), (), _DEAD)
+        _grow_twins(grown, rows, states, order, level)
     return _pruned(grown, rows.parity * columns.parity)
 
 
@@ -218,6 +220,7 @@ def _grow_pairs(
     for level, index in enumerate(order):
         if level >= twins and rows.frontier == columns.frontier and all(map(_is_twin(rows, columns), states)):
             return level, [state[: len(rows.frontier)] for state in states]
+        grown.at(level)
         states = rows.admitted(level, states, 0)
         middle = len(rows.frontier)
         states = columns.admitted(level, states, middle)
@@ -280,6 +283,7 @@ def _grow_twins(grown: _Growing, side: _Side, states: list[State], order: Sequen
     """
     leave, take, number = grown.leave.append, grown.take.append, grown.next
     for here in range(level, len(order)):
+        grown.at(here)
         states = side.admitted(here, states, 0)
         plus, minus, gone, (plus_alone, minus_alone) = side.decide(here, 0)
         following: dict[State, int] = {}
@@ -315,7 +319,8 @@ def _first_twin_level(rows: _Side, columns: _Side) -> int:
 class _Growing:
     """The nodes made so far, in the order of their levels; ``next`` is the number of the next new state."""
 
-    def __init__(self) -> None:
+    def __init__(self, at: Progress) -> None:
+        self.at = at
         self.piece: list[int] = []
         self.leave: list[int] = []
         self.take: list[int] = []
