@@ -112,17 +112,20 @@ def conditions_of(
         return Conditions(
             1, band, (Condition(f"first order, {band}", "always", formulas=(formula,)),), assumption
         )
-    found = [
-        _of_family(family, a, band)
-        for family in CATALOGUE
-        if family.has_order(order) and not family.finite_zeros(order)
-    ]
+    families = [f for f in CATALOGUE if f.has_order(order) and not f.finite_zeros(order)]
+    open_ones = [f.name for f in families if f.conditions((1,) * (order + 1)) is None]
+    found = [_of_family(f, a, band) for f in families if f.name not in open_ones]
     if quality is not None:
         equation = quality.denominator * a[0] * a[2] - quality.numerator * a[1] ** 2
         found.append(_judged(f"Q = {q}", [equation], [], a, quality, formulas=(Formula("f0", _f0(a, band)),)))
-    note = ""
+    notes = []
     if order > 3 or any(sign_of(c) != 1 for c in a):
-        note = "all of this for a stable H: the equations fix |H(jw)|, which an unstable H can have too"
+        notes.append(
+            "all of this for a stable H: the equations fix |H(jw)|, which an unstable H can have too"
+        )
+    if open_ones:
+        notes.append(f"no polynomial condition in symbols, only with values: {', '.join(open_ones)}")
+    note = "; ".join(notes)
     if order > 2:
         return Conditions(order, band, tuple(found), assumption, note=note)
     return Conditions(order, band, tuple(found), assumption, _quality(a), _quality_bound(a), note)
@@ -169,9 +172,7 @@ def _of_family(family: Family, a: Sequence[PolyElement], band: str) -> Condition
     if work > _MOST_TERMS:
         reason = f"products of {work} terms would have to be written out; give values to most of the parts"
         return Condition(name, "open", reason=reason)
-    equations = family.conditions(a)
-    if equations is None:
-        return Condition(name, "open", reason="this family has no polynomial condition")
+    equations = family.conditions(a) or ()
     if parameters:
         return _judged(name, equations, family.positives(a), a, None)
     shape = family.prototype(order)

@@ -10,6 +10,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import replace
 from fractions import Fraction
+from typing import Final
 
 from symnet.shape.families.family import Family
 from symnet.shape.families.prototype import ALL_PASS, HIGH_PASS, LOW_PASS
@@ -26,6 +27,9 @@ from symnet.shape.undoing import View
 from symnet.shape.verdict import Candidate
 
 __all__ = ["candidates", "ranked"]
+
+#: Below this no response differs from another; the order of the catalogue decides.
+_NOTHING_DB: Final = 1e-6
 
 
 def candidates(view: View, ascending: Sequence[Fraction] = ()) -> tuple[Candidate, ...]:
@@ -84,7 +88,9 @@ def _is_exact(family: Family, ascending: Sequence[Fraction]) -> bool:
 def ranked(found: Sequence[Candidate]) -> tuple[Candidate, ...]:
     """Matches first, then by response; then a simpler one before one with more parameters that is hardly nearer."""
     order: list[Candidate] = []
-    for candidate in sorted(found, key=lambda c: (not c.matches, c.response)):
+    for candidate in sorted(
+        found, key=lambda c: (not c.matches, c.response if c.response > _NOTHING_DB else 0)
+    ):
         place = len(order)
         while place and _stands_before(candidate, order[place - 1]):
             place -= 1

@@ -7,13 +7,16 @@ text, LaTeX and HTML come from the same thing.
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import TypeAlias
+from typing import Final, TypeAlias
 
 from symnet.typeset.displayed import Displayed
 from symnet.typeset.tree import Tree
 from symnet.typeset.writing import to_text
 
 __all__ = ["Alternative", "Condition", "Conditions", "Formula", "Relation"]
+
+#: Characters of a repr, which is one line; all of it is in the text.
+_LONGEST_REPR: Final = 450
 
 #: left, sign ("=" or ">"), right
 Relation: TypeAlias = tuple[Tree, str, Tree]
@@ -96,7 +99,10 @@ class Conditions(Displayed):
         return self.verdict
 
     def __repr__(self) -> str:
-        return f"<Conditions: {self.verdict}>"
+        text = self.verdict
+        if len(text) > _LONGEST_REPR:
+            text = text[: text.rfind("; ", 0, _LONGEST_REPR)] + "; ..."
+        return f"<Conditions: {text}>"
 
     @property
     def verdict(self) -> str:

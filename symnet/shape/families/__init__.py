@@ -15,6 +15,7 @@ from symnet.shape.families.elliptic import ELLIPTIC, ELLIPTIC_B, ELLIPTIC_C
 from symnet.shape.families.family import Family, Parameter
 from symnet.shape.families.inverse_chebyshev import INVERSE_CHEBYSHEV
 from symnet.shape.families.legendre import LEGENDRE
+from symnet.shape.families.linear_phase import LINEAR_PHASE
 from symnet.shape.families.prototype import Prototype, Reference, Setting
 
 __all__ = [
@@ -31,6 +32,7 @@ CATALOGUE: Final[tuple[Family, ...]] = (
     BESSEL,
     LEGENDRE,
     CHEBYSHEV,
+    LINEAR_PHASE,
     INVERSE_CHEBYSHEV,
     ELLIPTIC,
     ELLIPTIC_B,

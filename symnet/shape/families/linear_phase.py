@@ -99,12 +99,12 @@ def _edge(found: Swings, degrees: float) -> float:
 
 
 class _LinearPhase(Family):
-    name: ClassVar[str] = "linear phase with equiripple error"
+    name: ClassVar[str] = "equiripple linear phase"
     source: ClassVar[str] = "A. I. Zverev, Handbook of Filter Synthesis, Wiley 1967 (from memory)"
 
     def has_order(self, order: int) -> bool:
-        """A single pole has no shape to choose."""
-        return order >= 2
+        """Of order 2 every Q above that of Bessel has some error, so that a Q says nothing of it (the constructor does)."""
+        return order >= 3
 
     def parameters(self, order: int) -> tuple[Parameter, ...]:
         """The phase error."""
