@@ -34,6 +34,10 @@ if TYPE_CHECKING:
     from symnet.exact.derive import derive, derive_all
     from symnet.exact.limits import limits
     from symnet.exact.mna import equations
+    from symnet.exact.ports.element import extra_element
+    from symnet.exact.ports.impedance import driving_point
+    from symnet.exact.ports.modes import common_mode
+    from symnet.exact.ports.twoport import two_port
     from symnet.exact.scaling import scale
     from symnet.exact.transfer import Transfer
     from symnet.present.brief import brief
@@ -66,14 +70,17 @@ __all__ = [
     "butterworth",
     "capacitor",
     "chebyshev",
+    "common_mode",
     "compare",
     "derive",
     "derive_all",
     "dominant",
     "drive",
+    "driving_point",
     "elliptic",
     "equations",
     "explain",
+    "extra_element",
     "f3db",
     "form",
     "group_delay",
@@ -94,6 +101,7 @@ __all__ = [
     "scale",
     "sections",
     "split_poles",
+    "two_port",
     "verify",
 ]
 
@@ -105,6 +113,10 @@ _WHERE = {
     "symnet.exact.derive": "derive derive_all",
     "symnet.exact.limits": "limits",
     "symnet.exact.mna": "equations",
+    "symnet.exact.ports.element": "extra_element",
+    "symnet.exact.ports.impedance": "driving_point",
+    "symnet.exact.ports.modes": "common_mode",
+    "symnet.exact.ports.twoport": "two_port",
     "symnet.exact.scaling": "scale",
     "symnet.exact.transfer": "Transfer",
     "symnet.present.brief": "brief",

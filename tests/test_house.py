@@ -47,14 +47,17 @@ WORDS = {
     "butterworth",
     "capacitor",
     "chebyshev",
+    "common_mode",
     "compare",
     "derive",
     "derive_all",
     "dominant",
     "drive",
     "elliptic",
+    "driving_point",
     "equations",
     "explain",
+    "extra_element",
     "f3db",
     "form",
     "group_delay",
@@ -76,6 +79,7 @@ WORDS = {
     "sections",
     "split_poles",
     "verify",
+    "two_port",
 }
 
 

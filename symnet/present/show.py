@@ -12,6 +12,9 @@ from symnet.circuit.network import Network
 from symnet.exact.limits import Limits
 from symnet.exact.mna import Equations
 from symnet.exact.naming import Naming
+from symnet.exact.ports.element import ExtraElement
+from symnet.exact.ports.modes import Modes
+from symnet.exact.ports.twoport import Matrix, TwoPort
 from symnet.exact.scaling import Scaling
 from symnet.exact.transfer import Transfer
 from symnet.present.blocks import Block, Formula, Table
@@ -20,6 +23,7 @@ from symnet.present.difference import comparison_blocks
 from symnet.present.dominant import dominant_blocks, split_blocks
 from symnet.present.explain import Explanation
 from symnet.present.network import network_blocks
+from symnet.present.ports import element_blocks, matrix_blocks, modes_blocks, two_port_blocks
 from symnet.present.recognition import recognition_blocks
 from symnet.present.response import half_power_rows
 from symnet.present.results import (
@@ -137,6 +141,26 @@ def _recognition(value: Recognition) -> Bundle:
 @formats(Conditions)
 def _conditions(value: Conditions) -> Bundle:
     return bundle(conditions_blocks(value))
+
+
+@formats(TwoPort)
+def _two_port(value: TwoPort) -> Bundle:
+    return bundle(two_port_blocks(value))
+
+
+@formats(Matrix)
+def _matrix(value: Matrix) -> Bundle:
+    return bundle(matrix_blocks(value))
+
+
+@formats(ExtraElement)
+def _extra_element(value: ExtraElement) -> Bundle:
+    return bundle(element_blocks(value))
+
+
+@formats(Modes)
+def _modes(value: Modes) -> Bundle:
+    return bundle(modes_blocks(value))
 
 
 @formats(Dominant)
