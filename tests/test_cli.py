@@ -154,3 +154,46 @@ def test_control_characters_do_not_reach_the_terminal(tmp_path: Path) -> None:
     path.write_bytes(b"# \x1b[2J\x07 comment\n" + RC.encode())
     done = run([str(path)])
     assert b"\x1b" not in done.stdout + done.stderr
+
+
+@pytest.fixture
+def working(tmp_path: Path) -> Path:
+    path = tmp_path / "working.txt"
+    path.write_text("1. node out: (out - in)/R1 + s*C1*out = 0\n2. f0 = 1.59 kHz\n", encoding="utf-8")
+    return path
+
+
+def test_a_working_that_holds(network: Path, working: Path, capsys: pytest.CaptureFixture[str]) -> None:
+    assert main([str(network), "--check", str(working)]) == 0
+    shown = capsys.readouterr()
+    assert "Every line holds (2 of 2)." in shown.out
+    assert "true for the given values, to the digits given" in shown.out
+    assert shown.err == ""
+
+
+def test_a_working_with_a_false_line(
+    network: Path, working: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    working.write_text("1. out/in = 1/(1 - s*R1*C1)\n", encoding="utf-8")
+    assert main([str(network), "--check", str(working), "--md"]) == 1
+    shown = capsys.readouterr()
+    assert "The first line that does not hold is line 1." in shown.out
+    assert shown.err == ""
+
+
+def test_a_fault_of_the_working_names_its_file(
+    network: Path, working: Path, capsys: pytest.CaptureFixture[str]
+) -> None:
+    working.write_text("out = 2 in\n", encoding="utf-8")
+    assert main([str(network), "--check", str(working)]) == 1
+    shown = capsys.readouterr()
+    assert shown.out == ""
+    assert "working.txt: line 1, column 9: in follows a number and is not a unit" in shown.err
+    assert main([str(network), "--check", str(working) + "x"]) == 1
+    assert "No such file" in capsys.readouterr().err
+
+
+def test_a_working_from_standard_input(network: Path) -> None:
+    done = run([str(network), "--check", "-"], b"H = 1/(1 + s*R1*C1)")
+    assert (done.returncode, done.stderr) == (0, b"")
+    assert b"Every line holds" in done.stdout

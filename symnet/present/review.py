@@ -87,7 +87,7 @@ def _notes(review: Review) -> Iterator[Line]:
     if any(judgement.verdict is Verdict.CONDITION for judgement in review):
         yield "conditions are for positive parts"
     if any(judgement.jump or judgement.follows for judgement in review) or review.completeness is not None:
-        yield "what follows from what was decided by rank at a random point modulo 2^61 - 1; the verdicts are exact"
+        yield "what follows from what was decided by rank at a random point modulo a prime; the verdicts are exact"
 
 
 def _story(judgement: Judgement) -> Iterator[Block]:

@@ -16,6 +16,7 @@ from itertools import product
 from typing import TYPE_CHECKING, Final
 
 from symnet.expressions import names_in
+from symnet.review.altered import Altered
 from symnet.review.rows import Row, Rows, Span
 from symnet.review.working import Equation, Line, expressions_of
 
@@ -87,6 +88,14 @@ class Follower:
                     return True
         return row in Span(self.rows.laws)
 
+    def is_of_node(self, node: str, differences: Sequence[Value]) -> bool:
+        """Whether a true line is the current law at that node, laws of parts put in."""
+        span = Span(self.rows.laws)
+        for equation, row in zip(self.rows.equations, self.rows.network, strict=True):
+            if equation.kind == "node" and equation.name == node:
+                span.add(row)
+        return all(row is None or row in span for row in map(self.row, differences))
+
     def false(self, line: Line, differences: Sequence[Value]) -> tuple[Line, ...]:
         """Take in a wrong line: the wrong lines it follows from; empty when it is wrong on its own."""
         rows = [(d, row) for d in differences if (row := self.row(d)) is not None]
@@ -117,6 +126,14 @@ class Follower:
             if span is not None and all(target in span for target in targets):
                 return places
         return None
+
+    def solution(self, wrong: Sequence[Wrong], places: Sequence[int]) -> Altered:
+        """The exact solution of the network with wrong lines in the places of some of its equations.
+
+        Raises what :class:`~symnet.review.altered.Altered` raises.
+        """
+        kept = [e.value.numerator for k, e in enumerate(self.rows.equations) if k not in places]
+        return Altered(self.rows.scope.solution, [*kept, *(w.polynomial for w in wrong)])
 
     def with_wrong(self, wrong: Sequence[Wrong], places: Sequence[int]) -> Span | None:
         """The equations of the network with wrong lines in the places of some; None when they are not independent."""

@@ -34,7 +34,7 @@ if TYPE_CHECKING:
     from symnet.exact.determinant import Determinant
     from symnet.exact.readable.packed import Polynomial
 
-__all__ = ["ROUNDED", "Solution", "Unknown", "generator_of"]
+__all__ = ["ROUNDED", "Solution", "Substitution", "Unknown", "generator_of"]
 
 #: ("v", node), ("i", drive, law or op amp), or ("x", current drive): a voltage or current that is solved for.
 Unknown: TypeAlias = "tuple[str, str]"
@@ -52,8 +52,67 @@ def generator_of(unknown: Unknown) -> str:
     return f"{unknown[0]}:{unknown[1]}"
 
 
+class Substitution:
+    """Every unknown as N/D with one common D, in an algebra, and what becomes of polynomials when they are put in.
+
+    ``unknowns`` and ``algebra`` are those of the network.
+    """
+
+    algebra: Algebra
+    unknowns: tuple[Unknown, ...]
+
+    def numerator(self, unknown: Unknown) -> Polynomial:
+        """N of an unknown."""
+        raise NotImplementedError
+
+    @property
+    def denominator(self) -> Polynomial:
+        """D."""
+        raise NotImplementedError
+
+    def remainders(self, polynomial: Polynomial) -> dict[int, Polynomial]:
+        """What is left of a polynomial in the unknowns when they are replaced by their N, by degree; {} if zero.
+
+        An equation ``polynomial = 0`` holds in the network exactly when nothing is left.
+        """
+        algebra = self.algebra
+        out: dict[int, Polynomial] = {}
+        for exponents, coefficient in self.by_unknowns(polynomial).items():
+            product = coefficient
+            for unknown, exponent in zip(self.unknowns, exponents, strict=True):
+                for _ in range(exponent):
+                    product = algebra.multiply(product, self.numerator(unknown))
+            degree = sum(exponents)
+            out[degree] = algebra.add(out.get(degree, {}), product)
+        return {degree: rest for degree, rest in out.items() if rest}
+
+    def by_unknowns(self, polynomial: Polynomial) -> dict[tuple[int, ...], Polynomial]:
+        """The coefficients of a polynomial in the unknowns, by their exponents in the order of ``unknowns``."""
+        return self.algebra.split(polynomial, map(generator_of, self.unknowns))
+
+    def substituted(self, value: Value) -> tuple[Polynomial, Polynomial]:
+        """A value with the unknowns replaced by the solution: numerator and denominator, D's multiplied in.
+
+        For values in which the drives cancel, such as ``out/in``; ZeroDivisionError where the denominator vanishes.
+        """
+        sides = [self.remainders(side) for side in (value.numerator, value.denominator)]
+        if not sides[1]:
+            raise ZeroDivisionError
+        most = max((degree for side in sides for degree in side), default=0)
+        top, bottom = (self._levelled(side, most) for side in sides)
+        return top, bottom
+
+    def _levelled(self, parts: dict[int, Polynomial], most: int) -> Polynomial:
+        total: Polynomial = {}
+        for degree, part in parts.items():
+            for _ in range(most - degree):
+                part = self.algebra.multiply(part, self.denominator)
+            total = self.algebra.add(total, part)
+        return total
+
+
 @dataclass(eq=False)
-class Solution:
+class Solution(Substitution):
     """The solution of one network in an algebra of its own; made by :meth:`of`.
 
     Generators: s and the names of the network in the order of its ring, pi, the drives where there are several,
@@ -152,9 +211,13 @@ class Solution:
             out[unknown][pack(exponents[:own])] = coefficient
         return out
 
-    @cached_property
+    @property
     def denominator(self) -> Polynomial:
         """D, the determinant of the network, not in lowest terms with any N."""
+        return self._denominator
+
+    @cached_property
+    def _denominator(self) -> Polynomial:
         below = self._below
         if below is None:
             drive, read = self.network.drives[0], _read(self.unknowns[0])
@@ -187,48 +250,6 @@ class Solution:
                     "this is a defect of symnet: please report the network",
                 )
             )
-
-    # -- tests -----------------------------------------------------------------------------------------------------------
-
-    def remainders(self, polynomial: Polynomial) -> dict[int, Polynomial]:
-        """What is left of a polynomial in the unknowns when they are replaced by their N, by degree; {} if zero.
-
-        An equation ``polynomial = 0`` holds in the network exactly when nothing is left.
-        """
-        algebra = self.algebra
-        out: dict[int, Polynomial] = {}
-        for exponents, coefficient in self.by_unknowns(polynomial).items():
-            product = coefficient
-            for unknown, exponent in zip(self.unknowns, exponents, strict=True):
-                for _ in range(exponent):
-                    product = algebra.multiply(product, self.numerator(unknown))
-            degree = sum(exponents)
-            out[degree] = algebra.add(out.get(degree, {}), product)
-        return {degree: rest for degree, rest in out.items() if rest}
-
-    def by_unknowns(self, polynomial: Polynomial) -> dict[tuple[int, ...], Polynomial]:
-        """The coefficients of a polynomial in the unknowns, by their exponents in the order of ``unknowns``."""
-        return self.algebra.split(polynomial, map(generator_of, self.unknowns))
-
-    def substituted(self, value: Value) -> tuple[Polynomial, Polynomial]:
-        """A value with the unknowns replaced by the solution: numerator and denominator, D's multiplied in.
-
-        For values in which the drives cancel, such as ``out/in``; ZeroDivisionError where the denominator vanishes.
-        """
-        sides = [self.remainders(side) for side in (value.numerator, value.denominator)]
-        if not sides[1]:
-            raise ZeroDivisionError
-        most = max((degree for side in sides for degree in side), default=0)
-        top, bottom = (self._levelled(side, most) for side in sides)
-        return top, bottom
-
-    def _levelled(self, parts: dict[int, Polynomial], most: int) -> Polynomial:
-        total: Polynomial = {}
-        for degree, part in parts.items():
-            for _ in range(most - degree):
-                part = self.algebra.multiply(part, self.denominator)
-            total = self.algebra.add(total, part)
-        return total
 
     # -- modulo a prime ----------------------------------------------------------------------------------------------------
 

@@ -125,6 +125,12 @@ class _Stage:
         judgement = self.judge.equation(line, equation)
         differences = self.judge.said[-1].differences
         judgement = self._take(judgement, differences)
+        if (
+            judgement.holds
+            and equation.node is not None
+            and not self.follower.is_of_node(equation.node, differences)
+        ):
+            judgement = replace(judgement, note=f"it is not the sum of the currents at node {equation.node}")
         if not judgement.holds and not judgement.follows:
             judgement = self._of_claimed(line, judgement)
         if not judgement.holds and _is_transfer(equation):
