@@ -7,8 +7,6 @@ import math
 from functools import lru_cache
 from typing import Any, ClassVar, Final
 
-import numpy as np
-
 from symnet.errors import Fault, NotationError
 from symnet.shape.families.arithmetic import as_typed, context, measured
 from symnet.shape.families.family import (
@@ -86,16 +84,17 @@ def _poles(order: int, degrees: float) -> Roots:
 def _edge(found: Swings, degrees: float) -> float:
     """Where the error, after its last extreme, has come down to its own negative height."""
     height = math.radians(degrees)
-    low = float(found.at[-1])
-    high = 1.5 * low
-    while found.error(np.array([high]))[0] > -height:
-        low, high = high, 1.5 * high
-    while high - low > 2e-16 * high:
-        middle = (low + high) / 2
-        if not low < middle < high:
+    w = 1.5 * found.at[-1:]
+    while found.error(w)[0] > -height:
+        w = 1.5 * w
+    for _ in range(
+        60
+    ):  # the error falls ever more steeply out there, so that Newton steps come from one side
+        step = (found.error(w) + height) / found.delay_error(w)[0]
+        w = w - step
+        if abs(step[0]) <= 2e-15 * w[0]:
             break
-        low, high = (middle, high) if found.error(np.array([middle]))[0] > -height else (low, middle)
-    return high
+    return float(w[0])
 
 
 class _LinearPhase(Family):

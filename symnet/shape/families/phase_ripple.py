@@ -33,7 +33,8 @@ Floats: TypeAlias = NDArray[np.float64]
 _FIRST_DEGREES: Final = 0.5
 _FIRST: Final = {2: ([1.245, 1.012], [0.7, 1.7]), 3: ([1.608, 1.3576, 2.2047], [0.51, 1.5, 2.29])}
 _PER_OCTAVE: Final = 4  # steps from one error to its double
-_NODES: Final = 10  # of an interpolation between the steps: 1e-12 of the poles
+_NODES: Final = 10  # of an interpolation between the steps: 1e-11 of the poles
+_BARYCENTRIC: Final = np.array([(-1.0) ** i * math.comb(_NODES - 1, i) for i in range(_NODES)])
 _MOST_STEPS: Final = 40
 _NOISE: Final = 1e-13
 _CLOSE: Final = 3e-6  # a relative step after which the next one, about its square, is not needed
@@ -239,10 +240,12 @@ def interpolated(order: int, degrees: float) -> Swings:
     """The member of that order (2 or more) and error, to ten digits; errors from 0.001 to 5 degrees."""
     place = _PER_OCTAVE * math.log2(degrees / _FIRST_DEGREES)
     low = math.floor(place) - _NODES // 2 + 1
-    at = place - low
-    weights = np.array(
-        [math.prod((at - j) / (i - j) for j in range(_NODES) if j != i) for i in range(_NODES)]
-    )
+    away = place - low - np.arange(_NODES)
+    if not away.all():
+        weights = (away == 0).astype(float)
+    else:  # barycentric form of the polynomial through the nodes
+        weights = _BARYCENTRIC / away
+        weights /= weights.sum()
     found = weights @ _nodes(order, low)
     return Swings(order, found[:order], found[order:])
 
