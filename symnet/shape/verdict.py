@@ -372,7 +372,7 @@ def _shortest(value: float, plus: float) -> str:
         text = f"{value:.{digits}g}"
         if abs(float(text) - value) <= max(plus, 1e-3 * abs(value)):
             break
-    return text
+    return f"{float(text):.16g}"  # 20, not 2e+01
 
 
 def hertz(w: float) -> str:

@@ -213,6 +213,7 @@ def test_the_family_of_the_table_is_recognised(case: Ladder) -> None:
         assert found.match.prototype.settings[0].value == pytest.approx(case.ripple_db, rel=2e-3)
     if case.family.startswith("inverse"):
         assert found.match.prototype.settings[0].value == pytest.approx(case.stop_db, abs=0.01)
+        assert f", attenuation {case.stop_db:g} dB, " in found.match.name
     if case.stop_w:
         made = found.match.prototype
         assert made.reference("ripple_edge").w == pytest.approx(1, abs=1e-3)
