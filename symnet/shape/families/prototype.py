@@ -203,7 +203,7 @@ class Prototype(Displayed):
             poles=tuple(p * k for p in self.poles),
             zeros=tuple(z * k for z in self.zeros),
             references=tuple(r.scaled(k) for r in self.references),
-            equation=f"{self.equation}, with s for s*{1 / k:.17g}" if self.equation else "",
+            equation=f"{self.equation}, with s for s*{1 / k:.9g}" if self.equation else "",
             exact=None,
             refined=None,
         )
@@ -230,7 +230,7 @@ class Prototype(Displayed):
             poles=in_order((square / p).conjugate() for p in self.poles),
             zeros=(0j,) * at_infinity + in_order((square / z).conjugate() for z in self.zeros),
             references=tuple(r.inverted(self.unit) for r in self.references),
-            equation=f"{self.equation}, with {square:.17g}/s for s" if self.equation else "",
+            equation=f"{self.equation}, with {square:.9g}/s for s" if self.equation else "",
             band=HIGH_PASS,
             exact=self.exact[::-1] if self.exact and not self.zeros else None,
             refined=None,
@@ -311,11 +311,11 @@ class Prototype(Displayed):
         at_infinity = self.order - len(self.zeros)
         if band == BAND_PASS:
             transform, ratio, zeros = to_band_pass, width / edge, (0j,) * at_infinity
-            what = f"{edge:.17g}*(s^2 + {centre:.17g}^2)/({width:.17g}*s) for s"
+            what = f"{edge:.9g}*(s^2 + {centre:.9g}^2)/({width:.9g}*s) for s"
         else:
             transform, ratio = to_band_stop, width * edge
             zeros = (complex(0.0, centre), complex(0.0, -centre)) * at_infinity
-            what = f"{edge:.17g}*{width:.17g}*s/(s^2 + {centre:.17g}^2) for s"
+            what = f"{edge:.9g}*{width:.9g}*s/(s^2 + {centre:.9g}^2) for s"
         return replace(
             self,
             poles=in_order(transform(self.poles, centre, ratio)),

@@ -85,9 +85,9 @@ _LABELS: Final = {
 _IN_HIGH_PASS: Final = _LABELS | {
     W3DB: "-3.0103 dB relative to infinite frequency",
     W6DB: "-6.0206 dB relative to infinite frequency",
-    PHASE_LINE: "T of the low-pass that s -> 1/s gives (the slope of its line of phase), as a frequency",
-    PHASE_EDGE: "edge of the linear phase of the low-pass that s -> 1/s gives",
-    UNIT_DELAY: "T of the low-pass that s -> 1/s gives (its group delay at DC), as a frequency",
+    PHASE_LINE: "1/T of the low-pass it comes from, turned over (T the slope of its line of phase)",
+    PHASE_EDGE: "edge of the linear phase of the low-pass it comes from, turned over",
+    UNIT_DELAY: "1/T of the low-pass it comes from, turned over (T its group delay at DC)",
 }
 _DELAY: Final = "delay"
 
