@@ -18,7 +18,7 @@ if TYPE_CHECKING:
 
 __all__ = ["review_blocks"]
 
-_LONGEST: Final = 60  # characters of a line that a cell of the table shows typeset; longer ones are cut
+_LONGEST: Final = 120  # characters of a line that a cell of the table shows; longer ones are cut
 
 
 def review_blocks(review: Review) -> tuple[Block, ...]:

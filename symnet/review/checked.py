@@ -17,8 +17,13 @@ __all__ = ["is_zero", "rounding", "value_of"]
 
 
 def is_zero(scope: Scope, polynomial: Polynomial) -> bool:
-    """Whether a polynomial in the unknowns is zero in the network: first by a random point, then exactly."""
-    return not scope.solution.is_nonzero(polynomial) and not scope.solution.remainders(polynomial)
+    """Whether a polynomial in the unknowns is zero in the network: first by a random point, then exactly.
+
+    Raises LimitError where the exact solution is too long to be put in.
+    """
+    if scope.solution.is_nonzero(polynomial):
+        return False
+    return scope.knows(polynomial) or not scope.solution.remainders(polynomial)
 
 
 def value_of(

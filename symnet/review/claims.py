@@ -9,12 +9,14 @@ become an identity; one in numbers is compared with every crossing of a response
 from __future__ import annotations
 
 import math
+from collections.abc import Sequence
 from fractions import Fraction
 from typing import TYPE_CHECKING, Final
 
 from symnet.errors import Fault, LimitError, MissingValueError, NotationError, UndefinedError, nearest
 from symnet.exact.polynomials import make_ring
 from symnet.expressions import Name
+from symnet.quantities import HERTZ, engineering
 from symnet.review.algebra import Value
 from symnet.review.checked import is_zero, rounding, value_of
 from symnet.review.digits import half_unit
@@ -46,9 +48,11 @@ _HALF_POWER: Final = ("f3dB", "w3dB")
 def half_power_claim(judge: Judge, statement: Equation) -> bool:
     """Whether a line claims a -3 dB frequency: f3dB = ..., w3dB = ...."""
     first = statement.sides[0]
-    if not isinstance(first, Name) or FIGURES.get(first.name) not in _HALF_POWER:
-        return False
-    return first.name not in judge.scope.definitions and first.name not in judge.scope.network.symbols()
+    return (
+        isinstance(first, Name)
+        and FIGURES.get(first.name) in _HALF_POWER
+        and judge.scope.is_figure(first.name)
+    )
 
 
 def gives_transfer(scope: Scope, statement: Equation) -> bool:
@@ -132,10 +136,13 @@ def _found(judge: Judge, figure: str, of: Expression | None) -> str:
         crossings = f3db(ratio)
     except UndefinedError:
         return ""
-    shown = ", ".join(f"{c.f if figure == 'f3dB' else 2 * math.pi * c.f:.6g}" for c in crossings)
-    return (
-        f"{figure} is {shown} {'Hz' if figure == 'f3dB' else 'rad/s'}" if shown else f"there is no {figure}"
-    )
+    unit = "Hz" if figure == "f3dB" else "rad/s"
+    found = [c.f if figure == "f3dB" else 2 * math.pi * c.f for c in crossings]
+    return f"{figure} is {_frequencies(found, unit)}" if found else f"there is no {figure}"
+
+
+def _frequencies(found: Sequence[float], unit: str) -> str:
+    return ", ".join(engineering(Fraction(f), HERTZ, digits=5, unit=unit) for f in found)
 
 
 def _in_numbers(judge: Judge, of: Expression | None) -> Ratio | None:
@@ -270,7 +277,9 @@ def _wrong_setting(judge: Judge, name: str, value: Expression, ratio: Ratio, mat
         reach += 0.005 * abs(number)
     if any(abs(found - number) <= reach for found in values):
         return ""
-    return f"{name} is {', '.join(f'{found:.5g}' for found in values) or 'nowhere'} {unit}"
+    if name in FIGURES:
+        return f"{name} is {_frequencies(values, unit)}" if values else f"there is no {name}"
+    return f"{name} is {values[0]:.5g} {unit}"
 
 
 def _own_w0(ratio: Ratio) -> float:

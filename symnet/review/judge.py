@@ -11,21 +11,25 @@ from __future__ import annotations
 
 from dataclasses import dataclass, field, replace
 from itertools import pairwise
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Final
 
+from symnet.errors import LimitError
 from symnet.expressions import Expression, Name, names_in
 from symnet.review.checked import is_zero, rounding, value_of
 from symnet.review.rounding import can_vanish
 from symnet.review.scope import Scope
 from symnet.review.verdicts import Judgement, Verdict, worst
 from symnet.review.ways import has_values, ways
-from symnet.review.working import FIGURES, Equation, Line
+from symnet.review.working import Equation, Line
 
 if TYPE_CHECKING:
     from symnet.exact.readable.packed import Polynomial
     from symnet.review.algebra import Value
 
 __all__ = ["Judge", "Said"]
+
+#: Terms of the determinant of a network up to which a condition is looked for; it would be as long as that.
+_MOST_TERMS_SOLVED: Final = 5000
 
 
 @dataclass(frozen=True, slots=True)
@@ -82,10 +86,14 @@ class Judge:
             if any(_is_spoken(name, self.scope) for side in sides for name in names_in(side)):
                 return Judgement(line, Verdict.IDENTITY)
             return Judgement(line, Verdict.NOTHING, note="it is true of any network")
-        if is_zero(self.scope, difference.numerator):
-            return Judgement(line, Verdict.IDENTITY)
-        if self._rounds(self.scope, sides, of):
-            return Judgement(line, Verdict.IDENTITY, rounded=True)
+        try:
+            if is_zero(self.scope, difference.numerator):
+                return Judgement(line, Verdict.IDENTITY)
+            if self._rounds(self.scope, sides, of):
+                return Judgement(line, Verdict.IDENTITY, rounded=True)
+        except LimitError:
+            if self.numeric is None:
+                raise
         if self.numeric is not None:
             left, right = (value_of(self.numeric, side, of) for side in sides)
             top = (left - right).numerator
@@ -93,7 +101,13 @@ class Judge:
                 return Judgement(line, Verdict.VALUES)
             if self._rounds(self.numeric, sides, of):
                 return Judgement(line, Verdict.VALUES, rounded=True)
-        return self.conditional(line, tuple(self.scope.solution.remainders(difference.numerator).values()))
+        try:
+            if self.scope.solution.terms <= _MOST_TERMS_SOLVED:
+                rest = tuple(self.scope.solution.remainders(difference.numerator).values())
+                return self.conditional(line, rest)
+        except LimitError:
+            pass
+        return Judgement(line, Verdict.FALSE)  # that is sure, only a condition is out of reach
 
     def conditional(self, line: Line, rest: tuple[Polynomial, ...]) -> Judgement:
         """The verdict on a line that is true only where these polynomials are zero, and false where they cannot be."""
@@ -132,7 +146,7 @@ def _is_spoken(name: Name, scope: Scope) -> bool:
     word = name.name
     if word in scope.definitions or word[:2] in {"i_", "v_"}:
         return True
-    return (word in FIGURES or word in {"H", "D"}) and word not in scope.network.symbols()
+    return scope.is_figure(word) or (word in {"H", "D"} and word not in scope.network.symbols())
 
 
 def _proportional(one: Value, two: Value) -> bool:

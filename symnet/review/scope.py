@@ -36,6 +36,7 @@ from symnet.review.working import FIGURES, Assumption, Definition, Equation, Lin
 
 if TYPE_CHECKING:
     from symnet.errors import Span
+    from symnet.exact.readable.packed import Polynomial
 
 __all__ = ["WORDS", "Scope", "name_faults"]
 
@@ -47,11 +48,13 @@ WORDS: Final = ("pi", "j", "w", "omega", "jw", "jomega", "f", "H", "D", *FIGURES
 class Scope:
     """The meaning of names at one place of a working: the solution of the network there, and what ``let`` gave.
 
-    ``of`` is the transfer whose figures are meant, None for H.
+    ``own_equations`` are the equations of the network itself, common factors apart: they hold without further proof,
+    however long the network is.
     """
 
     solution: Solution
     definitions: Mapping[str, Expression] = field(default_factory=dict)
+    own_equations: set[frozenset[tuple[int, int]]] = field(default_factory=set, repr=False)
     _known: dict[str, Value] = field(default_factory=dict, repr=False)
 
     @property
@@ -85,12 +88,29 @@ class Scope:
 
     def of_name(self, name: str, of: Expression | None = None) -> Value:
         """What one name stands for."""
-        if of is not None and name in FIGURES and name not in self.definitions:
+        if of is not None and self.is_figure(name):
             return self._figure(FIGURES[name], of)
         known = self._known.get(name)
         if known is None:
             known = self._known[name] = self._meaning(name)
         return known
+
+    def is_figure(self, name: str) -> bool:
+        """Whether a name is a figure such as Q here, and not one of the network or of the working."""
+        return name in FIGURES and name not in self.definitions and name not in self.network.symbols()
+
+    def know(self, polynomial: Polynomial) -> None:
+        """Take in an equation of the network."""
+        self.own_equations.add(self._primitive(polynomial))
+
+    def knows(self, polynomial: Polynomial) -> bool:
+        """Whether a polynomial is an equation of the network, times a number and names."""
+        return bool(polynomial) and self._primitive(polynomial) in self.own_equations
+
+    def _primitive(self, polynomial: Polynomial) -> frozenset[tuple[int, int]]:
+        _, _, rest = self.solution.algebra.space.content(polynomial)
+        sign = 1 if rest[max(rest)] > 0 else -1
+        return frozenset((m, sign * c) for m, c in rest.items())
 
     def _meaning(self, name: str) -> Value:
         solution, algebra = self.solution, self.solution.algebra

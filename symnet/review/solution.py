@@ -216,13 +216,21 @@ class Solution(Substitution):
         """D, the determinant of the network, not in lowest terms with any N."""
         return self._denominator
 
+    @property
+    def terms(self) -> int:
+        """An upper bound of the number of terms of D, known without writing it out."""
+        return self._determinant.terms
+
     @cached_property
     def _denominator(self) -> Polynomial:
-        below = self._below
-        if below is None:
-            drive, read = self.network.drives[0], _read(self.unknowns[0])
-            below = quotient_of(self.network, drive, read, self.symbols)[1].denominator
-        return self._written(below)
+        return self._written(self._determinant)
+
+    @cached_property
+    def _determinant(self) -> Determinant:
+        if self._below is not None:
+            return self._below
+        drive, read = self.network.drives[0], _read(self.unknowns[0])
+        return quotient_of(self.network, drive, read, self.symbols)[1].denominator
 
     def _written(self, determinant: Determinant) -> Polynomial:
         own = len(self.naming.generators.names)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Sequence
 from dataclasses import replace
 from fractions import Fraction
@@ -32,6 +33,7 @@ __all__ = ["Statements"]
 
 _ZERO: Final = Number(Fraction(0))
 _MOST_ORDER: Final = 100
+_DIGITS: Final = re.compile(r"\d+")
 
 
 class Statements(Formulas):
@@ -70,6 +72,15 @@ class Statements(Formulas):
     def on_group(self, children: Sequence[Formed]) -> Formed:
         """A parenthesis; the numbers in it stay as they were written, since their digits count."""
         return replace(children[0], rule="group")
+
+    def must_not_be_code(self, *parts: Formed) -> None:
+        """There are no value codes here: 2R1 is a product that was written without its sign."""
+        for part in parts:
+            if part.code:
+                number = _DIGITS.match(part.code)
+                head = number[0] if number else ""
+                hint = f"write {head}*{part.code[len(head) :]}, or a value with its unit"
+                self.fault(f"{part.code} is no product: a sign is missing", hint, part.span)
 
     def on_root(self, children: Sequence[Any]) -> Formed:
         """A square root."""

@@ -80,7 +80,10 @@ class _Stage:
         if solution.naming.numbers:
             numeric = Scope(Solution.of(network, frozenset()), definitions)
         judge = Judge(Scope(solution, definitions), text, numeric)
-        return cls(judge, Follower(Rows(judge.scope)))
+        rows = Rows(judge.scope)
+        for equation in rows.equations:
+            judge.scope.know(equation.value.numerator)
+        return cls(judge, Follower(rows))
 
     def replay(self, earlier: Sequence[Judgement]) -> None:
         """Take in what was said before the assumption, as it reads under it."""

@@ -119,6 +119,8 @@ def test_a_root() -> None:
 FAULTS = [
     ("x R1 = 2", "a sign is missing between x and R1", "R1"),
     ("a = 2 x", "x follows a number and is not a unit", "x"),
+    ("a = 2R1*b", "2R1 is no product: a sign is missing", "2R1"),
+    ("a = 4K7", "4K7 is no product: a sign is missing", "4K7"),
     ("let g", "this line does not say what its let is", ""),
     ("let = 3", "this line does not say what its let is", "="),
     ("node x", "this line does not say what its node is", ""),
