@@ -41,6 +41,7 @@ DRAWN = {
     "rc ladder": "in -- R1 -- a -- R2 -- b -- R3 -- out; a -- C1 -- gnd; b -- C2 -- gnd; out -- C3 -- gnd",
     "lc ladder": "in -- Rs -- a -- L1 -- b -- L2 -- out; a -- C1 -- gnd; b -- C2 -- gnd; out -- C3 || RL -- gnd",
     "loaded divider": "in -- R1 -- out -- R2 || RL -- gnd",
+    "divider before a section": "in -- R1 -- a -- R2 -- gnd; a -- R3 -- out -- C1 -- gnd",
     "inverting stage": "in -- R1 -- m -- R2 || C2 -- out; U1: opamp(plus=gnd, minus=m, out=out)",
     "unity gain": "in -- R1 -- a -- R2 -- p -- C1 -- gnd; a -- C2 -- out; U1: opamp(plus=p, minus=out, out=out)",
     "twin t": "in -- R1 -- a -- R2 -- out; a -- C3 -- gnd; in -- C1 -- b -- C2 -- out; b -- R3 -- gnd",
@@ -209,6 +210,7 @@ def test_random_networks(seed: int) -> None:
 LENGTHS = {
     "rc ladder": (138, 14),
     "loaded divider": (60, 6),
+    "divider before a section": (60, 11),
     "inverting stage": (40, 6),
     "unity gain": (60, 10),
     "twin t": (204, 14),
@@ -239,6 +241,14 @@ def test_a_ladder_is_gone_through_from_its_output_without_a_fraction() -> None:
 def test_the_first_lines_of_a_feedback_section_use_the_virtual_ground() -> None:
     _, told_ = told("mfb-lp")
     assert list(map(str, told_.steps[:3])) == ["m = 0", "a/R3 = -s*C1*out", "a = -s*R3*C1*out"]
+
+
+def test_a_loaded_divider_is_one_source_behind_a_resistance() -> None:
+    _, told_ = told("loaded divider")
+    assert list(map(str, told_.steps[1:3])) == [
+        "(in*R2/(R1 + R2) - out)/(R1 || R2) = out/RL",
+        "in*R2/(R1 + R2) = out + (R1 || R2)*out/RL",
+    ]
 
 
 def test_star_nodes_of_a_twin_t_are_abbreviated() -> None:

@@ -14,8 +14,17 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from typing import TYPE_CHECKING
 
-from symnet.circuit.parts import GROUND, Branch, CurrentDrive, CurrentLaw, OpAmp, VoltageDrive, VoltageLaw
-from symnet.circuit.series import Group
+from symnet.circuit.parts import (
+    GROUND,
+    Branch,
+    CurrentDrive,
+    CurrentLaw,
+    OpAmp,
+    VoltageDrive,
+    VoltageLaw,
+    class_letter,
+)
+from symnet.circuit.series import Group, Leaf
 from symnet.exact.byhand.frame import Form, Frame, add, times
 from symnet.exact.byhand.writing import difference
 from symnet.expressions import Expression, Name, substitute
@@ -28,11 +37,12 @@ __all__ = ["Equation", "Link", "Term", "node_equations"]
 
 @dataclass(frozen=True, slots=True)
 class Link:
-    """The branch whose current a term is: ``admittance*(plus - minus)``, voltages by name."""
+    """The branch whose current a term is: ``admittance*(plus - minus)``, voltages by name; its name if it is one R."""
 
     plus: str
     minus: str
     admittance: FracElement
+    resistor: str = ""
 
 
 @dataclass(frozen=True, slots=True)
@@ -213,6 +223,9 @@ class _Equations:
     def _symbol(self, name: str) -> Term:
         return Term(1, Name(name), {name: self.frame.field.one})
 
+    def _resistor(self, group: Group) -> str:
+        return group.name if isinstance(group, Leaf) and class_letter(group.name) == "R" else ""
+
     def _flow(self, group: Group, plus: str, minus: str) -> Term:
         """The current of a branch from one voltage to another."""
         admittance = 1 / self.frame.impedance(group)
@@ -229,6 +242,6 @@ class _Equations:
             sign,
             self.frame.through(group, across),
             times(sign * admittance, form),
-            Link(plus, minus, admittance) if sign > 0 else Link(minus, plus, admittance),
+            Link(*((plus, minus) if sign > 0 else (minus, plus)), admittance, self._resistor(group)),
             back,
         )

@@ -16,9 +16,9 @@ from symnet.circuit.spelling import write_expression
 from symnet.exact.byhand.currents import Equation, Link, Term
 from symnet.exact.byhand.elimination import Carried, Elimination, Solved, Updated
 from symnet.exact.byhand.frame import Form, Frame, add, times
-from symnet.exact.byhand.writing import coefficient, combination, expression_of, over
+from symnet.exact.byhand.writing import coefficient, combination, expression_of, factors_of, over
 from symnet.exact.readable.forms import readable_transfer
-from symnet.expressions import Expression, Name, Number, Sum, names_in, negative
+from symnet.expressions import Expression, Name, Number, Parallel, Product, Sum, names_in, negative
 
 if TYPE_CHECKING:
     from symnet.exact.transfer import Transfer
@@ -117,7 +117,10 @@ class _Teller:
             put_in = self._put_in([(1, term) for term in equation.right], known)
             yield Step("put in", Name(voltage), put_in, reason=self._naming(equation.right, known))
         elif (alone := self._alone(equation, voltage, known)) is not None:
-            yield from self._through_one_branch(equation, *alone, voltage, known)
+            if voltage == self.frame.source and (grounded := self._divider(equation, *alone)) is not None:
+                yield from self._thevenin(equation, alone[1], *grounded, known)
+            else:
+                yield from self._through_one_branch(equation, *alone, voltage, known)
         else:
             yield from self._collected(equation, voltage, known)
         if move.let is not None:
@@ -204,6 +207,35 @@ class _Teller:
         if other != GROUND:
             drop = times((self.one if link.plus == voltage else -self.one) / link.admittance, flow)
             yield Step("collect", Name(voltage), _sum([(1, Name(other)), (1, self._combined(drop))]))
+
+    def _divider(self, equation: Equation, alone: Term, link: Link) -> tuple[Term, Link] | None:
+        """The resistor to gnd that makes a divider of the one through which the source enters, and is loaded."""
+        if not link.resistor or link.plus != self.frame.source or len(equation.right) < 2 or alone.sign < 0:
+            return None
+        for term in equation.right if equation.left == (alone,) else ():
+            other = term.link
+            if other is not None and other.resistor and (other.plus, other.minus) == (link.minus, GROUND):
+                return term, other
+        return None
+
+    def _thevenin(
+        self, equation: Equation, link: Link, grounded: Term, shunt: Link, known: dict[str, Form]
+    ) -> Iterator[Step]:
+        """A loaded divider as one source, in*R2/(R1 + R2), behind R1||R2."""
+        r1, r2 = Name(link.resistor), Name(shunt.resistor)
+        source = Product(((1, Name(link.plus)), (1, r2), (-1, Sum(((1, r1), (1, r2))))))
+        behind = Parallel((r1, r2))
+        node = Name(link.minus)
+        current = Product(((1, Sum(((1, source), (-1, node)))), (-1, behind)))
+        load = [(1, term) for term in equation.right if term is not grounded]
+        why = f"Thevenin: {link.plus}, {r1.name} and {r2.name} as one source behind {r1.name}||{r2.name}"
+        yield Step("put in", current, _sum([term.signed() for _, term in load]), reason=why)
+        flow = self._total(load, known)
+        if told := self._naming([term for _, term in load], known):
+            yield Step("put in", current, self._put_in(load, known), reason=told)
+            yield Step("collect", current, self._combined(flow))
+        drop = Product(((1, behind), *factors_of(self._combined(flow))))
+        yield Step("collect", source, Sum(((1, node), (1, drop))))
 
     def _collected(self, equation: Equation, voltage: str, known: dict[str, Form]) -> Iterator[Step]:
         """Everything put in, the voltage on the left, all else on the right, over one denominator."""
