@@ -12,13 +12,11 @@ from dataclasses import replace
 from fractions import Fraction
 from functools import cache
 from random import Random
-from typing import Any
 
 import pytest
 
 import symnet as sn
 from symnet.circuit.network import Network
-from symnet.circuit.parts import Branch, CurrentDrive, CurrentLaw, OpAmp, VoltageDrive, VoltageLaw
 from symnet.circuit.spelling import write_expression
 from symnet.errors import LimitError
 from symnet.exact.byhand.elimination import eliminate
@@ -26,16 +24,14 @@ from symnet.exact.byhand.frame import Frame
 from symnet.exact.byhand.narration import narrate
 from symnet.exact.byhand.truth import UntrueStepError, hold_to_the_solution
 from symnet.exact.readable.forms import readable_transfer
-from symnet.expressions import Expression, Name, Number, Product, names_in
+from symnet.expressions import Expression, Name, Number, Product
 from symnet.present.explain import Explanation
 from symnet.typeset.notation import tree_of
 from symnet.typeset.writing import to_latex
 from tests import oracle
 from tests.networks import seeded
-from tests.reference import active_sections, passive_sections
-from tests.reference.cases import Formula
-
-SECTIONS: tuple[Formula, ...] = (*active_sections.CASES, *passive_sections.CASES)
+from tests.reference.drawings import drawings
+from tests.workings import drawing_of, lines_of, untrue, values_of
 
 DRAWN = {
     "rc ladder": "in -- R1 -- a -- R2 -- b -- R3 -- out; a -- C1 -- gnd; b -- C2 -- gnd; out -- C3 -- gnd",
@@ -64,87 +60,11 @@ OTHERS = {
     "input current": "in -- R1 -- a -- C1 || R2 -- gnd; drive in; read i_R1",
 }
 NETWORKS = {
-    **{case.id: case.text for case in SECTIONS},
-    **{name: f"{text}; drive in; read out" for name, text in DRAWN.items()},
-    **OTHERS,
+    **drawings(most_nodes=5),
+    **{name: drawings(most_nodes=9)[name] for name in ("svf-lp", "tt-lp", "sk3-unity", "lattice-zin")},
+    **{name: sn.network(f"{text}; drive in; read out") for name, text in DRAWN.items()},
+    **{name: sn.network(text) for name, text in OTHERS.items()},
 }
-
-
-def drawing_of(network: Network) -> oracle.Drawing:
-    """The network as the oracle's plain tuples."""
-    parts: list[oracle.Part] = []
-    for part in network.parts:
-        match part:
-            case Branch():
-                parts.append((part.kind, part.name, part.start, part.end, part.name))
-            case VoltageLaw():
-                parts.append(("hold", part.name, part.plus, part.minus, write_expression(part.value)))
-            case CurrentLaw():
-                parts.append(("push", part.name, part.start, part.end, write_expression(part.value)))
-            case OpAmp():
-                parts.append(("opamp", part.name, part.plus, part.minus, part.out))
-    match network.drives[0]:
-        case VoltageDrive(plus, minus):
-            drive = ("voltage", plus, minus)
-        case CurrentDrive(start, end):
-            drive = ("current", start, end)
-    return oracle.Drawing(tuple(parts), drive, write_expression(network.reads[0]))
-
-
-def values_of(network: Network, random: Random) -> dict[str, Fraction]:
-    """A random fraction for every symbol that is not tied, then the tied ones."""
-    ties = {name: v.expression for name, v in network.values if any(True for _ in names_in(v.expression))}
-    names = [name for name in network.symbols() if name not in ties]
-    values = {name: Fraction(random.randint(1, 99), random.randint(1, 99)) for name in ("s", *names)}
-    waiting = dict(ties)
-    while waiting:
-        for name, expression in list(waiting.items()):
-            if all(inner.name in values for inner in names_in(expression)):
-                values[name] = oracle.arithmetic(write_expression(expression), values)
-                del waiting[name]
-    return values
-
-
-def solved(drawing: oracle.Drawing, values: dict[str, Fraction]) -> dict[str, Fraction]:
-    """Every voltage and every current of a branch or source, at these values, for a drive of 1."""
-    matrix, rhs, _ = oracle.tableau(drawing, values, Fraction)
-    solution = oracle.eliminate(matrix, rhs)
-    nodes = oracle.nodes_of(drawing)
-    found = dict(zip(nodes, solution, strict=False))
-    found |= {f"v_{node}": found[node] for node in nodes} | {"gnd": Fraction(0)}
-    currents = [f"i_{part[1]}" for part in drawing.parts]
-    found |= dict(zip(currents, solution[len(nodes) :], strict=False))
-    found["i_drive" if drawing.drive[0] == "current" else "v_drive"] = Fraction(1)
-    return found
-
-
-def lines_of(working: str) -> list[tuple[str, str, str]]:
-    """(name of a definition or "", left, right) of every line, by the letters alone."""
-    found = []
-    for line in working.splitlines():
-        text = line.partition("#")[0].strip()
-        label = re.match(r"(node [\w.]+:|so |hence |let )?\s*", text)
-        assert label
-        left, right = text[label.end() :].split(" = ")
-        found.append((left if text.startswith("let ") else "", left.strip(), right.strip()))
-    return found
-
-
-def untrue(network: Network, working: str, drawing: oracle.Drawing | None = None) -> list[int]:
-    """The lines, from 0, that are not true at three random points."""
-    drawing = drawing or drawing_of(network)
-    wrong: set[int] = set()
-    random = Random(working)
-    for _ in range(3):
-        values = values_of(network, random)
-        names: dict[str, Any] = {**values, **solved(drawing, values)}
-        for k, (defined, left, right) in enumerate(lines_of(working)):
-            value = oracle.arithmetic(right, names)
-            if defined:
-                names[defined] = value
-            elif oracle.arithmetic(left, names) != value:
-                wrong.add(k)
-    return sorted(wrong)
 
 
 #: One equation for two nodes at once, or the parts of a series taken together, is a step of its own to the checker.
@@ -153,8 +73,7 @@ JUMPING = {"floating source", "drive between two nodes", "zobel"}
 
 @cache
 def told(name: str) -> tuple[Network, Explanation]:
-    network = sn.network(NETWORKS[name])
-    return network, sn.explain(network)
+    return NETWORKS[name], sn.explain(NETWORKS[name])
 
 
 @pytest.mark.parametrize("name", NETWORKS)
@@ -258,7 +177,7 @@ def test_star_nodes_of_a_twin_t_are_abbreviated() -> None:
 
 
 def test_outline_and_full() -> None:
-    network = sn.network(NETWORKS["rc ladder"])
+    network = NETWORKS["rc ladder"]
     full, outline = sn.explain(network, detail="full"), sn.explain(network, detail="outline")
     assert set(map(str, outline.steps)) < set(map(str, full.steps))
     assert {step.kind for step in outline.steps} == {"node", "result", "final"}
@@ -284,7 +203,7 @@ def test_what_cannot_be_read_is_refused_with_its_count() -> None:
 
 def test_a_derivation_with_a_wrong_line_is_not_shown() -> None:
     """The check at the end is no formality: one factor of two in any line is found."""
-    H = sn.derive(sn.network(NETWORKS["unity gain"]))
+    H = sn.derive(NETWORKS["unity gain"])
     elimination = eliminate(Frame(H.network, H.drive, H.read, H.naming))
     steps = narrate(elimination, H)
     hold_to_the_solution(steps, elimination, H)

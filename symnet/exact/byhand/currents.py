@@ -184,12 +184,14 @@ class _Equations:
                 continue
             here, there = (start, end) if start in inside else (end, start)
             x, y = self.frame.voltage(here), self.frame.voltage(there)
+            # at a virtual ground a resistor is no part of a divider
+            resistor = self._resistor(group) if y != GROUND or there == GROUND else ""
             if x == y:
                 continue
             if there != GROUND and near.get(there, far) < near.get(here, far):
-                left.append(self._flow(group, y, x))
+                left.append(self._flow(group, y, x, resistor))
             else:
-                right.append(self._flow(group, x, y))
+                right.append(self._flow(group, x, y, resistor))
         for start, end, term in self._sources():
             if (start in inside) != (end in inside):
                 if end in inside:
@@ -223,10 +225,11 @@ class _Equations:
     def _symbol(self, name: str) -> Term:
         return Term(1, Name(name), {name: self.frame.field.one})
 
-    def _resistor(self, group: Group) -> str:
+    @staticmethod
+    def _resistor(group: Group) -> str:
         return group.name if isinstance(group, Leaf) and class_letter(group.name) == "R" else ""
 
-    def _flow(self, group: Group, plus: str, minus: str) -> Term:
+    def _flow(self, group: Group, plus: str, minus: str, resistor: str) -> Term:
         """The current of a branch from one voltage to another."""
         admittance = 1 / self.frame.impedance(group)
         one = self.frame.field.one
@@ -242,6 +245,6 @@ class _Equations:
             sign,
             self.frame.through(group, across),
             times(sign * admittance, form),
-            Link(*((plus, minus) if sign > 0 else (minus, plus)), admittance, self._resistor(group)),
+            Link(*((plus, minus) if sign > 0 else (minus, plus)), admittance, resistor),
             back,
         )

@@ -21,15 +21,16 @@ from symnet.circuit.parts import (
     OpAmp,
     VoltageDrive,
     VoltageLaw,
+    class_letter,
 )
 from symnet.circuit.series import Beside, Group, Leaf, Series, leaves, runs, wire
 from symnet.errors import Fault, LimitError
-from symnet.exact.byhand.writing import coefficient, difference, factors_of
+from symnet.exact.byhand.writing import difference
 from symnet.exact.linear import Bounded, LinearForm, linear_form
 from symnet.exact.naming import Naming
 from symnet.exact.pieces import named_currents
 from symnet.exact.polynomials import make_ring
-from symnet.expressions import Expression, Name, Number, Product, substitute
+from symnet.expressions import Expression, Name, Number, Parallel, Product, Sum, substitute
 
 if TYPE_CHECKING:
     from sympy.polys.fields import FracElement, FracField
@@ -44,6 +45,7 @@ Form: TypeAlias = "dict[str, FracElement]"
 _MOST_TERMS: Final = 300
 
 _ZERO = Number(Fraction(0))
+_ONE = Number(Fraction(1))
 
 
 def add(one: Form, other: Form) -> Form:
@@ -349,14 +351,26 @@ class Frame:
                     return Product(((1, across), (-1, Product(((1, s), (1, name))))))
                 case _:
                     return Product(((1, across), (-1, name)))
-        admittance = 1 / self.impedance(group)
-        factors: list[tuple[int, Expression]] = []
-        if admittance.numer != self.ring.one:
-            factors += factors_of(coefficient(self.field(admittance.numer)))
-        factors.append((1, across))
-        if admittance.denom != self.ring.one:
-            factors.append((-1, coefficient(self.field(admittance.denom))))
-        return Product(tuple(factors))
+        return Product(((1, across), (-1, self._spelled_impedance(group))))
+
+    def _spelled_impedance(self, group: Group) -> Expression:
+        """The impedance of a branch or group in the names of its parts: ``R2 + 1/(s*C2)``."""
+        match group:
+            case Leaf(name):
+                value, s = Name(name), Name("s")
+                match class_letter(name):
+                    case "L":
+                        return Product(((1, s), (1, value)))
+                    case "C":
+                        return Product(((1, _ONE), (-1, Product(((1, s), (1, value))))))
+                    case "Y":
+                        return Product(((1, _ONE), (-1, value)))
+                    case _:
+                        return value
+            case Series(items):
+                return Sum(tuple((1, self._spelled_impedance(item)) for item in items))
+            case Beside(items):
+                return Parallel(tuple(self._spelled_impedance(item) for item in items))
 
 
 def _inside(group: Group) -> set[str]:
