@@ -31,7 +31,7 @@ Change: TypeAlias = Callable[[Terms, int], Terms]
 KINDS = ("branch dropped", "sign flipped", "wrong node", "names swapped", "factor of two")
 
 #: Published networks in the order of the lists, all parts symbols; more than forty.
-NETWORKS: dict[str, Network] = dict(list(drawings(most_nodes=9).items())[:44])
+NETWORKS: dict[str, Network] = dict(list(drawings(most_nodes=9).items())[:48])
 
 
 @dataclass(frozen=True, slots=True)
