@@ -108,9 +108,10 @@ def assert_same_denominator(sketch: Sketch, H: Transfer) -> None:
     num, den = moved(H.numerator), moved(H.denominator)
     assert N * den == D * num
     everything = den
-    for factor in H.hidden:
-        assert factor.degree(0) > 0, "a hidden mode holds s"
-        everything *= moved(factor)
+    for mode in H.hidden:
+        assert mode.factor is not None
+        assert mode.factor.degree(0) > 0, "a hidden mode holds s"
+        everything *= moved(mode.factor)
     content, rest = divmod(D, everything)
     assert not rest, f"{sketch.text}\nis missing in {H.denominator} and {H.hidden}"
     assert content.degree(0) <= 0, f"{sketch.text}\n{content} cancelled unseen in {H.denominator}"

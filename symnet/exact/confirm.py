@@ -17,7 +17,6 @@ from random import Random
 from typing import TYPE_CHECKING, Final
 
 from symnet.errors import Fault, SingularError, SymnetError
-from symnet.exact.expansion import Expansion
 from symnet.exact.mna import Arithmetic, Stamped, stamp, unknown_name
 from symnet.exact.modular import PRIME, SMALL_PRIME, Residue, terms_at
 from symnet.exact.polynomials import modulo
@@ -90,7 +89,7 @@ def confirm(
     else:
         what = "the determinants, not written out,"
         n, d = quotient.modulo(point, PRIME)
-        if quotient.is_writable:
+        if quotient.is_factored:
             _compare_written_out(quotient, [value % SMALL_PRIME for value in point])
             what = "N and D, compared as determinants and (modulo 2^31 - 1) as written out,"
     if (n - expected * d) % PRIME or not d:
@@ -101,10 +100,7 @@ def confirm(
 def _compare_written_out(quotient: Quotient, point: list[int]) -> None:
     """Compare N/D as written out with the determinants at a point modulo the smaller prime, in whole arrays."""
     n, d = quotient.modulo(point, SMALL_PRIME)
-    top, bottom = (
-        side.modulo(point, SMALL_PRIME) if isinstance(side, Expansion) else modulo(side, point, SMALL_PRIME)
-        for side in (quotient.lowest.top, quotient.lowest.bottom)
-    )
+    top, bottom = (side.modulo(point, SMALL_PRIME) for side in (quotient.lowest.top, quotient.lowest.bottom))
     if (n * bottom - top * d) % SMALL_PRIME:
         raise UnconfirmedError(_disagreement())
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import replace
 from functools import lru_cache
 from random import Random
@@ -13,13 +13,14 @@ from symnet.circuit.wiring import check_drives, check_wiring
 from symnet.errors import Fault, NotationError, SingularError, WiringError, nearest
 from symnet.exact.confirm import confirm, undetermined
 from symnet.exact.determinant import Determinant
+from symnet.exact.hidden import Aside, Reason
 from symnet.exact.modular import PRIME
-from symnet.exact.ordering import frontier_order
 from symnet.exact.pieces import Pieces, named_currents
-from symnet.exact.polynomials import ONE, negated
+from symnet.exact.polynomials import ONE, Terms, negated
 from symnet.exact.quotient import Quotient
+from symnet.exact.structure import Structure, structure_of
 from symnet.exact.transfer import Transfer
-from symnet.exact.trees import Piece, build
+from symnet.exact.trees import ZERO, Piece
 from symnet.expressions import Expression, Name, dimension_of, names_in
 from symnet.quantities import AMPERE, VOLT, Dimension
 
@@ -120,7 +121,7 @@ def derive_from(
         for name in kept:
             if name not in known:
                 raise network.unknown(name, known, "part or symbol")
-    pieces, quotient = _quotient(network, drive, read, kept)
+    pieces, quotient = _between(network, drive, read, kept)
     return Transfer(
         network,
         drive,
@@ -136,51 +137,98 @@ def derive_from(
 def quotient_of(
     network: Network, drive: Drive, read: Expression, symbols: frozenset[str] | None = None
 ) -> tuple[Pieces, Quotient]:
-    """The two determinants of H, and the pieces they are made of, not confirmed and not in lowest terms.
+    """The two determinants of H whole, not even without what the wiring cancels, and the pieces they are made of.
 
-    Reads without currents of branches share their denominator, which is the same object. Raises SingularError
-    where it is zero for all values.
+    Reads without currents of branches share their denominator. Raises SingularError where it is zero for all values.
     """
-    pieces, quotient = _quotient(network, drive, read, symbols)
+    pieces, structure = _prepared(network, symbols, named_currents(network, read))
     random = Random("zero")
     point = [random.randrange(1, PRIME) for _ in pieces.naming.generators.names]
-    if not quotient.denominator.modulo(point, PRIME):
+    if not _whole(pieces, structure).modulo(point, PRIME):
         raise SingularError(undetermined(network, pieces.naming))
-    return pieces, quotient
+    factor, terms = pieces.form(read, "the read")
+    bordered = structure_of(pieces.size + 1, (*pieces.pieces, *_border(pieces, drive, terms)), structure.tree)
+    return pieces, Quotient(
+        Determinant(
+            pieces.naming.generators,
+            ZERO if bordered is None else bordered.whole,
+            (*pieces.take, *(weight for weight, _, _ in terms), negated(ONE)),
+            (*pieces.leave, *(ONE for _ in terms), ONE),
+        ),
+        replace(_whole(pieces, structure), factor=factor),
+    )
 
 
-def _quotient(
+def _between(
     network: Network, drive: Drive, read: Expression, symbols: frozenset[str] | None
 ) -> tuple[Pieces, Quotient]:
-    """The same, the denominator not looked at."""
-    pieces, order, denominator = _prepared(network, symbols, named_currents(network, read))
+    """The determinants of what lies between the drive and the read, and what the wiring keeps aside."""
+    pieces, structure = _prepared(network, symbols, named_currents(network, read))
     factor, terms = pieces.form(read, "the read")
-    border = [(Piece(pieces.size, None, plus, minus), weight) for weight, plus, minus in terms]
-    border.append((Piece(*pieces.drive_rows(drive), pieces.size, None), negated(ONE)))
-    own = len(pieces.pieces)
-    # what the border merges is merged first: from there on the order that suits D suits N
-    order = (*range(own, own + len(border)), *order)
-    numerator = build(pieces.size + 1, (*pieces.pieces, *(piece for piece, _ in border)), order)
-    takes = (*pieces.take, *(take for _, take in border))
-    leaves = (*pieces.leave, *(ONE for _ in border))
+    border = _border(pieces, drive, terms)
+    seen = structure.seen((plus, minus) for _, plus, minus in terms)
+    driven = structure.driven(pieces.drive_rows(drive))
+    between = sorted(seen & driven)
+    kept = sorted(k for number in between for k in structure.blocks[number])
+    minor = structure.minor(kept, border)
+    bordered = structure_of(minor.size, minor.pieces, minor.tree)
+    whole = _whole(pieces, structure)
+    below = whole.restricted(structure.diagram(between, minor.parity), kept, factor)
     return pieces, Quotient(
-        Determinant(pieces.naming.generators, numerator, takes, leaves),
-        denominator if factor == ONE else replace(denominator, factor=factor),
+        Determinant(
+            pieces.naming.generators,
+            ZERO if bordered is None else bordered.whole,
+            (*below.take, *(weight for weight, _, _ in terms), negated(ONE)),
+            (*below.leave, *(ONE for _ in terms), ONE),
+        ),
+        below,
+        tuple([pieces.owners[k] for k in kept]),
+        tuple(_aside(pieces, structure, whole, seen, driven)),
     )
+
+
+def _border(
+    pieces: Pieces, drive: Drive, read: Sequence[tuple[Terms, int | None, int | None]]
+) -> list[Piece]:
+    """The row of the read and the column of the drive, in that order."""
+    border = [Piece(pieces.size, None, plus, minus) for _, plus, minus in read]
+    return [*border, Piece(*pieces.drive_rows(drive), pieces.size, None)]
+
+
+def _aside(
+    pieces: Pieces, structure: Structure, whole: Determinant, seen: frozenset[int], driven: frozenset[int]
+) -> Iterator[Aside]:
+    """The blocks that are not both seen and driven, without those that are 1 or -1 whatever the values."""
+    for number, block in enumerate(structure.blocks):
+        if number in seen and number in driven:
+            continue
+        if len(block) == 1:
+            side = pieces.take if block[0] in structure.tree else pieces.leave
+            if side[block[0]] in {ONE, negated(ONE)}:
+                continue
+        yield Aside(
+            whole.restricted(structure.factors[number], block, ONE),
+            tuple([pieces.owners[k] for k in block]),
+            Reason.UNSEEN if number in driven else Reason.UNDRIVEN if number in seen else Reason.APART,
+        )
 
 
 @lru_cache(maxsize=16)
 def _prepared(
     network: Network, symbols: frozenset[str] | None, currents: frozenset[str]
-) -> tuple[Pieces, tuple[int, ...], Determinant]:
-    """What every drive and read of a network shares: its pieces, the order in which they are decided, D."""
+) -> tuple[Pieces, Structure]:
+    """What every drive and read of a network shares: its pieces and the blocks of its determinant."""
     check_wiring(network)
     pieces = Pieces.of(network, symbols, currents)
-    order = frontier_order(pieces.size, pieces.pieces)
-    diagram = build(pieces.size, pieces.pieces, order)
-    if diagram.is_zero:
+    structure = structure_of(pieces.size, pieces.pieces)
+    if structure is None:
         raise SingularError(undetermined(network, pieces.naming))
-    return pieces, tuple(order), Determinant(pieces.naming.generators, diagram, pieces.take, pieces.leave)
+    return pieces, structure
+
+
+def _whole(pieces: Pieces, structure: Structure) -> Determinant:
+    """The determinant of the network."""
+    return Determinant(pieces.naming.generators, structure.whole, pieces.take, pieces.leave)
 
 
 def _read(network: Network, text: str) -> Expression:

@@ -9,7 +9,7 @@ coefficients exactly, whatever the order of the network.
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 from functools import cached_property
 from math import lcm, prod
@@ -17,14 +17,16 @@ from typing import Any, Final
 
 from symnet.errors import Fault, LimitError
 from symnet.exact.digits import packed, unpacked
-from symnet.exact.expansion import Expansion, Primitive
+from symnet.exact.expansion import Expansion
 from symnet.exact.kinds import Kinds
 from symnet.exact.modular import terms_at
 from symnet.exact.polynomials import ONE, Generators, Terms, highest_exponents
+from symnet.exact.structure import unchained
+from symnet.exact.trees import ONE as _NO_ROWS
 from symnet.exact.trees import Diagram
 from symnet.exact.unfolding import unfold
 
-__all__ = ["MOST_TERMS", "Determinant", "count_in_words", "numeric_pair", "pair_modulo"]
+__all__ = ["MOST_TERMS", "Determinant", "count_in_words", "numeric_pair", "pair_modulo", "too_long"]
 
 #: Paths of a diagram that are still written out as terms.
 MOST_TERMS: Final = 500_000
@@ -68,9 +70,47 @@ class Determinant:
         return kinds if kinds is not None and kinds.is_short(self.paths) else None
 
     @cached_property
-    def primitive(self) -> Primitive:
-        """Written out, its common integer and monomial factors apart; LimitError beyond :data:`MOST_TERMS` terms."""
-        return Primitive.of(self.written())
+    def factors(self) -> tuple[Determinant, ...]:
+        """Determinants whose product this one is: its diagram cut where that falls apart (:func:`unchained`).
+
+        Weights that every term has are factors without a diagram; those of a single term are one factor together.
+        """
+        number, exponents = self.diagram.overall, [0] * len(self.generators)
+        found = []
+
+        def always(weight: Terms) -> None:
+            nonlocal number
+            if len(weight) != 1:
+                found.append(replace(self, diagram=_NO_ROWS, take=(), leave=(), factor=weight))
+                return
+            ((coefficient, powers),) = weight
+            number *= coefficient
+            for k, exponent in powers:
+                exponents[k] += exponent
+
+        always(self.factor)
+        for part in unchained(replace(self.diagram, overall=1)):
+            if part.is_zero or len(part) > 1 or min(part.leave[0], part.take[0]) >= 0:
+                here = sorted(set(part.piece))
+                found.append(self.restricted(part, here, ONE))
+            elif part.take[0] >= 0:
+                number *= part.sign[0]
+                always(self.take[part.piece[0]])
+            else:
+                always(self.leave[part.piece[0]])
+        content = ((number, tuple((k, e) for k, e in enumerate(exponents) if e)),)
+        return (*found, replace(self, diagram=_NO_ROWS, take=(), leave=(), factor=content))
+
+    def restricted(self, diagram: Diagram, pieces: Sequence[int], factor: Terms) -> Determinant:
+        """The determinant of a diagram of some of these pieces alone, which are numbered anew."""
+        place = {k: n for n, k in enumerate(pieces)}
+        return Determinant(
+            self.generators,
+            replace(diagram, piece=tuple([place[k] for k in diagram.piece])),
+            tuple([self.take[k] for k in pieces]),
+            tuple([self.leave[k] for k in pieces]),
+            factor,
+        )
 
     def written(self, most: int = MOST_TERMS) -> Expansion:
         """Written out in arrays, term by term; LimitError when there may be more than ``most`` terms.
@@ -80,17 +120,24 @@ class Determinant:
         that is kept of a network that is not written out, takes about 60 bytes, up to 600 while it is built.
         """
         if self.terms > most:
-            raise LimitError(
-                Fault(
-                    f"written out, this determinant has up to {count_in_words(self.terms)} terms; "
-                    f"the limit is {most}",
-                    "give the parts values and use H.numeric(), or keep only a few names as symbols: "
-                    'derive(net, symbols="R1 C1")',
-                )
-            )
+            raise too_long("this determinant", self.terms, most)
         if self.kinds is not None:
             return self.kinds.expansion(len(self.generators), self.factor, self.paths)
         return unfold(self.diagram, len(self.generators), self.factor, self.take, self.leave)
+
+    def coefficients(self, values: Sequence[Fraction]) -> list[Fraction]:
+        """The coefficients, ascending in s, for these values of the names; [] where they make it zero."""
+        takes, leaves, scale = [], [], 1
+        for take, leave in zip(self.take, self.leave, strict=True):
+            taken, left = _coefficients(take, values), _coefficients(leave, values)
+            common = lcm(*(c.denominator for c in (*taken, *left)))
+            takes.append([int(c * common) for c in taken])
+            leaves.append([int(c * common) for c in left])
+            scale *= common
+        factor = _coefficients(self.factor, values)
+        common = lcm(*(c.denominator for c in factor))
+        found = _polynomial(self.diagram, takes, leaves, [int(c * common) for c in factor])
+        return [Fraction(c, scale * common) for c in found]
 
     def modulo(self, point: Sequence[Any], prime: int) -> Any:
         """The value at a point (s first, then the names in order), modulo a prime."""
@@ -106,6 +153,17 @@ def pair_modulo(n: Determinant, d: Determinant, point: Sequence[Any], prime: int
         for det in (n, d)
     )
     return top, bottom
+
+
+def too_long(what: str, terms: int, most: int = MOST_TERMS) -> LimitError:
+    """The refusal to write out something of so many terms."""
+    return LimitError(
+        Fault(
+            f"written out, {what} has up to {count_in_words(terms)} terms; the limit is {most}",
+            "give the parts values and use H.numeric(), or keep only a few names as symbols: "
+            'derive(net, symbols="R1 C1")',
+        )
+    )
 
 
 def count_in_words(paths: int) -> str:

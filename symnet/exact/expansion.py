@@ -7,7 +7,7 @@ tuple per term, costs far more than the expansion and is made only when somebody
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from functools import cached_property
 from math import gcd
@@ -43,6 +43,10 @@ class Fields:
             places.append((word, shift, (1 << width) - 1))
             shift += width
         return cls(tuple(places), word + 1)
+
+    def bits(self) -> list[int]:
+        """The lowest bit of each field in a packed monomial."""
+        return [word * _WORD + shift for word, shift, _ in self.places]
 
     def column(self, powers: Iterable[tuple[int, int]]) -> NDArray[np.int64]:
         """One monomial, from (generator, exponent), as a column of words."""
@@ -100,6 +104,31 @@ class Expansion:
             for k, (word, shift, mask) in enumerate(self.fields.places)
         )
 
+    def within(self, fields: Fields) -> Expansion:
+        """The same terms in other fields, which must be wide enough."""
+        if fields == self.fields:
+            return self
+        keys = np.zeros((fields.words, len(self)), dtype=np.int64)
+        for k, ((word, shift, _), degree) in enumerate(zip(fields.places, self.degrees(), strict=True)):
+            if degree:
+                keys[word] |= self.exponents(k) << shift
+        return Expansion(fields, keys, self.coefficients)
+
+    @classmethod
+    def of_packed(cls, fields: Fields, terms: Mapping[int, int]) -> Expansion:
+        """The polynomial with these coefficients of monomials as :meth:`packed` gives them."""
+        mask = (1 << _WORD) - 1
+        keys = [[(key >> (word * _WORD)) & mask for key in terms] for word in range(fields.words)]
+        return cls(fields, np.array(keys, dtype=np.int64), np.array(list(terms.values()), dtype=object))
+
+    def packed(self) -> list[int]:
+        """The monomials, one integer each: the words side by side, the first one lowest."""
+        rows: list[list[int]] = self.keys.tolist()
+        keys, *others = rows
+        for place, word in enumerate(others, 1):
+            keys = [key | (part << (_WORD * place)) for key, part in zip(keys, word, strict=True)]
+        return keys
+
     def begins_negative(self) -> bool:
         """Whether the lexicographically first term of the lowest power of the first generator is negative."""
         lowest, highest = self.coefficients.min(), self.coefficients.max()
@@ -135,14 +164,19 @@ class Expansion:
         return Expansion(fields, keys, coefficients * number)
 
     def modulo(self, point: Sequence[int], prime: int) -> int:
-        """The value at a point, modulo a prime below 2^31.
+        """The value at a point, modulo a prime below 2^31."""
+        return int(self.terms_modulo(point, prime).sum()) % prime
+
+    def terms_modulo(self, point: Sequence[int], prime: int) -> NDArray[np.int64]:
+        """The value of every term at a point, modulo a prime below 2^31.
 
         Every bit of a packed monomial stands for one power of one generator, so that the product of those
         powers is looked up for twelve bits at a time.
         """
         values = (
             self.coefficients.astype(np.int64) if self.coefficients.dtype == np.int8 else self.coefficients
-        ) % prime
+        )
+        values = (values % prime).astype(np.int64)
         for word in range(self.fields.words):
             factors = [1] * _WORD
             for k, (at, shift, mask) in enumerate(self.fields.places):
@@ -157,7 +191,7 @@ class Expansion:
                         table = np.concatenate([table, table * factor % prime])
                     index = (self.keys[word] >> low) & (len(table) - 1)
                     values = values * table[index] % prime
-        return int(values.sum()) % prime
+        return values
 
     def to_element(self, ring: PolyRing) -> PolyElement:
         """The same polynomial as an element of the ring whose generators the fields stand for; made once."""

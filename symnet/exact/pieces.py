@@ -53,7 +53,8 @@ __all__ = ["Pieces", "named_currents"]
 class Pieces:
     """The pieces of a network without a chosen drive, with their weights in the names of its ring.
 
-    ``nodes`` and ``currents`` give the column (and row) of each node voltage and each current of its own.
+    ``nodes`` and ``currents`` give the column (and row) of each node voltage and each current of its own, ``owners``
+    the part or drive that each piece belongs to.
     """
 
     network: Network
@@ -64,6 +65,7 @@ class Pieces:
     leave: tuple[Terms, ...]
     nodes: Mapping[str, int]
     currents: Mapping[str, int]
+    owners: tuple[str, ...]
 
     @classmethod
     def of(
@@ -188,16 +190,18 @@ class _Stamping:
         ]
         self.currents = {name: len(self.nodes) + k for k, name in enumerate(carriers)}
         self.size = len(self.nodes) + len(self.currents)
-        self.frame = Pieces(network, self.naming, self.size, (), (), (), self.nodes, self.currents)
+        self.frame = Pieces(network, self.naming, self.size, (), (), (), self.nodes, self.currents, ())
         self.pieces: list[Piece] = []
         self.take: list[Terms] = []
         self.leave: list[Terms] = []
+        self.owners: list[str] = []
 
     def result(self) -> Pieces:
         for name, drive in zip(self.network.drive_names, self.network.drives, strict=True):
             if isinstance(drive, VoltageDrive):
                 self._current(name, drive.plus, drive.minus)
                 self._row(name, *self._columns(drive.plus, drive.minus))
+            self._owned_by(name)
         for part in self.network.parts:
             match part:
                 case Branch() if part.name in self.currents:
@@ -213,9 +217,21 @@ class _Stamping:
                     at = self.currents[part.name]
                     self._add(Piece(None, self.nodes.get(part.out), at, None))
                     self._row(part.name, *self._columns(part.plus, part.minus))
+            self._owned_by(part.name)
         for coupling in self.network.couplings:
             self._coupling(coupling)
-        return replace(self.frame, pieces=tuple(self.pieces), take=tuple(self.take), leave=tuple(self.leave))
+            self._owned_by(coupling.name)
+        return replace(
+            self.frame,
+            pieces=tuple(self.pieces),
+            take=tuple(self.take),
+            leave=tuple(self.leave),
+            owners=tuple(self.owners),
+        )
+
+    def _owned_by(self, name: str) -> None:
+        """The pieces added last belong to this part."""
+        self.owners += [name] * (len(self.pieces) - len(self.owners))
 
     def _columns(self, plus: str, minus: str) -> tuple[int | None, int | None]:
         return self.nodes.get(plus), self.nodes.get(minus)

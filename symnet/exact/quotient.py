@@ -1,4 +1,9 @@
-"""H as the quotient of two determinants: written out in lowest terms, modulo a prime, or for given values."""
+"""H as the quotient of two determinants: written out in lowest terms, modulo a prime, or for given values.
+
+The two are what lies between the drive and the read; the blocks of the network that the wiring keeps aside
+(:mod:`symnet.exact.structure`) are factors of both and are kept here for what they say: their modes are hidden, and
+where values make one of them zero, the network has no single solution although this quotient has.
+"""
 
 from __future__ import annotations
 
@@ -10,8 +15,10 @@ from typing import TYPE_CHECKING, Any
 
 from symnet.errors import LimitError
 from symnet.exact.determinant import MOST_TERMS, Determinant, numeric_pair, pair_modulo
+from symnet.exact.hidden import Aside, HiddenMode, modes_aside, modes_cancelled
 from symnet.exact.lowest import LowestTerms, reduce
 from symnet.exact.modular import SMALL_PRIME
+from symnet.exact.products import Product
 
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement
@@ -21,20 +28,41 @@ __all__ = ["Quotient"]
 
 @dataclass(frozen=True, eq=False)
 class Quotient:
-    """``numerator/denominator`` before anything is cancelled; the denominator's pieces are the first of the numerator's."""
+    """``numerator/denominator`` before anything is cancelled by algebra.
+
+    The denominator's pieces are the first of the numerator's, ``owners`` the parts and drives that own them; ``aside``
+    are the blocks that wiring cancels.
+    """
 
     numerator: Determinant
     denominator: Determinant
+    owners: tuple[str, ...] = ()
+    aside: tuple[Aside, ...] = ()
 
     @cached_property
     def lowest(self) -> LowestTerms:
-        """Both written out in lowest terms; LimitError when that would be too long."""
+        """Both in lowest terms, factor by factor; LimitError when a factor is too long to be written out."""
         n, d = self.numerator, self.denominator
         ring = d.generators.ring
         if n.diagram.is_zero:
-            return LowestTerms(ring, ring.zero, ring.one, ())
-        found = reduce(n.primitive, d.primitive, ring, lambda point: self.modulo(point, SMALL_PRIME))
+            return LowestTerms.zero(ring)
+        found = reduce(
+            Product.of_determinant(n),
+            Product.of_determinant(d),
+            ring,
+            lambda point: self.modulo(point, SMALL_PRIME),
+        )
         return replace(found, hidden=_without(found.hidden, d.generators.element(d.factor)))
+
+    @cached_property
+    def hidden(self) -> tuple[HiddenMode, ...]:
+        """The modes of the network that this quotient does not show; none are told of where it is zero."""
+        if not self.lowest.top.number:
+            return ()
+        modes = list(modes_cancelled(self.lowest.hidden, self.denominator, self.owners))
+        for aside in self.aside:
+            modes += modes_aside(aside)
+        return tuple(modes)
 
     @property
     def terms(self) -> tuple[int, int]:
@@ -42,23 +70,32 @@ class Quotient:
         return self.numerator.terms, self.denominator.terms
 
     @cached_property
-    def is_writable(self) -> bool:
-        """Whether both can be written out in lowest terms within the limits."""
-        if max(self.terms) > MOST_TERMS:
-            return False
+    def is_factored(self) -> bool:
+        """Whether both can be written in lowest terms, factor by factor, within the limits."""
         try:
-            self.lowest  # noqa: B018 - a common factor may be too long to be looked for
+            self.lowest  # noqa: B018 - a factor, or a common factor, may be too long
         except LimitError:
             return False
         return True
+
+    @property
+    def is_writable(self) -> bool:
+        """Whether both can be written out in lowest terms, multiplied out, within the limits."""
+        return self.is_factored and max(self.lowest.terms) <= MOST_TERMS
 
     def modulo(self, point: Sequence[Any], prime: int) -> tuple[Any, Any]:
         """Numerator and denominator at a point (s first, then the names in order), modulo a prime."""
         return pair_modulo(self.numerator, self.denominator, point, prime)
 
     def numbers(self, values: Sequence[Fraction]) -> tuple[list[int], list[int]]:
-        """Integer coefficients, ascending in s, of both for these values of the names."""
-        return numeric_pair(self.numerator, self.denominator, values)
+        """Integer coefficients, ascending in s, of both for these values of the names.
+
+        The denominator's are zero where the network's determinant is, aside or not.
+        """
+        top, bottom = numeric_pair(self.numerator, self.denominator, values)
+        if not all(any(aside.determinant.coefficients(values)) for aside in self.aside):
+            return top, []
+        return top, bottom
 
 
 def _without(hidden: tuple[PolyElement, ...], factor: PolyElement) -> tuple[PolyElement, ...]:

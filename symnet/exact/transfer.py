@@ -18,7 +18,6 @@ from symnet.circuit.parts import Drive
 from symnet.errors import Fault, MissingValueError, SingularError, UnknownNameError, nearest
 from symnet.exact.confirm import Confirmation, undetermined
 from symnet.exact.determinant import count_in_words
-from symnet.exact.lowest import degrees_of
 from symnet.exact.mutual import coefficients
 from symnet.exact.quotient import Quotient
 from symnet.exact.ratio import Ratio
@@ -31,6 +30,7 @@ if TYPE_CHECKING:
     from sympy import Expr
     from sympy.polys.rings import PolyElement, PolyRing
 
+    from symnet.exact.hidden import HiddenMode
     from symnet.exact.naming import Naming
     from symnet.expressions import Expression
 
@@ -43,7 +43,7 @@ class Transfer(Displayed):
 
     Made by :func:`symnet.derive`. ``numerator`` and ``denominator`` are elements of ``ring`` (integers; the
     first generator is s in rad/s, then the names in order of appearance), in lowest terms; ``hidden`` are the
-    cancelled factors that hold s: natural frequencies that this H does not show. ``values`` are the numbers
+    modes of the network that this H does not show, each with the parts it lives in and the reason. ``values`` are the numbers
     (SI) of those names that have one. ``label`` says what over what, ``dimension`` in which unit.
 
     Two transfers are equal when they are the same function of the same names.
@@ -76,10 +76,10 @@ class Transfer(Displayed):
         A name of the ring that has cancelled is not among them, unless H is too long to be written out.
         """
         names = self.naming.generators.names[1:]
-        if not self.quotient.is_writable:
+        if not self.quotient.is_factored:
             return names
         lowest = self.quotient.lowest
-        top, bottom = (degrees_of(side) for side in (lowest.top, lowest.bottom))
+        top, bottom = lowest.top.degrees(), lowest.bottom.degrees()
         return tuple(name for name, a, b in zip(names, top[1:], bottom[1:], strict=True) if a or b)
 
     @property
@@ -103,9 +103,9 @@ class Transfer(Displayed):
         return self.quotient.lowest.denominator
 
     @property
-    def hidden(self) -> tuple[PolyElement, ...]:
-        """The cancelled factors that hold s: modes of the network that do not show in this H."""
-        return self.quotient.lowest.hidden
+    def hidden(self) -> tuple[HiddenMode, ...]:
+        """The cancelled factors that hold s: modes of the network that do not show in this H, and why."""
+        return self.quotient.hidden
 
     @property
     def terms(self) -> tuple[int, int]:

@@ -31,7 +31,8 @@ from bisect import bisect_left
 from collections.abc import Callable, Iterator, Sequence
 from dataclasses import dataclass
 from functools import cached_property
-from typing import TYPE_CHECKING, Any, NamedTuple, TypeAlias
+from itertools import pairwise
+from typing import TYPE_CHECKING, Any, Final, NamedTuple, TypeAlias
 
 from symnet.exact.ordering import frontier_order
 from symnet.progress import Progress
@@ -40,7 +41,7 @@ if TYPE_CHECKING:
     import numpy as np
     from numpy.typing import NDArray
 
-__all__ = ["Diagram", "Level", "Piece", "build"]
+__all__ = ["ONE", "ZERO", "Diagram", "Level", "Piece", "build"]
 
 State: TypeAlias = str
 
@@ -101,7 +102,7 @@ class Diagram:
 
         starts = [k for k in range(len(self.piece)) if k == 0 or self.piece[k] != self.piece[k - 1]]
         out = []
-        for start, end in zip(starts, [*starts[1:], len(self.piece)], strict=True):
+        for start, end in pairwise([*starts, len(self.piece)]):
             leaving = [k for k in range(start, end) if self.leave[k] >= 0]
             taking = [k for k in range(start, end) if self.take[k] >= 0]
             out.append(
@@ -182,6 +183,11 @@ class Diagram:
 
 def _is_one(weight: object) -> bool:
     return isinstance(weight, int) and weight == 1
+
+
+#: The determinant of no rows, and the one that has no tree.
+ONE: Final = Diagram((), (), (), (), 0)
+ZERO: Final = Diagram((), (), (), (), _DEAD)
 
 
 def build(size: int, pieces: Sequence[Piece], order: Sequence[int] | None = None) -> Diagram:

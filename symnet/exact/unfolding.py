@@ -19,6 +19,7 @@ from __future__ import annotations
 from collections import Counter
 from collections.abc import Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 from typing import TYPE_CHECKING, Any, TypeAlias
 
 import numpy as np
@@ -203,10 +204,9 @@ def _cut(diagram: Diagram) -> tuple[list[int], int]:
         down[to_leave] += here
         down[to_take] += here
     levels = [k for k in range(size) if k == 0 or piece[k] != piece[k - 1]]
-    ends = [*levels[1:], size]
     rising, falling = sum(up), 0
     best, chosen = rising, 0
-    for level, (start, end) in enumerate(zip(levels, ends, strict=True)):
+    for level, (start, end) in enumerate(pairwise([*levels, size])):
         rising -= sum(up[start:end])
         falling += sum(down[start:end])
         if rising + falling < best:

@@ -22,16 +22,19 @@ from symnet.present.blocks import (
 )
 from symnet.present.formulas import amount, label_tree, with_power_of_s
 from symnet.quantities import AMPERE, NUMBER, VOLT, Dimension
+from symnet.shape.stability import stability_of_factor
 from symnet.typeset.notation import tree_of
 from symnet.typeset.numbers import Written, complex_quantity, plain_number, quantity
 from symnet.typeset.polynomials import collected
 from symnet.typeset.tree import Atom, Tree, over
 
 if TYPE_CHECKING:
+    from symnet.exact.hidden import HiddenMode
     from symnet.exact.limits import Limit, Limits
     from symnet.exact.mna import Equations
     from symnet.exact.roots import Root
     from symnet.exact.transfer import Transfer
+    from symnet.shape.stability import Stability
     from symnet.shape.stated import Alternative, Condition, Conditions
 
 __all__ = [
@@ -123,23 +126,74 @@ def _order(transfer: Transfer) -> int:
 
 
 def _hidden(transfer: Transfer) -> Iterator[Line]:
-    from symnet.exact.readable.forms import readable
+    """One line for each hidden mode: where it lies, in which parts, why H does not show it, whether it dies out."""
     from symnet.exact.roots import roots
-    from symnet.shape.closed import value_of
 
-    for factor in transfer.hidden:
-        said = " cancels between numerator and denominator: the network has this natural frequency, this H does not show it"
-        try:
-            found = roots([value_of(coefficient, transfer.values) for coefficient in by_powers_of_s(factor)])
-        except KeyError:
-            found = ()
-        yield ("hidden mode: ", readable(factor), said, *_places(found))
+    for mode in transfer.hidden:
+        parts = f": {', '.join(mode.parts)}" if mode.parts else ""
+        yield (
+            "hidden mode",
+            *_where(mode),
+            *_numbers(mode, transfer),
+            f"{parts}; {mode.reason.value}",
+            _fate(mode, transfer),
+        )
     common = _cancelled_by_values(transfer)
     if len(common) > 1:
-        said = "hidden mode: with these values, and only with exactly these, a factor with s cancels that is there in symbols"
-        yield (said, *_places(roots(common)))
+        fate = _said(stability_of_factor(common))
+        said = "hidden mode with these values, and only with exactly these: a factor with s cancels that is there in symbols"
+        yield (said, *_places(roots(common)), fate)
     elif not transfer.hidden:
         yield "hidden modes: none, no factor with s has cancelled"
+
+
+def _where(mode: HiddenMode) -> Iterator[str | Tree]:
+    """At s = ... for one root, else the equation."""
+    from symnet.exact.readable.forms import readable, readable_ratio
+
+    if mode.factor is None:
+        yield "s, of a factor with too many terms to be written out"
+        return
+    coefficients = by_powers_of_s(mode.factor)
+    if len(coefficients) == 2:
+        yield " at s = "
+        yield readable_ratio(-coefficients[0], coefficients[1]) if coefficients[0] else "0"
+    else:
+        yield "s where 0 = "
+        yield readable(mode.factor)
+
+
+def _numbers(mode: HiddenMode, transfer: Transfer) -> Iterator[str | Written]:
+    from symnet.exact.roots import roots
+
+    try:
+        coefficients = mode.coefficients(transfer.values)
+    except KeyError:
+        return
+    if any(coefficients[1:]) and any(coefficients[:-1]):
+        yield from _places(roots(coefficients))
+
+
+def _fate(mode: HiddenMode, transfer: Transfer) -> str:
+    try:
+        return _said(stability_of_factor(mode.coefficients(transfer.values)))
+    except KeyError:
+        return "" if mode.factor is None else _said(stability_of_factor(by_powers_of_s(mode.factor)))
+
+
+def _said(stability: Stability) -> str:
+    """What becomes of a hidden mode, and a warning when it does not die out."""
+    match stability.verdict:
+        case "stable":
+            return f"; it dies out ({stability.reason})"
+        case "marginal":
+            return "; WARNING: on the jw axis, it neither dies out nor grows, and H does not show it"
+        case "unstable":
+            return "; IT GROWS WITH TIME: the network is unstable, whatever this H says"
+        case "conditional":
+            return "; it dies out for some values only: give the parts values"
+        case _:
+            return ""
 
 
 def _cancelled_by_values(transfer: Transfer) -> Sequence[Fraction]:
@@ -157,15 +211,13 @@ def _cancelled_by_values(transfer: Transfer) -> Sequence[Fraction]:
 
 
 def _places(found: Sequence[Root]) -> Iterator[str | Written]:
-    """Where hidden modes lie, and a warning when one grows."""
+    """Where hidden modes lie."""
     shown = [root for root in found if root.imag >= 0]
     for k, root in enumerate(shown):
         yield ", " if k else " (s = "
         yield _root(root)
     if shown:
         yield ")"
-    if any(root.real > 0 for root in found):
-        yield ". IT GROWS WITH TIME: the network is unstable, whatever this H says"
 
 
 def _root(root: Root) -> Written:

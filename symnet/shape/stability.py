@@ -7,16 +7,16 @@ is a proof for all values. Where a sign stays open, the polynomials that must be
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass
-from typing import TYPE_CHECKING, Final, Literal, TypeAlias
+from fractions import Fraction
+from typing import Final, Literal, TypeAlias
 
+from symnet.exact.ratio import Ratio
 from symnet.shape.closed import Coefficient
 from symnet.shape.plain import Pair, Plain, Response, plain, sign
 
-if TYPE_CHECKING:
-    from symnet.exact.ratio import Ratio
-
-__all__ = ["Stability", "Verdict", "stability"]
+__all__ = ["Stability", "Verdict", "stability", "stability_of_factor"]
 
 Verdict: TypeAlias = Literal["stable", "marginal", "unstable", "conditional", "undecided"]
 
@@ -51,6 +51,18 @@ def stability(H: Response) -> Stability:
     <marginal: single poles on the jw axis, none to the right of it>
     """
     return stability_of(plain(H))
+
+
+def stability_of_factor(coefficients: Sequence[Coefficient]) -> Stability:
+    """Where the roots of a polynomial in s lie, as of the poles of 1/polynomial; coefficients ascending.
+
+    >>> from fractions import Fraction
+    >>> stability_of_factor([Fraction(1), Fraction(-2)])
+    <unstable: 1 of 1 poles in the right half plane>
+    """
+    if all(isinstance(c, Fraction) for c in coefficients):
+        return _from_poles(Ratio.of([1], [Fraction(c) for c in coefficients]))
+    return _from_signs(Pair((), tuple(coefficients)))
 
 
 def stability_of(h: Plain) -> Stability:

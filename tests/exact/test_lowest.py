@@ -9,11 +9,11 @@ from typing import TYPE_CHECKING
 import pytest
 
 from symnet.errors import LimitError
-from symnet.exact import lowest
-from symnet.exact.expansion import Primitive
+from symnet.exact import products
 from symnet.exact.lowest import LowestTerms, reduce
 from symnet.exact.modular import SMALL_PRIME, weight_at
 from symnet.exact.polynomials import begins_negative, make_ring
+from symnet.exact.products import Product
 
 from .test_unfolding import written_out
 
@@ -26,8 +26,8 @@ S, R, C, L = RING.gens
 
 def lowest_terms(n: PolyElement, d: PolyElement) -> LowestTerms:
     return reduce(
-        Primitive.of(written_out(n, RING)),
-        Primitive.of(written_out(d, RING)),
+        Product.of(RING.ngens, [written_out(n, RING)]),
+        Product.of(RING.ngens, [written_out(d, RING)]),
         RING,
         lambda point: (weight_at(n, point, SMALL_PRIME), weight_at(d, point, SMALL_PRIME)),
     )
@@ -77,9 +77,25 @@ def test_zero_over_anything_is_zero_over_one() -> None:
     assert (found.numerator, found.denominator, found.hidden) == (0, 1, ())
 
 
-def test_a_gcd_beyond_the_limit_is_refused(monkeypatch: pytest.MonkeyPatch) -> None:
-    monkeypatch.setattr(lowest, "MOST_TERMS_FOR_GCD", 2)
-    mode = 1 + S * R * C
-    with pytest.raises(LimitError, match="give some parts numbers"):
-        lowest_terms(mode * (L + S), mode * (L + R))
-    assert lowest_terms(mode, L + R + S).denominator == L + R + S
+def test_factors_are_compared_two_by_two() -> None:
+    """Law: a product of factors in lowest terms is that of the product multiplied out."""
+    mode, other = 1 + S * R * C, 1 + S * L + S**2 * C
+    tops, bottoms = [R + S * L, mode * (L + R)], [mode * other, L + R + S]
+    n, d = (Product.of(RING.ngens, [written_out(p, RING) for p in side]) for side in (tops, bottoms))
+    found = reduce(
+        n, d, RING, lambda point: tuple(weight_at(a * b, point, SMALL_PRIME) for a, b in (tops, bottoms))
+    )
+    assert found.hidden == (mode,)
+    assert (found.numerator, found.denominator) == ((R + S * L) * (L + R), other * (L + R + S))
+    assert found.terms == (4, 9)
+    assert found.bottom.degrees() == (3, 1, 1, 2)
+    point = [5, 7, 11, 13]
+    assert found.bottom.modulo(point, SMALL_PRIME) == weight_at(found.denominator, point, SMALL_PRIME)
+
+
+def test_a_product_too_long_to_be_multiplied_out_is_refused(monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.setattr(products, "MOST_TERMS", 8)
+    found = Product.of(RING.ngens, [written_out(p, RING) for p in (1 + S * R + C, 1 + S * L + R)])
+    with pytest.raises(LimitError, match="up to 9 terms; the limit is 8"):
+        found.to_element(RING)
+    assert found.degrees() == (2, 2, 1, 1)

@@ -70,4 +70,4 @@ def test_three_sections_turn_the_phase_by_180_degrees_where_a_gain_of_29_is_need
 def test_no_hidden_mode_that_the_network_does_not_have(name: str, hidden: int) -> None:
     # The number of natural frequencies is the number of independent reactances, counted by hand beside the name.
     H = sn.derive(sn.network(BY_ID[name].text))
-    assert sum(factor.degree(0) for factor in H.hidden) == hidden
+    assert sum(mode.factor.degree(0) for mode in H.hidden if mode.factor is not None) == hidden

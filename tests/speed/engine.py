@@ -23,7 +23,8 @@ from sympy.polys.rings import ring as sympy_ring
 import symnet as sn
 from symnet.exact.determinant import Determinant
 from symnet.exact.pieces import Pieces
-from symnet.exact.trees import build
+from symnet.exact.products import Product
+from symnet.exact.structure import structure_of
 
 try:
     import flint
@@ -100,8 +101,14 @@ def by_minors(matrix: list[list[Any]], one: Any) -> Any:
 def with_symnet(net: sn.Network) -> int:
     """From the network to its determinant, written out; the number of terms."""
     pieces = Pieces.of(net)
-    diagram = build(pieces.size, pieces.pieces)
-    return len(Determinant(pieces.naming.generators, diagram, pieces.take, pieces.leave).primitive.part)
+    structure = structure_of(pieces.size, pieces.pieces)
+    assert structure is not None
+    diagram = structure.whole
+    return len(
+        Product.of_determinant(
+            Determinant(pieces.naming.generators, diagram, pieces.take, pieces.leave)
+        ).written
+    )
 
 
 def with_sympy_ring(net: sn.Network) -> int:

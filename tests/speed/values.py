@@ -23,7 +23,8 @@ from symnet.exact import confirm, derive
 from symnet.exact.batches import coefficient_arrays
 from symnet.exact.determinant import Determinant
 from symnet.exact.pieces import Pieces
-from symnet.exact.trees import build
+from symnet.exact.products import Product
+from symnet.exact.structure import structure_of
 
 
 def ladder(sections: int, values: str = "") -> sn.Network:
@@ -75,8 +76,14 @@ def equal_sections(rounds: int) -> tuple[str, float, str, float]:
 
     def determinant() -> int:
         pieces = Pieces.of(net)
-        diagram = build(pieces.size, pieces.pieces)
-        return len(Determinant(pieces.naming.generators, diagram, pieces.take, pieces.leave).primitive.part)
+        structure = structure_of(pieces.size, pieces.pieces)
+        assert structure is not None
+        diagram = structure.whole
+        return len(
+            Product.of_determinant(
+                Determinant(pieces.naming.generators, diagram, pieces.take, pieces.leave)
+            ).written
+        )
 
     ours = fastest(determinant, max(5, rounds))
 
