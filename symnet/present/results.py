@@ -21,7 +21,7 @@ from symnet.present.blocks import (
     without_empty_columns,
 )
 from symnet.present.formulas import amount, label_tree, with_power_of_s
-from symnet.quantities import AMPERE, NUMBER, VOLT, Dimension
+from symnet.quantities import AMPERE, NUMBER, SECOND, VOLT, Dimension
 from symnet.shape.stability import stability_of_factor
 from symnet.typeset.notation import tree_of
 from symnet.typeset.numbers import Written, complex_quantity, plain_number, quantity
@@ -40,6 +40,7 @@ if TYPE_CHECKING:
 __all__ = [
     "conditions_blocks",
     "equations_blocks",
+    "hides",
     "limits_table",
     "shortened",
     "transfer_blocks",
@@ -142,9 +143,21 @@ def _hidden(transfer: Transfer) -> Iterator[Line]:
     if len(common) > 1:
         fate = _said(stability_of_factor(common))
         said = "hidden mode with these values, and only with exactly these: a factor with s cancels that is there in symbols"
-        yield (said, *_places(roots(common)), fate)
+        yield (said, *_places(roots(common)), fate, *_tail(roots(common)))
     elif not transfer.hidden:
         yield "hidden modes: none, no factor with s has cancelled"
+
+
+def hides(transfer: Transfer) -> bool:
+    """Whether a mode of the network does not show in this H, in symbols or with its values."""
+    return bool(transfer.hidden) or len(_cancelled_by_values(transfer)) > 1
+
+
+def _tail(found: Sequence[Root]) -> Iterator[str | Written]:
+    """What a mismatch of the values does to the step response, for one real mode that dies out."""
+    if len(found) == 1 and not found[0].imag and found[0].real < 0:
+        yield "; a mismatch of the values leaves a tail of about its size in the step response, time constant "
+        yield amount(-1 / found[0].real, SECOND, 5)
 
 
 def _where(mode: HiddenMode) -> Iterator[str | Tree]:

@@ -29,6 +29,7 @@ from symnet.present.response import half_power_rows
 from symnet.present.results import (
     conditions_blocks,
     equations_blocks,
+    hides,
     limits_table,
     shortened,
     transfer_blocks,
@@ -82,7 +83,7 @@ def _explanation(value: Explanation) -> Bundle:
 @formats(Transfer)
 def _transfer(value: Transfer) -> Bundle:
     formula = transfer_formula(value)
-    if formula is None or value.hidden or shortened(value):
+    if formula is None or hides(value) or shortened(value):
         return bundle(transfer_blocks(value))
     return bundle((formula,))
 

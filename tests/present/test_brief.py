@@ -121,6 +121,9 @@ def test_hidden_mode_in_symbols_and_by_values() -> None:
         "\n  ", " "
     )
     assert "-1 Mrad/s" in valued
+    assert "leaves a tail of about its size in the step response, time constant 1 us" in " ".join(
+        valued.split()
+    )
 
 
 def test_unstable_hidden_mode_is_shouted() -> None:

@@ -79,6 +79,10 @@ def test_cancelled_factors_are_shown_with_the_transfer() -> None:
         sn.network("in -- R1 || C1 -- out -- R2 || C2 -- gnd; C2 = R1*C1/R2; drive in; read out")
     )
     assert "hidden mode" in hidden._repr_mimebundle_()["text/plain"]
+    by_values = sn.derive(
+        sn.network("in -- R1 || C1 -- out -- R2 || C2 -- gnd; drive in; read out; R1, R2 = 1k; C1, C2 = 1n")
+    )
+    assert "hidden mode with these values" in by_values._repr_mimebundle_()["text/plain"]
 
 
 def ladder(sections: int) -> Any:
