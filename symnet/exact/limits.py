@@ -9,7 +9,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass, replace
 from fractions import Fraction
-from typing import TYPE_CHECKING, Final
+from typing import TYPE_CHECKING, Final, overload
 
 from symnet.circuit.network import Network
 from symnet.circuit.parts import GROUND, Branch, Part, Value, VoltageLaw
@@ -17,6 +17,7 @@ from symnet.circuit.series import spoken
 from symnet.errors import NotationError, SingularError, WiringError
 from symnet.exact.derive import derive_from
 from symnet.exact.naming import Naming
+from symnet.exact.ports.extremes import Extremes, extremes
 from symnet.expressions import Expression, Name, Number, Power, Product, Sum, names_in
 from symnet.quantities import NUMBER
 from symnet.typeset.displayed import Displayed
@@ -71,8 +72,14 @@ class Limits(Displayed):
     high: Limit
 
 
-def limits(transfer: Transfer) -> Limits:
+@overload
+def limits(transfer: Transfer) -> Limits: ...
+@overload
+def limits(transfer: Transfer, name: str) -> Extremes: ...
+def limits(transfer: Transfer, name: str | None = None) -> Limits | Extremes:
     """The limits of H at DC and at high frequency, with the reason, from H and from the network itself.
+
+    With the ``name`` of a part or symbol: H as it goes to zero and to infinity, a part shorted, removed, made ideal.
 
     >>> import symnet as sn
     >>> ends = sn.limits(sn.derive(sn.network("in -- R1 -- out -- C1 || R2 -- gnd; drive in; read out")))
@@ -80,7 +87,11 @@ def limits(transfer: Transfer) -> Limits:
     (R2, R1 + R2, 'C1 open')
     >>> ends.high.slope, ends.high.from_network
     (-20, True)
+    >>> sn.limits(sn.derive(sn.network("in -- R1 -- out -- C1 || R2 -- gnd; drive in; read out")), "R2")
+    <H for R2 -> 0: 0; R2 -> infinity: 1/(1 + s*R1*C1)>
     """
+    if name is not None:
+        return extremes(transfer, name)
     return Limits(_limit(transfer, "DC"), _limit(transfer, "high frequency"))
 
 

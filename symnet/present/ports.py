@@ -5,6 +5,7 @@ from __future__ import annotations
 from symnet.circuit.parts import GROUND
 from symnet.errors import SymnetError
 from symnet.exact.ports.element import ExtraElement
+from symnet.exact.ports.extremes import Extremes
 from symnet.exact.ports.figures import Parameter
 from symnet.exact.ports.modes import Modes
 from symnet.exact.ports.twoport import Matrix, TwoPort
@@ -12,7 +13,7 @@ from symnet.present.blocks import Block, Heading, Items, Line, Paragraph, Table
 from symnet.quantities import NUMBER
 from symnet.typeset.tree import ZERO
 
-__all__ = ["element_blocks", "matrix_blocks", "modes_blocks", "two_port_blocks"]
+__all__ = ["element_blocks", "extremes_blocks", "matrix_blocks", "modes_blocks", "two_port_blocks"]
 
 
 def matrix_blocks(matrix: Matrix) -> tuple[Block, ...]:
@@ -44,6 +45,15 @@ def element_blocks(found: ExtraElement) -> tuple[Block, ...]:
     name = found.name
     law = f"H = H_open (1 + Z_n/Z)/(1 + Z_d/Z) = H_short (1 + Z/Z_n)/(1 + Z/Z_d), with Z the impedance of {name}."
     return (Paragraph(law), Table(("figure", "value", "unit"), rows))
+
+
+def extremes_blocks(found: Extremes) -> tuple[Block, ...]:
+    """H with a name at zero and at infinity."""
+    rows = tuple(
+        (f"{found.name} -> {where}", *(("H grows without bound", "") if end is None else _worth(end)))
+        for where, end in (("0", found.zero), ("infinity", found.infinite))
+    )
+    return (Table(("limit", "H", "unit"), rows),)
 
 
 def modes_blocks(found: Modes) -> tuple[Block, ...]:

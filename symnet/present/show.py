@@ -13,6 +13,7 @@ from symnet.exact.limits import Limits
 from symnet.exact.mna import Equations
 from symnet.exact.naming import Naming
 from symnet.exact.ports.element import ExtraElement
+from symnet.exact.ports.extremes import Extremes
 from symnet.exact.ports.modes import Modes
 from symnet.exact.ports.twoport import Matrix, TwoPort
 from symnet.exact.scaling import Scaling
@@ -23,7 +24,7 @@ from symnet.present.difference import comparison_blocks
 from symnet.present.dominant import dominant_blocks, split_blocks
 from symnet.present.explain import Explanation
 from symnet.present.network import network_blocks
-from symnet.present.ports import element_blocks, matrix_blocks, modes_blocks, two_port_blocks
+from symnet.present.ports import element_blocks, extremes_blocks, matrix_blocks, modes_blocks, two_port_blocks
 from symnet.present.recognition import recognition_blocks
 from symnet.present.response import half_power_rows
 from symnet.present.results import (
@@ -157,6 +158,11 @@ def _matrix(value: Matrix) -> Bundle:
 @formats(ExtraElement)
 def _extra_element(value: ExtraElement) -> Bundle:
     return bundle(element_blocks(value))
+
+
+@formats(Extremes)
+def _extremes(value: Extremes) -> Bundle:
+    return bundle(extremes_blocks(value))
 
 
 @formats(Modes)

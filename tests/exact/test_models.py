@@ -1,4 +1,4 @@
-"""Op amps from the ideal one to one with gain, bandwidth, second pole and impedances: figures and exact limits."""
+"""Models of devices from the ideal one to the rich ones: figures, and exact limits of each richer one."""
 
 from __future__ import annotations
 
@@ -6,7 +6,6 @@ import math
 
 import numpy as np
 import pytest
-from sympy.polys.rings import PolyElement
 
 import symnet as sn
 from symnet.exact.transfer import Transfer
@@ -67,22 +66,6 @@ def test_the_stop_band_rises_again_with_an_output_resistance() -> None:
     assert level[-1] == pytest.approx(-27.5, abs=0.05)
 
 
-def leading(polynomial: PolyElement, name: str, power: int) -> PolyElement:
-    """The part of a polynomial with exactly this power of a name, without it."""
-    ring = polynomial.ring
-    k = [str(symbol) for symbol in ring.symbols].index(name)
-    kept = {(*m[:k], 0, *m[k + 1 :]): c for m, c in polynomial.terms() if m[k] == power}
-    return ring.from_dict(kept)
-
-
-def limit(h: Transfer, name: str, *, to_infinity: bool) -> tuple[PolyElement, PolyElement]:
-    """Numerator and denominator in the limit, by the powers of the name that dominate."""
-    k = [str(symbol) for symbol in h.numerator.ring.symbols].index(name)
-    powers = [m[k] for part in (h.numerator, h.denominator) for m in part.itermonoms()]
-    power = max(powers) if to_infinity else min(powers)
-    return leading(h.numerator, name, power), leading(h.denominator, name, power)
-
-
 LADDER = [
     (", gain, gbw, pole2, Rin, Cin, Rout", "Rout", False, ", gain, gbw, pole2, Rin, Cin"),
     (", gain, gbw, pole2, Rin, Cin", "Cin", False, ", gain, gbw, pole2, Rin"),
@@ -104,10 +87,71 @@ def test_the_limit_of_a_richer_model_is_the_simpler_h_exactly(
     """lim H(richer) = H(simpler): the ratio of the dominating coefficients, cross-multiplied in the ring."""
     rich = sn.derive(sn.network(stage.format(model=richer)))
     plain = sn.derive(sn.network(stage.format(model=simpler)))
-    if f"U1.{name}" not in rich.names:  # an impedance at an ideal op amp changes nothing
+    if f"U1.{name}" in rich.names:
+        ends = sn.limits(rich, f"U1.{name}")
+        end = ends.infinite if to_infinity else ends.zero
+        assert end is not None
+        top, bottom = end.numerator, end.denominator
+    else:  # an impedance at an ideal op amp changes nothing
         top, bottom = rich.numerator, rich.denominator
-    else:
-        top, bottom = limit(rich, f"U1.{name}", to_infinity=to_infinity)
     n, d = (part.set_ring(rich.numerator.ring) for part in (plain.numerator, plain.denominator))
     assert top * d == bottom * n
     assert bottom
+
+
+# Devices with several models, each in a stage, and the way from every richer one to the simpler one.
+STAGES = {
+    "ota": "in -- R1 -- p; A: ota(plus=p, minus=m, out=out{}); m -- R2 -- out; m -- R3 -- gnd; out -- C1 -- gnd",
+    "cfa": "in -- R1 -- p; A: cfa(plus=p, minus=m, out=out{}); m -- R2 -- out; m -- R3 -- gnd; p -- C1 -- gnd",
+    "bjt": "in -- R1 -- p; A: bjt(collector=out, base=p, emitter=e{}); e -- R2 -- gnd; out -- R3 -- gnd; p -- C1 -- gnd",
+    "fet": "in -- R1 -- p; A: fet(drain=out, gate=p, source=e{}); e -- R2 -- gnd; out -- R3 -- gnd; p -- C1 -- gnd",
+}
+#: property -> whether the simpler model is at infinity
+IDEAL = {
+    "ota": {"Rin": True, "Cin": False, "Rout": True, "Cout": False},
+    "cfa": {"Rx": False, "Ct": False},
+    "bjt": {"Rpi": True, "Ro": True, "Rb": False, "Cpi": False, "Cmu": False},
+    "fet": {"Ro": True, "Rg": False, "Cgs": False, "Cgd": False, "Cds": False},
+}
+
+
+@pytest.mark.parametrize(("kind", "name"), [(kind, name) for kind in IDEAL for name in IDEAL[kind]])
+def test_the_limit_of_a_richer_device_is_the_simpler_one(kind: str, name: str) -> None:
+    others = [other for other in IDEAL[kind] if other != name]
+    if kind == "cfa":
+        others.append("Rt")
+    text = STAGES[kind] + "; drive in; read out"
+    rich = sn.derive(sn.network(text.format("".join(f", {each}" for each in (*others, name)))))
+    plain = sn.derive(sn.network(text.format("".join(f", {each}" for each in others))))
+    if f"A.{name}" in rich.names:
+        ends = sn.limits(rich, f"A.{name}")
+        end = ends.infinite if IDEAL[kind][name] else ends.zero
+        assert end is not None
+        top, bottom = end.numerator, end.denominator
+    else:
+        top, bottom = rich.numerator, rich.denominator
+    n, d = (part.set_ring(rich.ring) for part in (plain.numerator, plain.denominator))
+    assert top * d == bottom * n
+    assert bottom
+
+
+@pytest.mark.parametrize(
+    ("real", "ideal", "to_zero"),
+    [
+        ("L1 + R_L1", "L1", "R_L1"),
+        ("L1 || C_L1", "L1", "C_L1"),
+        ("C1 + R_C1", "C1", "R_C1"),
+        ("C1 + L_C1", "C1", "L_C1"),
+    ],
+)
+def test_the_limit_of_a_real_part_is_the_ideal_one(real: str, ideal: str, to_zero: str) -> None:
+    other = "C1" if ideal == "L1" else "L1"
+    texts = [
+        f"in -- R1 -- a -- {part} -- out; out -- {other} -- gnd; out -- R2 -- gnd; drive in; read out"
+        for part in (real, ideal)
+    ]
+    rich, plain = (sn.derive(sn.network(text)) for text in texts)
+    end = sn.limits(rich, to_zero).zero
+    assert end is not None
+    n, d = (part.set_ring(rich.ring) for part in (plain.numerator, plain.denominator))
+    assert end.numerator * d == end.denominator * n
