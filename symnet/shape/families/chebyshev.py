@@ -136,7 +136,7 @@ class _Chebyshev(Family):
         e2 = squared_epsilon(math, ripple)
         edge = Reference.named(RIPPLE_EDGE, 1.0, f"-{ripple:.4g} dB relative to the peak")
         if order % 2:
-            note = "DC is a ripple peak" if ripple <= 3.0102 else "DC is a ripple peak; the last of several"
+            note = "a ripple peak" if ripple <= 3.0102 else "a ripple peak; the last of several"
             return (edge, Reference.named(W3DB, outermost(1 / math.sqrt(e2), order), note))
         from_dc = outermost(math.sqrt((1 + 2 * e2) / e2), order)
         note = f"a ripple minimum, {ripple:.4g} dB below the peak"

@@ -73,7 +73,7 @@ def elliptic(
     >>> p = elliptic(3, "0.5 dB", "40 dB")
     >>> for r in p.references[1:4]:
     ...     print(f"{r.w:.4f} rad/s  {r.label}")
-    1.1526 rad/s  -3.0103 dB relative to DC (DC is a ripple peak)
+    1.1526 rad/s  -3.0103 dB relative to DC (a ripple peak)
     1.0000 rad/s  ripple edge (-0.5 dB relative to the peak)
     2.7115 rad/s  stop-band edge (-40 dB relative to the peak)
     >>> print(elliptic(5, "1 dB", edge=1.2))
@@ -375,7 +375,7 @@ class _Elliptic(Family):
         if shape.e2 <= 1:
             w = place(shape.outside(math, 1.0))
             found.append(
-                Reference.named(W3DB, w, "DC is a ripple peak") if at_peak else Reference.named(W3DB_PEAK, w)
+                Reference.named(W3DB, w, "a ripple peak") if at_peak else Reference.named(W3DB_PEAK, w)
             )
         elif not at_peak:
             poles, zeros = self.roots(order, values)

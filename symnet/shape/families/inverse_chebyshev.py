@@ -48,7 +48,7 @@ def inverse_chebyshev(order: int, attenuation: str = "40 dB") -> Prototype:
     >>> for r in p.references[1:3]:
     ...     print(f"{r.w:.4f} rad/s  {r.label}")
     0.6500 rad/s  -3.0103 dB relative to DC
-    1.0000 rad/s  stop-band edge (-20 dB relative to DC)
+    1.0000 rad/s  stop-band edge (-20 dB relative to the peak)
     >>> round(p.decibels(1.0), 6), round(p.decibels(2.0), 6)
     (-20.0, -20.0)
     """
@@ -95,7 +95,7 @@ class _InverseChebyshev(Family):
         """The edge of the stop band, 1 by definition, and the -3 dB frequency in closed form."""
         e = math.sqrt(squared_epsilon(math, values[0]))
         return (
-            Reference.named(STOP_EDGE, 1.0, f"-{values[0]:.5g} dB relative to DC"),
+            Reference.named(STOP_EDGE, 1.0, f"-{values[0]:.5g} dB relative to the peak"),
             Reference.named(W3DB, 1 / outermost(e, order)),
         )
 

@@ -66,7 +66,7 @@ def test_references() -> None:
     assert made.decibels(made.reference("stop_edge").w) == pytest.approx(-40, abs=1e-11)
     assert made.reference("unit_delay").w == pytest.approx(1 / made.delay(0))
     assert made.gain == 1.0
-    assert "relative to DC" in made.reference("stop_edge").label
+    assert "relative to the peak" in made.reference("stop_edge").label
 
 
 def test_a_very_deep_stop_band_leaves_butterworth() -> None:
