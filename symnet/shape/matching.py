@@ -167,7 +167,8 @@ class _Batch:
             if by_poles:
                 place = _nearest_by_poles(family, view, place)
             self.x[row, : self.parameters] = place
-            self.x[row, self.parameters] = math.log(view.edge / table.edges[best])
+            # poles are divided by w0, so that those which agree have the scale 1; a steep edge would mislead
+            self.x[row, self.parameters] = 0.0 if by_poles else math.log(view.edge / table.edges[best])
         self._shapes(np.arange(len(self.families)), everything=True)
 
     def _zero_distances(self) -> Floats:
@@ -265,7 +266,7 @@ class _Batch:
     def descend(self, *, fixed: bool) -> Floats:
         """Gauss-Newton; a step is halved until the sum falls. Returns the uncertainty of every parameter coordinate.
 
-        Parameters stay between 0 and 1, and the scale within a factor of e^2 of where it began: beyond that one
+        Parameters stay between 0 and 1, scale and centre within a factor of e^2 of where they began: beyond that one
         response is flat over the pass band of the other, and nothing is compared any more.
         """
         k = self.parameters
@@ -274,6 +275,8 @@ class _Batch:
         high = np.full(self.x.shape, np.inf)
         low[:, :k], high[:, :k] = 0.0, 1.0
         low[:, k], high[:, k] = self.x[:, k] - _WIDEST, self.x[:, k] + _WIDEST
+        if self.view.is_two_sided:
+            low[:, k + 1], high[:, k + 1] = -_WIDEST, _WIDEST
         r = self._residual(self.x, self.poles, self.zeros)
         cost = np.einsum("fr,fr->f", r, r)
         normal = np.zeros((len(r), self.x.shape[1], self.x.shape[1]))

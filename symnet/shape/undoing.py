@@ -122,7 +122,7 @@ def _two_sided(band: str, p: Complexes, z: Complexes, origin: int) -> Iterator[V
         q, r = q / width, r / width
     low, apart = _halves(q)
     low_zeros, zeros_apart = _halves(r)
-    if low is None or low_zeros is None:
+    if low is None or low_zeros is None or (len(low_zeros) and np.abs(low_zeros).min() < _AT_CENTRE):
         return
     edge = last_crossing(low, low_zeros)
     if edge is not None:

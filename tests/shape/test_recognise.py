@@ -22,6 +22,8 @@ from symnet.shape.families.butterworth import butterworth
 from symnet.shape.families.chebyshev import chebyshev
 from symnet.shape.families.curves import attenuation
 from symnet.shape.families.family import Family
+from symnet.shape.families.legendre import legendre
+from symnet.shape.families.linear_phase import linear_phase
 from symnet.shape.matching import fits
 from symnet.shape.members import families_of
 from symnet.shape.pairing import distance_of_roots
@@ -77,6 +79,8 @@ RIPPLES = ("0.01 dB", "0.1 dB", "0.5 dB", "3 dB", "10 dB")
 MEMBERS = [make(n) for n in ORDERS for make in (butterworth, bessel)] + [
     chebyshev(n, ripple) for n in ORDERS for ripple in RIPPLES
 ]
+MEMBERS += [legendre(n) for n in ORDERS if n > 2]
+MEMBERS += [linear_phase(n, error) for n in ORDERS if n > 2 for error in ("0.05 deg", "0.5 deg")]
 
 #: Without order 2, where every Q is some ripple; poles that 1 % would carry across the jw axis; and the one that comes
 #: within 2 % of another family: Chebyshev 5 with 0.1 dB is nearly Legendre-Papoulis.
