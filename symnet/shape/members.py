@@ -20,7 +20,15 @@ from symnet.shape.families import CATALOGUE
 from symnet.shape.families.curves import HALF_POWER_DB
 from symnet.shape.families.family import Family
 
-__all__ = ["Members", "curves", "families_of", "log_curves", "members", "shape_at", "unit_band"]
+__all__ = [
+    "Members",
+    "curves",
+    "families_of",
+    "log_curves",
+    "members",
+    "shape_at",
+    "unit_band",
+]
 
 Floats: TypeAlias = NDArray[np.float64]
 Complexes: TypeAlias = NDArray[np.complex128]

@@ -7,37 +7,38 @@ the end of its range, and which is there another family of the catalogue, is not
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 from dataclasses import replace
 from fractions import Fraction
-from typing import Final
 
 from symnet.shape.families.family import Family
-from symnet.shape.families.prototype import ALL_PASS, HIGH_PASS, LOW_PASS
+from symnet.shape.families.prototype import HIGH_PASS, LOW_PASS
 from symnet.shape.matching import Fit, fits
 from symnet.shape.pairing import distance_of_roots
 from symnet.shape.thresholds import (
+    AS_GOOD_AS_SIMPLER,
     EXACT_PERCENT,
+    EXACT_RESPONSE,
+    ROUNDING,
     SAME_SHAPE_PERCENT,
-    SIMPLER_DB,
     SIMPLER_RATIO,
-    SIMPLER_RATIO_WITHOUT_MATCH,
+    SIMPLER_RESPONSE,
+    TOLD_APART,
 )
 from symnet.shape.undoing import View
 from symnet.shape.verdict import Candidate
 
 __all__ = ["candidates", "ranked"]
 
-#: Below this no response differs from another; the order of the catalogue decides.
-_NOTHING_DB: Final = 1e-6
 
 
 def candidates(view: View, ascending: Sequence[Fraction] = ()) -> tuple[Candidate, ...]:
     """Every family fitted to this view of H, ranked. ``ascending`` is the exact denominator of H, for exact equations."""
     found = [_candidate(f) for f in fits(view)]
-    if not any(c.matches for c in found):
+    if not any(c.meets_response for c in found):
         by_poles = {f.family: _candidate(f) for f in fits(view, by_poles=True)}
-        found = [p if (p := by_poles.get(c.family)) is not None and p.matches else c for c in found]
+        found = [min(c, by_poles.get(c.family, c), key=lambda c: (not c.matches, c.nearness)) for c in found]
     found = [c for c in found if not _is_another(c, found)]
     return ranked([_with_exactness(c, view, ascending) for c in found])
 
@@ -67,7 +68,11 @@ def _is_another(candidate: Candidate, found: Sequence[Candidate]) -> bool:
 
 
 def _with_exactness(candidate: Candidate, view: View, ascending: Sequence[Fraction]) -> Candidate:
-    if max(candidate.pole_error_percent, candidate.zero_error_percent, view.misfit_percent) > EXACT_PERCENT:
+    by_roots = max(candidate.pole_error_percent, candidate.zero_error_percent, view.misfit_percent)
+    by_response = max(
+        candidate.response_error_db, candidate.delay_error_percent, candidate.zero_error_percent
+    )
+    if by_roots > EXACT_PERCENT and by_response > EXACT_RESPONSE:
         return candidate
     if not candidate.is_tested:
         return replace(candidate, exact="as any shape of that order and Q is")
@@ -76,7 +81,10 @@ def _with_exactness(candidate: Candidate, view: View, ascending: Sequence[Fracti
         if _is_exact(candidate.family, low_pass):
             return replace(candidate, exact="in exact arithmetic")
     what = "poles and zeros" if len(view.zeros) else "poles"
-    return replace(candidate, exact=f"{what} within 1e-9")
+    said = (
+        f"{what} within 1e-9" if by_roots <= EXACT_PERCENT else "pass band within 1e-10 dB, poles coincident"
+    )
+    return replace(candidate, exact=said)
 
 
 def _is_exact(family: Family, ascending: Sequence[Fraction]) -> bool:
@@ -86,11 +94,9 @@ def _is_exact(family: Family, ascending: Sequence[Fraction]) -> bool:
 
 
 def ranked(found: Sequence[Candidate]) -> tuple[Candidate, ...]:
-    """Matches first, then by response; then a simpler one before one with more parameters that is hardly nearer."""
+    """Matches first, then by nearness; then a simpler one before one with more parameters that is hardly nearer."""
     order: list[Candidate] = []
-    for candidate in sorted(
-        found, key=lambda c: (not c.matches, c.response if c.response > _NOTHING_DB else 0)
-    ):
+    for candidate in sorted(found, key=lambda c: (not c.matches, max(c.nearness, ROUNDING))):
         place = len(order)
         while place and _stands_before(candidate, order[place - 1]):
             place -= 1
@@ -99,11 +105,18 @@ def ranked(found: Sequence[Candidate]) -> tuple[Candidate, ...]:
 
 
 def _stands_before(simpler: Candidate, other: Candidate) -> bool:
-    """Whether a candidate with the larger response error goes first all the same, for having fewer parameters."""
-    if len(simpler.prototype.settings) >= len(other.prototype.settings):
+    """Whether a candidate that is less near goes first all the same, for having fewer parameters.
+
+    Errors of n - 1 numbers in which a family has k parameters shrink by about sqrt((n - 1 - k)/(n - 1)) when these
+    are fitted to nothing; so much, times a margin, is no evidence for the family with the parameters.
+    """
+    if len(simpler.prototype.settings) >= len(other.prototype.settings) or simpler.matches != other.matches:
         return False
-    if simpler.matches:
-        # of an all-pass the response is the delay in per cent, which parts of 1 % change by about as many per cent
-        least = SIMPLER_DB * (20 if simpler.prototype.band == ALL_PASS else 1)
-        return simpler.response <= max(least, SIMPLER_RATIO * other.response)
-    return not other.matches and simpler.response <= SIMPLER_RATIO_WITHOUT_MATCH * other.response
+    if other.freedom <= 0:  # it can be anything
+        return simpler.nearness <= AS_GOOD_AS_SIMPLER
+    if other.nearness <= TOLD_APART:
+        return simpler.nearness <= SIMPLER_RATIO * other.nearness
+    if simpler.meets_response and simpler.response <= SIMPLER_RESPONSE:
+        return True
+    shrink = math.sqrt(simpler.freedom / other.freedom)
+    return simpler.nearness <= SIMPLER_RATIO * shrink * other.nearness

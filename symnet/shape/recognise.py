@@ -221,11 +221,7 @@ def _candidates(view: View, h: Ratio) -> tuple[Candidate, ...]:
 
 def _nearness(seen: tuple[View, tuple[Candidate, ...]]) -> tuple[bool, float]:
     found = seen[1]
-    return (
-        (False, found[0].response)
-        if found and not found[0].matches
-        else (not found, found[0].response if found else 0.0)
-    )
+    return (not found[0].matches, found[0].nearness) if found else (False, 0.0)
 
 
 def _values(found: Sequence[Root]) -> tuple[complex, ...]:

@@ -9,23 +9,33 @@ from __future__ import annotations
 from typing import Final
 
 __all__ = [
+    "AS_GOOD_AS_SIMPLER",
     "DELAY_PERCENT",
     "EXACT_PERCENT",
+    "EXACT_RESPONSE",
     "NORMALISED_WITHIN",
     "POLES_ALONE_PERCENT",
     "POLES_PERCENT",
     "POLES_RESPONSE_DB",
     "RESPONSE_DB",
-    "SIMPLER_DB",
+    "ROUNDING",
+    "SAME_SHAPE_PERCENT",
     "SIMPLER_RATIO",
-    "SIMPLER_RATIO_WITHOUT_MATCH",
+    "SIMPLER_RESPONSE",
     "TIE_RATIO",
+    "TOLD_APART",
     "ZEROS_PERCENT",
 ]
 
 #: "Exactly", where exact arithmetic does not decide: poles and zeros within this, far above the rounding of doubles and
 #: far below any printed digits.
 EXACT_PERCENT: Final = 1e-7
+#: The same for poles that coincide, which rounding of the coefficients tears apart by its square or cube root: what is
+#: left of the response error in dB and the delay error in per cent.
+EXACT_RESPONSE: Final = 1e-10
+
+#: Distances below this, in units of the limits, are rounding, and rank nobody: the order of the catalogue does.
+ROUNDING: Final = 1e-8
 
 #: A match by response needs both of these. Measured: parts rounded to four digits stay within 0.0004 dB and 0.04 %
 #: for published ladders up to order 10; parts of 1 % (60 random draws of Butterworth, Bessel and Chebyshev ladders
@@ -44,13 +54,15 @@ POLES_ALONE_PERCENT: Final = 2.0
 #: Finite zeros hardly change the pass band and decide the stop band, so they are asked for in every match.
 ZEROS_PERCENT: Final = 5.0
 
-#: A match with fewer fitted parameters stands first when its response error is below the first of these, which is
-#: what 1 % parts do to it, or below that of the other times the second: with 5 % parts the fit of a ripple halves
-#: the response error of a Butterworth ladder in every second draw without meaning anything.
-SIMPLER_DB: Final = 0.05
-SIMPLER_RATIO: Final = 10.0
-#: Where nothing matches, a nearest one with more parameters must at least halve the error of the simpler one.
-SIMPLER_RATIO_WITHOUT_MATCH: Final = 2.0
+#: Between candidates with unequal numbers of fitted parameters, all in units of the limits of the criteria
+#: (``Candidate.nearness``). A family with fewer stands first when its response is within the first of these, which is
+#: what 1 % parts do to it, or when it is less near by less than the second beyond what fitting makes of any errors. But
+#: where the one with more is nearer than the third, it is what is meant.
+SIMPLER_RESPONSE: Final = 0.7
+SIMPLER_RATIO: Final = 1.3
+TOLD_APART: Final = 0.003
+#: Where a family has as many parameters as the shape has numbers (order 2), a simpler one within this is meant.
+AS_GOOD_AS_SIMPLER: Final = 0.03
 
 #: Two matches with equally many parameters whose response errors differ by less than this factor are called a tie.
 TIE_RATIO: Final = 1.5

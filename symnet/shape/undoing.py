@@ -34,6 +34,7 @@ Complexes: TypeAlias = NDArray[np.complex128]
 #: A zero of a band-stop whose low-pass zero would lie this many times w0 away counts as one at infinity: parts of a
 #: few per cent move the notches of a band-stop by that much, and no family has zeros so far out and needs them.
 _FAR: Final = 12.0
+_FARTHEST: Final = 1e3
 #: Nearer to +-j than rounding can tell.
 _AT_CENTRE: Final = 1e-9
 
@@ -201,6 +202,8 @@ def omega(view: View, w: Floats, centre: Floats | float = 0.0) -> tuple[Floats, 
     if view.band == BAND_PASS:
         return (moved - 1 / moved) / view.width, -(moved + 1 / moved) / view.width
     opening = 1 / moved - moved
+    least = view.width / _FARTHEST  # a fit may carry the centre over a point
+    opening = np.where(np.abs(opening) < least, np.copysign(least, opening), opening)
     return view.width / opening, -view.width * (1 / moved + moved) / opening**2
 
 

@@ -93,30 +93,36 @@ class Candidate:
 
     @property
     def response(self) -> float:
-        """What candidates are ranked by: the response error in dB, of an all-pass the delay error in per cent."""
-        return (
-            self.delay_error_percent
-            if self.prototype.band == ALL_PASS
-            else max(self.response_error_db, self._zeros_db)
+        """The response errors in units of the limits of the response criterion, the largest of them: 1 is just met."""
+        in_level = 0.0 if self.prototype.band == ALL_PASS else self.response_error_db / RESPONSE_DB
+        return max(
+            in_level, self.delay_error_percent / DELAY_PERCENT, self.zero_error_percent / ZEROS_PERCENT
         )
 
     @property
-    def _zeros_db(self) -> float:
-        """The zero error as the stop band sees it near the zero: 20 log10(1 + error) dB, times a tenth."""
-        return 2 * math.log10(1 + self.zero_error_percent / 100)
+    def nearness(self) -> float:
+        """What candidates are ranked by: by response, or by poles if these agree better, in units of the limits."""
+        by_poles = max(self.pole_error_percent / POLES_PERCENT, self.zero_error_percent / ZEROS_PERCENT)
+        return min(self.response, by_poles)
+
+    @property
+    def freedom(self) -> int:
+        """How many numbers of the shape the family does not fit."""
+        p = self.prototype
+        return p.order - 1 + self.family.finite_zeros(p.order) // 2 - len(p.settings)
 
     @property
     def is_tested(self) -> bool:
         """Whether the shape has more freedom than the family has parameters, so that a match means something."""
-        p = self.prototype
-        return p.order - 1 + self.family.finite_zeros(p.order) // 2 > len(p.settings)
+        return self.freedom > 0
 
     @property
     def is_at_the_end(self) -> bool:
         """Whether a fitted parameter came to an end of the range in which it was looked for."""
         parameters = self.family.parameters(self.prototype.order)
         return any(
-            not parameter.lower < setting.value < parameter.upper
+            min(setting.value - parameter.lower, parameter.upper - setting.value)
+            <= 1e-6 * parameter.lower + 1e-9
             for parameter, setting in zip(parameters, self.prototype.settings, strict=True)
         )
 
@@ -138,7 +144,7 @@ class Candidate:
                 if setting.value >= parameter.upper
                 else ""
             )
-            yield f"{setting.name} {side}{_shortest(setting.value, plus)} {setting.unit}"
+            yield f"{setting.name} {side}{_shortest(setting.value, plus)} {setting.unit}".rstrip()
 
     @property
     def distance(self) -> str:
@@ -154,7 +160,9 @@ class Candidate:
     def fitted(self) -> tuple[str, ...]:
         """The fitted parameters with their uncertainty, the change that doubles the sum of squares of the fit."""
         return tuple(
-            f"{setting.name} {setting.value:.6g} {setting.unit} +- {_upwards(plus)} {setting.unit}"
+            " ".join(
+                f"{setting.name} {setting.value:.6g} {setting.unit} +- {_upwards(plus)} {setting.unit}".split()
+            )
             for setting, plus in zip(self.prototype.settings, self.uncertainties, strict=True)
         )
 
@@ -257,7 +265,7 @@ class Recognition(Displayed):
             for c in self.runners_up
             if c.matches
             and len(c.prototype.settings) == len(first.prototype.settings)
-            and c.response <= TIE_RATIO * first.response
+            and c.nearness <= TIE_RATIO * first.nearness
         )
 
     @property
@@ -369,10 +377,10 @@ def _upwards(value: float) -> str:
 def _shortest(value: float, plus: float) -> str:
     """The shortest decimal within the uncertainty of the value, or within a thousandth of it."""
     for digits in range(1, 17):
-        text = f"{value:.{digits}g}"
-        if abs(float(text) - value) <= max(plus, 1e-3 * abs(value)):
+        short = float(f"{value:.{digits}g}")
+        if abs(short - value) <= max(plus, 1e-3 * abs(value)):
             break
-    return f"{float(text):.16g}"  # 20, not 2e+01
+    return f"{short:.16g}"  # 20, not 2e+01
 
 
 def hertz(w: float) -> str:

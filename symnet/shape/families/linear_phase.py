@@ -106,8 +106,8 @@ class _LinearPhase(Family):
         return order >= 3
 
     def parameters(self, order: int) -> tuple[Parameter, ...]:
-        """The phase error."""
-        return (Parameter("phase error", "deg", _SMALLEST_DEGREES, _LARGEST_DEGREES, logarithmic=True),)
+        """The phase error, between what is hardly distinct from Bessel and what nobody calls linear."""
+        return (Parameter("phase error", "deg", 2.0**-7, 2.0, logarithmic=True),)
 
     def roots(self, order: int, values: tuple[float, ...]) -> Roots:
         """Poles near to a row of equal spacing, the last ones nearer to the jw axis."""
