@@ -230,21 +230,24 @@ class _Batch:
         low, _, by_centre = self._low(x)
         slope = np.zeros_like(low)
         by_place = np.zeros((len(rows), k, low.shape[1]))
-        for sign, roots, turns in (
-            (1, self.poles[rows], self.turns[0][rows]),
-            (-1, self.zeros[rows], self.turns[1][rows]),
-        ):
-            for n in range(roots.shape[1]):
-                re, im = roots.real[:, n, None], roots.imag[:, n, None]
-                away = low - im
-                both = 2 * sign / (re**2 + away**2)
-                slope += away * both
-                if k:
-                    by_re, by_im = (part[:, :, n, None] for part in (turns.real, turns.imag))
-                    by_place += by_re * (re * both)[:, None] - by_im * (away * both)[:, None]
-                    by_place -= (
-                        sign * 2 * ((by_re * re[:, None] + by_im * im[:, None]) / (re**2 + im**2)[:, None])
-                    )
+        own = np.flatnonzero(np.asarray(self.own)[rows])
+        for sign, every, turns in ((1, self.poles, self.turns[0]), (-1, self.zeros, self.turns[1])):
+            if not every.shape[1]:
+                continue
+            r = every[rows][:, :, None]
+            away = low[:, None, :] - r.imag
+            both = 2 * sign / (away * away + r.real**2)
+            away *= both
+            slope += away.sum(axis=1)
+            if len(own):
+                t, r, both, away = turns[rows][own], r[own], both[own], away[own]
+                by_place[own] += np.einsum("fkn,fnm->fkm", t.real, r.real * both) - np.einsum(
+                    "fkn,fnm->fkm", t.imag, away
+                )
+                still = (t.real * r[:, None, :, 0].real + t.imag * r[:, None, :, 0].imag) / np.abs(
+                    r[:, None, :, 0]
+                ) ** 2
+                by_place[own] -= 2 * sign * still.sum(axis=2)[:, :, None]
         j = np.zeros((len(rows), x.shape[1], low.shape[1] + len(self.zeros_wanted)))
         points = low.shape[1]
         j[:, :k, :points] = by_place * _DB
@@ -397,11 +400,10 @@ def level(view: View, w: Floats) -> Floats:
 
 
 def _delays(roots: Complexes, w: Floats) -> Floats:
-    total = np.zeros(w.shape)
-    for k in range(roots.shape[-1]):
-        re, im = roots.real[..., k, None], roots.imag[..., k, None]
-        total -= re / (re**2 + (w - im) ** 2)
-    return total
+    r = roots[..., None]
+    away = w[..., None, :] - r.imag
+    delay: Floats = -(r.real / (away * away + r.real**2)).sum(axis=-2)
+    return delay
 
 
 def _times(view: View) -> int:

@@ -96,12 +96,17 @@ def _is_exact(family: Family, ascending: Sequence[Fraction]) -> bool:
 def ranked(found: Sequence[Candidate]) -> tuple[Candidate, ...]:
     """Matches first, then by nearness; then a simpler one before one with more parameters that is hardly nearer."""
     order: list[Candidate] = []
-    for candidate in sorted(found, key=lambda c: (not c.matches, max(c.nearness, ROUNDING))):
+    for candidate in sorted(found, key=lambda c: (not c.matches, _rounded(c.nearness))):
         place = len(order)
         while place and _stands_before(candidate, order[place - 1]):
             place -= 1
         order.insert(place, candidate)
     return tuple(order)
+
+
+def _rounded(nearness: float) -> float:
+    """To four digits, so that rounding ranks nobody: the order of the catalogue does."""
+    return float(f"{max(nearness, ROUNDING):.4g}")
 
 
 def _stands_before(simpler: Candidate, other: Candidate) -> bool:
