@@ -32,7 +32,6 @@ from symnet.shape.verdict import Candidate
 __all__ = ["candidates", "ranked"]
 
 
-
 def candidates(view: View, ascending: Sequence[Fraction] = ()) -> tuple[Candidate, ...]:
     """Every family fitted to this view of H, ranked. ``ascending`` is the exact denominator of H, for exact equations."""
     found = [_candidate(f) for f in fits(view)]
