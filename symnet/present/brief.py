@@ -17,7 +17,7 @@ from symnet.exact.derive import derive_all
 from symnet.exact.limits import limits
 from symnet.exact.transfer import Transfer
 from symnet.present import writers
-from symnet.present.blocks import Block, Heading, Paragraph
+from symnet.present.blocks import Block, Heading, Items, Paragraph
 from symnet.present.conventions import conventions
 from symnet.present.network import network_blocks
 from symnet.present.recognition import recognition_blocks
@@ -25,6 +25,7 @@ from symnet.present.response import response_blocks
 from symnet.present.results import conditions_blocks, limits_table, transfer_blocks
 from symnet.present.shapes import normal_blocks, sections_blocks
 from symnet.quantities import NUMBER
+from symnet.review.polarity import polarities
 from symnet.typeset.displayed import Displayed
 
 __all__ = ["Brief", "brief"]
@@ -84,6 +85,9 @@ def brief(network: Network) -> Brief:
     """
     transfers = derive_all(network)
     blocks: list[Block] = [*network_blocks(network, transfers[0].values)]
+    positive = tuple(str(polarity) for polarity in polarities(network) if polarity.feedback == "positive")
+    if positive:
+        blocks.append(Items(positive))
     words: set[str] = set()
     if network.reads and any("i_" in transfer.label for transfer in transfers):
         words.add("current")

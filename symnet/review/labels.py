@@ -15,7 +15,7 @@ _NUMBER: Final = re.compile(
 )
 _WORD: Final = re.compile(
     r"\s*(?:so that|so|hence|therefore|thus|then|and|also|but|because|since|now|finally|that is)\b"
-    rf"(?:\s*[:,])?(?=\s){_BEGINS}(?!\s*-)"
+    rf"(?:\s*[:,])?(?=\s){_BEGINS}(?!\s*-\s)"
 )
 _FROM: Final = re.compile(r"\s*(?:from|by|with|using)\s[\w\s,().]{1,80}:(?=\s)")
 

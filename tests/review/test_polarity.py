@@ -73,3 +73,8 @@ def test_a_review_warns_and_still_holds() -> None:
     assert "U1 is net positive" in str(warning)
     assert "net positive" in review._repr_mimebundle_()["text/plain"]
     assert not sn.verify(sn.network(INVERTING), "out/in = -R2/R1").polarity
+
+
+def test_the_brief_warns_too() -> None:
+    assert "net positive" in sn.brief(sn.network(exchanged(INVERTING))).to_text()
+    assert "net positive" not in sn.brief(sn.network(INVERTING)).to_text()

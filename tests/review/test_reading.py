@@ -86,6 +86,7 @@ def test_signs_of_a_text_processor_read_as_plain_ones(typed: str, plain: str) ->
         ("hence, a = b", "1"),
         ("from 1 and 2: a = b", "1"),
         ("3. therefore a = b", "3"),
+        ("thus: a = b", "1"),
     ],
 )
 def test_labels_and_words_before_a_line(text: str, label: str) -> None:
@@ -94,7 +95,9 @@ def test_labels_and_words_before_a_line(text: str, label: str) -> None:
     assert (line.label, line.text) == (label, "a = b")
 
 
-@pytest.mark.parametrize("text", ["so = 2*a", "then*a = b", "(1) - a = b", "1.5*a = b", "2*a = b"])
+@pytest.mark.parametrize(
+    "text", ["so = 2*a", "so - a = b", "then*a = b", "(1) - a = b", "1.5*a = b", "2*a = b"]
+)
 def test_what_is_no_label(text: str) -> None:
     (line,) = read_working(text)
     assert (line.label, line.text) == ("1", text)
