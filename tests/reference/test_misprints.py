@@ -8,10 +8,11 @@ import pytest
 from numpy.typing import NDArray
 
 import symnet as sn
+from symnet.shape.families.inverse_chebyshev import inverse_chebyshev
 from symnet.shape.families.legendre import legendre, optimum_polynomial
 from symnet.shape.families.linear_phase import linear_phase
 from symnet.shape.verdict import Recognition
-from tests.reference import families, families_legendre_linear_phase, misprints
+from tests.reference import families, families_legendre_linear_phase, finite_zeros, misprints
 
 
 @pytest.mark.parametrize("case", misprints.MISPRINTED_ZEROS, ids=lambda case: str(case.printed))
@@ -111,3 +112,45 @@ def test_the_heading_gaussian_to_12_db_is_wrong(row: families_legendre_linear_ph
     loss = 20 * np.log10(np.abs(1 - 1j * w[:, None] / np.array(poles))).sum(axis=1)
     assert np.abs(loss - 3.0103 * w**2).max() > 0.3
     assert heights(row.order, poles, row.error) == pytest.approx(0.5, abs=0.03)
+
+
+def test_inverse_chebyshev_ladder_of_90_db() -> None:
+    """m5: Table 2.23 has C5 = 2.785139 for 90 dB, a digit lost from 2.785739.
+
+    Of that row only C5 is at hand, so the ladder is computed: C1, L2 || Cp2, C3, L4 || Cp4, C5 between 1 ohm and 1 ohm,
+    traps at the two zeros, the others by Newton steps from the row for 85 dB: the reflection A + B - C - D of its chain
+    matrix has all its zeros at DC, and A + B + C + D has the product of the poles.
+    """
+    row = next(case for case in finite_zeros.CASES if case.id == "invcheb-n5-85dB")
+    values = sn.derive(sn.network(row.text)).values
+    names = ("C1", "L2", "C3", "L4", "C5")
+    x = np.array([float(values[name]) for name in names])
+    near, far = 1 / np.sin(2 * np.pi / 5), 1 / np.sin(np.pi / 5)
+    wanted = np.poly(inverse_chebyshev(5, "90 dB").poles).real
+
+    def chain(x: NDArray[np.float64]) -> tuple[NDArray[np.float64], NDArray[np.float64]]:
+        one, none = np.array([1.0]), np.array([0.0])
+        a, b, c, d = one, none, none, one
+        for k, value in enumerate(x):
+            if k % 2:  # a trap, times its own 1 + s^2/w^2
+                trap = np.array([1 / (near if k == 1 else far) ** 2, 0, 1])
+                s_l = np.array([value, 0])
+                a, b = np.polymul(a, trap), np.polyadd(np.polymul(a, s_l), np.polymul(b, trap))
+                c, d = np.polymul(c, trap), np.polyadd(np.polymul(c, s_l), np.polymul(d, trap))
+            else:
+                s_c = np.array([value, 0])
+                a, c = np.polyadd(a, np.polymul(b, s_c)), np.polyadd(c, np.polymul(d, s_c))
+        left, right = np.polyadd(a, b), np.polyadd(c, d)
+        return np.asarray(np.polyadd(left, right)), np.asarray(np.polysub(left, right))
+
+    def wrong(x: NDArray[np.float64]) -> NDArray[np.float64]:
+        total, reflected = chain(x)
+        return np.append(reflected[1:5], total[0] / total[-1] - wanted[0] / wanted[-1])
+
+    for _ in range(20):
+        slopes = np.array([(wrong(x + h) - wrong(x - h)) / 2e-6 for h in 1e-6 * np.eye(5)])
+        x = x - np.linalg.solve(slopes.T, wrong(x))
+    total = chain(x)[0]
+    assert total / total[0] == pytest.approx(wanted, rel=1e-7)
+    assert x[4] == pytest.approx(2.785739, abs=2e-6)
+    assert abs(x[4] - 2.785139) > 5e-4
