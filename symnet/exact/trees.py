@@ -230,36 +230,44 @@ def _grow_pairs(
         states = rows.admitted(level, states, 0)
         middle = len(rows.frontier)
         states = columns.admitted(level, states, middle)
-        row_plus, row_minus, row_gone, row_alone = rows.decide(level, 0)
-        column_plus, column_minus, column_gone, column_alone = columns.decide(level, middle)
-        column_gone += middle
+        row_plus, row_minus, rows_leave = rows.decide(level, 0)
+        column_plus, column_minus, columns_leave = columns.decide(level, middle)
+        row, column = len(rows_leave), middle + len(columns_leave)
+        all_stay = not (rows_leave or columns_leave)
         following: dict[State, int] = {}
         next_alive: list[int] = []
         number = grown.next
         for state, bits in zip(states, alive, strict=True):
             a, b, c, d = state[row_plus], state[row_minus], state[column_plus], state[column_minus]
-            if a == row_alone[0] or b == row_alone[1] or c == column_alone[0] or d == column_alone[1]:
+            if a in rows_leave or b in rows_leave or c in columns_leave or d in columns_leave:
                 leave(_DEAD)
             else:
-                reached = following.setdefault(state[row_gone:middle] + state[column_gone:], number)
+                kept = state if all_stay else state[row:middle] + state[column:]
+                reached = following.setdefault(kept, number)
                 if reached == number:
                     number += 1
                     next_alive.append(bits)
                 leave(reached)
             row_low, row_high = (a, b) if a < b else (b, a)
             column_low, column_high = (c, d) if c < d else (d, c)
-            if row_high in (row_low, *row_alone) or column_high in (column_low, *column_alone):
+            if (
+                row_low == row_high
+                or column_low == column_high
+                or row_high in rows_leave
+                or column_high in columns_leave
+            ):
                 take(_DEAD)
                 signs(1)
                 continue
             merged = state.replace(row_low, row_high).replace(column_low, column_high)
-            row, column = 1 << ord(row_low), 1 << ord(column_low)
-            reached = following.setdefault(merged[row_gone:middle] + merged[column_gone:], number)
+            kept = merged if all_stay else merged[row:middle] + merged[column:]
+            row_bit, column_bit = 1 << ord(row_low), 1 << ord(column_low)
+            reached = following.setdefault(kept, number)
             if reached == number:
                 number += 1
-                next_alive.append(bits ^ row ^ column)
+                next_alive.append(bits ^ row_bit ^ column_bit)
             take(reached)
-            below = bits & ((row - 1) | (column - first_column))
+            below = bits & ((row_bit - 1) | (column_bit - first_column))
             odd = below.bit_count() + (row_low != a) + (column_low != c)
             signs(-1 if odd & 1 else 1)
         grown.piece += [index] * len(states)
@@ -291,18 +299,19 @@ def _grow_twins(grown: _Growing, side: _Side, states: list[State], order: Sequen
     for here in range(level, len(order)):
         grown.at(here)
         states = side.admitted(here, states, 0)
-        plus, minus, gone, (plus_alone, minus_alone) = side.decide(here, 0)
+        plus, minus, leaving = side.decide(here, 0)
+        gone = len(leaving)
         following: dict[State, int] = {}
         for state in states:
             a, b = state[plus], state[minus]
-            if a == plus_alone or b == minus_alone:
+            if a in leaving or b in leaving:
                 leave(_DEAD)
             else:
                 reached = following.setdefault(state[gone:], number)
                 number += reached == number
                 leave(reached)
             low, high = (a, b) if a < b else (b, a)
-            if high in (low, plus_alone, minus_alone):
+            if low == high or high in leaving:
                 take(_DEAD)
             else:
                 reached = following.setdefault(state.replace(low, high)[gone:], number)
@@ -409,16 +418,16 @@ class _Side:
                 states = [state[:place] + name + state[place:] for state in states]
         return states
 
-    def decide(self, level: int, start: int) -> tuple[int, int, int, tuple[str, str]]:
-        """The places of the ends of the piece; how many of them leave; and what stands at each end that leaves if it
-        is a class alone (nothing where the end stays).
+    def decide(self, level: int, start: int) -> tuple[int, int, str]:
+        """The places of the ends of the piece, and those of them that leave: in front of the states.
+
+        One of these at an end is the representative of its class, which then has nowhere to go.
         """
         plus, minus = self.ends[level]
         places = start + bisect_left(self.frontier, plus), start + bisect_left(self.frontier, minus)
         leaving = [end for end in {plus, minus} if self._last[end] == level]
         del self.frontier[: len(leaving)]
-        alone = [chr(self.base + end) if end in leaving else "" for end in (plus, minus)]
-        return *places, len(leaving), (alone[0], alone[1])
+        return *places, "".join([chr(self.base + end) for end in leaving])
 
 
 def _parity(permutation: list[int]) -> int:
