@@ -8,6 +8,8 @@ from pathlib import Path
 
 import pytest
 
+from tests.speed.__main__ import page, scripts
+
 SPEED = Path(__file__).resolve().parent / "speed"
 
 
@@ -26,3 +28,11 @@ def test_script_prints_its_table(script: Path) -> None:
     assert set(rule) <= set("|-: ")
     assert rows
     assert all(row.count("|") == header.count("|") for row in rows)
+
+
+def test_one_command_makes_a_page_of_all() -> None:
+    assert scripts() == [script.stem for script in sorted(SPEED.glob("[!_]*.py"))]
+    head, table = page(["reads"], "1")
+    assert head.startswith("# How fast symnet is\n\nMeasured 20")
+    assert table.startswith("\n## What another read costs")
+    assert "\n\n`python -m tests.speed.reads`\n\n| reads of" in table

@@ -60,6 +60,19 @@ def complete_graph(nodes: int) -> str:
     return "\n".join([*lines, "drive n1", f"read n{nodes - 1}"])
 
 
+def grid(rows: int, columns: int) -> str:
+    """Resistors along all lines of a grid of nodes, one corner driven, the one beside it at gnd, the far one read."""
+    lines = [
+        f"a{i}_{j} -- R{i}_{j}_{x}{y} -- a{i + x}_{j + y}"
+        for i in range(rows)
+        for j in range(columns)
+        for x, y in ((0, 1), (1, 0))
+        if i + x < rows and j + y < columns
+    ]
+    text = "\n".join([*lines, "drive a0_0", f"read a{rows - 1}_{columns - 1}"])
+    return text.replace(f"a{rows - 1}_0 ", "gnd ").replace(f"a{rows - 1}_0\n", "gnd\n")
+
+
 def nodal_matrix(net: sn.Network, one: Callable[[str], Any], zero: Any, s: Any) -> list[list[Any]]:
     """The nodal matrix without the driven node, resistors as conductances G."""
     driven = net.drives[0].nodes[0]
