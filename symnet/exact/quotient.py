@@ -43,13 +43,15 @@ class Quotient:
     def lowest(self) -> LowestTerms:
         """Both in lowest terms, factor by factor; LimitError when a factor is too long to be written out."""
         n, d = self.numerator, self.denominator
-        ring = d.generators.ring
         if n.diagram.is_zero:
-            return LowestTerms.zero(ring)
+            return LowestTerms.zero(d.generators.ring)
+        bottom = Product.of_determinant(
+            d
+        )  # if anything is refused, then this, before a ring of all names is made
         found = reduce(
             Product.of_determinant(n),
-            Product.of_determinant(d),
-            ring,
+            bottom,
+            d.generators.ring,
             lambda point: self.modulo(point, SMALL_PRIME),
         )
         return replace(found, hidden=_without(found.hidden, d.generators.element(d.factor)))
