@@ -58,6 +58,7 @@ class _Pencil:
     values: dict[str, Fraction] = field(default_factory=dict)
     worth: list[str] = field(default_factory=list)
     inner: int = 0
+    coupled: list[tuple[str, str, str]] = field(default_factory=list)
 
     def pick(self, options: Sequence[T]) -> T:
         return options[self.whole(0, len(options) - 1)]
@@ -147,11 +148,13 @@ def build(
     least_nodes: int = 2,
     links: tuple[int, int] = (0, 4),
     single: bool = False,
+    devices: bool = False,
 ) -> Sketch:
     """A connected network; ``whole(low, high)`` gives whole numbers, low and high included.
 
     ``links`` are the fewest and the most branches beyond the tree that hangs every node on gnd. With ``single``
     (and without ``rational``) every law has one term, so that every term of the equations has its own parameter.
+    With ``devices`` it holds coupled coils, transformers, transistors and what else ships with the notation.
     """
     pencil = _Pencil(whole, rational, single)
     nodes = list(NODES[: whole(least_nodes, most_nodes)])
@@ -166,9 +169,13 @@ def build(
         for k in range(whole(0, 2)):
             _active(pencil, nodes, unfixed, f"{k + 1}")
     read = pencil.control(nodes)[0].strip("()")
+    if devices:
+        for k in range(whole(1, 3)):
+            _device(pencil, nodes, unfixed, f"X{k + 1}")
+        _coupled(pencil)
     pencil.lines += [drive_text, f"read {read}"]
     text = "\n".join([*pencil.lines, *pencil.worth])
-    return Sketch(text, Drawing(tuple(pencil.parts), drive, read), pencil.values)
+    return Sketch(text, Drawing(tuple(pencil.parts), drive, read, tuple(pencil.coupled)), pencil.values)
 
 
 def _drive(pencil: _Pencil, nodes: list[str], unfixed: list[str]) -> tuple[tuple[str, str, str], str]:
@@ -204,6 +211,107 @@ def _active(pencil: _Pencil, nodes: list[str], unfixed: list[str], number: str) 
         pencil.chain(out, minus)
         pencil.lines.append(f"U{number}: opamp(plus={plus}, minus={minus}, out={out})")
         pencil.parts.append(("opamp", f"U{number}", plus, minus, out))
+
+
+def _device(pencil: _Pencil, nodes: list[str], unfixed: list[str], name: str) -> None:
+    """A section that ships with the notation, and for the oracle the parts that it stands for."""
+    kinds = ["gyrator", "ota", "bjt", "fet", "potentiometer", "crystal"]
+    if len(unfixed) > 1 and len(nodes) > 1:
+        kinds += ["transformer", "nic", "cfa", "opamp"]
+    kind = pencil.pick(kinds)
+    held = unfixed.pop(pencil.whole(0, len(unfixed) - 1)) if kind in kinds[6:] else ""
+    a, b, c = (pencil.pick([node for node in ["gnd", *nodes] if node != held]) for _ in range(3))
+
+    def worth(letter: str) -> str:
+        """A free symbol with a value of that class, which is an argument of the section."""
+        symbol = f"{letter}{name}"
+        text, pencil.values[symbol] = pencil.size(letter)
+        pencil.worth += [f"free {symbol}", f"{symbol} = {text}"]
+        return symbol
+
+    def number(stem: str, unit: str = "", one: Fraction = Fraction(1)) -> str:
+        symbol = pencil.symbol(stem, unit, one)
+        pencil.worth.append(f"free {symbol}")
+        return symbol
+
+    def part(letter: str, inner: str, start: str, end: str, value: str) -> None:
+        pencil.parts.append((letter, f"{name}_{inner}", start, end, value))
+
+    arguments: dict[str, str]
+    match kind:
+        case "gyrator":
+            g = number("gm", "mS", Fraction(1, 1000))
+            arguments = {"p1": a, "p2": "gnd", "q1": b, "q2": c, "g": g}
+            part("push", "forward", a, "gnd", f"{g}*({b} - {c})")
+            part("push", "backward", b, c, f"-{g}*{a}")
+        case "ota":
+            g, r, x = number("gm", "mS", Fraction(1, 1000)), worth("R"), worth("C")
+            arguments = {"plus": a, "minus": b, "out": c, "gm": g, "Rout": r, "Cin": x}
+            part("push", "amp", "gnd", c, f"{g}*({a} - {b})")
+            part("R", "Rout", c, "gnd", r)
+            part("C", "Cin", a, b, x)
+        case "bjt":
+            g, r, x = number("gm", "mS", Fraction(1, 1000)), worth("R"), worth("C")
+            arguments = {"collector": a, "base": b, "emitter": c, "gm": g, "Rb": r, "Cmu": x, "Rpi": r}
+            inner = f"{name}_b"
+            part("push", "source", a, c, f"{g}*({inner} - {c})")
+            part("R", "Rb", b, inner, r)
+            part("R", "Rpi", inner, c, r)
+            part("C", "Cmu", inner, a, x)
+        case "fet":
+            g, x = number("gm", "mS", Fraction(1, 1000)), worth("C")
+            arguments = {"drain": a, "gate": b, "source": c, "gm": g, "Cgd": x, "Cgs": x}
+            part("push", "channel", a, c, f"{g}*({b} - {c})")
+            part("C", "Cgd", b, a, x)
+            part("C", "Cgs", b, c, x)
+        case "potentiometer":
+            r, k = worth("R"), number("x")
+            arguments = {"top": a, "wiper": b, "bottom": c, "Rt": r, "x": k}
+            part("R", "Ru", a, b, f"(1 - {k})*{r}")
+            part("R", "Rl", b, c, f"{k}*{r}")
+        case "crystal":
+            r, x, y = worth("R"), worth("C"), worth("L")
+            arguments = {"a": a, "b": b, "Rm": r, "Lm": y, "Cm": x, "C0": x}
+            part("Z", "motional", a, b, f"{r} + s*{y} + 1/(s*{x})")
+            part("C", "C0", a, b, x)
+        case "transformer":
+            n = number("mu")
+            arguments = {"p1": held, "p2": "gnd", "s1": a, "s2": b, "n": n}
+            part("hold", "primary", held, "gnd", f"{n}*({a} - {b})")
+            part("push", "secondary", a, b, f"-{n}*i_{name}_primary")
+        case "nic":
+            k = number("mu")
+            arguments = {"a": held, "b": a, "k": k}
+            part("hold", "link", held, "gnd", a)
+            part("push", "inverter", a, "gnd", f"i_{name}_link/{k}")
+        case "cfa":
+            r, x = worth("R"), worth("C")
+            arguments = {"plus": a, "minus": b, "out": held, "Rx": r, "Rt": r, "Ct": x}
+            part("hold", "buffer", f"{name}_x", "gnd", a)
+            part("R", "Rx", f"{name}_x", b, r)
+            part("hold", "amp", held, "gnd", f"-{r}/(1 + s*{r}*{x})*i_{name}_buffer")
+        case _:
+            gain, r = number("mu"), worth("R")
+            wt = number("wt", "krad/s", Fraction(1000))
+            arguments = {"plus": a, "minus": b, "out": held, "gain": gain, "gbw": wt, "Rout": r, "pole2": wt}
+            law = f"{gain}/(1 + s*{gain}/{wt})/(1 + s/{wt})*({a} - {b})"
+            part("hold", "amp", f"{name}_o", "gnd", law)
+            part("R", "Rout", f"{name}_o", held, r)
+    listed = ", ".join(f"{key}={value}" for key, value in arguments.items())
+    pencil.lines.append(f"{name}: {kind}({listed})")
+
+
+def _coupled(pencil: _Pencil) -> None:
+    """Share flux between two coils, if there are two; M below what any of them allows."""
+    coils = [part[1] for part in pencil.parts if part[0] == "L" and "_" not in part[1]]
+    if len(coils) < 2:
+        return
+    one, two = coils[0], coils[-1]
+    microhenry = float(min(pencil.values[one], pencil.values[two]) / 2 * 10**6)
+    pencil.values["M1"] = Fraction(str(microhenry)) / 10**6
+    pencil.worth.append(f"M1 = {microhenry} uH")
+    pencil.lines.append(f"couple {one} to {two} with M1")
+    pencil.coupled.append((one, two, "M1"))
 
 
 def seeded(seed: int, **how: Any) -> Sketch:

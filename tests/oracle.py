@@ -51,6 +51,8 @@ class Drawing:
     parts: tuple[Part, ...]
     drive: Drive
     read: str
+    couplings: tuple[tuple[str, str, str], ...] = ()
+    """Coils that share flux: first, second, mutual inductance."""
 
 
 def mp_number(value: Fraction) -> Any:
@@ -180,6 +182,11 @@ def tableau(
             else:
                 across(k, start, end, s * value if kind == "C" else value)
                 matrix[k][k] = -one
+    for one_coil, other, text in drawing.couplings:
+        mutual = s * arithmetic(text, names, number)
+        for coil, beside in ((one_coil, other), (other, one_coil)):
+            row = next(k for k, part in enumerate(drawing.parts, start=len(nodes)) if part[1] == coil)
+            matrix[row][place[f"i_{beside}"]] = matrix[row][place[f"i_{beside}"]] - mutual
     last = len(unknowns) - 1
     kind, start, end = drawing.drive
     flows(last, start, end)
