@@ -126,15 +126,6 @@ def explain(
     hence     out/in = 1/(1 + s*(R1*C1 + (R1 + R2)*C2) + s^2*R1*R2*C1*C2)
     """
     transfer = derive(network, read, drive)
-    if transfer.network.couplings:
-        names = tuple(coupling.name for coupling in transfer.network.couplings)
-        raise LimitError(
-            Fault(
-                f"coils that are coupled ({', '.join(names)}) are not told by hand",
-                "sn.equations(network) writes the equations, sn.derive(network) gives H",
-                parts=names,
-            )
-        )
     detail = _readable_detail(transfer, detail)
     frame = Frame(transfer.network, transfer.drive, transfer.read, transfer.naming)
     elimination = eliminate(frame, is_long=detail == "outline")

@@ -95,6 +95,7 @@ class _Equations:
 
     def all(self) -> Iterator[Equation]:
         yield from self._laws()
+        yield from self._coils()
         near = self._distances()
         for nodes in self._surfaces():
             yield self._kirchhoff(nodes, near)
@@ -114,6 +115,14 @@ class _Equations:
                 )
                 if equation.form():
                     yield equation
+
+    def _coils(self) -> Iterator[Equation]:
+        """The voltage along each branch with a coupled coil, by its own current and those of its partners."""
+        for start, group, end in self.frame.groups:
+            coil = self.frame.coil_in(group)
+            if coil is not None:
+                right = Term(1, *self.frame.drop(group))
+                yield Equation(coil, (self._difference_term(start, end),), (right,), is_law=True)
 
     def _difference_term(self, plus: str, minus: str) -> Term:
         x, y = self.frame.voltage(plus), self.frame.voltage(minus)
@@ -181,6 +190,9 @@ class _Equations:
         far = len(near) + 1
         for start, group, end in self.frame.groups:
             if (start in inside) == (end in inside):
+                continue
+            if (coil := self.frame.coil_in(group)) is not None:
+                (right if start in inside else left).append(self._symbol(f"i_{coil}"))
                 continue
             here, there = (start, end) if start in inside else (end, start)
             x, y = self.frame.voltage(here), self.frame.voltage(there)

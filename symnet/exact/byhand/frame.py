@@ -93,6 +93,8 @@ class Frame:
         self._named = named_currents(network, read)
         self._chosen = network.drive_names[network.drives.index(drive)]
         self.groups = list(self._links())
+        self.coils = {coil: self._coupled_to(coil) for c in network.couplings for coil in (c.first, c.second)}
+        self._refuse_buried_coils()
         hidden = {node for _, group, _ in self.groups for node in _inside(group)}
         self.nodes = tuple(node for node in network.nodes if node not in hidden)
         self._join_voltages()
@@ -111,7 +113,11 @@ class Frame:
     def _spare_names(self, names: list[str]) -> dict[str, str]:
         taken = {*names, *self.network.nodes, *self.network.symbols(), *self.network.electric_names()}
         spare: dict[str, str] = {}
-        for voltage in dict.fromkeys(map(self.voltage, self.nodes)):
+        currents = [
+            name for name in (*self.network.part_names, *self.network.drive_names) if self.is_asked(name)
+        ]
+        unknown = (*map(self.voltage, self.nodes), *(f"i_{name}" for name in (*self.coils, *currents)))
+        for voltage in dict.fromkeys(unknown):
             name = f"D_{voltage.removeprefix('v_').replace('.', '_')}"
             while name in taken:
                 name = f"D{name}"
@@ -201,6 +207,57 @@ class Frame:
                     for item in group.items if isinstance(group, Beside) else (group,):
                         yield start, item, end
 
+    def _coupled_to(self, coil: str) -> tuple[tuple[str, str], ...]:
+        """The coils that share flux with one, each with the symbol of the mutual inductance."""
+        return tuple(
+            (c.second if coil == c.first else c.first, c.mutual)
+            for c in self.network.couplings
+            if coil in (c.first, c.second)
+        )
+
+    def _refuse_buried_coils(self) -> None:
+        for _, group, _ in self.groups:
+            items = group.items if isinstance(group, Series) else ()
+            for item in items:
+                for leaf in leaves(item) if not isinstance(item, Leaf) else ():
+                    if leaf.name in self.coils:
+                        raise LimitError(
+                            Fault(
+                                f"{leaf.name} is coupled and stands in a parallel group inside a series",
+                                "give the nodes at both ends of it names, so that its current can be written",
+                                parts=(leaf.name,),
+                            )
+                        )
+
+    def coil_in(self, group: Group) -> str | None:
+        """The first coupled coil of a branch: its current is an unknown of its own."""
+        return next((leaf.name for leaf in leaves(group) if leaf.name in self.coils), None)
+
+    def drop(self, group: Group) -> tuple[Expression, Form]:
+        """The voltage along a branch with a coupled coil, by the currents: as written, and as a linear form."""
+        coil = self.coil_in(group)
+        terms: list[tuple[int, Expression]] = []
+        form: Form = {}
+        for item in group.items if isinstance(group, Series) else (group,):
+            current = Name(f"i_{coil}")
+            factors: tuple[tuple[int, Expression], ...] = ((1, self._spelled_impedance(item)), (1, current))
+            if isinstance(item, Leaf) and class_letter(item.name) == "L":
+                factors = ((1, Name("s")), (1, Name(item.name)), (1, current))
+            terms.append((1, Product(factors)))
+            form = add(form, {current.name: self.impedance(item)})
+            for other, mutual in self.coils.get(item.name, ()) if isinstance(item, Leaf) else ():
+                share = Name(f"i_{self._carrier(other)}")
+                terms.append((1, Product(((1, Name("s")), (1, Name(mutual)), (1, share)))))
+                form = add(form, {share.name: self._values["s"] * self.value(mutual)})
+        return Sum(tuple(terms)), form
+
+    def _carrier(self, coil: str) -> str:
+        """The coil by whose current that of another in the same series is written."""
+        for _, group, _ in self.groups:
+            if any(leaf.name == coil for leaf in leaves(group)):
+                return self.coil_in(group) or coil
+        return coil
+
     def is_asked(self, name: str) -> bool:
         """Whether the read or a law names the current of this source."""
         return name in self._named or any(
@@ -267,6 +324,8 @@ class Frame:
                 return self.across(*drive.nodes)
         for _, group, _ in self.groups:
             if not isinstance(group, Leaf) and any(leaf.name == name for leaf in leaves(group)):
+                if name in self.coils:
+                    return self.drop(Leaf(name))[1]
                 return times(self.impedance(Leaf(name)), self._current(name))
         return self.across(*self._terminals(name))
 
@@ -279,6 +338,8 @@ class Frame:
         if isinstance(part, Branch):
             for start, group, end in self.groups:
                 if any(leaf.name == name for leaf in leaves(group)):
+                    if (coil := self.coil_in(group)) is not None:
+                        return {f"i_{coil}": self.field.one}
                     share = self._share(group, name) / self.impedance(group)
                     return times(share, self.across(start, end))
         if isinstance(part, CurrentLaw):
@@ -327,7 +388,7 @@ class Frame:
             if kind == "v" and rest in self.network and self.electric(name.name) is not None:
                 return self.difference(*self._terminals(rest))
             for start, group, end in self.groups if kind == "i" else ():
-                if isinstance(group, Leaf) and group.name == rest:
+                if isinstance(group, Leaf) and group.name == rest and rest not in self.coils:
                     return self.through(group, self.difference(start, end))
             return self.renamed(name)
 
