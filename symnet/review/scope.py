@@ -120,7 +120,7 @@ class Scope:
             return algebra.generator("s")
         if name == GROUND or name in self.network.nodes:
             return self.voltage(name)
-        if name in self.network.symbols():
+        if name in self.network.symbols() or solution.naming.knows(name):  # such as M_k of a coupling by k
             return solution.worth(name)
         kind, _, rest = name.partition("_")
         if kind == "v" and rest:
@@ -160,6 +160,8 @@ class Scope:
                 return algebra.generator(generator_of(("i", name)))
             case CurrentLaw():
                 return self.in_network(part.value)
+            case Branch() if any(name in (c.first, c.second) for c in network.couplings):
+                return algebra.generator(generator_of(("i", name)))
             case Branch(kind="Y"):
                 return self.solution.worth(name) * self.between(*part.nodes)
             case Branch(kind="C"):
@@ -246,6 +248,7 @@ class Rounded:
 def name_faults(network: Network, working: Working) -> Iterator[Fault]:
     """Every name of a working that means nothing, or that is introduced although it means something already."""
     own = {*network.nodes, *network.electric_names(), *network.symbols(), *network.drive_names, "s"}
+    own |= {coupling.mutual for coupling in network.couplings}
     known = set(own)
     for line in working:
         yield from _line_faults(line, known, network)

@@ -1,9 +1,9 @@
 """The exact solution of a network: every voltage and current as a polynomial over one common denominator.
 
-The unknowns are the node voltages and the currents that no voltage gives: those of drives, voltage laws and op
-amps. With the drives as inputs X, each is N/D with N linear in the X and the same D, the determinant of the
-network (:mod:`symnet.exact.derive`). An equation between unknowns is homogeneous in the X degree by degree, so
-that it holds exactly when each part of equal degree vanishes with the unknowns replaced by their N: no division,
+The unknowns are the node voltages and the currents that no voltage gives: those of drives, voltage laws, op amps
+and coupled coils. With the drives as inputs X, each is N/D with N linear in the X and the same D, the determinant
+of the network (:mod:`symnet.exact.derive`). An equation between unknowns is homogeneous in the X degree by degree,
+so that it holds exactly when each part of equal degree vanishes with the unknowns replaced by their N: no division,
 and D itself is needed only where parts of different degree must be told apart.
 
 The N come from one determinant, bordered by a row in which every unknown has a symbol of its own; in long networks
@@ -146,6 +146,8 @@ class Solution(Substitution):
         named = tuple(zip(network.drive_names, network.drives, strict=True))
         unknowns += [("i" if isinstance(drive, VoltageDrive) else "x", name) for name, drive in named]
         unknowns += [("i", part.name) for part in network.parts if isinstance(part, VoltageLaw | OpAmp)]
+        coils = dict.fromkeys(coil for c in network.couplings for coil in (c.first, c.second))
+        unknowns += [("i", coil) for coil in coils]
         inputs = [f"drive:{name}" for name, _ in named] if len(named) > 1 else []
         unused = [name for name in network.symbols() if not naming.knows(name)]
         names = [*naming.generators.names, "pi", *unused, *inputs, *map(generator_of, unknowns)]
