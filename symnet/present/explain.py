@@ -106,10 +106,10 @@ def explain(
 ) -> Explanation:
     """The derivation of H as a person would write it: node equations, substitutions, terms grouped, H.
 
-    ``read`` and ``drive`` choose as in :func:`symnet.derive`; other drives are at zero. ``detail="full"`` writes every substitution,
-    ``"outline"`` only the equations of the network and what each voltage comes to; without it the derivation is
-    full where that can still be read. Voltages are eliminated one by one, from the output backwards where the
-    network allows it.
+    ``read`` and ``drive`` choose as in :func:`symnet.derive`; other drives are at zero. ``detail="full"`` writes
+    every substitution, ``"outline"`` only the equations of the network and what each voltage comes to; without it
+    the derivation is full where that can still be read. Voltages are eliminated one by one, from the output
+    backwards where the network allows it.
 
     Every line is held to the exact solution of the network, and the last one to H, before anything is returned.
 

@@ -86,8 +86,10 @@ UNKNOWN_TO_THE_TABLEAU = {
     "section drawn once",
 }
 
-#: The checker takes one equation for two nodes at once, and the voltage along a coupled coil, for a step of its own.
+#: The checker takes one equation for two nodes at once, the voltage along a coupled coil, and a
+#: series whose nameless node it has to eliminate under tied values, for steps of their own.
 JUMPING = {
+    "zobel",
     "floating source",
     "drive between two nodes",
     "coupled coils",
