@@ -16,6 +16,8 @@ from symnet.present.blocks import (
     Heading,
     Items,
     Paragraph,
+    Row,
+    Steps,
     Table,
     Typed,
     without_empty_columns,
@@ -168,3 +170,35 @@ def test_typed_text_cannot_close_its_fence() -> None:
     shown = writers.markdown((Typed("# ``` end\nin -- R1"),))
     assert shown.splitlines()[0] == "````text"
     assert shown.splitlines()[-1] == "````"
+
+
+STEPS = Steps(
+    (
+        Row(Quotient(Atom("a"), Atom("R1")), Product((Atom("s"), Atom("out"))), "node a", "in = out"),
+        Row(Atom("a"), Atom("out"), "so"),
+        Row(None, Product((Atom("R1"), Atom("out"))), reason="a<b put in"),
+    )
+)
+
+
+def test_steps_have_their_equals_signs_below_each_other() -> None:
+    assert writers.text((STEPS,)) == (
+        "node a  a/R1 = s*out   (in = out)\nso      a    = out\n             = R1*out   (a<b put in)"
+    )
+
+
+def test_steps_in_latex_and_markdown() -> None:
+    rows = (
+        "\\text{node a}\\quad \\frac{a}{R_{1}} &= s \\, \\mathrm{out} && \\text{in = out} \\\\\n"
+        "\\text{so}\\quad a &= \\mathrm{out} \\\\\n"
+        " &= R_{1} \\, \\mathrm{out} && \\text{a\\textless{}b put in}"
+    )
+    assert writers.latex((STEPS,)) == f"\\begin{{align*}}\n{rows}\n\\end{{align*}}"
+    assert writers.markdown((STEPS,)) == f"$$\n\\begin{{aligned}}\n{rows}\n\\end{{aligned}}\n$$"
+
+
+def test_steps_in_html_are_escaped_and_in_columns() -> None:
+    shown = writers.html((STEPS,))
+    assert shown.count("<tr>") == 3
+    assert "a&lt;b put in" in shown
+    assert shown.count("<mo>=</mo>") == 3

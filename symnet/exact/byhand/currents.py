@@ -25,7 +25,8 @@ from symnet.circuit.parts import (
     class_letter,
 )
 from symnet.circuit.series import Group, Leaf
-from symnet.exact.byhand.frame import Form, Frame, add, times
+from symnet.exact.byhand.forms import Form, add, times
+from symnet.exact.byhand.frame import Frame
 from symnet.exact.byhand.writing import difference
 from symnet.expressions import Expression, Name, substitute
 

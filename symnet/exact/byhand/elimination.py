@@ -21,7 +21,8 @@ from typing import TYPE_CHECKING, Final, TypeAlias
 
 from symnet.errors import Fault, LimitError, SingularError
 from symnet.exact.byhand.currents import Equation, node_equations
-from symnet.exact.byhand.frame import Form, Frame, add, times
+from symnet.exact.byhand.forms import Form, add, times
+from symnet.exact.byhand.frame import Frame
 from symnet.exact.modular import PRIME
 from symnet.exact.polynomials import modulo
 

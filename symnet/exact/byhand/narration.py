@@ -15,7 +15,8 @@ from symnet.circuit.parts import GROUND
 from symnet.circuit.spelling import write_expression
 from symnet.exact.byhand.currents import Equation, Link, Term
 from symnet.exact.byhand.elimination import Carried, Elimination, Solved, Updated
-from symnet.exact.byhand.frame import Form, Frame, add, times
+from symnet.exact.byhand.forms import Form, add, times
+from symnet.exact.byhand.frame import Frame
 from symnet.exact.byhand.writing import coefficient, combination, expression_of, factors_of, over
 from symnet.exact.readable.forms import readable_transfer
 from symnet.expressions import Expression, Name, Number, Parallel, Product, Sum, names_in, negative
