@@ -15,7 +15,7 @@ from dataclasses import dataclass, replace
 from fractions import Fraction
 
 from symnet.circuit.network import Network
-from symnet.circuit.parts import Branch, CurrentLaw, Drive, Part, Value, VoltageLaw
+from symnet.circuit.parts import Branch, Coupling, CurrentLaw, Drive, Part, Value, VoltageLaw
 from symnet.circuit.series import is_hidden
 from symnet.expressions import Expression, Name, Number, substitute
 
@@ -58,8 +58,8 @@ class Revalued:
 class Changes:
     """The differences between two drawings, in the order of writing; false when there is none.
 
-    ``renamed`` are pairs of node names; ``moved`` names the nodes as each drawing does. ``drives`` and ``reads``
-    are those of only one drawing: (gone, new).
+    ``renamed`` are pairs of node names; ``moved`` names the nodes as each drawing does. ``drives``, ``reads``
+    and ``couplings`` are those of only one drawing: (gone, new).
     """
 
     added: tuple[Part, ...] = ()
@@ -71,10 +71,11 @@ class Changes:
     renamed: tuple[tuple[str, str], ...] = ()
     drives: tuple[tuple[Drive, ...], tuple[Drive, ...]] = ((), ())
     reads: tuple[tuple[Expression, ...], tuple[Expression, ...]] = ((), ())
+    couplings: tuple[tuple[Coupling, ...], tuple[Coupling, ...]] = ((), ())
 
     def __bool__(self) -> bool:
         lists = (self.added, self.removed, self.moved, self.relaid, self.values, self.renamed)
-        return any(lists) or any(self.drives) or any(self.reads)
+        return any(lists) or any(self.drives) or any(self.reads) or any(self.couplings)
 
 
 def changes(before: Network, after: Network) -> Changes:
@@ -113,6 +114,10 @@ def changes(before: Network, after: Network) -> Changes:
         (
             tuple(r for r, known in zip(before.reads, old_reads, strict=True) if known not in after.reads),
             tuple(read for read in after.reads if read not in old_reads),
+        ),
+        (
+            tuple(each for each in before.couplings if each not in after.couplings),
+            tuple(each for each in after.couplings if each not in before.couplings),
         ),
     )
 
@@ -213,7 +218,8 @@ def _reads_renamed(expression: Expression, renamed: Mapping[str, str]) -> Expres
 def _values(before: Network, after: Network) -> Iterator[Revalued]:
     old, new = dict(before.values), dict(after.values)
     parts_before = {part.name for part in before.parts}
-    one_sided = parts_before ^ {part.name for part in after.parts}
+    parts_before |= {each.name for each in before.couplings}
+    one_sided = parts_before ^ {each.name for each in (*after.parts, *after.couplings)}
     for name in dict.fromkeys([*old, *new]):
         if name not in one_sided and old.get(name) != new.get(name):
             yield Revalued(name, old.get(name), new.get(name))

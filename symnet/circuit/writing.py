@@ -13,6 +13,7 @@ from typing import TYPE_CHECKING
 from symnet.circuit.parts import (
     GROUND,
     Branch,
+    Coupling,
     CurrentDrive,
     CurrentLaw,
     Drive,
@@ -34,11 +35,14 @@ if TYPE_CHECKING:
 
 __all__ = [
     "default_labels",
+    "in_hertz",
+    "write_coupling",
     "write_drive",
     "write_instance",
     "write_network",
     "write_part",
     "write_value",
+    "written_argument",
 ]
 
 _LONGEST_CHAIN = 6  # parts in one line
@@ -87,7 +91,12 @@ def _couplings(net: Drawing) -> Iterator[str]:
     placed = {coupling for instance in net.instances for coupling in instance.couplings()}
     for coupling in net.couplings:
         if coupling not in placed:
-            yield f"couple {coupling.first} to {coupling.second} with {coupling.name}"
+            yield write_coupling(coupling)
+
+
+def write_coupling(coupling: Coupling) -> str:
+    """A coupling as a statement; its value stands with the others."""
+    return f"couple {coupling.first} to {coupling.second} with {coupling.name}"
 
 
 def _sections(net: Drawing) -> Iterator[Section]:
@@ -125,12 +134,17 @@ def write_instance(instance: Instance) -> str:
     free = dict(instance.section.drawing.free)
     arguments = [f"{terminal}={node}" for terminal, node in instance.connections]
     for name, value in instance.arguments:
-        text = "" if value is None else _in_hertz(value) or write_value(name, value, free.get(name))
+        text = "" if value is None else written_argument(name, value, free.get(name))
         arguments.append(f"{name}={text}" if text else name)
     return f"{instance.name}: {instance.section.name}({', '.join(arguments)})"
 
 
-def _in_hertz(value: Value) -> str:
+def written_argument(name: str, value: Value, dimension: Dimension | None = None) -> str:
+    """The value of a section's parameter, a frequency in Hz where it was given so."""
+    return in_hertz(value) or write_value(name, value, dimension)
+
+
+def in_hertz(value: Value) -> str:
     """An angular frequency that was given in Hz, as it was given; empty for any other value."""
     if not isinstance(value.expression, Number) or value.expression.dimension != HERTZ:
         return ""

@@ -14,7 +14,7 @@ from symnet.circuit.names import dimensions
 from symnet.circuit.parts import CurrentLaw, Part, VoltageLaw
 from symnet.circuit.series import spoken
 from symnet.circuit.spelling import write_expression
-from symnet.circuit.writing import write_drive
+from symnet.circuit.writing import write_coupling, write_drive
 from symnet.exact.naming import Naming
 from symnet.expressions import Number
 from symnet.present.blocks import Block, Heading, Items, Line, Paragraph, Table, without_empty_columns
@@ -87,6 +87,8 @@ def _drawing(comparison: Comparison) -> Iterator[Block]:
         yield without_empty_columns(("name", "before", "after", "change"), rows)
     lines = [f"node {old} is now called {new}" for old, new in found.renamed]
     for word, texts in (
+        ("no longer", [write_coupling(each) for each in found.couplings[0]]),
+        ("new:", [write_coupling(each) for each in found.couplings[1]]),
         ("no longer", [write_drive(drive) for drive in found.drives[0]]),
         ("new:", [write_drive(drive) for drive in found.drives[1]]),
         ("no longer", [f"read {write_expression(read)}" for read in found.reads[0]]),

@@ -23,8 +23,10 @@ from symnet.circuit.parts import (
     VoltageLaw,
     dimension_of_class,
 )
+from symnet.circuit.sections import Instance
 from symnet.circuit.series import spoken
 from symnet.circuit.spelling import write_expression
+from symnet.circuit.writing import in_hertz, written_argument
 from symnet.expressions import Expression, Name, Number, dimension_of, names_in
 from symnet.present.blocks import Block, Heading, Items, Line, Table, Typed
 from symnet.present.formulas import amount
@@ -52,7 +54,8 @@ def network_blocks(network: Network, numbers: Mapping[str, Fraction]) -> tuple[B
 def parts_table(network: Network, numbers: Mapping[str, Fraction]) -> Table:
     """One row for each part: name, what it is, where it lies, value, tolerance."""
     shown = network.parts[:MOST_PARTS]
-    rows = [
+    rows = [_section_row(instance) for instance in network.instances[:MOST_PARTS]]
+    rows += [
         (part.name, _kind(part), _where(part), _worth(network, part, numbers), _tolerance(network, part.name))
         for part in shown
     ]
@@ -74,6 +77,19 @@ def parts_table(network: Network, numbers: Mapping[str, Fraction]) -> Table:
     ]
     header = ("part", "what it is", "from, to", "value", "tolerance")
     return Table(header, tuple(rows), len(network.parts) - len(shown))
+
+
+def _section_row(instance: Instance) -> tuple[Line, ...]:
+    """A section in its place: what it is called, where it is connected, what it was given."""
+    free = dict(instance.section.drawing.free)
+    given = ", ".join(
+        f"{name} = {written_argument(name, value, free.get(name))}"
+        if value is not None
+        else f"{name}, a symbol"
+        for name, value in instance.arguments
+    )
+    where = ", ".join(f"{terminal} {_place(node)}" for terminal, node in instance.connections)
+    return (instance.name, f"section {instance.section.name}", where, given, "")
 
 
 def _kind(part: Part) -> str:
@@ -139,7 +155,10 @@ def notes(network: Network) -> Iterator[Line]:
     for read in network.reads:
         yield f"read: {write_expression(read)}{_read_note(network, read)}."
     known = dimensions(network)
+    own = {name for instance in network.instances for name in instance.parameters()}
     for name in free_symbols(network):
+        if name in own:
+            continue
         dimension = known.get(name)
         unit = (
             "its dimension is open"
@@ -149,6 +168,17 @@ def notes(network: Network) -> Iterator[Line]:
             else "a number"
         )
         yield f"{name} is a free symbol ({unit}): no part and no node has this name."
+    sources = {each.section.name: each.section.origin for each in network.instances}
+    yield from (
+        f"{name}: a section that ships with symnet; source: {source}." for name, source in sources.items()
+    )
+    for instance in network.instances:
+        for name, value in instance.arguments:
+            if value is not None and (hertz := in_hertz(value)):
+                yield (
+                    f"{instance.name}.{name} = {hertz} stands in H as the angular frequency 2 pi times as large, "
+                    "in rad/s, with pi to 40 digits."
+                )
     for each in network.couplings:
         pair = f"{each.first} and {each.second}"
         mutual = (

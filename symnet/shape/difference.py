@@ -104,7 +104,11 @@ def _in_short(comparison: Comparison) -> Iterator[str]:
     ):
         if names:
             yield f"{what} {', '.join(names[:8])}{' ...' * (len(names) > 8)}"
-    for what, (gone, new) in (("drives", found.drives), ("reads", found.reads)):
+    for what, (gone, new) in (
+        ("couplings", found.couplings),
+        ("drives", found.drives),
+        ("reads", found.reads),
+    ):
         if gone or new:
             yield f"{what} changed"
     same = {True: "H the same", False: "H changed", None: ""}[comparison.same_function]
