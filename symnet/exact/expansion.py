@@ -154,13 +154,17 @@ class Expansion:
         if number == 1 and not any(exponents):
             return self
         highest = [d + e for d, e in zip(self.degrees(), exponents, strict=True)]
-        fields = Fields.for_degrees(highest)
-        keys = np.zeros((fields.words, len(self)), dtype=np.int64)
-        for k, (word, shift, _) in enumerate(fields.places):
-            keys[word] += (self.exponents(k) + exponents[k]) << shift
-        coefficients = self.coefficients
-        if abs(number) != 1 or coefficients.dtype != np.int8:
-            coefficients = coefficients.astype(object)
+        fields = self.fields
+        if all(degree <= mask for degree, (_, _, mask) in zip(highest, fields.places, strict=True)):
+            keys = self.keys + fields.column(enumerate(exponents))
+        else:
+            fields = Fields.for_degrees(highest)
+            keys = np.zeros((fields.words, len(self)), dtype=np.int64)
+            for k, (word, shift, _) in enumerate(fields.places):
+                keys[word] += (self.exponents(k) + exponents[k]) << shift
+        if number == 1:
+            return Expansion(fields, keys, self.coefficients)
+        coefficients = self.coefficients if number == -1 else self.coefficients.astype(object)
         return Expansion(fields, keys, coefficients * number)
 
     def modulo(self, point: Sequence[int], prime: int) -> int:

@@ -1,7 +1,8 @@
 """Exact derivation against the best that general-purpose libraries offer, on the same work in one process.
 
 Run as ``python tests/speed/engine.py [rounds]``; python-flint is used where it is installed. Every figure is a
-ratio: the time of the other way divided by symnet's, fastest of the rounds, interleaved.
+ratio: the processor time of the other way divided by symnet's, fastest of the rounds, interleaved (each way
+works on one core, so that other work on the machine takes no share).
 
 The work: the denominator of H of a network whose parts all have different symbols, written out term by term.
 symnet starts from the network and ends with the terms in arrays, content taken out; the others start from a nodal
@@ -166,9 +167,9 @@ def table(rounds: int) -> str:
             for name, way in ways.items():
                 if name == "sympy ring minors" and turn:
                     continue  # seconds, not milliseconds: once is enough
-                start = time.perf_counter()
+                start = time.process_time()
                 terms[name] = way(net)
-                best[name] = min(best[name], time.perf_counter() - start)
+                best[name] = min(best[name], time.process_time() - start)
         assert len(set(terms.values())) == 1, f"{case}: the ways differ: {terms}"
         ratios = [f"{best[name] / best['symnet']:.1f} times" for name in list(ways)[1:]]
         cells = [case, str(terms["symnet"]), f"{1000 * best['symnet']:.1f}", *ratios]
