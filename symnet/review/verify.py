@@ -12,10 +12,11 @@ from symnet.errors import Fault, SymnetError
 from symnet.expressions import Name, Product
 from symnet.review.approximating import judge_approximation
 from symnet.review.checked import value_of
-from symnet.review.claims import gives_transfer, half_power_claim, judge_family, judge_half_power
 from symnet.review.coefficients import Comparison, compare_coefficients
 from symnet.review.completeness import completeness
+from symnet.review.families import judge_family
 from symnet.review.following import Follower
+from symnet.review.frequencies import gives_transfer, is_frequency_claim, judge_frequency
 from symnet.review.judge import Judge, Said
 from symnet.review.limiting import judge_limit
 from symnet.review.polarity import polarities
@@ -110,8 +111,8 @@ class _Stage:
     def judged(self, line: Line) -> Judgement:
         """The verdict on a line that is neither a definition nor an assumption."""
         match line.statement:
-            case Equation() as equation if half_power_claim(self.judge, equation):
-                judgement = judge_half_power(self.judge, line, equation)
+            case Equation() as equation if is_frequency_claim(self.judge, equation):
+                judgement = judge_frequency(self.judge, line, equation)
             case Equation() as equation:
                 return self._equation(line, equation)
             case Limit() as limit:
@@ -156,8 +157,8 @@ class _Stage:
         root, transfer = self.claimed
         try:
             match line.statement:
-                case Equation(of=None) as equation if half_power_claim(self.judge, equation):
-                    found = judge_half_power(self.judge, line, replace(equation, of=transfer))
+                case Equation(of=None) as equation if is_frequency_claim(self.judge, equation):
+                    found = judge_frequency(self.judge, line, replace(equation, of=transfer))
                 case Equation(of=None) as equation:
                     found = self.judge.alone(line, replace(equation, of=transfer))
                 case Family() as family:

@@ -224,6 +224,37 @@ def test_families() -> None:
     assert "C1 = 2*C2" in str(sn.verify(section, "given R2 = R1; H is butterworth 2"))
 
 
+THIRD = (
+    "in -- R1 -- a -- C1 -- gnd; a -- R2 -- b -- C2 -- gnd; b -- R3 -- out -- C3 -- gnd; drive in; read out"
+)
+
+
+def test_w0_above_order_2_is_the_geometric_mean_of_the_poles() -> None:
+    """w0^3 = a0/a3 = 1/(R1 R2 R3 C1 C2 C3) of three loaded sections."""
+    net = sn.network(THIRD)
+    assert sn.verify(net, "given R2 = R1, R3 = R1, C2 = 2*C1, C3 = 4*C1; w0 = 1/(2*R1*C1); tau = 2*R1*C1")
+    assert sn.verify(net, "given R2 = R1, R3 = R1, C2 = 2*C1, C3 = 4*C1; f0 = 1/(4*pi*R1*C1)")
+    assert not sn.verify(net, "given R2 = R1, R3 = R1; w0 = 1/(R1*C1)")
+    valued = net.with_values(R1="1k", R2="1k", R3="1k", C1="1n", C2="2n", C3="4n")
+    assert sn.verify(valued, "w0 = 500 krad/s; f0 = 79.58 kHz; tau = 2.00 us")
+    wrong = sn.verify(valued, "f0 = 159 kHz").judgements[0]
+    assert str(wrong) == "false; f0 is 79.577 kHz"
+
+
+def test_the_3_db_frequencies_of_a_band_pass_in_numbers() -> None:
+    """A parallel circuit with Q = 10 at 1 Mrad/s: f0 (sqrt(1 + 1/400) -+ 1/20)."""
+    net = sn.network(TANK + "; R1 = 10 k; L1 = 1 mH; C1 = 1 nF")
+    assert sn.verify(net, "f3dB = 151.4 kHz; f3dB = 167.3 kHz; w3dB = 951.2 krad/s")
+    assert not sn.verify(net, "f3dB = 159.2 kHz")
+    with pytest.raises(LimitError, match="relative to a peak"):
+        sn.verify(sn.network(TANK), "f3dB = 1/(2*pi*R1*C1)")
+
+
+def test_a_negative_frequency_is_none() -> None:
+    assert sn.verify(sn.network("in -- R1 -- o -- C1 -- gnd; drive in; read o"), "f3dB = 1/(2*pi*R1*C1)")
+    assert not sn.verify(sn.network("in -- R1 -- o -- C1 -- gnd; drive in; read o"), "f3dB = -1/(2*pi*R1*C1)")
+
+
 # -- what cannot be judged -----------------------------------------------------------------------------------------------
 
 
