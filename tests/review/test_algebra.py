@@ -63,7 +63,7 @@ def as_sympy(found: Value) -> Any:
     return polynomial(found.numerator) / polynomial(found.denominator)
 
 
-@settings(max_examples=50)
+@settings(max_examples=50, deadline=None)
 @given(expressions)
 def test_the_value_of_an_expression_is_that_of_sympy(expression: Expression) -> None:
     algebra = Algebra(NAMES)
@@ -74,7 +74,7 @@ def test_the_value_of_an_expression_is_that_of_sympy(expression: Expression) -> 
     assert sympy.cancel(sympy.together(as_sympy(found) - oracle(expression))) == 0
 
 
-@settings(max_examples=50)
+@settings(max_examples=50, deadline=None)
 @given(expressions, expressions)
 def test_a_difference_is_zero_exactly_when_the_values_are_equal(one: Expression, two: Expression) -> None:
     algebra = Algebra(NAMES)
