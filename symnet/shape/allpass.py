@@ -30,7 +30,9 @@ _DELAY: Final = "T, the group delay at DC, as the frequency 1/T"
 
 def is_all_pass(poles: Sequence[complex], zeros: Sequence[complex]) -> bool:
     """Whether every zero mirrors a pole, exactly or as nearly as parts of a per cent allow."""
-    return len(zeros) == len(poles) and 100 * _unmirrored(poles, zeros) <= ZEROS_PERCENT
+    if len(zeros) != len(poles) or min(z.real for z in zeros) < min(-p.real for p in poles) / 2:
+        return False  # zeros of a narrow band-stop are near to the mirrored poles too, but on the jw axis
+    return 100 * _unmirrored(poles, zeros) <= ZEROS_PERCENT
 
 
 def _unmirrored(poles: Sequence[complex], zeros: Sequence[complex]) -> float:

@@ -374,7 +374,9 @@ class _Batch:
         unit = np.linspace(0, 1, max(64, 12 * view.order) + 1)
         unit[0] = 1e-6  # DC itself is nowhere on the axis of a band-stop or a high-pass
         resonances = np.abs(view.low_poles.imag) / scale[:, None]  # narrow ones of H fall between the points
-        low = np.concatenate([unit * edges[:, None], np.minimum(resonances, edges[:, None])], axis=1)
+        low = np.concatenate(
+            [unit * edges[:, None], np.clip(resonances, 1e-6 * edges[:, None], edges[:, None])], axis=1
+        )
         w, rate = w_of(view, low * scale[:, None], centre[:, None])
         sides = w.shape[2] if w.ndim == 3 else 1
         w, rate = w.reshape(len(edges), -1), rate.reshape(len(edges), -1)

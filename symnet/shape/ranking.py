@@ -22,6 +22,7 @@ from symnet.shape.thresholds import (
     EXACT_RESPONSE,
     ROUNDING,
     SAME_SHAPE_PERCENT,
+    SIMPLER_POLES,
     SIMPLER_RATIO,
     SIMPLER_RESPONSE,
     TOLD_APART,
@@ -71,7 +72,7 @@ def _with_exactness(candidate: Candidate, view: View, ascending: Sequence[Fracti
     by_response = max(
         candidate.response_error_db, candidate.delay_error_percent, candidate.zero_error_percent
     )
-    if by_roots > EXACT_PERCENT and by_response > EXACT_RESPONSE:
+    if not (by_roots <= EXACT_PERCENT or by_response <= EXACT_RESPONSE):
         return candidate
     if not candidate.is_tested:
         return replace(candidate, exact="as any shape of that order and Q is")
@@ -120,6 +121,8 @@ def _stands_before(simpler: Candidate, other: Candidate) -> bool:
         return simpler.nearness <= AS_GOOD_AS_SIMPLER
     if other.nearness <= TOLD_APART:
         return simpler.nearness <= SIMPLER_RATIO * other.nearness
+    if other.freedom > 1 and simpler.pole_error_percent > SIMPLER_POLES * other.pole_error_percent:
+        return False
     if simpler.meets_response and simpler.response <= SIMPLER_RESPONSE:
         return True
     shrink = math.sqrt(simpler.freedom / other.freedom)

@@ -67,7 +67,7 @@ def recognise(
         When every value is known: the verdict, the candidates by growing response error, their frequencies in
         rad/s and Hz, and their distances (:class:`Candidate` defines them). The words: "exactly" when the
         coefficients satisfy the family's equations in exact arithmetic or the poles agree within 1e-9; "nearest"
-        when H agrees in response (0.1 dB and 3 % of the group delay over the pass band) or in its poles (5 %, and
+        when H agrees in response (0.1 dB and 3 % of the group delay over the pass band, poles within 30 %) or in its poles (5 %, and
         0.5 dB in response; or 2 % alone), and in its finite zeros (5 %); else "none of these". Order 1 has one
         shape only and is called first order; order 2 is a matter of Q. Bands: low-pass, high-pass, band-pass,
         band-stop, all-pass; shelves and peaks are told by their levels and corners.

@@ -29,6 +29,7 @@ from symnet.shape.families.prototype import (
 from symnet.shape.pairing import paired
 from symnet.shape.thresholds import (
     DELAY_PERCENT,
+    FARTHEST_POLES_PERCENT,
     NORMALISED_WITHIN,
     POLES_ALONE_PERCENT,
     POLES_PERCENT,
@@ -72,7 +73,8 @@ class Candidate:
     def meets_response(self) -> bool:
         """Whether the pass band agrees: |H| and group delay, of an all-pass the delay; and the finite zeros."""
         in_level = self.prototype.band == ALL_PASS or self.response_error_db <= RESPONSE_DB
-        return in_level and self.delay_error_percent <= DELAY_PERCENT and self._meets_zeros
+        near = self.delay_error_percent <= DELAY_PERCENT and self.pole_error_percent <= FARTHEST_POLES_PERCENT
+        return in_level and near and self._meets_zeros
 
     @property
     def meets_poles(self) -> bool:
@@ -334,7 +336,11 @@ def _distances(candidate: Candidate) -> list[tuple[str, str]]:
     ends[BAND_STOP] = "outside its -3.0103 dB edges"
     band = f"over the pass band {ends.get(p.band, 'up to -3.0103 dB')}"
     met = "met" if candidate.meets_response else "not met"
-    limits = f"limits {RESPONSE_DB} dB and {DELAY_PERCENT:g} % of delay" if p.band != ALL_PASS else ""
+    limits = (
+        f"limits {RESPONSE_DB} dB and {DELAY_PERCENT:g} % of delay, poles {FARTHEST_POLES_PERCENT:g} %"
+        if p.band != ALL_PASS
+        else ""
+    )
     limits = limits or f"limit {DELAY_PERCENT:g} %"
     found = []
     if p.band != ALL_PASS:

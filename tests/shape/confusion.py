@@ -173,5 +173,7 @@ def _print_random(count: int) -> None:
 
 if __name__ == "__main__":
     given = [int(a) for a in sys.argv[1:]]
-    _print_confusion(given[0] if given else 1000)
-    _print_random(given[1] if len(given) > 1 else 500)
+    if not given or given[0]:
+        _print_confusion(given[0] if given else 1000)
+    if len(given) < 2 or given[1]:
+        _print_random(given[1] if len(given) > 1 else 500)
