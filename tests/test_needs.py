@@ -607,3 +607,20 @@ class TestProbe:
         h = sn.derive(probed).numeric()
         assert h.num[0] / h.den[0] == pytest.approx(0.909, abs=5e-4)
         assert "added R_probe, C_probe" in repr(sn.compare(net, probed))
+
+
+class TestSwappedInputs:
+    """Ideal algebra cannot tell swapped inputs (N13): the brief warns of net positive feedback."""
+
+    INVERTING = "in -- R1 -- m -- R2 -- out; U1: opamp(plus={}, minus={}, out=out); drive in; read out"
+
+    def test_the_same_h_and_one_warning(self) -> None:
+        right, wrong = (sn.network(self.INVERTING.format(*ends)) for ends in (("gnd", "m"), ("m", "gnd")))
+        assert sn.derive(right) == sn.derive(wrong)
+        assert "net positive" not in str(sn.brief(right))
+        assert "WARNING: the feedback of U1 is net positive" in " ".join(str(sn.brief(wrong)).split())
+
+    def test_a_real_gain_shows_the_pole(self) -> None:
+        """R2 wt/(s (R1 + R2) - R1 wt): a pole in the right half plane."""
+        real = self.INVERTING.replace("out=out", "out=out, gbw=wt").format("m", "gnd")
+        assert_same_function(derive(real), "R2*wt/(s*(R1 + R2) - R1*wt)")

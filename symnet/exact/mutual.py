@@ -14,7 +14,7 @@ from fractions import Fraction
 from math import isqrt
 from typing import TYPE_CHECKING, Final, TypeAlias
 
-from symnet.expressions import evaluate
+from symnet.expressions import Expression, Name, Number, Power, Product, evaluate
 
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement
@@ -22,7 +22,7 @@ if TYPE_CHECKING:
     from symnet.circuit.network import Network
     from symnet.circuit.parts import Coupling
 
-__all__ = ["coefficients", "root", "squared_mutuals"]
+__all__ = ["coefficients", "rational_mutuals", "root", "squared_mutuals"]
 
 DIGITS: Final = 60
 
@@ -38,6 +38,56 @@ def squared_mutuals(network: Network) -> Iterator[tuple[Coupling, Fraction]]:
             if None not in worth:
                 k, one, two = (Fraction(value or 0) for value in worth)
                 yield coupling, abs(k) * k * one * two
+
+
+def rational_mutuals(network: Network) -> Iterator[tuple[Coupling, Expression]]:
+    """Each coupling given by a k between coils whose product is a square for all values, with its M.
+
+    Coils that are one inductance (``L2 = L1``) or a square apart (``L2 = n^2*L1``), as windings are.
+    """
+    for coupling in network.couplings:
+        if coupling.is_coefficient:
+            ends = [_followed(network, coil) for coil in (coupling.first, coupling.second)]
+            for one, other in (ends, ends[::-1]):
+                turns = _square_root_of_ratio(network, one, other)
+                if turns is not None:
+                    yield coupling, Product(((1, Name(coupling.name)), *turns, (1, Name(one))))
+                    break
+
+
+def _followed(network: Network, name: str) -> str:
+    """The name that a name is tied to, if it is tied to nothing but a name."""
+    seen = {name}
+    while (value := network.value(name)) is not None and isinstance(value.expression, Name):
+        name = value.expression.name
+        if name in seen:  # ties in a circle are told elsewhere
+            break
+        seen.add(name)
+    return name
+
+
+def _square_root_of_ratio(
+    network: Network, one: str, other: str
+) -> tuple[tuple[int, Expression], ...] | None:
+    """The root of other/one as factors, where ``other`` is the same name or a square times it."""
+    if one == other:
+        return ()
+    value = network.value(other)
+    if value is None or not isinstance(value.expression, Product):
+        return None
+    found: list[tuple[int, Expression]] = []
+    bare = 0
+    for power, factor in value.expression.factors:
+        match factor:
+            case Name(name=name) if power > 0 and _followed(network, name) == one:
+                bare += 1
+            case Power(base=base, exponent=exponent) if exponent % 2 == 0:
+                found.append((power, Power(base, exponent // 2)))
+            case Number(value=number) if number > 0 and root(number) ** 2 == number:
+                found.append((power, Number(root(number))))
+            case _:
+                return None
+    return tuple(found) if bare == 1 else None
 
 
 def _worth(network: Network, name: str) -> Fraction | None:

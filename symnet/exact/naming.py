@@ -22,7 +22,7 @@ from symnet.circuit.network import Network
 from symnet.circuit.parts import Branch
 from symnet.errors import Fault, NotationError, SingularError
 from symnet.exact.linear import fraction_of
-from symnet.exact.mutual import root, squared_mutuals
+from symnet.exact.mutual import rational_mutuals, root, squared_mutuals
 from symnet.exact.polynomials import ONE, Generators, Terms, sparse_terms
 from symnet.expressions import Expression, Name, Number, evaluate, names_in
 from symnet.quantities import HENRY, SECOND, Dimension
@@ -120,6 +120,7 @@ class Naming:
                 ties[name] = value.expression
             else:
                 numbers[name] = _number(name, value.expression)
+        ties |= {coupling.mutual: value for coupling, value in rational_mutuals(network)}
         if symbols is not None:
             ties |= {n: Number(v) for n, v in numbers.items() if n not in symbols}
             numbers = {n: v for n, v in numbers.items() if n in symbols}
@@ -147,7 +148,7 @@ class Naming:
                         appear(inner.name)
         for coupling in network.couplings:
             appear(coupling.mutual)
-        numbers |= _mutual(network)
+        numbers |= {name: number for name, number in _mutual(network).items() if name not in ties}
         for read in network.reads:
             for inner in names_in(read):
                 if inner.name not in electric:
@@ -196,7 +197,11 @@ class Naming:
     def irrational(self) -> Mapping[str, Fraction]:
         """The square, with the sign of the root, of each mutual inductance that is no fraction."""
         found = {coupling.mutual: square for coupling, square in squared_mutuals(self._network)}
-        return {name: square for name, square in found.items() if root(square) ** 2 != abs(square)}
+        return {
+            name: square
+            for name, square in found.items()
+            if name in self.names and root(square) ** 2 != abs(square)
+        }
 
     def value(self, name: str) -> FracElement:
         """What a name stands for, as a fraction of ring elements."""

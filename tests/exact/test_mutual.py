@@ -104,3 +104,15 @@ def test_the_limit_at_high_frequency_is_said_from_h_alone() -> None:
     assert ends.dc.from_network is True
     assert ends.high.from_network is None
     assert "coupled coils" in ends.high.reason
+
+
+@pytest.mark.parametrize(
+    ("tie", "mutual"),
+    [("L2 = L1", "k*L1"), ("L2 = n^2*L1", "k*n*L1"), ("L2 = 4*L1", "2*k*L1"), ("L1 = L2/9", "k*L2/3")],
+)
+def test_windings_that_are_a_square_apart_have_a_rational_mutual_inductance(tie: str, mutual: str) -> None:
+    """M = k sqrt(L1 L2), which needs no root where L2/L1 is a square."""
+    with_k = sn.derive(sn.network(TWO.format("k") + f"; {tie}"))
+    with_m = sn.derive(sn.network(TWO.format("M") + f"; {tie}; M = {mutual}"))
+    assert with_k == with_m
+    assert not any(name.startswith("M") for name in with_k.names)

@@ -8,6 +8,7 @@ from random import Random
 
 import symnet as sn
 from symnet.circuit.reading import read_expression
+from symnet.exact.ports.figures import Parameter
 from symnet.exact.ratio import Ratio
 from symnet.exact.transfer import Transfer
 from symnet.expressions import evaluate
@@ -18,7 +19,7 @@ from tests.reference.cases import Case
 __all__ = ["assert_same_figure", "assert_same_function", "decibels", "numeric", "poles", "values_at"]
 
 
-def assert_same_function(H: Transfer, formula: str) -> None:
+def assert_same_function(H: Transfer | Parameter, formula: str) -> None:
     """H is the formula, exactly: by cross-multiplication in H's own ring, read by symnet and by the oracle."""
     field = H.ring.to_field()
     generators = dict(zip(map(str, H.ring.symbols), field.gens, strict=True))
@@ -50,7 +51,7 @@ def assert_same_figure(figure: Figure, formula: str, power: int = 1) -> None:
     )
 
 
-def values_at(H: Transfer, at: dict[str, Fraction]) -> tuple[Fraction, Fraction]:
+def values_at(H: Transfer | Parameter, at: dict[str, Fraction]) -> tuple[Fraction, Fraction]:
     """Numerator and denominator at a rational point, term by term."""
     names = list(map(str, H.ring.symbols))
     totals = []

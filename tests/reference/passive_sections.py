@@ -4,15 +4,9 @@ from __future__ import annotations
 
 from tests.reference.cases import Formula
 
-__all__ = ["CASES", "NOT_YET"]
+__all__ = ["CASES"]
 
 RECALLED = "textbook standard; formula recalled, proven here symbolically by nodal analysis"
-
-#: Published cases that this notation cannot draw yet, and why.
-NOT_YET = {
-    "xfmr-load": "needs an ideal transformer",
-    "double-tuned": "needs a coupling of two inductors",
-}
 
 CASES: tuple[Formula, ...] = (
     Formula(
@@ -217,5 +211,34 @@ CASES: tuple[Formula, ...] = (
             "D": "1 + Z/R1",
             "last": "Z",
         },
+    ),
+    Formula(
+        id="xfmr-load",
+        title="ideal transformer n:1 reflects its load: Zin = n^2 RL",
+        source=RECALLED,
+        from_memory=True,
+        text="""
+            T1: transformer(p1=in, p2=gnd, s1=a, s2=gnd, n=n)
+            a -- RL -- gnd
+            drive current into in
+            read in
+        """,
+        formula="n^2*RL",
+    ),
+    Formula(
+        id="double-tuned",
+        title="double-tuned circuit, equal LC, coupling k: poles at w0/sqrt(1 +- k)",
+        source=RECALLED,
+        from_memory=True,
+        text="""
+            in -- L1 || C1 -- gnd
+            out -- L2 || C2 -- gnd
+            couple L1 to L2 with k
+            drive current into in
+            read out
+            L1 = L;  L2 = L
+            C1 = C;  C2 = C
+        """,
+        formula="s*k*L/((1 + (1 + k)*s^2*L*C)*(1 + (1 - k)*s^2*L*C))",
     ),
 )

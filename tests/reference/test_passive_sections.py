@@ -7,7 +7,7 @@ import pytest
 import symnet as sn
 from tests.reference.cases import Formula
 from tests.reference.comparing import assert_same_function
-from tests.reference.passive_sections import CASES, NOT_YET
+from tests.reference.passive_sections import CASES
 
 BY_ID = {case.id: case for case in CASES}
 
@@ -15,11 +15,6 @@ BY_ID = {case.id: case for case in CASES}
 @pytest.mark.parametrize("case", CASES, ids=lambda case: case.id)
 def test_h_is_the_published_formula(case: Formula) -> None:
     assert_same_function(sn.derive(sn.network(case.text)), case.formula)
-
-
-def test_what_cannot_be_drawn_yet_is_named() -> None:
-    assert NOT_YET.keys().isdisjoint(BY_ID)
-    assert set(NOT_YET) == {"xfmr-load", "double-tuned"}
 
 
 @pytest.mark.parametrize("name", ["s21-series", "s21-shunt"])
@@ -45,3 +40,20 @@ def test_chain_matrix(name: str, letter: str, drive: str, shorted: bool) -> None
     read = f"i_{case.facts['last']}" if shorted else "out"
     H = sn.derive(sn.network(f"{text}\ndrive {drive}\nread {read}"))
     assert_same_function(H, f"1/({case.facts[letter]})")
+
+
+@pytest.mark.parametrize("name", ["tee-abcd", "pi-abcd"])
+def test_chain_matrix_at_once(name: str) -> None:
+    case = BY_ID[name]
+    matrix = sn.two_port(sn.network(case.text), "in", "out").chain()
+    for letter, entry in zip("ABCD", (each for row in matrix for each in row), strict=True):
+        assert_same_function(entry, case.facts[letter])
+
+
+@pytest.mark.parametrize("name", ["s21-series", "s21-shunt"])
+def test_scattering_at_once(name: str) -> None:
+    case = BY_ID[name]
+    network = sn.network(case.text)
+    ends = [part.name for part in network.branches() if part.name in {"Rs", "RL", "Rl", "Z0", "Zs", "Zl"}]
+    port = sn.two_port(network.without(*ends), case.facts["port"], "out")
+    assert_same_function(port.s("Z0")[0, 0], case.facts["S11"])

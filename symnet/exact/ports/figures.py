@@ -17,7 +17,7 @@ from symnet.typeset.tree import Tree
 from symnet.typeset.writing import to_text
 
 if TYPE_CHECKING:
-    from sympy.polys.rings import PolyElement
+    from sympy.polys.rings import PolyElement, PolyRing
 
 __all__ = ["Parameter", "Worth"]
 
@@ -46,6 +46,11 @@ class Parameter:
     ) -> Parameter:
         """The quotient of two polynomials, brought to lowest terms."""
         return cls(label, *lowest(top, bottom), dimension, worth)
+
+    @property
+    def ring(self) -> PolyRing:
+        """The ring of s and the names of the parts."""
+        return self.numerator.ring
 
     @property
     def tree(self) -> Tree:
