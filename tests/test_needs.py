@@ -618,7 +618,7 @@ class TestSwappedInputs:
         right, wrong = (sn.network(self.INVERTING.format(*ends)) for ends in (("gnd", "m"), ("m", "gnd")))
         assert sn.derive(right) == sn.derive(wrong)
         assert "net positive" not in str(sn.brief(right))
-        assert "WARNING: the feedback of U1 is net positive" in " ".join(str(sn.brief(wrong)).split())
+        assert "the feedback of U1 is net positive" in " ".join(str(sn.brief(wrong)).split())
 
     def test_a_real_gain_shows_the_pole(self) -> None:
         """R2 wt/(s (R1 + R2) - R1 wt): a pole in the right half plane."""

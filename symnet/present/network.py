@@ -27,7 +27,6 @@ from symnet.circuit.sections import Instance
 from symnet.circuit.series import spoken
 from symnet.circuit.spelling import write_expression
 from symnet.circuit.writing import in_hertz, written_argument
-from symnet.errors import SymnetError
 from symnet.expressions import Expression, Name, Number, dimension_of, names_in
 from symnet.present.blocks import Block, Heading, Items, Line, Table, Typed
 from symnet.present.formulas import amount
@@ -202,17 +201,6 @@ def notes(network: Network) -> Iterator[Line]:
             f"{', '.join(amplifiers)} {are}: no input current, no voltage between the inputs, no limit of gain or "
             "speed. An ideal op amp gives the same H with plus and minus exchanged: check them on the drawing."
         )
-        yield from (f"WARNING: {each}" for each in _wrong_feedback(network))
-
-
-def _wrong_feedback(network: Network) -> Iterator[str]:
-    """The op amps whose net feedback is positive, which their ideal H does not show."""
-    from symnet.review.polarity import polarities
-
-    try:
-        yield from (str(each) for each in polarities(network) if each.feedback == "positive")
-    except SymnetError:
-        return  # what keeps the network from being solved is said where it is derived
 
 
 def _read_note(network: Network, read: Expression) -> str:
