@@ -170,7 +170,9 @@ def notes(network: Network) -> Iterator[Line]:
         yield f"{name} is a free symbol ({unit}): no part and no node has this name."
     sources = {each.section.name: each.section.origin for each in network.instances}
     yield from (
-        f"{name}: a section that ships with symnet; source: {source}." for name, source in sources.items()
+        f"{name}: a section that ships with symnet; source: {source.removesuffix('.')}."
+        for name, source in sources.items()
+        if source and not source.startswith("common practice")
     )
     for instance in network.instances:
         for name, value in instance.arguments:

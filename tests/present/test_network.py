@@ -91,3 +91,23 @@ def test_notes(text: str, words: str) -> None:
 def test_blocks_begin_with_what_was_typed() -> None:
     net = sn.network("# a comment\nin -- R1 -- gnd\ndrive in; read in")
     assert "# a comment" in writers.text(network_blocks(net, {}))
+
+
+def test_sections_in_their_places_are_told_with_their_source_and_what_they_were_given() -> None:
+    net = sn.network("""
+        define rc(in, out; R, C = 10 nF)
+          in -- R -- out -- C -- gnd
+        done
+        A1: rc(in=in, out=a, R=2 kohm)
+        F1: unity_lowpass(in=a, out=b, R1, R2=10k, C1=1 nF, C2=2 nF)
+        U1: opamp(plus=b, minus=out, out=out, gbw=1 MHz)
+        drive in; read out
+    """)
+    rows = {row[0]: row for row in parts_table(net, Naming.of(net).numbers).rows}
+    assert rows["A1"][1:4] == ("section rc", "in in, out a", "R = 2 kohm")
+    assert rows["F1"][3] == "R1, a symbol, R2 = 10 kohm, C1 = 1 nF, C2 = 2 nF"
+    told = [str(note) for note in notes(net)]
+    assert [note for note in told if "ships with symnet" in note] == [
+        "unity_lowpass: a section that ships with symnet; source: R. P. Sallen, E. L. Key, 1955, with K = 1."
+    ]
+    assert any(note.startswith("U1.gbw = 1 MHz stands in H as the angular frequency") for note in told)
