@@ -29,7 +29,7 @@ from symnet.shape.families.prototype import BAND_PASS, HIGH_PASS, LOW_PASS
 from symnet.shape.frequencies import level_at_1, own_references
 from symnet.shape.ranking import candidates
 from symnet.shape.shelving import shelf
-from symnet.shape.thresholds import POLES_PERCENT, ZEROS_PERCENT
+from symnet.shape.thresholds import POLES_PERCENT, TOLD_APART, ZEROS_PERCENT
 from symnet.shape.undoing import View, views
 from symnet.shape.verdict import Candidate, Recognition, hertz
 
@@ -191,7 +191,12 @@ def _on_numbers(h: Ratio) -> Recognition:
     both_ends = len(zeros) == order and all(zeros)
     if both_ends and any(100 * abs(z.real) > ZEROS_PERCENT * abs(z) for z in zeros):
         return shelf(h, poles, zeros)
-    seen = [(view, _candidates(view, h)) for view in views(poles, zeros) if view.order <= LARGEST_ORDER]
+    seen = []
+    for view in views(poles, zeros):
+        if view.order <= LARGEST_ORDER:
+            seen.append((view, _candidates(view, h)))
+            if seen[-1][1] and seen[-1][1][0].nearness <= TOLD_APART:
+                break
     seen = [(view, found) for view, found in seen if found or (view.order == 1 and not len(view.low_zeros))]
     if not seen:
         return _without_family(poles, zeros)
