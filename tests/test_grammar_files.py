@@ -15,16 +15,18 @@ from symnet.errors import SymnetError
 from symnet.grammar_files import grammar_path, parser
 
 STARTS = ("statement", "value", "expression")
+GRAMMARS = {"network": STARTS, "working": ("line",)}
 
 
-def test_no_conflict(caplog: pytest.LogCaptureFixture) -> None:
+@pytest.mark.parametrize("name", GRAMMARS)
+def test_no_conflict(name: str, caplog: pytest.LogCaptureFixture) -> None:
     # lark resolves shift/reduce conflicts silently in favour of shifting, unless its log is read.
     level = logger.level
     logger.setLevel(logging.DEBUG)
     try:
         with caplog.at_level(logging.DEBUG, logger=logger.name):
             logger.propagate = True
-            Lark.open(str(grammar_path("network")), parser="lalr", start=list(STARTS), debug=True)
+            Lark.open(str(grammar_path(name)), parser="lalr", start=list(GRAMMARS[name]), debug=True)
     finally:
         logger.setLevel(level)
     assert not [record for record in caplog.records if "conflict" in record.getMessage().lower()]
@@ -43,8 +45,9 @@ def test_a_conflict_would_be_seen(caplog: pytest.LogCaptureFixture) -> None:
     assert [record for record in caplog.records if "conflict" in record.getMessage().lower()]
 
 
-def test_every_terminal_is_named() -> None:
-    names = {terminal.name for terminal in parser("network", *STARTS).terminals}
+@pytest.mark.parametrize("name", GRAMMARS)
+def test_every_terminal_is_named(name: str) -> None:
+    names = {terminal.name for terminal in parser(name, *GRAMMARS[name]).terminals}
     assert not [name for name in names if name.startswith("__") or not re.fullmatch(r"_?[A-Z]+", name)]
 
 

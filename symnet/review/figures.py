@@ -37,7 +37,12 @@ def figure(solution: Solution, transfer: Value, name: str) -> Value:
         raise LimitError(Fault(f"{name} is compared by itself only", f"write {name} = ..."))
     if order > 2 or (order == 1 and name in {"Q", "zeta"}):
         message = f"D has order {order}: {name} belongs to a section of order {'1 or 2' if name not in {'Q', 'zeta'} else '2'}"
-        raise UndefinedError(Fault(message, "say of which: Q of x/in = ..."))
+        hint = (
+            f"{name} = ... is compared alone"
+            if name in {"w0", "f0", "tau"}
+            else "say of which: Q of x/in = ..."
+        )
+        raise UndefinedError(Fault(message, hint))
     first, last = values[0], values[-1]
     w0 = first / last if order == 1 else (first / last).root()
     two = algebra.number(2)
