@@ -108,6 +108,15 @@ class _Stage:
             return replace(judgement, jump=self.follower.true(differences))
         return judgement
 
+    def up_to_the_claim(self) -> list[tuple[Line, Row]]:
+        """What was said, up to the last line that gives a quotient; all of it where none does."""
+        claims = [
+            k
+            for k, (line, _) in enumerate(self.said)
+            if isinstance(line.statement, Equation) and _is_transfer(line.statement)
+        ]
+        return self.said[: claims[-1] + 1] if claims else self.said
+
     def judged(self, line: Line) -> Judgement:
         """The verdict on a line that is neither a definition nor an assumption."""
         match line.statement:
@@ -215,6 +224,6 @@ class _Reviewer:
             self.network,
             self.working,
             tuple(judgements),
-            completeness(stage.follower.rows, stage.said),
+            completeness(stage.follower.rows, stage.up_to_the_claim()),
             tuple(p for p in polarities(self.network) if p.feedback != "negative"),
         )

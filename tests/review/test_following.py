@@ -118,6 +118,16 @@ def test_steps_that_follow_are_no_jumps() -> None:
     assert str(review.completeness) == "enough for line 4: 2 independent equations"
 
 
+def test_the_claim_is_the_last_quotient() -> None:
+    steps = (
+        "node x: (x - in)/R1 + s*C1*x + (x - o)/R2; node o: (o - x)/R2 + s*C2*o;"
+        + FINAL
+        + "; x = o*(1 + s*R2*C2)"
+    )
+    review = sn.verify(sn.network(LADDER), steps)
+    assert str(review.completeness) == "enough for line 3: 2 independent equations"
+
+
 def test_a_claim_by_itself_is_no_jump_and_has_no_completeness() -> None:
     review = sn.verify(sn.network(LADDER), FINAL)
     assert not review.judgements[0].jump
