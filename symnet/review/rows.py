@@ -94,7 +94,7 @@ class Rows:
 
     @cached_property
     def equations(self) -> tuple[NetworkRow, ...]:
-        """The current law at every node and the law of every op amp and voltage law."""
+        """The current law at every node and the law of every op amp, voltage law and coupled coil."""
         network, scope = self.scope.network, self.scope
         carriers: set[str] = set()
         for drive in network.drives:
@@ -115,7 +115,21 @@ class Rows:
                 value = scope.between(part.plus, part.minus) - scope.in_network(part.value)
                 names = {part.plus, part.minus, *(name.name for name in names_in(part.value))}
                 found.append(NetworkRow("law", part.name, value, frozenset(names)))
-        return tuple(found)
+        coils = dict.fromkeys(coil for each in network.couplings for coil in (each.first, each.second))
+        return (*found, *(self._along(coil) for coil in coils))
+
+    def _along(self, coil: str) -> NetworkRow:
+        """The law of a coupled coil: its voltage by its own current and those of its partners."""
+        scope, part = self.scope, self.scope.network[coil]
+        s = scope.solution.algebra.generator("s")
+        value = scope.between(*part.nodes[:2]) - s * scope.solution.worth(coil) * scope.current(coil)
+        names = {coil, *part.nodes}
+        for each in scope.network.couplings:
+            if coil in {each.first, each.second}:
+                other = each.second if coil == each.first else each.first
+                value = value - s * scope.solution.worth(each.mutual) * scope.current(other)
+                names |= {other, each.mutual}
+        return NetworkRow("law", coil, value, frozenset(names))
 
     def _leaving(self, node: str) -> tuple[Value, frozenset[str]]:
         """The sum of the currents that leave a node, and the names in it."""
