@@ -16,17 +16,16 @@ from symnet.errors import Fault, LimitError, SymnetError
 from symnet.exact.derive import derive_all
 from symnet.exact.limits import limits
 from symnet.exact.transfer import Transfer
-from symnet.present import writers
 from symnet.present.blocks import Block, Heading, Items, Paragraph
 from symnet.present.conventions import conventions
 from symnet.present.network import network_blocks
+from symnet.present.page import Page
 from symnet.present.recognition import recognition_blocks
 from symnet.present.response import response_blocks
 from symnet.present.results import conditions_blocks, limits_table, transfer_blocks
 from symnet.present.shapes import normal_blocks, sections_blocks
 from symnet.quantities import NUMBER
 from symnet.review.polarity import polarities
-from symnet.typeset.displayed import Displayed
 
 __all__ = ["Brief", "brief"]
 
@@ -35,7 +34,7 @@ HIGHEST_ORDER: Final = 100
 
 
 @dataclass(frozen=True, slots=True, repr=False)
-class Brief(Displayed):
+class Brief(Page):
     """What there is to say about a network, ready to be read; made by :func:`brief`.
 
     ``str()`` and :meth:`to_text` give plain text, :meth:`to_markdown`, :meth:`to_html` and :meth:`to_latex` the
@@ -45,25 +44,6 @@ class Brief(Displayed):
     network: Network
     transfers: tuple[Transfer, ...]
     blocks: tuple[Block, ...] = field(compare=False)
-
-    def to_text(self) -> str:
-        """Plain text, without a final line end."""
-        return writers.text(self.blocks)
-
-    def to_markdown(self) -> str:
-        """Markdown with LaTeX formulas between dollar signs."""
-        return writers.markdown(self.blocks)
-
-    def to_html(self) -> str:
-        """A piece of HTML with MathML formulas and without scripts."""
-        return writers.html(self.blocks)
-
-    def to_latex(self) -> str:
-        """The body of a LaTeX document that loads amsmath and longtable."""
-        return writers.latex(self.blocks)
-
-    def __str__(self) -> str:
-        return self.to_text()
 
     def __repr__(self) -> str:
         labels = ", ".join(transfer.label for transfer in self.transfers)

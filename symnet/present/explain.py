@@ -20,9 +20,8 @@ from symnet.exact.derive import derive
 from symnet.exact.determinant import count_in_words
 from symnet.exact.transfer import Transfer
 from symnet.expressions import Name
-from symnet.present import writers
 from symnet.present.blocks import Block, Heading, Paragraph, Row, Steps
-from symnet.typeset.displayed import Displayed
+from symnet.present.page import Page
 from symnet.typeset.notation import tree_of
 
 __all__ = ["Detail", "Explanation", "explain"]
@@ -38,7 +37,7 @@ _IN_OUTLINE: Final = frozenset({"given", "let", "law", "node", "result", "final"
 
 
 @dataclass(frozen=True, slots=True, repr=False)
-class Explanation(Displayed):
+class Explanation(Page):
     """A derivation of H, line by line; made by :func:`explain`.
 
     ``steps`` are its equations, each ``left = right`` with a label and a reason; the last is H, in the form in
@@ -75,25 +74,6 @@ class Explanation(Displayed):
     def to_working(self) -> str:
         """The lines in the notation of hand derivations, one a line, reasons behind ``#``."""
         return "\n".join(map(_working_line, self.steps))
-
-    def to_text(self) -> str:
-        """Plain text, without a final line end."""
-        return writers.text(self.blocks)
-
-    def to_markdown(self) -> str:
-        """Markdown with LaTeX formulas between dollar signs."""
-        return writers.markdown(self.blocks)
-
-    def to_html(self) -> str:
-        """A piece of HTML with MathML formulas and without scripts."""
-        return writers.html(self.blocks)
-
-    def to_latex(self) -> str:
-        """The body of a LaTeX document that loads amsmath."""
-        return writers.latex(self.blocks)
-
-    def __str__(self) -> str:
-        return self.to_text()
 
     def __repr__(self) -> str:
         return (
