@@ -84,6 +84,8 @@ UNKNOWN_TO_THE_TABLEAU = {
     "transformer",
     "op amp with a gain",
     "section drawn once",
+    "xfmr-load",
+    "double-tuned",
 }
 
 #: The checker takes one equation for two nodes at once, the voltage along a coupled coil, and a
@@ -96,6 +98,7 @@ JUMPING = {
     "coupled by k",
     "tapped coil",
     "coil in a series",
+    "double-tuned",
 }
 
 
