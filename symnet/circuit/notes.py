@@ -41,7 +41,25 @@ def notes(net: Drawing) -> tuple[str, ...]:
     >>> notes(read_drawing("in -- R1 = 1k -- out -- C1 = 0.1 -- gnd; drive in; read out"))
     ('C1 = 100 mF is much for a capacitor; did you mean 0.1 uF?',)
     """
-    return (*_values(net), *_nodes(net))
+    return (*_values(net), *_couplings(net), *_nodes(net))
+
+
+def _couplings(net: Drawing) -> list[str]:
+    """Couplings with a negative sign, which the drawing would rather show by its dots; a perfect one."""
+    found: list[str] = []
+    for each in net.couplings:
+        value = net.value(each.name)
+        if value is None or not isinstance(value.expression, Number):
+            continue
+        number, pair = value.expression.value, f"{each.first} and {each.second}"
+        if number < 0:
+            found.append(
+                f"{each.name} is negative: the dots of {pair} are reversed against the direction of their chains; "
+                f"write {each.second} the other way round to draw it so"
+            )
+        if each.is_coefficient and abs(number) == 1:
+            found.append(f"{pair} are coupled perfectly ({each.name} = {number}): the order is lower by one")
+    return found
 
 
 def _values(net: Drawing) -> list[str]:

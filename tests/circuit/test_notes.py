@@ -102,3 +102,11 @@ class TestNodes:
 )
 def test_codes(code: str, name: str, note: str) -> None:
     assert code_note(code, name) == note
+
+
+def test_reversed_dots_and_perfect_coupling_are_told() -> None:
+    text = "a -- R1 -- b -- L1 -- gnd; c -- L2 -- gnd; c -- R2 -- gnd; drive a; read c; couple L1 to L2 with k = {}"
+    reversed_, perfect = notes(read_network(text.format("-0.5"))), notes(read_network(text.format("1")))
+    assert any(note.startswith("k is negative: the dots of L1 and L2 are reversed") for note in reversed_)
+    assert "L1 and L2 are coupled perfectly (k = 1): the order is lower by one" in perfect
+    assert not any("coupled" in note or "dots" in note for note in notes(read_network(text.format("0.5"))))
