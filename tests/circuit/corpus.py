@@ -253,4 +253,88 @@ read out
 R1 = 3 kohm
 C1 = 1 F/3000000000""",
     ),
+    (
+        """\
+define rc(in, out; R, C = 10 nF)
+  in -- R -- out; out -- C -- gnd
+done
+A1: rc(in=in, out=a, R=2 kohm)
+A2: rc(in=a, out=out, R=A1.R, C)
+drive in; read out""",
+        """\
+define rc(in, out; R, C = 10 nF)
+  in -- R -- out -- C -- gnd
+done
+A1: rc(in=in, out=a, R=2 kohm)
+A2: rc(in=a, out=out, R=A1.R, C)
+drive in
+read out""",
+    ),
+    (
+        """\
+define tap(1, 2; k = 0.9)
+  1 -- L1 -- gnd; 2 -- L2 -- gnd
+  couple L1 to L2 with k
+done
+define two(p, q; Ra)
+  T: tap(1=p, 2=m)
+  m -- R1 = Ra -- q
+done
+X1: two(p=in, q=out, Ra=50 ohm ±1%)
+out -- RL -- gnd
+drive in; read out""",
+        """\
+define tap(1, 2; k = 0.9)
+  1 -- L1 -- gnd
+  2 -- L2 -- gnd
+  couple L1 to L2 with k
+done
+define two(p, q; Ra)
+  T: tap(1=p, 2=m)
+  m -- R1 -- q
+  R1 = Ra
+done
+X1: two(p=in, q=out, Ra=50 ohm ±1%)
+out -- RL -- gnd
+drive in
+read out""",
+    ),
+    (
+        """\
+in -- R1 -- m -- R2 -- out
+U1: opamp(plus=gnd, minus=m, out=out, gain=1e5, gbw=1 MHz, Rout=75 ohm)
+drive in; read out""",
+        """\
+in -- R1 -- m -- R2 -- out
+U1: opamp(plus=gnd, minus=m, out=out, gain=100000, gbw=1 MHz, Rout=75 ohm)
+drive in
+read out""",
+    ),
+    (
+        """\
+in -- R1 -- a -- L1 -- gnd; out -- L2 || RL -- gnd
+couple L1 to L2 with M = 0.5 mH ±5%
+drive in; read out; L1, L2 = 1 mH""",
+        """\
+in -- R1 -- a -- L1 -- gnd
+out -- L2 || RL -- gnd
+couple L1 to L2 with M
+drive in
+read out
+M = 500 uH ±5%
+L1, L2 = 1 mH""",
+    ),
+    (
+        """\
+Q1: bjt(collector=c, base=b, emitter=gnd, gm=40 mS, Rpi, Cpi=10 pF)
+in -- Rs -- b; c -- Rc -- gnd
+drive in; read c; read i_Q1.source""",
+        """\
+Q1: bjt(collector=c, base=b, emitter=gnd, gm=40 mS, Rpi, Cpi=10 pF)
+in -- Rs -- b
+c -- Rc -- gnd
+drive in
+read c
+read i_Q1.source""",
+    ),
 )
