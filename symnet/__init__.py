@@ -53,10 +53,12 @@ if TYPE_CHECKING:
     from symnet.shape.families.elliptic import elliptic
     from symnet.shape.figures import f3db
     from symnet.shape.forms import form
+    from symnet.shape.loop import loop_gain
     from symnet.shape.normal import normalise
     from symnet.shape.recognise import recognise
     from symnet.shape.sections import sections
     from symnet.shape.split import split_poles
+    from symnet.shape.stability import stability
 
 __version__ = "0.1.0"
 
@@ -89,6 +91,7 @@ __all__ = [
     "inductor",
     "limits",
     "load",
+    "loop_gain",
     "network",
     "normalise",
     "opamp",
@@ -101,6 +104,7 @@ __all__ = [
     "scale",
     "sections",
     "split_poles",
+    "stability",
     "two_port",
     "verify",
 ]
@@ -131,10 +135,12 @@ _WHERE = {
     "symnet.shape.families.elliptic": "elliptic",
     "symnet.shape.figures": "f3db",
     "symnet.shape.forms": "form",
+    "symnet.shape.loop": "loop_gain",
     "symnet.shape.normal": "normalise",
     "symnet.shape.recognise": "recognise",
     "symnet.shape.sections": "sections",
     "symnet.shape.split": "split_poles",
+    "symnet.shape.stability": "stability",
 }
 
 #: public names that are modules

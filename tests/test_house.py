@@ -66,6 +66,7 @@ WORDS = {
     "inductor",
     "limits",
     "load",
+    "loop_gain",
     "network",
     "normalise",
     "opamp",
@@ -78,6 +79,7 @@ WORDS = {
     "scale",
     "sections",
     "split_poles",
+    "stability",
     "verify",
     "two_port",
 }

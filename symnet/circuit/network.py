@@ -14,11 +14,13 @@ from fractions import Fraction
 from math import isfinite
 from typing import Final, TypeAlias
 
+from symnet.circuit.devices import OPAMP_TERMINALS
 from symnet.circuit.drawing import Drawing
 from symnet.circuit.names import check, dimensions
 from symnet.circuit.notes import UnusualValueWarning, code_note
 from symnet.circuit.parts import (
     Branch,
+    OpAmp,
     Value,
     dimension_of_class,
 )
@@ -200,6 +202,38 @@ class Network(Drawing, Displayed):
         if "Cw" in called:
             text = f"({text}) || {called['Cw']}"
         return self.replace(name, text).with_values({called[word]: value for word, value in values.items()})
+
+    def with_opamp(self, name: str, /, **properties: ValueLike) -> Network:
+        """A network in which an op amp is the model with these properties, and no others; None leaves a symbol.
+
+        ``gain`` and ``gbw`` (text in Hz, or a number in rad/s) make its gain finite; ``pole2``, ``Rin``, ``Cin`` and
+        ``Rout`` as in the notation. Without any it is ideal. The symbols are called ``U1.gain`` and so on.
+
+        Raises UnknownNameError for an op amp the network does not have, NotationError for another part or property.
+
+        >>> import symnet as sn
+        >>> net = sn.network("in -- R1 -- m -- R2 -- out; U1: opamp(plus=gnd, minus=m, out=out); drive in; read out")
+        >>> print(sn.derive(net.with_opamp("U1", gbw=None)))
+        out/in = -(R2/R1)/(1 + s*(1 + R2/R1)/U1.gbw)
+        """
+        placed = {
+            each.name: dict(each.connections) for each in self.instances if each.section.name == "opamp"
+        }
+        ideal = {part.name: part.nodes for part in self.parts if isinstance(part, OpAmp)}
+        if name in ideal and name not in placed:
+            nodes = dict(zip(OPAMP_TERMINALS, ideal[name], strict=True))
+        elif name in placed:
+            nodes = placed[name]
+        elif name in self:
+            raise NotationError(Fault(f"{name} is no op amp", parts=(name,)))
+        else:
+            raise self.unknown(name, (*placed, *ideal), "op amp")
+        given = [f"{terminal}={node}" for terminal, node in nodes.items()]
+        given += [
+            f"{word}=open_{word}" for word in properties
+        ]  # until its value is put in, which may be none
+        network = self.without(name).add(f"{name}: opamp({', '.join(given)})")
+        return network.with_values({f"{name}.{word}": value for word, value in properties.items()})
 
     def with_probe(self, node: str, R: ValueLike, C: ValueLike, name: str = "probe") -> Network:
         """A network with a probe on a node: its resistance (ohm) and its capacitance (farad) to gnd.

@@ -24,7 +24,7 @@ from symnet.exact.trees import ZERO, Piece
 from symnet.expressions import Expression, Name, dimension_of, names_in
 from symnet.quantities import AMPERE, VOLT, Dimension
 
-__all__ = ["derive", "derive_all", "derive_from", "quotient_of"]
+__all__ = ["derive", "derive_all", "derive_from", "determinant_of", "quotient_of"]
 
 
 def derive(
@@ -157,6 +157,12 @@ def quotient_of(
         ),
         replace(_whole(pieces, structure), factor=factor),
     )
+
+
+def determinant_of(network: Network, symbols: frozenset[str] | None = None) -> tuple[Pieces, Determinant]:
+    """The determinant of a network with its drives at zero, whole, and the pieces it is made of."""
+    pieces, structure = _prepared(network, symbols, named_currents(network))
+    return pieces, _whole(pieces, structure)
 
 
 def _between(

@@ -22,7 +22,7 @@ from symnet.present.blocks import (
 )
 from symnet.present.formulas import amount, label_tree, with_power_of_s
 from symnet.quantities import AMPERE, NUMBER, SECOND, VOLT, Dimension
-from symnet.shape.stability import stability_of_factor
+from symnet.shape.stability import stability_of_factor, stability_of_mode
 from symnet.typeset.notation import tree_of
 from symnet.typeset.numbers import Written, complex_quantity, plain_number, quantity
 from symnet.typeset.polynomials import collected
@@ -188,10 +188,7 @@ def _numbers(mode: HiddenMode, transfer: Transfer) -> Iterator[str | Written]:
 
 
 def _fate(mode: HiddenMode, transfer: Transfer) -> str:
-    try:
-        return _said(stability_of_factor(mode.coefficients(transfer.values)))
-    except KeyError:
-        return "" if mode.factor is None else _said(stability_of_factor(by_powers_of_s(mode.factor)))
+    return _said(stability_of_mode(mode, transfer))
 
 
 def _said(stability: Stability) -> str:

@@ -23,6 +23,7 @@ from symnet.present.brief import Brief
 from symnet.present.difference import comparison_blocks
 from symnet.present.dominant import dominant_blocks, split_blocks
 from symnet.present.explain import Explanation
+from symnet.present.loop import loop_blocks, stability_blocks
 from symnet.present.network import network_blocks
 from symnet.present.ports import element_blocks, extremes_blocks, matrix_blocks, modes_blocks, two_port_blocks
 from symnet.present.recognition import recognition_blocks
@@ -48,9 +49,11 @@ from symnet.shape.families.prototype import Prototype
 from symnet.shape.families.tabled import TableSection
 from symnet.shape.figures import HalfPower
 from symnet.shape.forms import Form
+from symnet.shape.loop import LoopGain
 from symnet.shape.normal import NormalForm
 from symnet.shape.sections import Sections
 from symnet.shape.split import SplitPoles
+from symnet.shape.stability import Stability
 from symnet.shape.stated import Conditions
 from symnet.shape.verdict import Recognition
 from symnet.typeset.displayed import Bundle, formats
@@ -193,3 +196,13 @@ def _review(value: Review) -> Bundle:
 @formats(Comparison)
 def _comparison(value: Comparison) -> Bundle:
     return bundle(comparison_blocks(value))
+
+
+@formats(LoopGain)
+def _loop_gain(value: LoopGain) -> Bundle:
+    return bundle(loop_blocks(value))
+
+
+@formats(Stability)
+def _stability(value: Stability) -> Bundle:
+    return bundle(stability_blocks(value))

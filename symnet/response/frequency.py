@@ -28,7 +28,15 @@ from symnet.exact.roots import Root
 if TYPE_CHECKING:
     from symnet.exact.transfer import Transfer
 
-__all__ = ["decibels", "delay_over_square", "group_delay", "in_numbers", "phase", "squared_magnitude"]
+__all__ = [
+    "decibels",
+    "delay_over_square",
+    "group_delay",
+    "halves",
+    "in_numbers",
+    "phase",
+    "squared_magnitude",
+]
 
 Floats: TypeAlias = NDArray[np.float64]
 Frequencies: TypeAlias = "float | Sequence[float] | Floats"
@@ -48,7 +56,7 @@ def squared_magnitude(H: Transfer | Ratio) -> Ratio:
     (Fraction(1, 1), Fraction(0, 1), Fraction(0, 1), Fraction(1, 1))
     """
     h = in_numbers(H)
-    return Ratio.of(_squared(*_halves(h.num)), _squared(*_halves(h.den)))
+    return Ratio.of(_squared(*halves(h.num)), _squared(*halves(h.den)))
 
 
 def delay_over_square(H: Transfer | Ratio) -> Ratio:
@@ -164,7 +172,7 @@ def _turn(a: float, b: float, w: Floats) -> Floats:
 _Polynomial: TypeAlias = list[Fraction]
 
 
-def _halves(coefficients: Sequence[Fraction]) -> tuple[_Polynomial, _Polynomial]:
+def halves(coefficients: Sequence[Fraction]) -> tuple[_Polynomial, _Polynomial]:
     """E and O of P(jw) = E(x) + j w O(x)."""
     even = [c * (-1) ** k for k, c in enumerate(coefficients[0::2])]
     odd = [c * (-1) ** k for k, c in enumerate(coefficients[1::2])]
@@ -177,7 +185,7 @@ def _squared(even: _Polynomial, odd: _Polynomial) -> _Polynomial:
 
 def _turning(coefficients: Sequence[Fraction]) -> tuple[_Polynomial, _Polynomial]:
     """The derivative of the phase of P(jw) by w, as numerator and denominator in x."""
-    even, odd = _halves(coefficients)
+    even, odd = halves(coefficients)
     odd_slope, even_slope = ([k * c for k, c in enumerate(p)][1:] for p in (odd, even))
     twice = [Fraction(0), *(2 * c for c in odd_slope)]
     first = _product(even, _sum(odd, twice))

@@ -37,7 +37,9 @@ __all__ = [
     "bandwidth",
     "delay_extremes",
     "f3db",
+    "frequency_of_square",
     "peak",
+    "signs_around",
     "turning_points",
 ]
 
@@ -143,11 +145,11 @@ def f3db(H: Transfer | Ratio, reference: Reference | None = None) -> HalfPower:
     if not difference:
         return HalfPower(chosen, level.figure, ())
     found = [root for root in roots(difference) if root.is_real and root.real > 0]
-    signs = _signs_around(difference, found)
+    signs = signs_around(difference, found)
     crossings = []
     for root, (before, after) in zip(found, signs, strict=True):
         direction: Direction = "touching" if before == after else "falling" if before > after else "rising"
-        w, f = _frequency(root)
+        w, f = frequency_of_square(root)
         crossings.append(Crossing(w, f, direction))
     return HalfPower(chosen, level.figure, tuple(crossings))
 
@@ -194,7 +196,7 @@ def _dimension(H: Transfer | Ratio) -> Dimension:
     return NUMBER if isinstance(H, Ratio) else H.dimension
 
 
-def _frequency(root: Root) -> tuple[Figure, float]:
+def frequency_of_square(root: Root) -> tuple[Figure, float]:
     """The frequency whose square is the root."""
     closed: Closed | None = None
     if root.exact is not None:
@@ -209,7 +211,7 @@ def _padded(p: Sequence[Fraction], q: Sequence[Fraction]) -> list[tuple[Fraction
     return list(zip(first, second, strict=True))
 
 
-def _signs_around(polynomial: dense.Integers, found: Sequence[Root]) -> list[tuple[int, int]]:
+def signs_around(polynomial: dense.Integers, found: Sequence[Root]) -> list[tuple[int, int]]:
     """The exact signs of the polynomial below and above each of its positive roots."""
     if not found:
         return []
@@ -239,7 +241,7 @@ def _inner_extremes(function: Ratio) -> list[tuple[Literal["maximum", "minimum"]
     rising = Ratio.of(slope, dense.multiply(den[1], den[1]))
     numerator = dense.primitive(rising.num)[1]
     found = [root for root in roots(numerator, _PEAK_DIGITS) if root.is_real and root.real > 0]
-    signs = _signs_around(numerator, found)
+    signs = signs_around(numerator, found)
     # num[0], den[0] and all squares are positive, so that this numerator carries the sign of the slope up to the
     # sign of the reduced denominator.
     below = dense.primitive(rising.den)[1]
@@ -260,7 +262,7 @@ def turning_points(H: Transfer | Ratio) -> tuple[Extreme, ...]:
     square = squared_magnitude(H)
     found = []
     for kind, root in _inner_extremes(square):
-        w, f = _frequency(root)
+        w, f = frequency_of_square(root)
         found.append(Extreme(kind, "inside", w, f, _magnitude(square, root)))
     return tuple(found)
 
@@ -288,7 +290,7 @@ def _unbounded(square: Ratio) -> str | None:
         return "infinity"
     for root in roots(square.den):
         if root.is_real and root.real > 0:
-            return f"{_frequency(root)[1]:.6g} Hz"
+            return f"{frequency_of_square(root)[1]:.6g} Hz"
     return None
 
 
@@ -320,7 +322,7 @@ def peak(H: Transfer | Ratio) -> Extreme:
         return Extreme(
             "maximum", "infinity", Figure(None, math.inf, HERTZ), math.inf, double(nth_root(best, 2))
         )
-    w, f = _frequency(inside[candidates.index(best) - ends])
+    w, f = frequency_of_square(inside[candidates.index(best) - ends])
     return Extreme("maximum", "inside", w, f, double(nth_root(best, 2)))
 
 
@@ -359,6 +361,6 @@ def delay_extremes(H: Transfer | Ratio) -> tuple[Extreme, ...]:
     delay = delay_over_square(H)
     found = []
     for kind, root in _inner_extremes(delay):
-        w, f = _frequency(root)
+        w, f = frequency_of_square(root)
         found.append(Extreme(kind, "inside", w, f, double(delay.at(root.real))))
     return tuple(found)

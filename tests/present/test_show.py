@@ -17,6 +17,9 @@ NET = sn.network(
 SYMBOLS = NET.with_values(R1=None, R2=None, C1=None, C2=None)
 H = sn.derive(NET)
 
+FINITE = NET.with_opamp("U1", gbw="1 MHz")
+POSITIVE = SYMBOLS.without("U1").add("hold out = K*p as amp")
+
 RESULTS: dict[str, Any] = {
     "network": NET,
     "equations": sn.equations(NET),
@@ -32,6 +35,13 @@ RESULTS: dict[str, Any] = {
     "conditions": sn.recognise(sn.derive(SYMBOLS)),
     "prototype": sn.bessel(4),
     "half power": f3db(H),
+    "loop gain": sn.loop_gain(FINITE, "U1"),
+    "loop gain in symbols": sn.loop_gain(POSITIVE, "amp"),
+    "loop gain of what swings": sn.loop_gain(
+        POSITIVE.with_values(R1="1k", R2="1k", C1="1n", C2="1n", K=4), "amp"
+    ),
+    "stability": sn.stability(H),
+    "stability in symbols": sn.stability(sn.derive(POSITIVE)),
     "brief": sn.brief(NET),
     "review": sn.verify(NET, "node x: (x - in)/R1 + s*C1*x = 0; p = out; out/in = 1/(1 + s*R1*C1); R1 = R2"),
     "review in symbols": sn.verify(SYMBOLS, "R1 = R2; out/in = 1/(1 + s*C2*(R1 + R2) + s^2*R1*R2*C1*C2)"),
