@@ -302,12 +302,15 @@ def _condition_row(condition: Condition) -> tuple[Line, ...]:
     then: list[str | Tree | Written] = []
     for k, formula in enumerate(condition.formulas):
         factor = "" if formula.factor == 1 else f"{plain_number(formula.factor, 5)} · "
-        then += [", " if k else "", f"{formula.name} = {factor}", formula.tree]
+        worked = f" = {formula.worked}" if formula.worked else ""
+        then += [", " if k else "", f"{formula.name} = {factor}", formula.tree, worked]
     return (condition.name, tuple(when) or "always", tuple(then))
 
 
 def _way(way: Alternative) -> Iterator[str | Tree | Written]:
-    pieces: list[tuple[str | Tree | Written, ...]] = [(Atom(name), " = ", tree) for name, tree in way.values]
+    pieces: list[tuple[str | Tree | Written, ...]] = [
+        (Atom(name), " = ", tree, way.worked_out(name)) for name, tree in way.values
+    ]
     pieces += [(left, f" {sign} ", right) for left, sign, right in way.relations]
     for k, piece in enumerate(pieces):
         if k:

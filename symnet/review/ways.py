@@ -7,7 +7,7 @@ from fractions import Fraction
 from typing import TYPE_CHECKING, Final
 
 from symnet.exact.polynomials import make_ring
-from symnet.shape.conditions import alternative
+from symnet.shape.judging import alternatives
 from symnet.shape.solving import solve
 from symnet.typeset.tree import names_of
 
@@ -50,12 +50,10 @@ def ways(solution: Solution, parts: Sequence[Polynomial]) -> tuple[Alternative, 
                 exponents[places[name]] = exponent
             terms[tuple(exponents)] = ring.domain(coefficient)
         elements.append(ring.from_dict(terms))
-    found = []
+    found: list[Alternative] = []
     for branch in solve(elements):
         if all(solved.index != places["pi"] for solved in branch.solved):
-            way = alternative(branch, ())
-            if way is not None:
-                found.append(way)
+            found += alternatives(branch)
     return tuple(found)
 
 

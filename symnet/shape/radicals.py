@@ -11,7 +11,7 @@ from symnet.typeset.tree import ONE, Atom, Root, Tree, number, over, power, time
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement
 
-__all__ = ["outside", "radical", "root"]
+__all__ = ["centre_frequency", "outside", "radical", "root"]
 
 _MOST_FACTORED: Final = 40  # terms of a polynomial that is factored to find perfect powers
 
@@ -52,3 +52,17 @@ def outside(p: PolyElement, degree: int) -> tuple[Tree, PolyElement]:
                 names.append(power(readable(factor), multiplicity // degree))
                 rest = rest.exquo(factor ** (multiplicity - multiplicity % degree))
     return times(number(whole), *names), rest
+
+
+def centre_frequency(below: PolyElement, above: PolyElement, degree: int) -> Tree:
+    """(below/above)^(1/degree)/(2 pi): the f0 of a polynomial that begins with ``below`` and ends with ``above``.
+
+    >>> from symnet.exact.polynomials import make_ring
+    >>> from symnet.typeset.writing import to_text
+    >>> s, R, C = make_ring(["R", "C"]).gens
+    >>> to_text(centre_frequency(s.ring.one, R**2 * C**2, 2))
+    '1/(2*pi*R*C)'
+    """
+    top, bottom = above.cancel(below)
+    inner, outer = outside(top, degree), outside(bottom, degree)
+    return over(outer[0], times(number(2), Atom("pi"), inner[0], radical(inner[1], outer[1], degree)))

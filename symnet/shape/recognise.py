@@ -48,6 +48,10 @@ def recognise(
     numerator: Sequence[Number] | NDArray[Any] | None = None,
     poles: Sequence[complex] | NDArray[Any] | None = None,
     zeros: Sequence[complex] | NDArray[Any] = (),
+    solve: str = "",
+    Q: str | Fraction | None = None,
+    f0: str | None = None,
+    gain: str | Fraction | None = None,
 ) -> Recognition | Conditions:
     """Which family H(s) is, in which band and of which order, or none of these.
 
@@ -60,6 +64,11 @@ def recognise(
         The coefficients of N(s), likewise, where coefficients of D(s) are given; a constant if it is left out.
     poles, zeros
         Instead of all that: every pole and every finite zero in rad/s, repeated ones repeated, conjugates both.
+    solve
+        For a transfer function: the parts to solve for, as in "R1 R2", whatever values they have; the answer is
+        always conditions then. At order 2 one part is solved for Q, two for Q and f0, three for Q, f0 and |gain|.
+    Q, f0, gain
+        Numbers for these, such as "0.7071" and "1 kHz"; symbols stand for those that are left out.
 
     Returns
     -------
@@ -72,7 +81,7 @@ def recognise(
         shape only and is called first order; order 2 is a matter of Q. Bands: low-pass, high-pass, band-pass,
         band-stop, all-pass; shelves and peaks are told by their levels and corners.
     Conditions
-        When H has symbols without a value: the exact conditions on them for each family.
+        When H has symbols without a value, or where parts are solved for: the exact conditions for each family.
 
     Raises
     ------
@@ -123,10 +132,11 @@ def recognise(
         raise NotationError("a numerator goes with the coefficients of a denominator, not with an H")
     if isinstance(h_or_descending, Ratio):
         return _on_numbers(h_or_descending)
-    if not h_or_descending.is_numeric:
+    asked = bool(solve) or not (Q is None and f0 is None and gain is None)
+    if asked or not h_or_descending.is_numeric:
         from symnet.shape.conditions import conditions
 
-        return conditions(h_or_descending)
+        return conditions(h_or_descending, Q, solve=solve, f0=f0, gain=gain)
     return _on_numbers(h_or_descending.numeric())
 
 

@@ -9,12 +9,13 @@ parts closes its branch. Groebner bases would do the same eliminations blind to 
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Collection, Sequence
 from dataclasses import dataclass
 from functools import lru_cache
 from itertools import combinations
 from typing import TYPE_CHECKING, Any, Final
 
+from symnet.shape.given import NOTHING, Given
 from symnet.shape.positive import as_squares, content, divide_content, sign_of
 
 if TYPE_CHECKING:
@@ -54,7 +55,7 @@ class Branch:
     left: tuple[PolyElement, ...]
 
 
-def vanishing(polynomial: PolyElement) -> tuple[PolyElement, ...]:
+def vanishing(polynomial: PolyElement, given: Given = NOTHING) -> tuple[PolyElement, ...]:
     """The factors of a polynomial, not 0, that can be 0 for positive symbols; none if it has none.
 
     >>> from symnet.exact.polynomials import make_ring
@@ -67,12 +68,24 @@ def vanishing(polynomial: PolyElement) -> tuple[PolyElement, ...]:
         return ()
     found = []
     for factor, _ in _factors(rest):
-        if sign_of(factor) is not None:
+        there = given.at(factor)
+        if not there:
+            found.append(factor)
             continue
-        squares = [as_squares(f) for f in (factor, -factor)]
-        if not any(s is not None and s.is_positive for s in squares):
-            found.append(factor if _leads_positive(factor) else -factor)
+        pieces = ((factor, 1),) if there is factor else _factors(divide_content(there, *content(there)))
+        possible = [piece for piece, _ in pieces if _can_vanish(piece)]
+        if sum(times for _, times in pieces) == 1 and possible:
+            possible = [factor]  # in names, as long as the numbers do not make it fall apart
+        found += [p if _leads_positive(p) else -p for p in possible]
     return tuple(found)
+
+
+def _can_vanish(factor: PolyElement) -> bool:
+    """Whether nothing proves that the factor keeps one sign for positive symbols."""
+    if sign_of(factor) is not None:
+        return False
+    squares = [as_squares(f) for f in (factor, -factor)]
+    return not any(s is not None and s.is_positive for s in squares)
 
 
 @lru_cache(maxsize=512)
@@ -112,45 +125,86 @@ def _leads_positive(polynomial: PolyElement) -> bool:
     return bool(polynomial[max(polynomial)] > 0)
 
 
-def solve(equations: Sequence[PolyElement]) -> tuple[Branch, ...]:
-    """The ways in which all polynomials can be 0 for positive symbols; none if there is no way."""
-    branches = _solve([e for e in equations if e], ())
+def solve(
+    equations: Sequence[PolyElement], given: Given = NOTHING, wanted: Collection[int] = ()
+) -> tuple[Branch, ...]:
+    """The ways in which all polynomials can be 0 for positive symbols; none if there is no way.
+
+    ``given`` are symbols that have a number; ``wanted`` those to solve for, by their index, where others are not.
+    """
+    branches = _Solver(given, frozenset(wanted)).branches([e for e in equations if given.at(e)], ())
     return tuple(_back_substituted(branch) for branch in branches[:_MOST_BRANCHES])
 
 
-def _solve(equations: list[PolyElement], solved: tuple[Solved, ...]) -> list[Branch]:
-    factored = [vanishing(e) for e in equations]
-    if not all(factored):
-        return []
-    if not factored:
-        return [Branch(solved, ())]
-    choices = []
-    for place, factors in enumerate(factored):
-        picks = [_shortest_solution(f) for f in factors]
-        costs = [pick[0] for pick in picks if pick is not None]
-        if len(costs) == len(factors):
-            choices.append((len(factors), max(costs), place, picks))
-    if not choices:
+@dataclass(frozen=True, slots=True)
+class _Solver:
+    """The search, for one set of numbers and one choice of symbols; no choice means any symbol without a number."""
+
+    given: Given
+    wanted: frozenset[int]
+
+    def branches(self, equations: list[PolyElement], solved: tuple[Solved, ...]) -> list[Branch]:
+        factored = [vanishing(e, self.given) for e in equations]
+        if not all(factored):
+            return []
+        if not factored:
+            return [Branch(solved, ())]
+        choices = []
+        for place, factors in enumerate(factored):
+            picks = [self.shortest(f) for f in factors]
+            costs = [pick[0] for pick in picks if pick is not None]
+            if len(costs) == len(factors):
+                choices.append((len(factors), max(costs), place, picks))
         whole = [_product(factors) for factors in factored]
-        return [] if _exclude_each_other(whole) else [Branch(solved, tuple(whole))]
-    _, _, place, picks = min(choices, key=lambda c: c[:3])
-    found: list[Branch] = []
-    for pick in picks:
-        assert pick is not None  # noqa: S101 - chosen above among those that all have a solution
-        solution = pick[1]
-        if _is_negative(solution):
-            continue
-        others = [put_in(_product(f), solution) for k, f in enumerate(factored) if k != place]
-        if any(len(e) > _MOST_TERMS for e in others):
-            whole = [_product(factors) for factors in factored]
-            return [Branch(solved, tuple(whole))]
-        found += _solve([e for e in others if e], (*solved, solution))
-        if len(found) > _MOST_BRANCHES:
-            break
-    return found
+        if not choices:
+            return [] if _exclude_each_other(whole, self.given) else [Branch(solved, tuple(whole))]
+        _, _, place, picks = min(choices, key=lambda c: c[:3])
+        found: list[Branch] = []
+        for pick in picks:
+            assert pick is not None  # noqa: S101 - chosen above among those that all have a solution
+            solution = pick[1]
+            if self.is_negative(solution):
+                continue
+            others = [put_in(e, solution) for k, e in enumerate(whole) if k != place]
+            if any(len(e) > _MOST_TERMS for e in others):
+                return [Branch(solved, tuple(whole))]
+            found += self.branches([e for e in others if self.given.at(e)], (*solved, solution))
+            if len(found) > _MOST_BRANCHES:
+                break
+        return found
+
+    def shortest(self, factor: PolyElement) -> tuple[tuple[int, ...], Solved] | None:
+        """The solution for the symbol that gives the shortest one, signs that are sure first; None if none is linear."""
+        ring = factor.ring
+        best: tuple[tuple[int, ...], Solved] | None = None
+        for index in range(1, ring.ngens):
+            if index in self.given or (self.wanted and index not in self.wanted):
+                continue
+            if max(m[index] for m in factor) != 1:
+                continue
+            above = ring.from_dict({m: -c for m, c in factor.items() if not m[index]})
+            below = ring.from_dict(
+                {(*m[:index], 0, *m[index + 1 :]): c for m, c in factor.items() if m[index]}
+            )
+            solution = _lowest(index, above, below)
+            if not self.given.at(solution.denominator):
+                continue
+            sure = self.signs(solution) in {(1, 1), (-1, -1)} or self.is_negative(solution)
+            below = solution.denominator
+            size = max(abs(int(c)) for c in below.values())
+            cost = (not sure, len(below), len(solution.numerator), size, index)
+            if best is None or cost < best[0]:
+                best = cost, solution
+        return best
+
+    def signs(self, solution: Solved) -> tuple[int | None, int | None]:
+        return self.given.sign(solution.numerator), self.given.sign(solution.denominator)
+
+    def is_negative(self, solution: Solved) -> bool:
+        return self.signs(solution) in {(1, -1), (-1, 1), (0, 1), (0, -1)}
 
 
-def _exclude_each_other(equations: Sequence[PolyElement]) -> bool:
+def _exclude_each_other(equations: Sequence[PolyElement], given: Given) -> bool:
     """Whether two of the equations are proven to have no common solution: a resultant of them that is never 0."""
     small = [e for e in equations if len(e) <= _MOST_ELIMINATED]
     for f, g in combinations(small, 2):
@@ -158,8 +212,8 @@ def _exclude_each_other(equations: Sequence[PolyElement]) -> bool:
             if all(0 < max(m[index] for m in p) <= _HIGHEST_ELIMINATED for p in (f, g)):
                 symbols = list(f.ring.symbols)
                 ring = f.ring.clone(symbols=[symbols[index], *symbols[:index], *symbols[index + 1 :]])
-                eliminated = f.set_ring(ring).resultant(g.set_ring(ring))
-                if eliminated and not vanishing(eliminated):
+                eliminated = f.set_ring(ring).resultant(g.set_ring(ring)).set_ring(f.ring)
+                if given.at(eliminated) and not vanishing(eliminated, given):
                     return True
                 break
     return False
@@ -170,31 +224,6 @@ def _product(factors: Sequence[PolyElement]) -> PolyElement:
     for factor in factors[1:]:
         total = total * factor
     return total
-
-
-def _is_negative(solution: Solved) -> bool:
-    top, bottom = sign_of(solution.numerator), sign_of(solution.denominator)
-    return top is not None and bottom is not None and top != bottom
-
-
-def _shortest_solution(factor: PolyElement) -> tuple[tuple[int, ...], Solved] | None:
-    """The solution for the symbol that gives the shortest one, signs that are sure first; None if none is linear."""
-    ring = factor.ring
-    best: tuple[tuple[int, ...], Solved] | None = None
-    for index in range(1, ring.ngens):
-        powers = {m[index] for m in factor}
-        if max(powers) != 1:
-            continue
-        above = ring.from_dict({m: -c for m, c in factor.items() if not m[index]})
-        below = ring.from_dict({(*m[:index], 0, *m[index + 1 :]): c for m, c in factor.items() if m[index]})
-        solution = _lowest(index, above, below)
-        sure = solution.positive or _is_negative(solution)
-        below = solution.denominator
-        size = max(abs(int(c)) for c in below.values())
-        cost = (not sure, len(below), len(solution.numerator), size, index)
-        if best is None or cost < best[0]:
-            best = cost, solution
-    return best
 
 
 def _lowest(index: int, above: PolyElement, below: PolyElement) -> Solved:

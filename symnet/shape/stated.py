@@ -18,7 +18,7 @@ __all__ = ["Alternative", "Condition", "Conditions", "Formula", "Relation"]
 #: Characters of a repr, which is one line; all of it is in the text.
 _LONGEST_REPR: Final = 450
 
-#: left, sign ("=" or ">"), right
+#: left, sign ("=", ">" or ">="), right
 Relation: TypeAlias = tuple[Tree, str, Tree]
 
 
@@ -26,15 +26,21 @@ Relation: TypeAlias = tuple[Tree, str, Tree]
 class Alternative:
     """One way to fulfil a condition: parts with the value they must have, and relations that are left.
 
-    ``needed`` are values among them that must come out positive, where no relation says when they do.
+    ``needed`` are values among them that must come out positive, where no relation says when they do. ``worked``
+    are the values that hang on known numbers only, with their unit.
     """
 
     values: tuple[tuple[str, Tree], ...]
     relations: tuple[Relation, ...] = ()
     needed: tuple[str, ...] = ()
+    worked: tuple[tuple[str, str], ...] = ()
+
+    def worked_out(self, name: str) -> str:
+        """What stands behind the formula of a name, such as " = 20 nF", or an empty text."""
+        return next((f" = {text}" for known, text in self.worked if known == name), "")
 
     def __str__(self) -> str:
-        found = [f"{name} = {to_text(tree)}" for name, tree in self.values]
+        found = [f"{name} = {to_text(tree)}{self.worked_out(name)}" for name, tree in self.values]
         found += [f"{to_text(a)} {sign} {to_text(b)}" for a, sign, b in self.relations]
         return " and ".join(found) + (
             f" (where {', '.join(self.needed)} must be positive)" if self.needed else ""
@@ -43,15 +49,17 @@ class Alternative:
 
 @dataclass(frozen=True, slots=True)
 class Formula:
-    """A figure of the shape in the parts: name = factor * tree, in Hz for f and in seconds for T."""
+    """A figure of the shape in the parts: name = factor * tree, in Hz for f and in seconds for T; ``worked`` its number."""
 
     name: str
     tree: Tree
     factor: float = 1.0
+    worked: str = ""
 
     def __str__(self) -> str:
         factor = "" if self.factor == 1 else f"{self.factor:.5g}*"
-        return f"{self.name} = {factor}{to_text(self.tree)}"
+        worked = f" = {self.worked}" if self.worked else ""
+        return f"{self.name} = {factor}{to_text(self.tree)}{worked}"
 
 
 @dataclass(frozen=True, slots=True)
