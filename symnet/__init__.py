@@ -43,6 +43,7 @@ if TYPE_CHECKING:
     from symnet.present.brief import brief
     from symnet.present.explain import explain
     from symnet.response.frequency import group_delay, phase
+    from symnet.response.time import step
     from symnet.review.verify import verify
     from symnet.shape import prototypes
     from symnet.shape.difference import compare
@@ -105,6 +106,7 @@ __all__ = [
     "sections",
     "split_poles",
     "stability",
+    "step",
     "two_port",
     "verify",
 ]
@@ -126,6 +128,7 @@ _WHERE = {
     "symnet.present.brief": "brief",
     "symnet.present.explain": "explain",
     "symnet.response.frequency": "group_delay phase",
+    "symnet.response.time": "step",
     "symnet.review.verify": "verify",
     "symnet.shape.difference": "compare",
     "symnet.shape.dominant": "dominant",

@@ -79,6 +79,7 @@ WORDS = {
     "scale",
     "sections",
     "split_poles",
+    "step",
     "stability",
     "verify",
     "two_port",

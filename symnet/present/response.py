@@ -8,16 +8,17 @@ from math import log10
 from typing import TYPE_CHECKING
 
 from symnet.errors import UndefinedError
-from symnet.present.blocks import Block, Line, Table
+from symnet.present.blocks import Block, Line, Paragraph, Table
 from symnet.present.formulas import amount
 from symnet.quantities import HERTZ, NUMBER, SECOND, Dimension
-from symnet.typeset.numbers import Written, quantity
+from symnet.typeset.numbers import Written, plain_number, quantity
 
 if TYPE_CHECKING:
     from symnet.exact.transfer import Transfer
+    from symnet.response.time import StepResponse
     from symnet.shape.figures import Extreme, HalfPower
 
-__all__ = ["half_power_rows", "response_blocks"]
+__all__ = ["half_power_rows", "response_blocks", "step_blocks"]
 
 _DIGITS = 5
 
@@ -84,3 +85,21 @@ def _level(value: float, dimension: Dimension) -> tuple[str | Written, ...]:
     if dimension != NUMBER or not value:
         return (number,)
     return (number, "\u00a0(", quantity(20 * log10(value), "dB"), ")")
+
+
+def step_blocks(found: StepResponse) -> tuple[Block, ...]:
+    """The figures of a step response, each with its unit."""
+    rows = tuple(
+        (what, _figure(value, unit), "" if value is None or unit == "s" else unit or "unit of H")
+        for what, unit, value in found.rows()
+    )
+    said = "Response to a step of 1 at t = 0, t in s."
+    if not found.settles:
+        said += " It does not settle: a pole lies on the jw axis or to the right of it."
+    return (Paragraph(said), Table(("figure", "value", "unit"), rows))
+
+
+def _figure(value: float | None, unit: str) -> Line:
+    if value is None:
+        return "none"
+    return amount(value, SECOND) if unit == "s" else plain_number(value, 5)

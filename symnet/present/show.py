@@ -27,7 +27,7 @@ from symnet.present.loop import loop_blocks, stability_blocks
 from symnet.present.network import network_blocks
 from symnet.present.ports import element_blocks, extremes_blocks, matrix_blocks, modes_blocks, two_port_blocks
 from symnet.present.recognition import recognition_blocks
-from symnet.present.response import half_power_rows
+from symnet.present.response import half_power_rows, step_blocks
 from symnet.present.results import (
     conditions_blocks,
     equations_blocks,
@@ -42,6 +42,7 @@ from symnet.present.scaling import scaling_blocks
 from symnet.present.shapes import form_blocks, normal_blocks, sections_blocks
 from symnet.present.writers import formula_latex, html, latex, markdown, text
 from symnet.quantities import NUMBER
+from symnet.response.time import StepResponse
 from symnet.review.verdicts import Review
 from symnet.shape.difference import Comparison
 from symnet.shape.dominant import Dominant
@@ -121,6 +122,11 @@ def _form(value: Form) -> Bundle:
 def _half_power(value: HalfPower) -> Bundle:
     rows = tuple(half_power_rows(value, value.level.dimension or NUMBER))
     return bundle((Table(("figure", "f", "w", "remark"), rows),))
+
+
+@formats(StepResponse)
+def _step_response(value: StepResponse) -> Bundle:
+    return bundle(step_blocks(value))
 
 
 @formats(Prototype)

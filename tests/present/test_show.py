@@ -8,6 +8,7 @@ from xml.etree import ElementTree as ET
 import pytest
 
 import symnet as sn
+from symnet.exact.ratio import Ratio
 from symnet.shape.figures import f3db
 
 NET = sn.network(
@@ -112,3 +113,10 @@ def test_very_many_terms_are_only_counted() -> None:
     shown = ladder(13)._repr_mimebundle_()["text/plain"].replace("\n", " ")
     assert "has up to 1 term over 196418" in shown
     assert "keep fewer names as symbols" in shown
+
+
+def test_a_step_response_shows_its_figures() -> None:
+    shown = sn.step(Ratio.of([1], [1, 2, 2, 1]))
+    text = shown._repr_mimebundle_()["text/markdown"]
+    assert "overshoot" in text
+    assert "8.1" in text
