@@ -29,17 +29,14 @@ for one of 800.
 from __future__ import annotations
 
 from collections import deque
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from functools import cached_property
-from typing import TypeAlias
 
+from symnet.exact.forests import Ends, Forest, Runs
 from symnet.exact.trees import ZERO, Diagram, Piece, build
 
 __all__ = ["Minor", "Structure", "chained", "structure_of", "unchained"]
-
-#: Two ends of a piece in one of its graphs; None is gnd.
-Ends: TypeAlias = "tuple[int | None, int | None]"
 
 
 @dataclass(frozen=True, slots=True)
@@ -60,20 +57,22 @@ class Structure:
     """A determinant by its pieces, with one common tree of its two graphs, and which piece sees which.
 
     A piece outside the tree sees the pieces of the tree on its column path; a piece of the tree sees those outside
-    on whose row path it lies.
+    on whose row path it lies. ``_sees`` has these arcs, through the nodes beyond the pieces that stand for long paths.
     """
 
     size: int
     pieces: tuple[Piece, ...]
     tree: frozenset[int]
-    sees: tuple[tuple[int, ...], ...]
-    _rows: _Forest
-    _columns: _Forest
+    _sees: list[list[int]]
+    _rows: Forest
+    _columns: Forest
 
     @cached_property
     def blocks(self) -> tuple[tuple[int, ...], ...]:
         """The pieces of every block, ascending, the blocks in the order of their first pieces."""
-        return tuple(sorted(tuple(sorted(block)) for block in _components(self.sees)))
+        count = len(self.pieces)
+        found = (sorted(k for k in block if k < count) for block in _components(self._sees))
+        return tuple(sorted(tuple(block) for block in found if block))
 
     @cached_property
     def _block_of(self) -> dict[int, int]:
@@ -118,15 +117,15 @@ class Structure:
 
     def seen(self, reads: Iterable[Ends]) -> frozenset[int]:
         """The blocks that a row of reads with these columns sees."""
-        return self._reached((k for ends in reads for k in self._columns.way(*ends) or ()), self.sees)
+        return self._reached((k for ends in reads for k in self._columns.way(*ends)), self._sees)
 
     def driven(self, drive: Ends) -> frozenset[int]:
         """The blocks that see a drive with these rows."""
-        seen_by: list[list[int]] = [[] for _ in self.pieces]
-        for k, others in enumerate(self.sees):
+        seen_by: list[list[int]] = [[] for _ in self._sees]
+        for k, others in enumerate(self._sees):
             for other in others:
                 seen_by[other].append(k)
-        return self._reached(self._rows.way(*drive) or (), seen_by)
+        return self._reached(self._rows.way(*drive), seen_by)
 
     def _reached(self, start: Iterable[int], arcs: Sequence[Sequence[int]]) -> frozenset[int]:
         reached = set(start)
@@ -136,7 +135,7 @@ class Structure:
                 if other not in reached:
                     reached.add(other)
                     waiting.append(other)
-        return frozenset(self._block_of[k] for k in reached)
+        return frozenset(self._block_of[k] for k in reached if k < len(self.pieces))
 
     def minor(self, kept: Sequence[int], border: Sequence[Piece] = ()) -> Minor:
         """What is left when the tree outside the pieces ``kept``, of whole blocks, is contracted.
@@ -168,20 +167,24 @@ def structure_of(size: int, pieces: Iterable[Piece], start: Iterable[int] = ()) 
     column_ends = [(p.column_plus, p.column_minus) for p in given]
     tree = _greedy(size, given, start)
     while True:
-        rows, columns = _Forest(size, row_ends, tree), _Forest(size, column_ends, tree)
-        outside = [k for k in range(len(given)) if k not in tree]
-        row_ways = {k: rows.way(*row_ends[k]) for k in outside}
-        column_ways = {k: columns.way(*column_ends[k]) for k in outside}
+        rows, columns = Forest(size, row_ends, tree), Forest(size, column_ends, tree)
         sees: list[list[int]] = [[] for _ in given]
-        for k in outside:
-            sees[k] += column_ways[k] or ()
-            for other in row_ways[k] or ():
-                sees[other].append(k)
+        row_runs, column_runs = Runs(rows, sees, inward=True), Runs(columns, sees, inward=False)
+        free_rows, free_columns = [], set()
+        for k in range(len(given)):
+            if k in tree:
+                continue
+            if columns.joined(*column_ends[k]):
+                column_runs.link(k, column_runs.of(*column_ends[k]))
+            else:
+                free_columns.add(k)
+            if rows.joined(*row_ends[k]):
+                row_runs.link(k, row_runs.of(*row_ends[k]))
+            else:
+                free_rows.append(k)
         if len(tree) == size:
-            return Structure(size, given, frozenset(tree), tuple(map(tuple, sees)), rows, columns)
-        path = _shortest(
-            [k for k in outside if row_ways[k] is None], {k for k in outside if column_ways[k] is None}, sees
-        )
+            return Structure(size, given, frozenset(tree), sees, rows, columns)
+        path = _shortest(free_rows, free_columns, sees, len(given))
         if not path:
             return None
         tree ^= set(path)
@@ -232,86 +235,39 @@ def unchained(diagram: Diagram) -> tuple[Diagram, ...]:
     return tuple(found)
 
 
-class _Forest:
-    """The pieces of a tree in one graph, hung up at gnd (at any vertex, in a part that does not reach gnd).
-
-    ``child[k]`` is the vertex that piece k hangs up, ``sign[k]`` the entry, +1 or -1, that the piece has there.
-    """
-
-    def __init__(self, size: int, ends: Sequence[Ends], tree: Iterable[int]) -> None:
-        self._ground = size
-        beside: list[list[tuple[int, int, int]]] = [[] for _ in range(size + 1)]
-        for k in tree:
-            plus, minus = (size if end is None else end for end in ends[k])
-            beside[plus].append((k, minus, -1))
-            beside[minus].append((k, plus, 1))
-        self.child: dict[int, int] = {}
-        self.sign: dict[int, int] = {}
-        self._depth = [-1] * (size + 1)
-        self._above = [size] * (size + 1)
-        self.piece = [-1] * (size + 1)
-        for root in range(size, -1, -1):
-            if self._depth[root] < 0:
-                self._hang(root, beside)
-
-    def _hang(self, root: int, beside: Sequence[Sequence[tuple[int, int, int]]]) -> None:
-        self._depth[root] = 0
-        waiting = deque([root])
-        while waiting:
-            at = waiting.popleft()
-            for k, other, sign in beside[at]:
-                if self._depth[other] < 0:
-                    self._depth[other] = self._depth[at] + 1
-                    self._above[other], self.piece[other] = at, k
-                    self.child[k], self.sign[k] = other, sign
-                    waiting.append(other)
-
-    def way(self, plus: int | None, minus: int | None) -> list[int] | None:
-        """The pieces of the tree between two vertices; None where the tree does not join them."""
-        a, b = (self._ground if end is None else end for end in (plus, minus))
-        found = []
-        while a != b:
-            if self._depth[a] < self._depth[b]:
-                a, b = b, a
-            if self.piece[a] < 0:
-                return None
-            found.append(self.piece[a])
-            a = self._above[a]
-        return found
-
-    def up(self, vertex: int) -> Iterator[int]:
-        """The vertex and those above it, up to a root and without it."""
-        while self.piece[vertex] >= 0:
-            yield vertex
-            vertex = self._above[vertex]
-
-
 class _Places:
     """Numbers of the vertices of a minor, as they are asked for."""
 
-    def __init__(self, forest: _Forest, kept: frozenset[int]) -> None:
+    def __init__(self, forest: Forest, kept: frozenset[int]) -> None:
         self._forest = forest
         self._kept = kept
-        self._found: dict[int, int | None] = {}
+        self._into: dict[int, int] = {}
         self._numbers: dict[int, int] = {}
 
     def __call__(self, vertex: int | None) -> int | None:
         """The number of the vertex into which this one is contracted; None for gnd."""
         if vertex is None:
             return None
-        if vertex not in self._found:
-            self._found[vertex] = self._place(vertex)
-        return self._found[vertex]
+        if vertex >= len(self._forest.piece) - 1:  # that of the border
+            return self._numbers.setdefault(vertex, len(self._numbers))
+        into = self._contracted(vertex)
+        return None if into < 0 else self._numbers.setdefault(into, len(self._numbers))
 
-    def _place(self, vertex: int) -> int | None:
-        last = vertex
-        if vertex < len(self._forest.piece) - 1:
-            for last in self._forest.up(vertex):
-                if self._forest.piece[last] in self._kept:
-                    break
+    def _contracted(self, vertex: int) -> int:
+        """The next vertex upwards that hangs on a piece that is kept, -1 where there is none."""
+        forest, into, passed = self._forest, self._into, []
+        at = vertex
+        while at not in into:
+            if forest.piece[at] in self._kept:
+                into[at] = at
+            elif forest.piece[at] < 0:
+                into[at] = -1
             else:
-                return None
-        return self._numbers.setdefault(last, len(self._numbers))
+                passed.append(at)
+                at = forest.above[at]
+        for other in passed:
+            into[other] = into[at]
+        return into[vertex]
 
 
 def _greedy(size: int, pieces: Sequence[Piece], start: Iterable[int]) -> set[int]:
@@ -326,8 +282,7 @@ def _greedy(size: int, pieces: Sequence[Piece], start: Iterable[int]) -> set[int
         return at
 
     def ends(k: int) -> int:
-        p = pieces[k]
-        return sum(end is not None for end in (p.row_plus, p.row_minus, p.column_plus, p.column_minus))
+        return 4 - pieces[k].count(None)
 
     tree: set[int] = set()
     for k in (*start, *sorted(range(len(pieces)), key=ends)):
@@ -340,58 +295,66 @@ def _greedy(size: int, pieces: Sequence[Piece], start: Iterable[int]) -> set[int
     return tree
 
 
-def _shortest(start: Iterable[int], end: set[int], sees: Sequence[Sequence[int]]) -> list[int]:
-    """The pieces on a shortest path from one of ``start`` to one of ``end``; [] where there is none."""
+def _shortest(start: Iterable[int], end: set[int], sees: Sequence[Sequence[int]], count: int) -> list[int]:
+    """The pieces on a shortest path from one of ``start`` to one of ``end``; [] where there is none.
+
+    From ``count`` on nodes stand for runs of pieces: they are on the way, and make it no longer.
+    """
     before: dict[int, int] = dict.fromkeys(start, -1)
     waiting = deque(before)
     while waiting:
         k = waiting.popleft()
         if k in end:
-            path = [k]
-            while before[path[-1]] >= 0:
-                path.append(before[path[-1]])
-            return path
+            path = []
+            while k >= 0:
+                path.append(k)
+                k = before[k]
+            return [k for k in path if k < count]
         for other in sees[k]:
             if other not in before:
                 before[other] = k
-                waiting.append(other)
+                if other < count:
+                    waiting.append(other)
+                else:
+                    waiting.appendleft(other)
     return []
 
 
 def _components(arcs: Sequence[Sequence[int]]) -> list[list[int]]:
     """The strongly connected components of a graph (R. Tarjan, SIAM J. Computing 1, 1972, 146-160), without recursion."""
-    index: dict[int, int] = {}
-    low: dict[int, int] = {}
-    open_: dict[int, None] = {}
-    out = []
+    done = len(arcs) + 1  # the index of what is in a component already: higher than any other
+    index = [0] * len(arcs)
+    open_: list[int] = []
+    out: list[list[int]] = []
+    count = 0
     for root in range(len(arcs)):
-        if root in index:
+        if index[root]:
             continue
-        index[root] = low[root] = len(index)
-        open_[root] = None
-        path = [(root, iter(arcs[root]))]
+        count += 1
+        index[root] = count
+        path = [(root, count, len(open_), iter(arcs[root]))]
+        open_.append(root)
         while path:
-            at, rest = path[-1]
+            at, own, place, rest = path[-1]
             for other in rest:
-                if other not in index:
-                    index[other] = low[other] = len(index)
-                    open_[other] = None
-                    path.append((other, iter(arcs[other])))
+                if not index[other]:
+                    count += 1
+                    index[other] = count
+                    path.append((other, count, len(open_), iter(arcs[other])))
+                    open_.append(other)
                     break
-                if other in open_ and index[other] < low[at]:
-                    low[at] = index[other]
+                if index[other] < index[at]:
+                    index[at] = index[other]
             else:
                 path.pop()
-                if path and low[at] < low[path[-1][0]]:
-                    low[path[-1][0]] = low[at]
-                if low[at] == index[at]:
-                    block = []
-                    while True:
-                        k, _ = open_.popitem()
-                        block.append(k)
-                        if k == at:
-                            break
+                if index[at] == own:
+                    block = open_[place:]
+                    del open_[place:]
+                    for k in block:
+                        index[k] = done
                     out.append(block)
+                elif index[at] < index[path[-1][0]]:
+                    index[path[-1][0]] = index[at]
     return out
 
 
