@@ -81,7 +81,7 @@ def confirm(
         raise SingularError(undetermined(network, naming))
     system, solution = solved
     expected = sum(weight.value * solution(k) for k, weight in system.weights(read).items())
-    written_out = max(quotient.terms) <= _MOST_TERMS_COMPARED
+    written_out = quotient.is_built and max(quotient.terms) <= _MOST_TERMS_COMPARED
     if written_out:
         what = "N and D as written out"
         lowest = quotient.lowest

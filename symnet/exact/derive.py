@@ -14,13 +14,14 @@ from symnet.errors import Fault, NotationError, SingularError, WiringError, near
 from symnet.exact.confirm import confirm, undetermined
 from symnet.exact.determinant import Determinant
 from symnet.exact.hidden import Aside, Reason
+from symnet.exact.matrices import Matrix
 from symnet.exact.modular import PRIME
 from symnet.exact.pieces import Pieces, named_currents
 from symnet.exact.polynomials import ONE, Terms, negated
 from symnet.exact.quotient import Quotient
 from symnet.exact.structure import Structure, structure_of
 from symnet.exact.transfer import Transfer
-from symnet.exact.trees import ZERO, Piece
+from symnet.exact.trees import ZERO, Diagram, Piece
 from symnet.expressions import Expression, Name, dimension_of, names_in
 from symnet.quantities import AMPERE, VOLT, Dimension
 
@@ -179,11 +180,11 @@ def _between(
     minor = structure.minor(kept, border)
     bordered = structure_of(minor.size, minor.pieces, minor.tree)
     whole = _whole(pieces, structure)
-    below = whole.restricted(structure.diagram(between, minor.parity), kept, factor)
+    below = whole.restricted(structure.determinant(between, minor.parity), kept, factor)
     return pieces, Quotient(
         Determinant(
             pieces.naming.generators,
-            ZERO if bordered is None else bordered.whole,
+            _numerator(bordered, below),
             (*below.take, *(weight for weight, _, _ in terms), negated(ONE)),
             (*below.leave, *(ONE for _ in terms), ONE),
         ),
@@ -191,6 +192,13 @@ def _between(
         tuple([pieces.owners[k] for k in kept]),
         tuple(_aside(pieces, structure, whole, seen, driven)),
     )
+
+
+def _numerator(bordered: Structure | None, below: Determinant) -> Diagram | Matrix:
+    """The bordered determinant; where the one below has no diagram, none is tried."""
+    if bordered is None:
+        return ZERO
+    return bordered.whole if below.is_built else bordered.matrix(range(len(bordered.blocks)), bordered.parity)
 
 
 def _border(
@@ -277,12 +285,14 @@ def _label(network: Network, drive: Drive, read: Expression) -> str:
 
 
 def _dimension(pieces: Pieces, drive: Drive, read: Expression) -> Dimension:
-    known: dict[str, Dimension] = {
-        name: dimension for name, dimension in pieces.naming.dimensions.items() if dimension is not None
-    }
+    known: dict[str, Dimension] = {}
     for node in (*pieces.network.nodes, GROUND):
         known[node] = known[f"v_{node}"] = VOLT
     for name in (*pieces.network.part_names, *pieces.network.drive_names):
         known[f"i_{name}"], known[f"v_{name}"] = AMPERE, VOLT
+    if any(name.name not in known for name in names_in(read)):  # only then are those of all names inferred
+        for word, dimension in pieces.naming.dimensions.items():
+            if dimension is not None:
+                known.setdefault(word, dimension)
     top = dimension_of(read, known) or VOLT
     return top / (AMPERE if isinstance(drive, CurrentDrive) else VOLT)

@@ -16,14 +16,16 @@ from math import lcm, prod
 from typing import Any, Final
 
 from symnet.errors import Fault, LimitError
+from symnet.exact.dense import multiply
 from symnet.exact.digits import packed, unpacked
 from symnet.exact.expansion import Expansion
 from symnet.exact.kinds import Kinds
+from symnet.exact.matrices import Matrix
 from symnet.exact.modular import terms_at
 from symnet.exact.polynomials import ONE, Generators, Terms, highest_exponents
 from symnet.exact.structure import unchained
 from symnet.exact.trees import ONE as _NO_ROWS
-from symnet.exact.trees import Diagram
+from symnet.exact.trees import Diagram, too_wide
 from symnet.exact.unfolding import unfold
 
 __all__ = ["MOST_TERMS", "Determinant", "count_in_words", "numeric_pair", "pair_modulo", "too_long"]
@@ -34,13 +36,28 @@ MOST_TERMS: Final = 500_000
 
 @dataclass(frozen=True)
 class Determinant:
-    """``factor`` times the determinant that ``diagram`` is with the weights ``take`` and ``leave``."""
+    """``factor`` times the determinant that ``form`` is with the weights ``take`` and ``leave``.
+
+    The form is a diagram, or the matrix where that is too large to be built: then there are numbers only.
+    """
 
     generators: Generators
-    diagram: Diagram
+    form: Diagram | Matrix
     take: tuple[Terms, ...]
     leave: tuple[Terms, ...]
     factor: Terms = ONE
+
+    @property
+    def diagram(self) -> Diagram:
+        """The diagram; LimitError where it is too large to be built."""
+        if isinstance(self.form, Matrix):
+            raise too_wide()
+        return self.form
+
+    @property
+    def is_built(self) -> bool:
+        """Whether there is a diagram."""
+        return isinstance(self.form, Diagram)
 
     def weights_modulo(self, point: Sequence[Any], prime: int) -> tuple[list[Any], list[Any]]:
         """All weights at a point (s first, then the names in order), modulo a prime."""
@@ -60,13 +77,15 @@ class Determinant:
 
     @cached_property
     def paths(self) -> int:
-        """The number of paths of the diagram."""
-        return self.diagram.count()
+        """The number of paths of the diagram; an upper bound of it where that is too large to be built."""
+        return self.form.count()
 
     @cached_property
     def kinds(self) -> Kinds | None:
         """The pieces by kind, where equal parts make it worth while to count them; else None."""
-        kinds = Kinds.of(self.diagram, self.take, self.leave)
+        if isinstance(self.form, Matrix):
+            return None
+        kinds = Kinds.of(self.form, self.take, self.leave)
         return kinds if kinds is not None and kinds.is_short(self.paths) else None
 
     @cached_property
@@ -75,13 +94,15 @@ class Determinant:
 
         Weights that every term has are factors without a diagram; those of a single term are one factor together.
         """
+        if isinstance(self.form, Matrix):
+            return (self,)
         number, exponents = self.diagram.overall, [0] * len(self.generators)
         found = []
 
         def always(weight: Terms) -> None:
             nonlocal number
             if len(weight) != 1:
-                found.append(replace(self, diagram=_NO_ROWS, take=(), leave=(), factor=weight))
+                found.append(replace(self, form=_NO_ROWS, take=(), leave=(), factor=weight))
                 return
             ((coefficient, powers),) = weight
             number *= coefficient
@@ -99,14 +120,14 @@ class Determinant:
             else:
                 always(self.leave[part.piece[0]])
         content = ((number, tuple((k, e) for k, e in enumerate(exponents) if e)),)
-        return (*found, replace(self, diagram=_NO_ROWS, take=(), leave=(), factor=content))
+        return (*found, replace(self, form=_NO_ROWS, take=(), leave=(), factor=content))
 
-    def restricted(self, diagram: Diagram, pieces: Sequence[int], factor: Terms) -> Determinant:
-        """The determinant of a diagram of some of these pieces alone, which are numbered anew."""
+    def restricted(self, form: Diagram | Matrix, pieces: Sequence[int], factor: Terms) -> Determinant:
+        """The determinant of a form of some of these pieces alone, which are numbered anew."""
         place = {k: n for n, k in enumerate(pieces)}
         return Determinant(
             self.generators,
-            replace(diagram, piece=tuple([place[k] for k in diagram.piece])),
+            replace(form, piece=tuple([place[k] for k in form.piece])),
             tuple([self.take[k] for k in pieces]),
             tuple([self.leave[k] for k in pieces]),
             factor,
@@ -136,12 +157,12 @@ class Determinant:
             scale *= common
         factor = _coefficients(self.factor, values)
         common = lcm(*(c.denominator for c in factor))
-        found = _polynomial(self.diagram, takes, leaves, [int(c * common) for c in factor])
+        found = _polynomial(self.form, takes, leaves, [int(c * common) for c in factor])
         return [Fraction(c, scale * common) for c in found]
 
     def modulo(self, point: Sequence[Any], prime: int) -> Any:
         """The value at a point (s first, then the names in order), modulo a prime."""
-        value = self.diagram.evaluate_modulo(*self.weights_modulo(point, prime), prime)
+        value = self.form.evaluate_modulo(*self.weights_modulo(point, prime), prime)
         return value * terms_at(self.factor, point, prime) % prime
 
 
@@ -149,7 +170,7 @@ def pair_modulo(n: Determinant, d: Determinant, point: Sequence[Any], prime: int
     """N and D at a point modulo a prime; D's pieces are the first of N's, so their weights are found once."""
     take, leave = n.weights_modulo(point, prime)
     top, bottom = (
-        det.diagram.evaluate_modulo(take, leave, prime) * terms_at(det.factor, point, prime) % prime
+        det.form.evaluate_modulo(take, leave, prime) * terms_at(det.factor, point, prime) % prime
         for det in (n, d)
     )
     return top, bottom
@@ -194,8 +215,8 @@ def numeric_pair(n: Determinant, d: Determinant, values: Sequence[Fraction]) -> 
     common = lcm(*(c.denominator for c in (*n_factor, *d_factor)))
     own = len(d.take)
     extra = prod(scales[own:]) * common
-    top = _polynomial(n.diagram, takes, leaves, [int(c * common) for c in n_factor])
-    bottom = _polynomial(d.diagram, takes[:own], leaves[:own], [int(c * extra) for c in d_factor])
+    top = _polynomial(n.form, takes, leaves, [int(c * common) for c in n_factor])
+    bottom = _polynomial(d.form, takes[:own], leaves[:own], [int(c * extra) for c in d_factor])
     return top, bottom
 
 
@@ -215,11 +236,13 @@ def _coefficients(terms: Terms, values: Sequence[Fraction]) -> list[Fraction]:
 
 
 def _polynomial(
-    diagram: Diagram, takes: Sequence[list[int]], leaves: Sequence[list[int]], factor: list[int]
+    form: Diagram | Matrix, takes: Sequence[list[int]], leaves: Sequence[list[int]], factor: list[int]
 ) -> list[int]:
-    bound = diagram.bound(list(map(_size, takes)), list(map(_size, leaves))) * _size(factor)
+    if isinstance(form, Matrix):
+        return list(multiply(form.coefficients(takes, leaves), factor))
+    bound = form.bound(list(map(_size, takes)), list(map(_size, leaves))) * _size(factor)
     bits = bound.bit_length() + 2
-    value = diagram.evaluate([packed(w, bits) for w in takes], [packed(w, bits) for w in leaves])
+    value = form.evaluate([packed(w, bits) for w in takes], [packed(w, bits) for w in leaves])
     return unpacked(value * packed(factor, bits), bits)
 
 

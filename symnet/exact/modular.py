@@ -46,6 +46,8 @@ class Residue:
     def __truediv__(self, other: Residue) -> Residue:
         if not other.value:
             raise ZeroDivisionError
+        if other.value == 1:  # most denominators are, and an inverse costs more than all else here
+            return self
         return Residue(self.value * pow(other.value, -1, PRIME) % PRIME)
 
     def __pow__(self, exponent: int) -> Residue:

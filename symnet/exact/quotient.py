@@ -43,7 +43,7 @@ class Quotient:
     def lowest(self) -> LowestTerms:
         """Both in lowest terms, factor by factor; LimitError when a factor is too long to be written out."""
         n, d = self.numerator, self.denominator
-        if n.diagram.is_zero:
+        if n.form.is_zero:
             return LowestTerms.zero(d.generators.ring)
         bottom = Product.of_determinant(
             d
@@ -70,6 +70,11 @@ class Quotient:
     def terms(self) -> tuple[int, int]:
         """An upper bound of the number of terms of each, known without writing them out."""
         return self.numerator.terms, self.denominator.terms
+
+    @property
+    def is_built(self) -> bool:
+        """Whether both have a diagram; otherwise they give numbers only."""
+        return self.numerator.is_built and self.denominator.is_built
 
     @cached_property
     def is_factored(self) -> bool:

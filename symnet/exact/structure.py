@@ -33,7 +33,9 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass, replace
 from functools import cached_property
 
+from symnet.errors import LimitError
 from symnet.exact.forests import Ends, Forest, Runs
+from symnet.exact.matrices import Matrix
 from symnet.exact.trees import ZERO, Diagram, Piece, build
 
 __all__ = ["Minor", "Structure", "chained", "structure_of", "unchained"]
@@ -79,35 +81,53 @@ class Structure:
         return {piece: number for number, block in enumerate(self.blocks) for piece in block}
 
     @cached_property
-    def factors(self) -> tuple[Diagram, ...]:
+    def factors(self) -> tuple[Diagram | Matrix, ...]:
         """The determinant of every block, its rows and columns in the order in which its pieces touch them."""
-        return tuple(diagram for diagram, _ in self._built)
+        return tuple(found for found, _ in self._built)
 
-    def diagram(self, blocks: Sequence[int], parity: int) -> Diagram:
-        """The determinant of these blocks together, in graphs in which the tree has this parity."""
-        found = chained([self.factors[k] for k in blocks])
+    def determinant(self, blocks: Sequence[int], parity: int) -> Diagram | Matrix:
+        """The determinant of these blocks together, in graphs in which the tree has this parity.
+
+        A matrix where the diagram of one of them is too large to be built.
+        """
+        found = [self.factors[k] for k in blocks]
+        diagrams = [factor for factor in found if isinstance(factor, Diagram)]
+        if len(diagrams) < len(found):
+            return self.matrix(blocks, parity)
         for k in blocks:
             parity *= self._built[k][1]
-        return replace(found, overall=found.overall * parity)
+        whole = chained(diagrams)
+        return replace(whole, overall=whole.overall * parity)
+
+    def matrix(self, blocks: Sequence[int], parity: int) -> Matrix:
+        """The same, for numbers only."""
+        kept = sorted(k for number in blocks for k in self.blocks[number])
+        minor = self.minor(kept)
+        return Matrix(minor.size, minor.pieces, tuple(kept), parity * minor.parity)
 
     @cached_property
-    def whole(self) -> Diagram:
+    def whole(self) -> Diagram | Matrix:
         """The determinant itself."""
-        tree = sorted(self.tree)
-        parity = _parity([self._rows.child[k] for k in tree]) * _parity(
-            [self._columns.child[k] for k in tree]
-        )
-        return self.diagram(range(len(self.blocks)), parity)
+        return self.determinant(range(len(self.blocks)), self.parity)
 
     @cached_property
-    def _built(self) -> tuple[tuple[Diagram, int], ...]:
-        """The diagram of every block, with the parity of the tree in it."""
+    def parity(self) -> int:
+        """That of the rows and of the columns to which the tree leads, together."""
+        tree = sorted(self.tree)
+        return _parity([self._rows.child[k] for k in tree]) * _parity([self._columns.child[k] for k in tree])
+
+    @cached_property
+    def _built(self) -> tuple[tuple[Diagram | Matrix, int], ...]:
+        """The determinant of every block, with the parity of the tree in it."""
         return tuple(map(self._build, self.blocks))
 
-    def _build(self, block: tuple[int, ...]) -> tuple[Diagram, int]:
+    def _build(self, block: tuple[int, ...]) -> tuple[Diagram | Matrix, int]:
         if len(block) > 1:
             minor = self.minor(block)
-            found = build(minor.size, minor.pieces)
+            try:
+                found = build(minor.size, minor.pieces)
+            except LimitError:
+                return Matrix(minor.size, minor.pieces, block), minor.parity
             return replace(found, piece=tuple([block[k] for k in found.piece])), minor.parity
         (k,) = block
         if k not in self.tree:  # in no tree at all
@@ -343,8 +363,7 @@ def _components(arcs: Sequence[Sequence[int]]) -> list[list[int]]:
                     path.append((other, count, len(open_), iter(arcs[other])))
                     open_.append(other)
                     break
-                if index[other] < index[at]:
-                    index[at] = index[other]
+                index[at] = min(index[at], index[other])
             else:
                 path.pop()
                 if index[at] == own:

@@ -34,6 +34,7 @@ from functools import cached_property
 from itertools import pairwise
 from typing import TYPE_CHECKING, Any, Final, NamedTuple, TypeAlias
 
+from symnet.errors import Fault, LimitError
 from symnet.exact.ordering import frontier_order
 from symnet.progress import Progress
 
@@ -41,7 +42,10 @@ if TYPE_CHECKING:
     import numpy as np
     from numpy.typing import NDArray
 
-__all__ = ["ONE", "ZERO", "Diagram", "Level", "Piece", "build"]
+__all__ = ["MOST_NODES", "ONE", "ZERO", "Diagram", "Level", "Piece", "build", "too_wide"]
+
+#: Nodes beyond which no diagram is built on: with about 200 bytes for each while it is built, 60 MB.
+MOST_NODES: Final = 300_000
 
 State: TypeAlias = str
 
@@ -193,7 +197,8 @@ ZERO: Final = Diagram((), (), (), (), _DEAD)
 def build(size: int, pieces: Sequence[Piece], order: Sequence[int] | None = None) -> Diagram:
     """The diagram of det(sum of pieces) for a matrix of ``size`` rows and columns.
 
-    ``order`` is the order in which the pieces are decided; by default :func:`frontier_order` chooses it.
+    ``order`` is the order in which the pieces are decided; by default :func:`frontier_order` chooses it. Raises
+    LimitError when it gets more than :data:`MOST_NODES` nodes.
     """
     if order is None:
         order = frontier_order(size, pieces)
@@ -208,6 +213,18 @@ def build(size: int, pieces: Sequence[Piece], order: Sequence[int] | None = None
             return Diagram((), (), (), (), _DEAD)
         _grow_twins(grown, rows, states, order, level)
     return _pruned(grown, rows.parity * columns.parity)
+
+
+def too_wide() -> LimitError:
+    """The refusal to build a diagram on."""
+    return LimitError(
+        Fault(
+            f"too much of the network is joined to each other: its diagram has more than {MOST_NODES} nodes, and "
+            "neither polynomials nor sensitivities in symbols are to be had",
+            "give the parts values and use H.numeric(), which needs no diagram; or leave out branches that "
+            "matter little",
+        )
+    )
 
 
 def _grow_pairs(
@@ -272,6 +289,8 @@ def _grow_pairs(
             signs(-1 if odd & 1 else 1)
         grown.piece += [index] * len(states)
         grown.next, states, alive = number, list(following), next_alive
+        if number > MOST_NODES:
+            raise too_wide()
         if not states:
             break
     return len(order), states
@@ -320,6 +339,8 @@ def _grow_twins(grown: _Growing, side: _Side, states: list[State], order: Sequen
         grown.piece += [order[here]] * len(states)
         grown.sign += [1] * len(states)
         states = list(following)
+        if number > MOST_NODES:
+            raise too_wide()
     grown.next = number
 
 

@@ -3,7 +3,7 @@
 Run as ``python -m tests.speed.refusal [rounds]``. Every round starts a fresh process for each network, which takes
 the time of `import sympy`, loads what a derivation needs by deriving a small network once, and then takes the time
 from the network to the message that gives the number of terms: wiring checked, both determinants built, H confirmed
-and its terms counted. The limit is a tenth of `import sympy`, by medians. The complete graph, the densest network
+and its terms counted. All in processor time, of which other work on the machine takes no share. The limit is a tenth of `import sympy`, by medians. The complete graph, the densest network
 there is, has fewer than 10^12 terms on the 9 nodes shown here; its diagram grows faster than its count.
 """
 
@@ -19,20 +19,20 @@ TOP = Path(__file__).resolve().parents[2]
 
 REFUSAL = """
 import time
-start = time.perf_counter()
+start = time.process_time()
 import sympy
-sympy_imported = time.perf_counter() - start
+sympy_imported = time.process_time() - start
 import symnet as sn
 from symnet.errors import LimitError
 from tests.speed.engine import complete_graph, grid, rc_ladder
 
 sn.derive(sn.network("in -- R1 -- out -- C1 -- gnd; drive in; read out")).denominator
 net = sn.network({network})
-start = time.perf_counter()
+start = time.process_time()
 try:
     sn.derive(net).denominator
 except LimitError as refused:
-    print(sympy_imported, time.perf_counter() - start, str(refused).split(" terms")[0].split()[-1])
+    print(sympy_imported, time.process_time() - start, str(refused).split(" terms")[0].split()[-1])
 """
 
 BASE = "import sympy"
