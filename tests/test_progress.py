@@ -9,6 +9,8 @@ from typing import Any
 
 import pytest
 
+import symnet as sn
+from symnet.exact.matrices import Matrix
 from symnet.exact.roots import roots
 from symnet.exact.trees import Piece, build
 from symnet.progress import Progress
@@ -108,8 +110,8 @@ def test_a_notebook_gets_one_place_that_is_empty_in_the_end(monkeypatch: pytest.
     ]
 
 
-def test_roots_of_high_order_tell_how_far_they_are(monkeypatch: pytest.MonkeyPatch) -> None:
-    """Every look at the clock is a second later than the one before, so that the line is shown at once."""
+def shown_at_once(monkeypatch: pytest.MonkeyPatch) -> Terminal:
+    """A terminal on which every look at the clock is a second later than the one before."""
     clock, terminal = Clock(), Terminal()
 
     def later() -> float:
@@ -118,6 +120,12 @@ def test_roots_of_high_order_tell_how_far_they_are(monkeypatch: pytest.MonkeyPat
 
     monkeypatch.setattr(sys, "stderr", terminal)
     monkeypatch.setattr("symnet.progress.time", SimpleNamespace(monotonic=later))
+    return terminal
+
+
+def test_roots_of_high_order_tell_how_far_they_are(monkeypatch: pytest.MonkeyPatch) -> None:
+    """Every look at the clock is a second later than the one before, so that the line is shown at once."""
+    terminal = shown_at_once(monkeypatch)
     p = [1]
     for k in range(1, 31):  # (s + 1)(s + 2)...(s + 30), which doubles cannot tell apart
         p = [k * a + b for a, b in zip([*p, 0], [0, *p], strict=True)]
@@ -127,14 +135,37 @@ def test_roots_of_high_order_tell_how_far_they_are(monkeypatch: pytest.MonkeyPat
 
 
 def test_a_diagram_tells_how_many_parts_are_decided(monkeypatch: pytest.MonkeyPatch) -> None:
-    clock, terminal = Clock(), Terminal()
-
-    def later() -> float:
-        clock.now += 1
-        return clock.now
-
-    monkeypatch.setattr(sys, "stderr", terminal)
-    monkeypatch.setattr("symnet.progress.time", SimpleNamespace(monotonic=later))
+    terminal = shown_at_once(monkeypatch)
     assert not build(3, [Piece(a, b, a, b) for a, b in ((0, 1), (1, 2), (2, None), (0, 2))]).is_zero
     assert "building the diagram: 3 of 4 parts decided" in terminal.getvalue()
+    assert terminal.getvalue().endswith(WIPE)
+
+
+def test_a_derivation_tells_that_it_is_confirmed_and_written_out(monkeypatch: pytest.MonkeyPatch) -> None:
+    terminal = shown_at_once(monkeypatch)
+    net = sn.network("in -- R1 -- a -- C1 -- gnd; a -- R2 -- b -- C2 -- gnd; drive in; read b")
+    assert len(sn.derive(net).denominator) == 5
+    said = terminal.getvalue()
+    for line in ("solving the nodal equations: ", " unknowns eliminated", "writing out: 5 of 5 terms"):
+        assert line in said
+    assert said.endswith(WIPE)
+
+
+def test_a_common_factor_tells_how_far_it_is(monkeypatch: pytest.MonkeyPatch) -> None:
+    """The compensated divider, whose mode a tie hides."""
+    terminal = shown_at_once(monkeypatch)
+    divided = "in -- R1 || C1 -- out -- R2 || C2 -- gnd; drive in; read out; C2 = R1*C1/R2"
+    assert sn.derive(sn.network(divided)).hidden
+    said = terminal.getvalue()
+    assert "looking for a common factor: 0 coefficients compared" in said
+    assert "dividing by a common factor: 1 terms of the quotient found" in said
+    assert said.endswith(WIPE)
+
+
+def test_numbers_without_a_diagram_tell_how_far_they_are(monkeypatch: pytest.MonkeyPatch) -> None:
+    """(1 + 2 s) (3 + s) from two pieces that share no node."""
+    terminal = shown_at_once(monkeypatch)
+    matrix = Matrix(2, (Piece(0, None, 0, None), Piece(1, None, 1, None)), (0, 1))
+    assert matrix.coefficients([[1, 2], [3, 1]], [[1], [1]]) == [3, 7, 2]
+    assert "evaluating the determinant: 2 of 3 whole s" in terminal.getvalue()
     assert terminal.getvalue().endswith(WIPE)

@@ -30,6 +30,7 @@ from symnet.errors import Fault, LimitError
 from symnet.exact.expansion import Expansion, Fields, Primitive
 from symnet.exact.modular import SMALL_PRIME, gcd_modulo, interpolate
 from symnet.exact.products import Product
+from symnet.progress import Progress
 
 if TYPE_CHECKING:
     from sympy.polys.rings import PolyElement, PolyRing
@@ -176,14 +177,16 @@ def _contents(
     """The gcd of ever more coefficients, shortest first, that stand beside the generators that are not ``names``."""
     ring = _small_ring(len(names))
     common: PolyElement | None = None
-    for terms in _alternating([_coefficients(p, names) for p in polynomials]):
-        if len(terms) > MOST_TERMS_FOR_GCD:
-            return
-        element = ring.from_dict(terms)
-        common = element if common is None else common.gcd(element)
-        degrees = tuple(map(max, zip(*common, strict=True))) if names else ()
-        if len(common) == 1 or all(degree <= bounds[k] for k, degree in zip(names, degrees, strict=True)):
-            yield _expansion(common, names, len(polynomials[0].fields.places))
+    with Progress("looking for a common factor", "coefficients compared") as at:
+        for number, terms in enumerate(_alternating([_coefficients(p, names) for p in polynomials])):
+            if len(terms) > MOST_TERMS_FOR_GCD:
+                return
+            at(number)
+            element = ring.from_dict(terms)
+            common = element if common is None else common.gcd(element)
+            degrees = tuple(map(max, zip(*common, strict=True))) if names else ()
+            if len(common) == 1 or all(degree <= bounds[k] for k, degree in zip(names, degrees, strict=True)):
+                yield _expansion(common, names, len(polynomials[0].fields.places))
 
 
 def _small_ring(count: int) -> PolyRing:
@@ -244,6 +247,11 @@ def divided(polynomial: Expansion, factor: Expansion) -> Expansion | None:
 
     (S. Johnson, SIGSAM Bulletin 8, 1974, 63-71.)
     """
+    with Progress("dividing by a common factor", "terms of the quotient found") as at:
+        return _divided(polynomial, factor, at)
+
+
+def _divided(polynomial: Expansion, factor: Expansion, at: Progress) -> Expansion | None:
     fields, degrees = polynomial.fields, factor.degrees()
     if any(degree > mask for degree, (_, _, mask) in zip(degrees, fields.places, strict=True)):
         return None
@@ -275,6 +283,7 @@ def divided(polynomial: Expansion, factor: Expansion) -> Expansion | None:
             return None
         monomial = key - first
         quotient[monomial] = number
+        at(len(quotient))
         for step, weight in others:
             product = monomial + step
             if product in rest:

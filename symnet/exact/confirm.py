@@ -20,6 +20,7 @@ from symnet.errors import Fault, SingularError, SymnetError
 from symnet.exact.mna import Arithmetic, Stamped, stamp, unknown_name
 from symnet.exact.modular import PRIME, SMALL_PRIME, Residue, terms_at
 from symnet.exact.polynomials import modulo
+from symnet.progress import Progress
 
 if TYPE_CHECKING:
     from collections.abc import Callable, Mapping
@@ -171,6 +172,12 @@ def solve_at(
 
 
 def _eliminate(rows: list[dict[int, int]], size: int) -> dict[int, int]:
+    """:func:`_reduced`, telling how far it is."""
+    with Progress("solving the nodal equations", "unknowns eliminated", size) as at:
+        return _reduced(rows, size, at)
+
+
+def _reduced(rows: list[dict[int, int]], size: int, at: Progress) -> dict[int, int]:
     """Reduce sparse augmented rows in place, modulo the prime, until each pivot column has one entry.
 
     Returns the row of each pivot column. The row with the fewest entries is taken next, and in it the column
@@ -195,6 +202,7 @@ def _eliminate(rows: list[dict[int, int]], size: int) -> dict[int, int]:
             continue
         column = min(candidates, key=lambda k: (len(where[k]), k))
         pivots[column] = r
+        at(len(pivots))
         pivot = rows[r]
         head = pivot[column]
         for other in sorted(where[column] - {r}):

@@ -32,6 +32,8 @@ __all__ = ["MOST_TERMS", "Determinant", "count_in_words", "numeric_pair", "pair_
 
 #: Paths of a diagram that are still written out as terms.
 MOST_TERMS: Final = 500_000
+#: Of a term as an element of a ring of 30 names: its tuple of exponents and its place in a dict.
+_TERM_BYTES: Final = 300
 
 
 @dataclass(frozen=True)
@@ -137,8 +139,9 @@ class Determinant:
         """Written out in arrays, term by term; LimitError when there may be more than ``most`` terms.
 
         A term takes about 9 bytes for each machine word of its packed exponents (60 names or so go into one), and
-        three times that while it is made: two million terms stay below 100 MB. A node of the diagram, which is all
-        that is kept of a network that is not written out, takes about 60 bytes, up to 600 while it is built.
+        up to three times that while it is made: two million terms stay below 100 MB. As an element of the ring a term
+        takes 200 to 300. A node of the diagram, which is all that is kept of a network that is not written out,
+        takes 150 to 200 bytes, in long narrow ones up to 650 while it is built.
         """
         if self.terms > most:
             raise too_long("this determinant", self.terms, most)
@@ -180,9 +183,10 @@ def too_long(what: str, terms: int, most: int = MOST_TERMS) -> LimitError:
     """The refusal to write out something of so many terms."""
     return LimitError(
         Fault(
-            f"written out, {what} has up to {count_in_words(terms)} terms; the limit is {most}",
+            f"written out, {what} has up to {count_in_words(terms)} terms; the limit is {most}, which take "
+            f"{most * _TERM_BYTES // 10**6} MB (about {_TERM_BYTES} bytes a term)",
             "give the parts values and use H.numeric(), or keep only a few names as symbols: "
-            'derive(net, symbols="R1 C1")',
+            'derive(net, symbols="R1 C1"); the diagram, about 200 bytes a node, is there as it is',
         )
     )
 

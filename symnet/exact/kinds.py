@@ -4,7 +4,8 @@ Pieces with the same take and leave are of one kind, as the resistors and the ca
 sections. Every path takes as many pieces as the matrix has rows, so that the counts of all kinds but one tell its
 monomial, and the determinant is a polynomial in those counts with few coefficients. Each kind's take becomes a
 power of two, far enough apart that no coefficient reaches the next (Kronecker substitution): one pass over the
-diagram in integers holds all coefficients, and no path is ever looked at.
+diagram in integers holds all coefficients, and no path is ever looked at. All integers of a pass have 32 MB at
+most, so that it is over before there would be progress to show.
 
 A ladder of 30 equal sections has 2.5e12 paths, two kinds and so 31 counts: its 31 coefficients take 123 additions
 of integers of 1400 bits.

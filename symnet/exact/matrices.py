@@ -22,6 +22,7 @@ from typing import TypeAlias
 
 from symnet.exact.forests import Ends
 from symnet.exact.trees import Piece
+from symnet.progress import Progress
 
 __all__ = ["Matrix"]
 
@@ -78,7 +79,12 @@ class Matrix:
         degree = sum(len(leave[k]) - 1 for k in self.piece) + sum(
             gain for gain in gains[: self.size] if gain > 0
         )
-        return _through([self._at(take, leave, s) for s in range(degree + 1)])
+        values = []
+        with Progress("evaluating the determinant", "whole s", degree + 1) as at:
+            for s in range(degree + 1):
+                at(s)
+                values.append(self._at(take, leave, s))
+        return _through(values)
 
     def _at(self, take: Sequence[Sequence[int]], leave: Sequence[Sequence[int]], s: int) -> int:
         """The value at a whole s."""

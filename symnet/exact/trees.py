@@ -35,7 +35,7 @@ from itertools import pairwise
 from typing import TYPE_CHECKING, Any, Final, NamedTuple, TypeAlias
 
 from symnet.errors import Fault, LimitError
-from symnet.exact.ordering import frontier_order
+from symnet.exact.ordering import order_and_cost
 from symnet.progress import Progress
 
 if TYPE_CHECKING:
@@ -44,8 +44,10 @@ if TYPE_CHECKING:
 
 __all__ = ["MOST_NODES", "ONE", "ZERO", "Diagram", "Level", "Piece", "build", "too_wide"]
 
-#: Nodes beyond which no diagram is built on: with about 200 bytes for each while it is built, 60 MB.
-MOST_NODES: Final = 300_000
+#: Nodes beyond which no diagram is built on: at about 200 bytes for each while it is built, 40 MB.
+MOST_NODES: Final = 200_000
+#: Nodes that are expected, by a rough rule, beyond which none is begun.
+_MOST_EXPECTED: Final = 10 * MOST_NODES
 
 State: TypeAlias = str
 
@@ -197,11 +199,13 @@ ZERO: Final = Diagram((), (), (), (), _DEAD)
 def build(size: int, pieces: Sequence[Piece], order: Sequence[int] | None = None) -> Diagram:
     """The diagram of det(sum of pieces) for a matrix of ``size`` rows and columns.
 
-    ``order`` is the order in which the pieces are decided; by default :func:`frontier_order` chooses it. Raises
-    LimitError when it gets more than :data:`MOST_NODES` nodes.
+    ``order`` is the order in which the pieces are decided; by default :func:`~symnet.exact.ordering.frontier_order` chooses it. Raises
+    LimitError when it gets more than :data:`MOST_NODES` nodes, before anything is built where that is plain.
     """
     if order is None:
-        order = frontier_order(size, pieces)
+        order, expected = order_and_cost(size, pieces)
+        if expected > _MOST_EXPECTED:
+            raise too_wide()
     rows = _Side(size, [(pieces[i].row_plus, pieces[i].row_minus) for i in order], 0)
     columns = _Side(size, [(pieces[i].column_plus, pieces[i].column_minus) for i in order], size + 1)
     if rows.untouched or columns.untouched:

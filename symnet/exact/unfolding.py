@@ -27,6 +27,7 @@ import numpy as np
 from symnet.exact.expansion import Expansion, Fields, merged
 from symnet.exact.polynomials import Terms, highest_exponents
 from symnet.exact.trees import Diagram
+from symnet.progress import Progress
 
 if TYPE_CHECKING:
     from numpy.typing import NDArray
@@ -56,19 +57,21 @@ def unfold(
     keys = np.empty((fields.words, total), dtype=np.int64)
     numbers = np.full(total, diagram.overall, dtype=walk.dtype)
     end = 0
-    for first, second in zip(upper, lower, strict=True):
-        for monomial, coefficient in last:
-            begin, end = end, end + first.size * second.size
-            whole = keys[:, begin:end].reshape(fields.words, first.size, second.size)
-            left = above.keys[:, first] if monomial is None else above.keys[:, first] + monomial
-            np.add(left[:, :, None], below.keys[:, None, second], out=whole)
-            here = numbers[begin:end].reshape(first.size, second.size)
-            if above.numbers is not None:
-                here *= above.numbers[first, None]
-            if below.numbers is not None:
-                here *= below.numbers[second]
-            if coefficient != 1:
-                here *= coefficient
+    with Progress("writing out", "terms", total) as written:
+        for first, second in zip(upper, lower, strict=True):
+            for monomial, coefficient in last:
+                begin, end = end, end + first.size * second.size
+                whole = keys[:, begin:end].reshape(fields.words, first.size, second.size)
+                left = above.keys[:, first] if monomial is None else above.keys[:, first] + monomial
+                np.add(left[:, :, None], below.keys[:, None, second], out=whole)
+                here = numbers[begin:end].reshape(first.size, second.size)
+                if above.numbers is not None:
+                    here *= above.numbers[first, None]
+                if below.numbers is not None:
+                    here *= below.numbers[second]
+                if coefficient != 1:
+                    here *= coefficient
+            written(end)
     if len(last) > 1 or walk.mixing:
         keys, numbers = merged(keys, numbers)
     return Expansion(fields, keys, numbers)
