@@ -14,6 +14,7 @@ from symnet.typeset.tree import Atom, Tree, power
 
 if TYPE_CHECKING:
     from symnet.review.coefficients import Coefficient, Comparison
+    from symnet.review.diagnosis.explanation import Diagnosis, Explanation
     from symnet.review.verdicts import Judgement, Review
 
 __all__ = ["review_blocks"]
@@ -30,7 +31,7 @@ def review_blocks(review: Review) -> tuple[Block, ...]:
         blocks.append(Items(notes))
     story = [block for judgement in review for block in _story(judgement)]
     if story:
-        blocks.append(Folded("Coefficient by coefficient", tuple(story)))
+        blocks.append(Folded("What is wrong, in full", tuple(story)))
     return tuple(blocks)
 
 
@@ -51,29 +52,41 @@ def _said(judgement: Judgement) -> Line:
     """The line as it was typed, typeset where it is short enough for a cell."""
     line = judgement.line
     if isinstance(line.statement, Equation) and len(line.text) <= _LONGEST and line.statement.of is None:
-        pieces: list[str | Tree] = []
-        sides = line.statement.sides
-        if line.statement.node is not None:
-            pieces.append(f"node {line.statement.node}: ")
-        for k, side in enumerate(sides):
-            pieces += [" = "] * bool(k) + [tree_of(side)]
-        return tuple(pieces)
+        return tuple(_equation(line.statement))
     return line.text if len(line.text) <= _LONGEST else line.text[: _LONGEST - 3] + "..."
+
+
+def _equation(equation: Equation) -> Iterator[str | Tree]:
+    """An equation, typeset."""
+    if equation.node is not None:
+        yield f"node {equation.node}: "
+    for k, side in enumerate(equation.sides):
+        if k:
+            yield " = "
+        yield tree_of(side)
+        if not k and equation.of is not None:
+            yield from (" of ", tree_of(equation.of))
 
 
 def _verdict(judgement: Judgement) -> Line:
     if judgement.verdict is not Verdict.CONDITION:
         return str(judgement)
-    pieces: list[str | Tree] = ["true only if "]
-    for k, way in enumerate(judgement.conditions):
-        pieces += [" or "] * bool(k)
-        for j, (name, tree) in enumerate(way.values):
-            pieces += [" and "] * bool(j) + [Atom(name), " = ", tree]
-        for j, (left, sign, right) in enumerate(way.relations):
-            pieces += [" and "] * bool(j or way.values) + [left, f" {sign} ", right]
+    pieces: list[str | Tree] = ["true only if ", *_conditions(judgement)]
     if judgement.follows:
         pieces.append(f"; follows from line {judgement.follows[0].label}")
+    elif judgement.diagnosis is not None:
+        pieces.append(f": {judgement.diagnosis}")
     return tuple(pieces)
+
+
+def _conditions(judgement: Judgement) -> Iterator[str | Tree]:
+    """The ways in which the line would be true, typeset."""
+    for k, way in enumerate(judgement.conditions):
+        yield " or " * bool(k)
+        for j, (name, tree) in enumerate(way.values):
+            yield from (" and " * bool(j), Atom(name), " = ", tree)
+        for j, (left, sign, right) in enumerate(way.relations):
+            yield from (" and " * bool(j or way.values), left, f" {sign} ", right)
 
 
 def _notes(review: Review) -> Iterator[Line]:
@@ -91,14 +104,63 @@ def _notes(review: Review) -> Iterator[Line]:
 
 
 def _story(judgement: Judgement) -> Iterator[Block]:
-    if judgement.comparison is None:
+    """All there is to say of a line that does not hold."""
+    if judgement.diagnosis is None and judgement.comparison is None:
         return
     yield Heading(f"Line {judgement.line.label}")
-    yield _coefficients(judgement.comparison)
-    yield Paragraph("Right, in the form of the line:")
-    left = judgement.line.statement.sides[0] if isinstance(judgement.line.statement, Equation) else None
-    name = Atom(write_expression(left)) if left is not None else Atom("H")
-    yield Formula((name, judgement.comparison.exact))
+    if judgement.follows:
+        yield Paragraph(f"It follows from line {judgement.follows[0].label}, which is wrong.")
+    if judgement.diagnosis is not None:
+        yield from _why(judgement, judgement.diagnosis)
+    if judgement.comparison is not None:
+        yield _coefficients(judgement.comparison)
+        yield Paragraph("Right, in the form of the line:")
+        left = judgement.line.statement.sides[0] if isinstance(judgement.line.statement, Equation) else None
+        name = Atom(write_expression(left)) if left is not None else Atom("H")
+        yield Formula((name, judgement.comparison.exact))
+
+
+def _why(judgement: Judgement, diagnosis: Diagnosis) -> Iterator[Block]:
+    """The explanations, the likeliest first, the branches of the node, and numbers that show the difference."""
+    first, *others = diagnosis.explanations
+    yield Paragraph(_sentence(first.sentence))
+    if first.evidence:
+        yield Items(tuple(map(_sentence, first.evidence)))
+    if first.corrected is not None:
+        yield Paragraph(("With that put right the line holds: ", *_equation(first.corrected)))
+    if diagnosis.branches:
+        rows = tuple(
+            (
+                row.name,
+                row.right if row.right is not None else "",
+                row.claimed if row.claimed is not None else "nothing",
+                "agrees" if row.agrees else "differs",
+            )
+            for row in diagnosis.branches
+        )
+        yield Paragraph(f"Node {diagnosis.node}, the currents that leave it:")
+        yield Table(("branch", "in the network", "in the line", ""), rows)
+    facts = [_sentence(str(fact)) for fact in (diagnosis.example, diagnosis.reach) if fact]
+    if judgement.conditions and judgement.verdict is Verdict.CONDITION:
+        yield Paragraph(("As it stands it would hold only if ", *_conditions(judgement), "."))
+    if facts:
+        yield Items(tuple(facts))
+    if others:
+        yield Paragraph("It could also be:")
+        yield Items(tuple(_other(explanation) for explanation in others))
+
+
+def _other(explanation: Explanation) -> Line:
+    if explanation.corrected is None:
+        return explanation.sentence
+    return (f"{explanation.sentence} (then ", *_equation(explanation.corrected), ")")
+
+
+def _sentence(text: str) -> str:
+    """A sentence with its full stop; a name at its head keeps its letters."""
+    head, _, rest = text.partition(" ")
+    begins = head.isalpha() and head.islower() and len(head) > 1
+    return f"{head.capitalize() if begins else head} {rest}."
 
 
 def _coefficients(comparison: Comparison) -> Table:

@@ -22,7 +22,7 @@ if TYPE_CHECKING:
     from symnet.review.judge import Judge
     from symnet.review.scope import Scope
 
-__all__ = ["judge_limit"]
+__all__ = ["Near", "judge_limit"]
 
 _FREQUENCIES = {"w": "s", "omega": "s", "f": "s"}
 
@@ -41,7 +41,7 @@ def judge_limit(judge: Judge, line: Line, limit: Limit) -> Judgement:
     to_infinity = isinstance(limit.toward, Infinite)
     if not to_infinity and not (isinstance(limit.toward, Number) and not limit.toward.value):
         raise NotationError(Fault("a limit goes to 0 or to inf", f"write: as {limit.name} -> 0", line.span))
-    near = _Near(name, to_infinity)
+    near = Near(name, to_infinity)
     rest = near.rest(scope, limit, judge.text, rounds=False)
     if not rest and rest is not None:
         return Judgement(line, Verdict.IDENTITY)
@@ -58,7 +58,7 @@ def judge_limit(judge: Judge, line: Line, limit: Limit) -> Judgement:
     return judge.conditional(line, (exact,))
 
 
-class _Near:
+class Near:
     """One end of one name."""
 
     def __init__(self, name: str, to_infinity: bool) -> None:

@@ -7,7 +7,7 @@ wrong answer has a probability of about degree/2^127; whether a line is *true* i
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from functools import cached_property
 from typing import TYPE_CHECKING
@@ -17,11 +17,12 @@ from symnet.exact.modular import PRIME
 from symnet.expressions import names_in
 
 if TYPE_CHECKING:
+    from symnet.circuit.network import Network
     from symnet.exact.readable.packed import Polynomial
     from symnet.review.algebra import Value
     from symnet.review.scope import Scope
 
-__all__ = ["NetworkRow", "Row", "Rows", "Span"]
+__all__ = ["NetworkRow", "Row", "Rows", "Span", "ends_of"]
 
 Row = tuple[int, ...]
 
@@ -69,6 +70,16 @@ class Span:
         self._pivots[column] = left
         return True
 
+    def completed(self, free: Sequence[int]) -> list[int]:
+        """The values with which every row in here is zero, from those of the columns that no row determines."""
+        found = [x % PRIME for x in free]
+        for column, pivot in self._pivots.items():
+            others = (
+                a * x for k, (a, x) in enumerate(zip(pivot, free, strict=True)) if k not in self._pivots
+            )
+            found[column] = -sum(others) % PRIME
+        return found
+
 
 @dataclass(frozen=True, slots=True)
 class NetworkRow:
@@ -83,6 +94,21 @@ class NetworkRow:
     value: Value
     names: frozenset[str]
     free: bool = False
+
+
+def ends_of(network: Network) -> Iterator[tuple[str, str, str]]:
+    """Every part and drive that carries a current, with the node where its current leaves and the one it goes to."""
+    for name, drive in zip(network.drive_names, network.drives, strict=True):
+        # A voltage drive takes its current in at plus; a current drive has it leave the network at its start.
+        yield (name, *drive.nodes)
+    for part in network.parts:
+        match part:
+            case Branch(name=name) | CurrentLaw(name=name):
+                yield name, part.start, part.end
+            case VoltageLaw(name=name):
+                yield name, part.plus, part.minus
+            case OpAmp(name=name):
+                yield name, GROUND, part.out
 
 
 class Rows:
@@ -133,22 +159,9 @@ class Rows:
 
     def _leaving(self, node: str) -> tuple[Value, frozenset[str]]:
         """The sum of the currents that leave a node, and the names in it."""
-        network, scope = self.scope.network, self.scope
+        scope = self.scope
         total, names = scope.number(0), {node}
-        ends: list[tuple[str, str, str]] = []
-        for name, drive in zip(network.drive_names, network.drives, strict=True):
-            plus, minus = drive.nodes
-            # A voltage drive takes its current in at plus; a current drive has it leave the network at its start.
-            ends.append((name, plus, minus))
-        for part in network.parts:
-            match part:
-                case Branch(name=name) | CurrentLaw(name=name):
-                    ends.append((name, part.start, part.end))
-                case VoltageLaw(name=name):
-                    ends.append((name, part.plus, part.minus))
-                case OpAmp(name=name):
-                    ends.append((name, GROUND, part.out))
-        for name, start, end in ends:
+        for name, start, end in ends_of(scope.network):
             if node in {start, end} and start != end:
                 current = scope.current(name)
                 total = total + current if node == start else total - current

@@ -10,6 +10,7 @@ from typing import Final
 from symnet.circuit.network import Network
 from symnet.review.coefficients import Comparison
 from symnet.review.completeness import Completeness
+from symnet.review.diagnosis.explanation import Diagnosis
 from symnet.review.polarity import Polarity
 from symnet.review.working import Line, Working
 from symnet.shape.stated import Alternative
@@ -37,6 +38,7 @@ class Judgement:
     the digits it gives, and no further. ``link`` is the place of the first equals sign that does not hold, from 0.
     ``same_as`` is an earlier line that says the same; ``follows`` are the wrong lines that a false line follows from. ``jump`` marks a true line that does not follow from the lines above it.
     ``note`` is what else there is to say, in a sentence. ``comparison`` holds the coefficients of a wrong H.
+    ``diagnosis`` says why a line that follows from no other does not hold.
     """
 
     line: Line
@@ -49,6 +51,7 @@ class Judgement:
     jump: bool = False
     note: str = ""
     comparison: Comparison | None = None
+    diagnosis: Diagnosis | None = None
 
     @property
     def holds(self) -> bool:
@@ -74,6 +77,8 @@ class Judgement:
             text += (
                 f", but follows from the wrong line{many} {' and '.join(line.label for line in self.follows)}"
             )
+        if self.diagnosis is not None:
+            text += f": {self.diagnosis}"
         return f"{text}; {self.note}" if self.note else text
 
 

@@ -57,7 +57,7 @@ def verify(network: Network, working: str | Working) -> Review:
     >>> import symnet as sn
     >>> net = sn.network("in -- R1 -- x -- R2 -- out -- C2 -- gnd; x -- C1 -- gnd; drive in; read out")
     >>> print(sn.verify(net, "x/in = 1/(1 + s*R1*C1)"))
-    1. x/in = 1/(1 + s*R1*C1)    false
+    1. x/in = 1/(1 + s*R1*C1)    false: at node x the current through R2 is left out: the line holds only for R2 -> inf or C2 -> 0
     """
     if isinstance(working, str):
         working = read_working(working)
@@ -118,7 +118,20 @@ class _Stage:
         return self.said[: claims[-1] + 1] if claims else self.said
 
     def judged(self, line: Line) -> Judgement:
-        """The verdict on a line that is neither a definition nor an assumption."""
+        """The verdict on a line that is neither a definition nor an assumption, and why it is false if it is."""
+        judgement = self._judged(line)
+        if judgement.holds or judgement.follows:
+            return judgement
+        from symnet.review.diagnosis.diagnose import diagnose
+        from symnet.review.diagnosis.explanation import Slip
+
+        diagnosis = diagnose(self.judge, self.follower.rows, judgement)
+        if diagnosis is not None and diagnosis.first.slip is Slip.DIMENSION:
+            # A condition between unlike dimensions, such as C2 = 1, is none.
+            judgement = replace(judgement, verdict=Verdict.FALSE, conditions=())
+        return replace(judgement, diagnosis=diagnosis)
+
+    def _judged(self, line: Line) -> Judgement:
         match line.statement:
             case Equation() as equation if is_frequency_claim(self.judge, equation):
                 judgement = judge_frequency(self.judge, line, equation)

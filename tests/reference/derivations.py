@@ -343,7 +343,7 @@ DERIVATIONS: tuple[Derivation, ...] = (
         """,
         wrong="1. o/in = s*L1/((R1 + s*L1)*(1 + s*R2*C1))",
         first="1",
-        about=("R1*C1",),
+        about=("R1*L1*C1",),
         right="1. o/in = s*L1/(R1 + s*(L1 + R1*R2*C1) + s^2*L1*C1*(R1 + R2))",
     ),
     Derivation(

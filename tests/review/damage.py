@@ -20,10 +20,11 @@ from symnet.circuit.parts import Branch
 from symnet.exact.byhand.narration import Step
 from symnet.expressions import Expression, Name, Number, Product, Sum, children, names_in, substitute
 from symnet.present.explain import Explanation
+from symnet.review.verdicts import Review
 from tests.reference.drawings import drawings
 from tests.workings import untrue
 
-__all__ = ["KINDS", "NETWORKS", "Damage", "damages", "told"]
+__all__ = ["KINDS", "NETWORKS", "Damage", "damages", "reviewed", "told"]
 
 Terms: TypeAlias = tuple[tuple[int, Expression], ...]
 Change: TypeAlias = Callable[[Terms, int], Terms]
@@ -68,6 +69,12 @@ def damages(name: str) -> tuple[Damage, ...]:
     network, right = told(name)
     found = (_damaged(name, kind, network, right) for kind in KINDS)
     return tuple(damage for damage in found if damage is not None)
+
+
+@cache
+def reviewed(damage: Damage) -> Review:
+    """What the checker says of a damaged derivation."""
+    return sn.verify(told(damage.network)[0], damage.working)
 
 
 def _damaged(name: str, kind: str, network: Network, right: Explanation) -> Damage | None:
