@@ -54,8 +54,10 @@ if TYPE_CHECKING:
     from symnet.shape.families.elliptic import elliptic
     from symnet.shape.figures import f3db
     from symnet.shape.forms import form
+    from symnet.shape.locus import locus
     from symnet.shape.loop import loop_gain
     from symnet.shape.normal import normalise
+    from symnet.shape.real import real_opamps
     from symnet.shape.recognise import recognise
     from symnet.shape.sections import sections
     from symnet.shape.split import split_poles
@@ -92,6 +94,7 @@ __all__ = [
     "inductor",
     "limits",
     "load",
+    "locus",
     "loop_gain",
     "network",
     "normalise",
@@ -100,6 +103,7 @@ __all__ = [
     "prototypes",
     "push",
     "read",
+    "real_opamps",
     "recognise",
     "resistor",
     "scale",
@@ -138,8 +142,10 @@ _WHERE = {
     "symnet.shape.families.elliptic": "elliptic",
     "symnet.shape.figures": "f3db",
     "symnet.shape.forms": "form",
+    "symnet.shape.locus": "locus",
     "symnet.shape.loop": "loop_gain",
     "symnet.shape.normal": "normalise",
+    "symnet.shape.real": "real_opamps",
     "symnet.shape.recognise": "recognise",
     "symnet.shape.sections": "sections",
     "symnet.shape.split": "split_poles",

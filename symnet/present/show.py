@@ -23,6 +23,7 @@ from symnet.present.brief import Brief
 from symnet.present.difference import comparison_blocks
 from symnet.present.dominant import dominant_blocks, split_blocks
 from symnet.present.explain import Explanation
+from symnet.present.locus import locus_blocks, real_opamps_blocks
 from symnet.present.loop import loop_blocks, stability_blocks
 from symnet.present.network import network_blocks
 from symnet.present.ports import element_blocks, extremes_blocks, matrix_blocks, modes_blocks, two_port_blocks
@@ -50,8 +51,10 @@ from symnet.shape.families.prototype import Prototype
 from symnet.shape.families.tabled import TableSection
 from symnet.shape.figures import HalfPower
 from symnet.shape.forms import Form
+from symnet.shape.locus import Locus
 from symnet.shape.loop import LoopGain
 from symnet.shape.normal import NormalForm
+from symnet.shape.real import RealOpAmps
 from symnet.shape.sections import Sections
 from symnet.shape.split import SplitPoles
 from symnet.shape.stability import Stability
@@ -212,3 +215,13 @@ def _loop_gain(value: LoopGain) -> Bundle:
 @formats(Stability)
 def _stability(value: Stability) -> Bundle:
     return bundle(stability_blocks(value))
+
+
+@formats(Locus)
+def _locus(value: Locus) -> Bundle:
+    return bundle(locus_blocks(value))
+
+
+@formats(RealOpAmps)
+def _real_opamps(value: RealOpAmps) -> Bundle:
+    return bundle(real_opamps_blocks(value))

@@ -11,21 +11,24 @@ ideal.
 from __future__ import annotations
 
 from dataclasses import dataclass, replace
-from fractions import Fraction
-from typing import TYPE_CHECKING, Final
+from typing import TYPE_CHECKING
 
 from symnet.circuit.network import Network
 from symnet.circuit.parts import OpAmp, VoltageLaw
-from symnet.errors import LimitError
-from symnet.exact.derive import quotient_of
-from symnet.expressions import Name, Product, Sum
+from symnet.errors import LimitError, SingularError
+from symnet.exact.polynomials import by_powers_of_s
+from symnet.exact.ports.loop import return_ratio
+from symnet.expressions import Name, Sum
+from symnet.shape.closed import value_of
+from symnet.shape.positive import sign_of
 
 if TYPE_CHECKING:
     from collections.abc import Mapping
+    from fractions import Fraction
+
+    from sympy.polys.rings import PolyElement
 
 __all__ = ["Polarity", "polarities"]
-
-_GAIN: Final = "gain of "  # no name of a network has a space
 
 
 @dataclass(frozen=True, slots=True)
@@ -60,56 +63,37 @@ def polarities(network: Network) -> tuple[Polarity, ...]:
 
 
 def _polarity(network: Network, part: OpAmp) -> Polarity:
-    gain = _GAIN + part.name
-    value = Product(((1, Name(gain)), (1, Sum(((1, _voltage(part.plus)), (-1, _voltage(part.minus)))))))
-    law = VoltageLaw(part.name, part.out, "gnd", value)
+    difference = Sum(((1, _voltage(part.plus)), (-1, _voltage(part.minus))))
+    law = VoltageLaw(part.name, part.out, "gnd", difference)
     finite = replace(
         network, parts=tuple(law if other is part else other for other in network.parts), text=None
     )
-    pieces, quotient = quotient_of(finite, finite.drives[0], Name(finite.nodes[0]))
     try:
-        written = quotient.denominator.written()
+        loop = return_ratio(finite, part.name)
+        without, with_gain = map(by_powers_of_s, loop.parts)
     except LimitError:
         return Polarity(part.name, "open")
-    names = pieces.naming.generators.names
-    place = names.index(gain)
-    sides: tuple[dict[int, list[tuple[int, tuple[int, ...]]]], ...] = ({}, {})
-    for coefficient, exponents in written:
-        sides[0 if exponents[place] else 1].setdefault(exponents[0], []).append((coefficient, exponents))
-    with_gain, without = sides
-    if not with_gain or not without or max(without) < max(with_gain):
+    except SingularError:
+        return Polarity(part.name, "negative")  # nothing but its gain ties the network down
+    if len(without) < len(with_gain):
         return Polarity(part.name, "negative")  # no pole comes from far away
-    numbers = pieces.naming.numbers
-    signs = [_sign(side[max(side)], names, numbers) for side in sides]
+    signs = [_sign(side[-1], loop.naming.numbers) for side in (without, with_gain) if side]
     if None in signs:
         return Polarity(part.name, "open")
-    return Polarity(part.name, "negative" if signs[0] == signs[1] else "positive")
+    return Polarity(part.name, "negative" if len(set(signs)) == 1 else "positive")
 
 
 def _voltage(node: str) -> Name:
     return Name(f"v_{node}" if node != "gnd" else "gnd")
 
 
-def _sign(
-    terms: list[tuple[int, tuple[int, ...]]], names: tuple[str, ...], numbers: Mapping[str, Fraction]
-) -> int | None:
+def _sign(coefficient: PolyElement, numbers: Mapping[str, Fraction]) -> int | None:
     """The sign of a coefficient for positive parts, by the given values where the terms differ in sign."""
-    signs = {c > 0 for c, _ in terms}
-    if len(signs) == 1:
-        return 1 if signs.pop() else -1
-    used = {
-        names[k]
-        for _, exponents in terms
-        for k, e in enumerate(exponents)
-        if e and k and not names[k].startswith(_GAIN)
-    }
-    if not used <= set(numbers):
+    known = sign_of(coefficient)
+    if known is not None:
+        return known
+    try:
+        value = value_of(coefficient, numbers)
+    except KeyError:
         return None
-    total = Fraction(0)
-    for coefficient, exponents in terms:
-        term = Fraction(coefficient)
-        for k, e in enumerate(exponents):
-            if e and names[k] in numbers:
-                term *= numbers[names[k]] ** e
-        total += term
-    return (total > 0) - (total < 0) or None
+    return (value > 0) - (value < 0) or None

@@ -119,7 +119,7 @@ def stability(H: Response) -> Stability:
     if not isinstance(H, Transfer):
         return found
     if found.verdict in {"conditional", "undecided"} and _is_passive(H):
-        found = replace(found, remark=_PASSIVE)
+        found = _of_passive(found, H, h)
     return _with_hidden(found, H)
 
 
@@ -152,6 +152,17 @@ def stability_of(h: Plain) -> Stability:
     if h.numbers is not None:
         return _from_poles(h.numbers)
     return _from_signs(Pair((), put_numbers_in(h.pair.den, h.values)), h.dimensions)
+
+
+def _of_passive(found: Stability, H: Transfer, h: Plain) -> Stability:
+    """What physics proves where signs do not: energy is only lost, and with one kind of store it cannot swing."""
+    kinds = sorted({part.kind for part in H.network.parts if isinstance(part, Branch)})
+    if {"C", "L"} <= set(kinds) or not sure_sign(h.pair.den[0]):
+        return replace(found, remark=_PASSIVE)
+    reason = (
+        f"a network of positive {' and '.join(reversed(kinds))} alone has its poles on the negative real axis"
+    )
+    return Stability("stable", reason, remark=found.remark)
 
 
 def _is_passive(H: Transfer) -> bool:

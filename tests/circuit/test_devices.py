@@ -9,7 +9,7 @@ import pytest
 import symnet as sn
 from symnet.circuit.devices import device_names, device_parameters, device_source
 from symnet.circuit.reading import read_sections
-from symnet.errors import NotationError
+from symnet.errors import NotationError, UnknownNameError
 from tests.reference.comparing import assert_same_function
 
 
@@ -126,3 +126,43 @@ def test_the_positions_of_a_switch_are_exact(x: str, gain: str) -> None:
     text = "in -- R1 = 1k -- out; S1: switch(a=out, b=gnd, x={}); out -- R2 = 1k -- gnd; drive in; read out"
     h = sn.derive(sn.network(text.format(x))).numeric()
     assert str(h.num[0] / h.den[0] if h.num else 0) == gain
+
+
+class TestRealOpAmps:
+    """``with_opamp`` gives the model with exactly the properties that are named."""
+
+    NET = sn.network("""
+        in -- R1 = 1 kohm -- m -- R2 = 10 kohm -- out;  U1: opamp(plus=gnd, minus=m, out=out);  drive in;  read out
+    """)
+
+    def test_it_is_what_one_would_have_typed(self) -> None:
+        typed = sn.network(
+            self.NET.to_text().replace("out=out)", "out=out, gain=100000, gbw=1 MHz, Rout=100 ohm)")
+        )
+        made = self.NET.with_opamp("U1", gain="100k", gbw="1 MHz", Rout="100 ohm")
+        assert sn.derive(made) == sn.derive(typed)
+        assert dict(made.values) == dict(typed.values)
+        assert sn.network(made.to_text()) == made
+
+    def test_none_leaves_a_symbol_and_nothing_makes_it_ideal_again(self) -> None:
+        symbol = self.NET.with_opamp("U1", gbw=None)
+        assert "U1.gbw" in sn.derive(symbol).names
+        assert not [name for name in symbol.symbols() if name.startswith("open_")]
+        assert sn.derive(symbol.with_opamp("U1")) == sn.derive(self.NET)
+
+    def test_of_a_section(self) -> None:
+        net = sn.network("""
+            define stage(a, b)
+            a -- R1 -- m -- R2 -- b;  U1: opamp(plus=gnd, minus=m, out=b)
+            done
+            A1: stage(a=in, b=out);  drive in;  read out
+        """)
+        assert "A1.U1.gain" in sn.derive(net.with_opamp("A1.U1", gain=1000)).names
+
+    def test_faults(self) -> None:
+        with pytest.raises(UnknownNameError, match="no op amp called U2"):
+            self.NET.with_opamp("U2", gain=1)
+        with pytest.raises(NotationError, match="R1 is no op amp"):
+            self.NET.with_opamp("R1", gain=1)
+        with pytest.raises(NotationError, match="no terminal or parameter speed"):
+            self.NET.with_opamp("U1", speed=1)

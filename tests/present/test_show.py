@@ -41,6 +41,8 @@ RESULTS: dict[str, Any] = {
     "loop gain of what swings": sn.loop_gain(
         POSITIVE.with_values(R1="1k", R2="1k", C1="1n", C2="1n", K=4), "amp"
     ),
+    "locus": sn.locus(sn.derive(POSITIVE.with_values(R1="1k", R2="1k", C1="1n", C2="1n", K=2)), "K"),
+    "real op amps": sn.real_opamps(NET, gain="100k", gbw="1 MHz", Rout="100 ohm"),
     "stability": sn.stability(H),
     "stability in symbols": sn.stability(sn.derive(POSITIVE)),
     "brief": sn.brief(NET),

@@ -221,3 +221,11 @@ def test_passive_networks_are_never_unstable() -> None:
     assert "no pole in the right half plane" in found.remark
     negative = stability(derive(net.with_values(R2=-50)))
     assert "no pole" not in negative.remark
+
+
+def test_ladder_of_one_kind_of_store_is_stable_at_any_order() -> None:
+    chain = " -- ".join(f"R{k} -- n{k}" for k in range(1, 7))
+    shunts = "\n".join(f"n{k} -- C{k} -- gnd" for k in range(1, 7))
+    found = stability(derive(network(f"in -- {chain}; drive in; read n6\n{shunts}")))
+    assert found.verdict == "stable"
+    assert found.reason == "a network of positive R and C alone has its poles on the negative real axis"
