@@ -15,6 +15,7 @@ from importlib import import_module
 from typing import TYPE_CHECKING, Any
 
 if TYPE_CHECKING:
+    from symnet.carry.export import export
     from symnet.circuit.build import (
         admittance,
         capacitor,
@@ -85,6 +86,7 @@ __all__ = [
     "elliptic",
     "equations",
     "explain",
+    "export",
     "extra_element",
     "f3db",
     "form",
@@ -117,6 +119,7 @@ __all__ = [
 
 #: module -> the public names that it defines
 _WHERE = {
+    "symnet.carry.export": "export",
     "symnet.circuit.build": "admittance capacitor drive hold impedance inductor load network opamp push read resistor",
     "symnet.circuit.network": "Network",
     "symnet.errors": "SymnetError",

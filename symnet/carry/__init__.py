@@ -1,0 +1,1 @@
+"""H taken elsewhere: second-order factors, arrays, source code, discrete time."""
