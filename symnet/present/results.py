@@ -281,7 +281,8 @@ def _limit_value(limit: Limit, values: Mapping[str, Fraction], dimension: Dimens
 def conditions_blocks(found: Conditions) -> tuple[Block, ...]:
     """One row for each family: when H is a member of it, and its frequencies then."""
     rows: list[tuple[Line, ...]] = [_condition_row(condition) for condition in found.conditions]
-    blocks: list[Block] = [Table(("shape", "H is this shape", "then"), tuple(rows))] if rows else []
+    header = ("shape", "H is this shape", "then")
+    blocks: list[Block] = [without_empty_columns(header, rows)] if rows else []
     if found.quality is not None:
         bound = f"; {found.quality_bound}" if found.quality_bound else ""
         blocks.append(Paragraph(("Q = ", found.quality, bound)))
@@ -299,19 +300,20 @@ def _condition_row(condition: Condition) -> tuple[Line, ...]:
     if condition.status != "always":
         for k, way in enumerate(condition.alternatives):
             when += [" or " if k else "if and only if ", *_way(way)]
+    when += [f", {condition.with_symbols}"] if condition.symbols else []
     then: list[str | Tree | Written] = []
     for k, formula in enumerate(condition.formulas):
         factor = "" if formula.factor == 1 else f"{plain_number(formula.factor, 5)} · "
         worked = f" = {formula.worked}" if formula.worked else ""
         then += [", " if k else "", f"{formula.name} = {factor}", formula.tree, worked]
-    return (condition.name, tuple(when) or "always", tuple(then))
+    return (condition.name, tuple(when) or "always", tuple(then) or "")
 
 
 def _way(way: Alternative) -> Iterator[str | Tree | Written]:
     pieces: list[tuple[str | Tree | Written, ...]] = [
         (Atom(name), " = ", tree, way.worked_out(name)) for name, tree in way.values
     ]
-    pieces += [(left, f" {sign} ", right) for left, sign, right in way.relations]
+    pieces += [(left, f" {sign.replace('>=', '≥')} ", right) for left, sign, right in way.relations]
     for k, piece in enumerate(pieces):
         if k:
             yield " and "

@@ -17,6 +17,7 @@ from symnet.shape.families import CATALOGUE
 from symnet.shape.families.family import Family
 from symnet.shape.families.prototype import ALL_PASS, BAND_PASS, BAND_STOP, HIGH_PASS, LOW_PASS, W0, W3DB
 from symnet.shape.given import Given
+from symnet.shape.irrational import solved_by_coefficients
 from symnet.shape.judging import judged
 from symnet.shape.positive import sign_of
 from symnet.shape.radicals import centre_frequency
@@ -228,6 +229,8 @@ class Question:
                 formulas=() if parameters else formulas,
                 quality=(low, square) if square is not None and not more else None,
             )
+        if not parameters and not more:
+            found = solved_by_coefficients(found, family, low, self.given, self.wanted)
         if order <= 2 and found.status in {"if", "open"}:
             impossible = poles_forbidden(family, self.order, self.places)
             return Condition(name, "never", reason=impossible) if impossible else found

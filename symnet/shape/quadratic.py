@@ -13,6 +13,7 @@ from typing import TYPE_CHECKING, TypeAlias
 
 from symnet.exact.readable.forms import readable, readable_ratio
 from symnet.shape.given import Given
+from symnet.shape.positive import content, divide_content
 from symnet.shape.radicals import root
 from symnet.typeset.tree import ONE, Root, Tree, minus, over, plus, times
 
@@ -92,7 +93,17 @@ def _root(a: PolyElement, b: PolyElement, c: PolyElement, given: Given, sign: in
             bracket = plus(radical, minus(ONE))
             return times(readable_ratio(*b.cancel(2 * a)), bracket)
         bracket = plus(ONE, radical if sign > 0 else minus(radical))
-        front = readable_ratio(*(-b).cancel(2 * a))
+        front = _front(*(-b).cancel(2 * a))
         return times(front, bracket)
     by_formula = root(b * b - 4 * a * c, b.ring.one, 2) if b else root(-4 * a * c, a.ring.one, 2)
     return over(plus(minus(readable(b)), by_formula if sign > 0 else minus(by_formula)), readable(2 * a))
+
+
+def _front(top: PolyElement, bottom: PolyElement) -> Tree:
+    """A ratio that is positive where its terms have both signs: the positive ones first, as in (C1 - C2)*R2/C2."""
+    rest = divide_content(top, *content(top))
+    left = rest.ring.from_dict({m: c for m, c in rest.items() if c > 0})
+    right = rest.ring.from_dict({m: -c for m, c in rest.items() if c < 0})
+    if not left or not right:
+        return readable_ratio(top, bottom)
+    return times(plus(readable(left), minus(readable(right))), readable_ratio(top.exquo(rest), bottom))

@@ -67,7 +67,8 @@ class Condition:
     """When H is a member of one family: ``status`` is "always", "never", "if" (and only if) or "open".
 
     ``alternatives`` are the ways in which it can be; ``reason`` says why never, or why it is left open.
-    ``formulas`` are the references of the shape in the parts; T is the group delay at DC.
+    ``formulas`` are the references of the shape in the parts; T is the group delay at DC. ``symbols`` are numbers
+    that stand in the alternatives as b1, b2, ..., the normalised coefficients of a family that has no formula for them.
     """
 
     name: str
@@ -75,12 +76,22 @@ class Condition:
     alternatives: tuple[Alternative, ...] = ()
     reason: str = ""
     formulas: tuple[Formula, ...] = ()
+    symbols: tuple[tuple[str, float], ...] = ()
+
+    @property
+    def with_symbols(self) -> str:
+        """What b1, b2, ... stand for, or an empty text."""
+        if not self.symbols:
+            return ""
+        told = ", ".join(f"{name} = {value:.5g}" for name, value in self.symbols)
+        return f"with D = 1 + {self.symbols[0][0]}*x + ..., x = s/w0 (low-pass): {told}"
 
     def __str__(self) -> str:
         if self.status in {"never", "open"}:
             return f"{self.name}: {self.status}, {self.reason}"
         ways = " or ".join(f"({a})" if len(self.alternatives) > 1 else str(a) for a in self.alternatives)
         when = "always" if self.status == "always" else f"if and only if {ways}"
+        when += f", {self.with_symbols}" if self.symbols else ""
         then = ", ".join(map(str, self.formulas))
         return f"{self.name}: {when}" + (f", then {then}" if then else "")
 

@@ -29,7 +29,7 @@ def with_numbers(
         solved = _solved(way, known)
         texts = [(name, _text(value, units.get(name, ""))) for name, value in solved.items()]
         texts += _multiples(way, known, units)
-        ways.append(replace(way, worked=tuple(texts)))
+        ways.append(replace(way, worked=tuple(texts) or way.worked))
     if len(ways) == 1:
         known |= _solved(condition.alternatives[0], known)
     formulas: list[Formula] = []

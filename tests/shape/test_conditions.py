@@ -85,7 +85,7 @@ def fulfilled(H: Symbols, condition: Condition, rng: random.Random) -> dict[str,
     """Values that fulfil the condition, free parts drawn at random until the relations hold; None if that fails."""
     for _ in range(200):
         way = rng.choice(condition.alternatives)
-        values = {name: math.exp(rng.uniform(-1, 1)) for name in H.names}
+        values = {name: math.exp(rng.uniform(-1, 1)) for name in H.names} | dict(condition.symbols)
         for _ in way.values:  # a value may hang on another one
             values |= {name: number(tree, values) for name, tree in way.values}
         if all(value > 0 for value in values.values()) and all(
