@@ -32,12 +32,12 @@ def loop_blocks(found: LoopGain) -> tuple[Block, ...]:
         blocks += [Formula((found.T.tree,), "T"), Formula((found.difference.tree,), "1 + T")]
     except LimitError as error:
         blocks.append(Paragraph(f"T is not written out: {error.faults[0].message}."))
+    by_formula = found.crossover_in_symbols
+    if by_formula is not None:
+        blocks.append(Paragraph(("|T| = 1 at w = ", by_formula, ".")))
     try:
         rows = tuple(_rows(found))
     except MissingValueError as error:
-        by_formula = found.crossover_in_symbols
-        if by_formula is not None and by_formula.closed is not None:
-            blocks.append(Paragraph(("|T| = 1 at w = ", by_formula.closed.tree(), ".")))
         blocks.append(Paragraph(f"No margins in numbers: {error.faults[0].message}."))
     except SymnetError as error:
         blocks.append(Paragraph(error.faults[0].message + "."))

@@ -16,7 +16,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
 from itertools import zip_longest
-from typing import Any, Literal, TypeAlias
+from typing import Any, Final, Literal, TypeAlias
 
 from symnet.circuit.network import Network
 from symnet.errors import Fault, LimitError, SymnetError, UndefinedError
@@ -26,21 +26,26 @@ from symnet.exact.polynomials import by_powers_of_s
 from symnet.exact.ports.figures import Parameter
 from symnet.exact.ports.loop import ReturnRatio, return_ratio
 from symnet.exact.ratio import Ratio
-from symnet.exact.roots import Root, roots
+from symnet.exact.readable.forms import readable
+from symnet.exact.roots import Root as Place
+from symnet.exact.roots import roots
 from symnet.quantities import HERTZ
 from symnet.response.frequency import halves, squared_magnitude
-from symnet.shape.closed import Closed, Figure, figure, power_product
+from symnet.shape.closed import Closed, Figure, power_product
 from symnet.shape.figures import frequency_of_square, signs_around
 from symnet.shape.positive import sign_of
 from symnet.shape.stability import Stability, stability_of_factor
 from symnet.typeset.displayed import Displayed
+from symnet.typeset.length import length
+from symnet.typeset.tree import Root, Tree, minus, over, plus
 
 __all__ = ["Crossover", "GainLimit", "LoopGain", "loop_gain"]
 
 Direction: TypeAlias = Literal["falling", "rising", "touching"]
 
 #: What |T| = 1 in symbols may come to before it is left alone.
-_MOST_TERMS = 60
+_MOST_TERMS: Final = 60
+_LONGEST_FORMULA: Final = 400
 
 
 @dataclass(frozen=True, slots=True)
@@ -151,10 +156,18 @@ class LoopGain(Displayed):
             return None
 
     @property
-    def crossover_in_symbols(self) -> Figure | None:
-        """The angular frequency where |T| = 1 by formula, where there is one only and it can be read; else None."""
+    def crossover_in_symbols(self) -> Tree | None:
+        """The angular frequency w where |T| = 1, as a formula, where there is exactly one for all values; else None.
+
+        It is read where |T|^2 = 1 is of first or second degree in w^2, or holds two powers of it only.
+        """
         closed = self._closed_crossover
-        return None if closed is None else figure(closed, self.exact.naming.numbers, HERTZ)
+        if closed is not None:
+            return closed.tree()
+        try:
+            return _quadratic_crossover(self.T)
+        except LimitError:
+            return None
 
     @cached_property
     def _gain_limits(self) -> tuple[GainLimit, ...]:
@@ -310,7 +323,7 @@ def _times_conjugate(p: Sequence[Any], q: Sequence[Any], part: Literal["even", "
     return _difference(_product(b, c), _product(a, d))
 
 
-def _real_roots_apart(p: Sequence[Fraction], q: Sequence[Fraction]) -> list[Root]:
+def _real_roots_apart(p: Sequence[Fraction], q: Sequence[Fraction]) -> list[Place]:
     """The real roots of p at which q is not zero: at the others T is 0 or infinite; none where p is 0 throughout."""
     one, other = (dense.primitive(each)[1] for each in (p, q))
     if not one or not other:
@@ -328,12 +341,17 @@ def _value(p: Sequence[Fraction], x: Fraction) -> Fraction:
     return total
 
 
-def _closed_crossover(T: Parameter) -> Closed | None:
-    """Where |T|^2 = 1 is a binomial in x = w^2 with terms of opposite sign, its only positive root."""
+def _unit_gain(T: Parameter) -> list[tuple[int, Any]]:
+    """|N|^2 - |D|^2 by powers of x = w^2, those that are there; nothing where it would be long."""
     n, d = by_powers_of_s(T.numerator), by_powers_of_s(T.denominator)
     if sum(map(len, n)) * sum(map(len, d)) > _MOST_TERMS or not n:
-        return None
-    there = [(k, c) for k, c in enumerate(_difference(_squared(n), _squared(d))) if c]
+        return []
+    return [(k, c) for k, c in enumerate(_difference(_squared(n), _squared(d))) if c]
+
+
+def _closed_crossover(T: Parameter) -> Closed | None:
+    """Where |T|^2 = 1 is a binomial in x = w^2 with terms of opposite sign, its only positive root."""
+    there = _unit_gain(T)
     if len(there) != 2:
         return None
     (low, a), (high, b) = there
@@ -343,3 +361,20 @@ def _closed_crossover(T: Parameter) -> Closed | None:
     a, b = (c if sign == 1 else -c for c, sign in zip((a, b), signs, strict=True))
     exponent = Fraction(1, 2 * (high - low))
     return power_product(a.ring.one, a.ring.one, {a: exponent, b: -exponent})
+
+
+def _quadratic_crossover(T: Parameter) -> Tree | None:
+    """Where it is a x^2 + b x + c with a and c of opposite sign: sqrt((sqrt(b^2 - 4 a c) - b)/(2 a)), b of any sign."""
+    there = _unit_gain(T)
+    powers = [k for k, _ in there]
+    if len(there) != 3 or powers != list(range(powers[0], powers[0] + 3)):
+        return None
+    c, b, a = (coefficient for _, coefficient in there)
+    signs = sign_of(a), sign_of(c)
+    if None in signs or signs[0] == signs[1]:
+        return None
+    if signs[0] == -1:
+        a, b, c = -a, -b, -c
+    inner = Root(readable(b * b - 4 * a * c), 2)
+    tree = Root(over(plus(inner, minus(readable(b))), readable(2 * a)), 2)
+    return tree if length(tree) <= _LONGEST_FORMULA else None

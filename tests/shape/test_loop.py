@@ -11,6 +11,8 @@ import pytest
 import symnet as sn
 from symnet.errors import MissingValueError, NotationError, SingularError, UndefinedError, UnknownNameError
 from symnet.shape.loop import loop_gain
+from symnet.typeset.tree import evaluate
+from symnet.typeset.writing import to_text
 from tests import oracle
 
 #: A photodiode amplifier (invented): Rf = 100 kohm, Cin = 20 pF, gain-bandwidth product 10 MHz.
@@ -163,12 +165,29 @@ def test_static_loop() -> None:
 def test_crossover_in_symbols() -> None:
     network = sn.network("in -- R1 -- m -- R2 -- out;  hold out = -wt*m/s as amp;  drive in;  read out")
     loop = loop_gain(network, "amp")
-    assert repr(loop.crossover_in_symbols) == "wt*R1/(R1 + R2) 1/s"
+    assert loop.crossover_in_symbols is not None
+    assert to_text(loop.crossover_in_symbols) == "wt*R1/(R1 + R2)"
     with pytest.raises(MissingValueError, match="R1"):
         loop.phase_margin()
     valued = loop_gain(network.with_values(R1="1k", R2="9k", wt="1e6"), "amp")
     assert valued.crossovers()[0].w.value == pytest.approx(1e5)
     assert valued.phase_margin() == pytest.approx(90)
+
+
+def test_crossover_of_second_degree_in_symbols() -> None:
+    """(w Rf Cin)^2 w^2 + w^2 = wt^2 by hand; with Cf the sign of the middle term is open, and there is one root all the same."""
+    flat = sn.network(PHOTODIODE.replace("Rf || Cf", "Rf")).with_values(
+        {"U1.gbw": None, "Rf": None, "Cin": None}
+    )
+    formula = loop_gain(flat, "U1").crossover_in_symbols
+    assert formula is not None
+    assert to_text(formula) == "sqrt((sqrt(1 + 4*U1.gbw^2*Rf^2*Cin^2) - 1)/(2*Rf^2*Cin^2))"
+    loop = loop_gain(photodiode("2.005 pF"), "U1")
+    assert loop.crossover_in_symbols is not None
+    values = {name: float(value) for name, value in loop.exact.naming.numbers.items()}
+    assert evaluate(loop.crossover_in_symbols, values.__getitem__, float) == pytest.approx(
+        loop.crossovers()[0].w.value, rel=1e-9
+    )
 
 
 def test_no_loop() -> None:
