@@ -12,7 +12,9 @@ from dataclasses import dataclass
 from fractions import Fraction
 from typing import TYPE_CHECKING, Final
 
+from symnet.errors import LimitError
 from symnet.exact.readable.forms import readable_ratio
+from symnet.shape.bounded import Bounded
 from symnet.shape.families import CATALOGUE
 from symnet.shape.families.family import Family
 from symnet.shape.families.prototype import ALL_PASS, BAND_PASS, BAND_STOP, HIGH_PASS, LOW_PASS, W0, W3DB
@@ -205,21 +207,20 @@ class Question:
             impossible = poles_forbidden(family, self.order, self.places)
         if impossible:
             return Condition(name, "never", reason=impossible)
-        work = max(len(x) * len(y) for x in low for y in low)
-        if work > _MOST_TERMS:
-            found = Condition(
-                name,
-                "open",
-                reason=f"products of {work} terms would have to be written out; give values to most of the parts",
-            )
+        if band in {LOW_PASS, HIGH_PASS}:
+            formulas = _formulas(family, low, band)
+        try:
+            wide = [Bounded(c) for c in low]
+            equations = [e.element for e in family.conditions(wide) or ()]
+            positives = [p.element for p in family.positives(wide)]
+        except LimitError as stopped:
+            reason = f"{stopped} would have to be written out; give values to most of the parts"
+            found = Condition(name, "open", reason=reason)
         else:
-            if band in {LOW_PASS, HIGH_PASS}:
-                formulas = _formulas(family, low, band)
-            equations, positives = family.conditions(low) or (), family.positives(low)
             square = _exact_quality(family, order)
             if square is not None:  # order 2 is a matter of Q
-                equations = (square.denominator * low[0] * low[2] - square.numerator * low[1] ** 2,)
-                positives = ()
+                equations = [square.denominator * low[0] * low[2] - square.numerator * low[1] ** 2]
+                positives = []
             found = judged(
                 name,
                 (*more, *equations),
@@ -229,7 +230,7 @@ class Question:
                 formulas=() if parameters else formulas,
                 quality=(low, square) if square is not None and not more else None,
             )
-        if not parameters and not more:
+        if not parameters and not more and family.exact(order, ()) is None:
             found = solved_by_coefficients(found, family, low, self.given, self.wanted)
         if order <= 2 and found.status in {"if", "open"}:
             impossible = poles_forbidden(family, self.order, self.places)

@@ -13,6 +13,7 @@ from collections.abc import Collection, Sequence
 from dataclasses import dataclass
 from functools import lru_cache
 from itertools import combinations
+from math import inf
 from typing import TYPE_CHECKING, Any, Final
 
 from symnet.shape.given import NOTHING, Given
@@ -28,6 +29,7 @@ _MOST_TERMS: Final = 120  # terms of an equation after a solution has been put i
 _MOST_BRANCHES: Final = 6
 _MOST_ELIMINATED: Final = 20  # terms, and below the degree, of two polynomials whose resultant is computed
 _HIGHEST_ELIMINATED: Final = 4
+_MOST_WORK: Final = 1000  # terms that the resultant can have
 
 
 @dataclass(frozen=True, slots=True)
@@ -209,7 +211,7 @@ def _exclude_each_other(equations: Sequence[PolyElement], given: Given) -> bool:
     small = [e for e in equations if len(e) <= _MOST_ELIMINATED]
     for f, g in combinations(small, 2):
         for index in range(1, f.ring.ngens):
-            if all(0 < max(m[index] for m in p) <= _HIGHEST_ELIMINATED for p in (f, g)):
+            if _elimination_work(f, g, index) <= _MOST_WORK:
                 symbols = list(f.ring.symbols)
                 ring = f.ring.clone(symbols=[symbols[index], *symbols[:index], *symbols[index + 1 :]])
                 eliminated = f.set_ring(ring).resultant(g.set_ring(ring)).set_ring(f.ring)
@@ -217,6 +219,20 @@ def _exclude_each_other(equations: Sequence[PolyElement], given: Given) -> bool:
                     return True
                 break
     return False
+
+
+def _elimination_work(f: PolyElement, g: PolyElement, index: int) -> float:
+    """How many terms the resultant can have, which has the degree of one polynomial in the coefficients of the other."""
+    degrees, longest = [], []
+    for p in (f, g):
+        counts: dict[int, int] = {}
+        for m in p:
+            counts[m[index]] = counts.get(m[index], 0) + 1
+        degrees.append(max(counts))
+        longest.append(max(counts.values()))
+    if not all(0 < degree <= _HIGHEST_ELIMINATED for degree in degrees):
+        return inf
+    return float(longest[0] ** degrees[1] * longest[1] ** degrees[0])
 
 
 def _product(factors: Sequence[PolyElement]) -> PolyElement:
