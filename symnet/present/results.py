@@ -22,7 +22,7 @@ from symnet.present.blocks import (
 )
 from symnet.present.formulas import amount, label_tree, with_power_of_s
 from symnet.quantities import AMPERE, NUMBER, SECOND, VOLT, Dimension
-from symnet.shape.stability import stability_of_factor, stability_of_mode
+from symnet.shape.stability import cancelled_by_values, stability_of_factor, stability_of_mode
 from symnet.typeset.notation import tree_of
 from symnet.typeset.numbers import Written, complex_quantity, plain_number, quantity
 from symnet.typeset.polynomials import collected
@@ -139,7 +139,7 @@ def _hidden(transfer: Transfer) -> Iterator[Line]:
             f"{parts}; {mode.reason.value}",
             _fate(mode, transfer),
         )
-    common = _cancelled_by_values(transfer)
+    common = cancelled_by_values(transfer)
     if len(common) > 1:
         fate = _said(stability_of_factor(common))
         said = "hidden mode with these values, and only with exactly these: a factor with s cancels that is there in symbols"
@@ -150,7 +150,7 @@ def _hidden(transfer: Transfer) -> Iterator[Line]:
 
 def hides(transfer: Transfer) -> bool:
     """Whether a mode of the network does not show in this H, in symbols or with its values."""
-    return bool(transfer.hidden) or len(_cancelled_by_values(transfer)) > 1
+    return bool(transfer.hidden) or len(cancelled_by_values(transfer)) > 1
 
 
 def _tail(found: Sequence[Root]) -> Iterator[str | Written]:
@@ -204,20 +204,6 @@ def _said(stability: Stability) -> str:
             return "; it dies out for some values only: give the parts values"
         case _:
             return ""
-
-
-def _cancelled_by_values(transfer: Transfer) -> Sequence[Fraction]:
-    """The factor that N and D, in lowest terms in symbols, have in common once the values are put in."""
-    from symnet.exact.ratio import Ratio
-    from symnet.shape.closed import value_of
-
-    if not transfer.is_numeric or transfer.numeric().order == _order(transfer):
-        return ()
-    n, d = (
-        [value_of(coefficient, transfer.values) for coefficient in by_powers_of_s(polynomial)]
-        for polynomial in (transfer.numerator, transfer.denominator)
-    )
-    return Ratio.reduced(n, d)[1] if any(n) and any(d) else ()
 
 
 def _places(found: Sequence[Root]) -> Iterator[str | Written]:

@@ -18,14 +18,16 @@ from typing import TYPE_CHECKING, Any, Final, Literal, TypeAlias
 
 from symnet.circuit.parts import Branch
 from symnet.errors import LimitError
+from symnet.exact import dense
+from symnet.exact.derive import determinant_of
 from symnet.exact.polynomials import by_powers_of_s
 from symnet.exact.ratio import Ratio
 from symnet.exact.transfer import Transfer
 from symnet.quantities import Dimension
-from symnet.shape.closed import Coefficient
+from symnet.shape.closed import Coefficient, value_of
 from symnet.shape.factors import factors_in_s
 from symnet.shape.inequalities import inequality, put_numbers_in, sure_sign
-from symnet.shape.plain import Pair, Plain, Response, plain
+from symnet.shape.plain import MOST_TERMS_BESIDE_NUMBERS, Pair, Plain, Response, plain
 from symnet.shape.positive import as_squares, content, divide_content
 from symnet.shape.routh import HalfPlanes, half_planes, hurwitz
 from symnet.shape.stated import Relation
@@ -38,6 +40,7 @@ if TYPE_CHECKING:
 __all__ = [
     "Stability",
     "Verdict",
+    "cancelled_by_values",
     "stability",
     "stability_of",
     "stability_of_factor",
@@ -147,6 +150,22 @@ def stability_of_mode(mode: HiddenMode, transfer: Transfer) -> Stability:
         )
 
 
+def cancelled_by_values(H: Transfer) -> Sequence[Fraction]:
+    """The factor that N and D, in lowest terms in symbols, have in common once the values are put in; ascending in s.
+
+    Empty where there is none, where a name has no value, and where H is too long to be written out.
+    """
+    if not H.is_numeric or not H.quotient.is_writable:
+        return ()
+    n, d = (
+        [value_of(coefficient, H.values) for coefficient in by_powers_of_s(polynomial)]
+        for polynomial in (H.numerator, H.denominator)
+    )
+    if len(d) - 1 == H.numeric().order or not any(n) or not any(d):
+        return ()
+    return Ratio.reduced(n, d)[1]
+
+
 def stability_of(h: Plain) -> Stability:
     """As :func:`stability`, for plain data: what H itself says."""
     if h.numbers is not None:
@@ -172,8 +191,22 @@ def _is_passive(H: Transfer) -> bool:
     return kinds and not H.network.couplings and all(value >= 0 for value in H.values.values())
 
 
+def _hidden(H: Transfer) -> tuple[tuple[tuple[str, ...], Stability], ...]:
+    """What H hides: mode by mode, or in numbers as one where H is too long in symbols for that."""
+    numbers = all(name in H.values for name in H.naming.generators.names[1:]) and not H.naming.irrational
+    if numbers and sum(H.terms) > MOST_TERMS_BESIDE_NUMBERS:
+        pieces, determinant = determinant_of(H.network)
+        values = [pieces.naming.numbers[name] for name in pieces.naming.generators.names[1:]]
+        whole, shown = (dense.primitive(c)[1] for c in (determinant.coefficients(values), H.numeric().den))
+        rest = dense.gcd(whole, shown)[1]
+        return (((), stability_of_factor([Fraction(c) for c in rest])),) if len(rest) > 1 else ()
+    found = tuple((mode.parts, stability_of_mode(mode, H)) for mode in H.hidden)
+    common = cancelled_by_values(H)
+    return (*found, ((), stability_of_factor(common))) if len(common) > 1 else found
+
+
 def _with_hidden(found: Stability, H: Transfer) -> Stability:
-    hidden = tuple((mode.parts, stability_of_mode(mode, H)) for mode in H.hidden)
+    hidden = _hidden(H)
     if not hidden:
         return found
     parts, worst = max(hidden, key=lambda one: _RANK.index(one[1].verdict))

@@ -197,6 +197,34 @@ def test_mode_that_h_hides_counts() -> None:
         assert [parts for parts, _ in found.hidden] == [("L1", "C2")]
 
 
+def test_mode_that_cancels_by_its_values_counts() -> None:
+    """The null of a trap before a buffer falls on a tank behind it: H is flat there, and the tank rings for ever."""
+    net = network("""
+        in -- R1 -- a;  a -- L1 + C1 -- gnd;  push from gnd to c = gm*a;  c -- L2 || C2 -- gnd
+        R1 = 1k;  L1, L2 = 1 mH;  C1, C2 = 1 nF;  gm = 1 mS;  drive in;  read c
+    """)
+    found = stability(derive(net))
+    assert found.verdict == "marginal"
+    assert found.reason.startswith(
+        "H is stable (both poles in the left half plane), but a mode that it hides is"
+    )
+    beside = stability(derive(net.with_values(C2="2 nF")))
+    assert (beside.verdict, beside.hidden) == ("marginal", ())
+
+
+@pytest.mark.parametrize(("beside", "verdict"), [("", "stable"), ("n3 -- C99 = 1 nF -- n98 -- L99 = 1 mH -- in", "stable"),
+    ("in -- C99 = 1 nF -- n98 -- L99 = 1 mH -- gnd", "marginal")])  # fmt: skip
+def test_long_networks_are_judged_in_numbers(beside: str, verdict: str) -> None:
+    """A ladder of 40 sections is never written out; a lossless pair across its drive is found all the same."""
+    chain = " -- ".join(f"R{k} -- n{k}" for k in range(1, 41))
+    shunts = "\n".join(f"n{k} -- C{k} = 1 nF -- gnd;  R{k} = 1 kohm" for k in range(1, 41))
+    found = stability(derive(network(f"in -- {chain}; drive in; read n40\n{shunts}\n{beside}")))
+    assert found.verdict == verdict
+    assert found.planes is not None
+    assert found.planes.left == 40 + 2 * (verdict == "stable" and bool(beside))
+    assert len(found.hidden) == (verdict == "marginal")
+
+
 def test_twin_t_null_in_a_loop_of_gain_one_is_marginal() -> None:
     """An ideal amplifier whose only feedback is a twin-T has its poles at the null: R, R, R/2 and C, C, 2C."""
     net = network("""
