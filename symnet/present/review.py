@@ -160,7 +160,8 @@ def _sentence(text: str) -> str:
     """A sentence with its full stop; a name at its head keeps its letters."""
     head, _, rest = text.partition(" ")
     begins = head.isalpha() and head.islower() and len(head) > 1
-    return f"{head.capitalize() if begins else head} {rest}."
+    stop = "" if text.endswith("?") else "."
+    return f"{head.capitalize() if begins else head} {rest}{stop}"
 
 
 def _coefficients(comparison: Comparison) -> Table:

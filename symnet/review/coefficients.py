@@ -25,7 +25,7 @@ if TYPE_CHECKING:
     from symnet.exact.readable.packed import Polynomial
     from symnet.review.scope import Scope
 
-__all__ = ["Coefficient", "Comparison", "compare_coefficients"]
+__all__ = ["Coefficient", "Comparing", "Comparison", "compare_coefficients"]
 
 _MOST_TERMS: Final = 200
 _TURNED: Final = 100  # no scale that turns the sign of a denominator is taken for one that does not
@@ -101,7 +101,7 @@ def compare_coefficients(scope: Scope, exact: Expression, claim: Expression) -> 
     used = {name for side in sides for monomial in side for name in algebra.exponents(monomial)}
     if not used <= set(names):
         return None
-    comparing = _Comparing(scope, names)
+    comparing = Comparing(scope, names)
     claims = [comparing.as_written(*written), comparing.scaled_like(reduced, written[1])]
     return min((comparing.compare(truth, mine) for mine in claims if mine), key=lambda pair: pair[0])[1]
 
@@ -120,7 +120,7 @@ def _sides(scope: Scope, claim: Expression) -> tuple[Value, Value]:
     return sides[0], sides[1]
 
 
-class _Comparing:
+class Comparing:
     """Claim and truth in one ring."""
 
     def __init__(self, scope: Scope, names: tuple[str, ...]) -> None:
@@ -142,6 +142,10 @@ class _Comparing:
             return number(0)
         top, bottom = (self.element(side) for side in (value.numerator, value.denominator))
         return readable_ratio(*top.cancel(bottom))
+
+    def quotient(self, above: Polynomial, below: Polynomial) -> Tree:
+        """A quotient of polynomials as it is read."""
+        return readable_ratio(*self.element(above).cancel(self.element(below)))
 
     def parts(self, side: Polynomial, factor: Value) -> dict[int, Value]:
         """The coefficients of one side by their power of s, each times a factor."""

@@ -22,17 +22,15 @@ if TYPE_CHECKING:
     from symnet.review.judge import Judge
     from symnet.review.scope import Scope
 
-__all__ = ["Near", "judge_limit"]
+__all__ = ["Near", "judge_limit", "limit_name"]
 
 _FREQUENCIES = {"w": "s", "omega": "s", "f": "s"}
 
 
 def judge_limit(judge: Judge, line: Line, limit: Limit) -> Judgement:
     """The verdict on a limit."""
-    name = limit.name
-    if name in _FREQUENCIES and name not in judge.scope.network.symbols():
-        name = _FREQUENCIES[name]
     scope = judge.scope
+    name = limit_name(scope, limit.name)
     if name not in scope.solution.naming.names or (name != "s" and name in scope.definitions):
         known = ", ".join(scope.solution.naming.generators.names)
         raise NotationError(
@@ -56,6 +54,11 @@ def judge_limit(judge: Judge, line: Line, limit: Limit) -> Judgement:
     if exact is None:
         return Judgement(line, Verdict.FALSE, note=near.note(scope, limit))
     return judge.conditional(line, (exact,))
+
+
+def limit_name(scope: Scope, name: str) -> str:
+    """The name in which a limit is taken: w and f go where s goes."""
+    return name if name in scope.network.symbols() else _FREQUENCIES.get(name, name)
 
 
 class Near:

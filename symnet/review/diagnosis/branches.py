@@ -195,6 +195,7 @@ class AtNode:
             slip is Slip.MISSING_TERM and _voltages(self, new) != _voltages(self, term.expression)
         ):
             slip = Slip.NODE
+            lacks = self.node not in _voltages(self, term.expression)
             where = _elsewhere(self, term.expression)
             new = branch.leaving if k in {1, PRIME - 1} else new
             if new is branch.leaving:
@@ -202,7 +203,10 @@ class AtNode:
                 new = new if outward > 0 else turned(new)
                 hypothesis = replace(hypothesis, sides=put(self.sides, term.path, new))
             right = signed(term.sign, new)
-            words = f"at node {self.node}, {called} goes to {other}: its current is {right}; the line has {has}, as if it went to {where}"
+            words = (
+                f"at node {self.node}, {called} goes to {other}: its current is {right}; the line has {has}, "
+            )
+            words += f"without the voltage of {self.node} itself" if lacks else f"as if it went to {where}"
         elif slip is Slip.PART:
             words = f"at node {self.node} the branch to {other} is {called}: its current is {right}, the line has {has}"
         else:
@@ -257,11 +261,12 @@ class AtNode:
         for term in self.terms:
             if term not in left:
                 sides[term.path[0]].append((term.sign if term.path[0] == 0 else -term.sign, term.expression))
-        said = []
+        said, forgotten = [], 0
         for branch in missing:
             owner = next((t for t in left if branch.name in {n.name for n in names_in(t.expression)}), None)
             if owner is None:
                 said.append(f"no current through {branch.called}")
+                forgotten += 1
             else:
                 said.append(
                     f"{signed(owner.sign, owner.expression)} for the current through {branch.called}, which is {signed(outward, branch.leaving)}"
@@ -275,7 +280,9 @@ class AtNode:
         words = (
             f"at node {self.node} the network has the branches {names}; the line has {'; and '.join(said)}"
         )
-        slip = Slip.MISSING_BRANCH if missing else Slip.EXTRA_BRANCH
+        slip = Slip.MISSING_BRANCH if forgotten else Slip.EXTRA_BRANCH if others else Slip.SEVERAL
+        if slip is Slip.SEVERAL and len(missing) == 1:
+            slip = Slip.PART
         return Hypothesis(
             slip,
             3 + len(said),

@@ -18,9 +18,11 @@ from symnet.expressions import Expression, Name, Number, Product, children
 from symnet.review.diagnosis.explanation import Explanation, Slip
 from symnet.review.diagnosis.pieces import scaled, shown
 from symnet.review.diagnosis.places import Path, put, spliced
+from symnet.review.diagnosis.shapes import in_numbers, shape_of
 from symnet.review.frequencies import is_frequency_claim, judge_frequency
 from symnet.review.verdicts import Verdict
 from symnet.review.working import FIGURES, Equation
+from symnet.shape.figures import f3db
 
 if TYPE_CHECKING:
     from symnet.review.judge import Judge
@@ -66,6 +68,12 @@ class Figures:
         known = isinstance(first, Name) and self.judge.scope.is_figure(first.name)
         return FIGURES[first.name] if known and isinstance(first, Name) else ""
 
+    def _typed(self, claim: Expression) -> str:
+        """The claim in a sentence; a number as it was typed, unit and all."""
+        if isinstance(claim, Number) and claim.span:
+            return self.judge.text[claim.span.start : claim.span.end]
+        return shown(claim)
+
     def _true(self, left: Expression, right: Expression) -> bool:
         """Whether a line of its own would hold."""
         statement = Equation((left, right), of=self.statement.of)
@@ -84,23 +92,33 @@ class Figures:
             return
         for other in _TAKEN[figure]:
             if self._true(Name(other), claim):
-                words = f"{shown(claim)} is {other}, not {figure}: {other} is {_MEANING[other].removeprefix(other + ' = ')}"
+                words = f"{self._typed(claim)} is {other}, not {figure}: {other} is {_MEANING[other].removeprefix(other + ' = ')}"
                 if figure in {"f3dB", "w3dB"} and other in {"w0", "f0"}:
-                    words = f"{shown(claim)} is {_MEANING[other]}; the -3 dB frequency is another one{self._ratio(figure)}"
+                    words = f"{self._typed(claim)} is {_MEANING[other]}; the -3 dB frequency is another one{self._ratio(figure)}"
                 elif {figure, other} in ({"w0", "f0"}, {"w3dB", "f3dB"}):
-                    words = f"{shown(claim)} is {_MEANING[other]}: a factor 2*pi between rad/s and Hz"
+                    words = f"{self._typed(claim)} is {_MEANING[other]}: a factor 2*pi between rad/s and Hz"
                 yield Explanation(Slip.CONVENTION, words)
                 return
         if figure in {"zeta", "Q"}:
             yield from self._twice(figure, claim)
         yield from self._factors(figure, claim)
         yield from self._noise_gain(figure, claim)
+        yield from self._times(figure, claim)
+
+    def plain(self) -> Equation | None:
+        """The line as an equation of values; f3dB as f0 where the two are one, and None where they are not."""
+        if not self.figure or not is_frequency_claim(self.judge, self.statement):
+            return self.statement
+        other = {"f3dB": "f0", "w3dB": "w0"}.get(self.figure)
+        if other is None or not self._true(Name(self.figure), Name(other)):
+            return None
+        return replace(self.statement, sides=(Name(other), *self.statement.sides[1:]))
 
     def _twice(self, figure: str, claim: Expression) -> Iterator[Explanation]:
         two = Product(((1, Number(Fraction(2))), (1, Name(figure))))
         right = scaled(claim, Fraction(1, 2))
         if self._true(two, claim):
-            words = f"{shown(claim)} is 2*{figure}, not {figure}: {figure} = {shown(right)}"
+            words = f"{self._typed(claim)} is 2*{figure}, not {figure}: {figure} = {shown(right)}"
             if figure == "zeta":
                 words += ", since D = 1 + 2*zeta*s/w0 + s^2/w0^2"
             yield self._put(Slip.CONVENTION, words, right)
@@ -108,7 +126,7 @@ class Figures:
         if self._true(half, claim):
             right = scaled(claim, Fraction(2))
             yield self._put(
-                Slip.CONVENTION, f"{shown(claim)} is {figure}/2: {figure} = {shown(right)}", right
+                Slip.CONVENTION, f"{self._typed(claim)} is {figure}/2: {figure} = {shown(right)}", right
             )
 
     def _factors(self, figure: str, claim: Expression) -> Iterator[Explanation]:
@@ -133,15 +151,32 @@ class Figures:
                 yield self._put(Slip.CONVENTION, words, right)
                 return
 
+    def _times(self, figure: str, claim: Expression) -> Iterator[Explanation]:
+        """A usual number between a claimed frequency and the -3 dB frequency of a response in numbers."""
+        scope = self.judge.numeric or self.judge.scope
+        where = self.statement.of or Name("H")
+        ratio, value = in_numbers(scope, where), in_numbers(scope, claim)
+        if figure not in {"f3dB", "w3dB"} or ratio is None or value is None or not value.num:
+            return
+        try:
+            crossings = f3db(ratio)
+        except SymnetError:
+            return
+        claimed = float(value.num[0] / value.den[0])
+        for crossing in crossings:
+            right = crossing.f * (1 if figure == "f3dB" else 2 * math.pi)
+            for number in (2.0, 0.5, 1e3, 1e-3, 10.0, 0.1):
+                if math.isclose(claimed, number * right, rel_tol=5e-3):
+                    words = f"{self._typed(claim)} is {number:g} times the {_MEANING[figure].removeprefix('the ')}"
+                    yield Explanation(Slip.FACTOR, words)
+                    return
+
     def _put(self, slip: Slip, words: str, right: Expression) -> Explanation:
         sides = (*self.statement.sides[:-1], right)
         return Explanation(slip, words, (), replace(self.statement, sides=sides))
 
     def _ratio(self, figure: str) -> str:
         """What the -3 dB frequency is as a multiple of w0, where that is one number for all values."""
-        from symnet.review.diagnosis.shapes import shape_of
-        from symnet.shape.figures import f3db
-
         ratio = shape_of(self.judge.scope, self.statement.of)
         if ratio is None:
             return ""

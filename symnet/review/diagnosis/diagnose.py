@@ -22,8 +22,9 @@ from symnet.review.diagnosis.branches import AtNode
 from symnet.review.diagnosis.conventions import Figures
 from symnet.review.diagnosis.examples import counterexample, figures_of, reach
 from symnet.review.diagnosis.exchanged import exchanges
-from symnet.review.diagnosis.explanation import Diagnosis, Explanation, Slip
+from symnet.review.diagnosis.explanation import Counterexample, Diagnosis, Explanation, Slip
 from symnet.review.diagnosis.leftout import LeftOut
+from symnet.review.diagnosis.meanings import of_limit, of_part
 from symnet.review.diagnosis.pieces import shown
 from symnet.review.diagnosis.places import at, places
 from symnet.review.diagnosis.point import Point, UnreadableError
@@ -31,9 +32,8 @@ from symnet.review.diagnosis.shapes import family_slip, normalisation
 from symnet.review.diagnosis.slips import Finder, Hypothesis
 from symnet.review.diagnosis.transfers import of_comparison
 from symnet.review.diagnosis.units import Misfit, dimension_in, known_dimensions, misfits, unit_of
-from symnet.review.frequencies import is_frequency_claim
 from symnet.review.verdicts import Verdict
-from symnet.review.working import Equation, Family, Line
+from symnet.review.working import Equation, Family, Limit, Line
 
 if TYPE_CHECKING:
     from symnet.quantities import Dimension
@@ -67,12 +67,18 @@ def diagnose(judge: Judge, rows: Rows, judgement: Judgement) -> Diagnosis | None
         case Family(value=value, name=name, order=order):
             found = tuple(family_slip(judge, value, name, order))
             return Diagnosis(found) if found else None
+        case Limit():
+            told = of_limit(judge, statement)
+            return Diagnosis((told,)) if told is not None else None
         case Equation():
             figures = Figures(judge, line, statement)
             conventions = tuple(figures.explanations())
-            if figures.figure and (conventions or is_frequency_claim(judge, statement)):
-                return Diagnosis(conventions) if conventions else None
-            diagnosing = _Diagnosing(judge, rows, line, statement, judgement.link, judgement.comparison)
+            if conventions:
+                return Diagnosis(conventions)
+            plain = figures.plain()
+            if plain is None:
+                return None
+            diagnosing = _Diagnosing(judge, rows, line, plain, judgement.link, judgement.comparison)
             return diagnosing.diagnosis()
         case _:
             return None
@@ -99,6 +105,12 @@ class _Diagnosing:
     def misfits(self) -> tuple[Misfit, ...]:
         return tuple(misfits(self.sides, self.known, node=self.statement.node is not None))
 
+    @cached_property
+    def numbers(self) -> str:
+        """What both sides are, where they are numbers."""
+        dimension = dimension_in(self.sides[0], self.known)
+        return figures_of(self.judge, self.sides, self.statement.of, dimension)
+
     def diagnosis(self) -> Diagnosis | None:
         found: list[Hypothesis] = []
         at_node = self._at_node()
@@ -107,22 +119,39 @@ class _Diagnosing:
         if at_node is None or self.statement.node is None:
             others = _safely(self._anywhere())
             found += others if at_node is None else [replace(h, cost=h.cost + 1) for h in others]
-        explanations = list(self._tested(found, at_node=at_node is not None))
-        explanations = [*self._dimensions(explanations), *explanations]
-        if self.statement.node is None:
-            explanations = self._with_limits(explanations)
-        table = at_node.table() if at_node is not None else ()
-        example = counterexample(self.judge.scope, self.sides, self.statement.of)
+        explanations = self._explained(found, at_node=at_node is not None)
+        example = None
+        if explanations and explanations[0].slip is not Slip.DIMENSION:
+            example = counterexample(self.judge.scope, self.sides, self.statement.of)
         apart = reach(self.judge, self.sides, self.statement.of)
         if not explanations:
-            dimension = dimension_in(self.sides[0], self.known)
-            numbers = figures_of(self.judge, self.sides, self.statement.of, dimension)
-            explanations = [Explanation(Slip.DIFFERENT, numbers or (str(example) if example else apart))]
-        if not explanations[0].sentence:
+            explanations, example = self._in_numbers(apart)
+        if not explanations:
             return None
-        return Diagnosis(
-            tuple(explanations[:_MOST_TOLD]), at_node.node if at_node else "", table, example, apart
-        )
+        table = at_node.table() if at_node is not None else ()
+        node = at_node.node if at_node is not None else ""
+        return Diagnosis(tuple(explanations[:_MOST_TOLD]), node, table, example, apart)
+
+    def _explained(self, found: Sequence[Hypothesis], *, at_node: bool) -> list[Explanation]:
+        """Every explanation that stands, the likeliest first; several with one correction are told once."""
+        tested = list(self._tested(found, at_node=at_node))
+        explanations = list(self._dimensions(tested))
+        lines = [explanation.corrected for explanation in explanations]
+        explanations += [e for e in tested if e.corrected not in lines]
+        if self.statement.node is None:
+            explanations = self._with_limits(explanations)
+        if not explanations:
+            part = of_part(self.judge, self.statement)
+            explanations = [part] if part is not None else []
+        return explanations
+
+    def _in_numbers(self, apart: str) -> tuple[list[Explanation], Counterexample | None]:
+        """That the sides differ, where no slip was found: by their values, by a counterexample, or over frequency."""
+        if self.numbers:
+            return [Explanation(Slip.DIFFERENT, self.numbers)], None
+        example = counterexample(self.judge.scope, self.sides, self.statement.of)
+        words = str(example) if example is not None else apart
+        return [Explanation(Slip.DIFFERENT, words)] if words else [], None
 
     def _with_limits(self, explanations: list[Explanation]) -> list[Explanation]:
         """The explanations with those that need the whole quotient: parts left out, loading, coefficients."""
@@ -136,7 +165,7 @@ class _Diagnosing:
         others = [e for e in explanations if e.slip not in _SIMPLE]
         shapes = [] if simple else list(normalisation(self.judge, self.sides))
         found = [*simple, *shapes, *limits, *others]
-        if not found and self.comparison is not None:
+        if not found and self.comparison is not None and not self.numbers:
             explanation = of_comparison(self.comparison)
             found += [explanation] if explanation is not None else []
         return found
@@ -169,6 +198,7 @@ class _Diagnosing:
     def _tested(self, found: Sequence[Hypothesis], *, at_node: bool) -> Iterator[Explanation]:
         """The hypotheses that hold exactly, the likeliest first, each slip once."""
         told: set[tuple[str, str]] = set()
+        lines: list[tuple[Expression, ...]] = []
         tested = 0
         for hypothesis in sorted(found, key=lambda h: h.cost):
             key = (
@@ -176,7 +206,7 @@ class _Diagnosing:
                 if at_node and hypothesis.name
                 else (hypothesis.slip.value, hypothesis.sentence)
             )
-            if key in told:
+            if key in told or hypothesis.sides in lines:
                 continue
             tested += 1
             if tested > _MOST_TESTED:
@@ -188,13 +218,15 @@ class _Diagnosing:
                 continue
             if judgement.holds and judgement.verdict is not Verdict.NOTHING:
                 told.add(key)
+                lines.append(hypothesis.sides)
                 yield Explanation(
                     hypothesis.slip, self._of_figure(hypothesis), hypothesis.evidence, corrected
                 )
 
     def _of_figure(self, hypothesis: Hypothesis) -> str:
         """The sentence, with the figure that is claimed."""
-        first = self.statement.sides[0]
+        stated = self.line.statement
+        first = stated.sides[0] if isinstance(stated, Equation) else None
         if not isinstance(first, Name) or not self.judge.scope.is_figure(first.name):
             return hypothesis.sentence
         text = f"{first.name}: {hypothesis.sentence}"
@@ -205,7 +237,8 @@ class _Diagnosing:
     def _dimensions(self, explanations: list[Explanation]) -> Iterator[Explanation]:
         for misfit in self.misfits[:1]:
             unit = unit_of(misfit.term, misfit.dimension, self.known)
-            words = f"{shown(misfit.term)} is {unit}, the other terms are {misfit.expected}"
+            others = "the left side is" if len(misfit.path) == 1 else "the other terms are"
+            words = f"{shown(misfit.term)} is {unit}, {others} {misfit.expected}"
             corrected = None
             for explanation in explanations:
                 if explanation.corrected is not None:

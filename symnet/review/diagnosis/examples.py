@@ -170,8 +170,10 @@ def figures_of(
     for ratio in ratios:
         if ratio is None or len(ratio.num) != 1 or len(ratio.den) != 1:
             return ""
-        found.append(engineering(ratio.num[0] / ratio.den[0], dimension or NUMBER, digits=4))
-    return f"with the given values the left side is {found[0]}, the right side {found[1]}"
+        found.append(ratio.num[0] / ratio.den[0])
+    left, right = (engineering(value, dimension or NUMBER, digits=4) for value in found)
+    times = f": {float(found[1] / found[0]):.4g} times as much" if found[0] else ""
+    return f"with the given values the left side is {left}, the right side {right}{times}"
 
 
 def _gathered(chosen: Sequence[str]) -> str:

@@ -8,7 +8,7 @@ from typing import Final
 
 from symnet.circuit.parts import class_letter
 from symnet.exact.modular import PRIME
-from symnet.expressions import Expression, Name, substitute
+from symnet.expressions import Expression, Name, names_in, substitute
 from symnet.review.diagnosis.explanation import Slip
 from symnet.review.diagnosis.point import Point, UnreadableError
 from symnet.review.diagnosis.slips import Finder, Hypothesis
@@ -28,6 +28,9 @@ def exchanges(finder: Finder, excess: int = 0) -> Iterator[Hypothesis]:
     ]
     for a, b in pairs[:_MOST_PAIRS]:
         both = a in finder.spoken and b in finder.spoken
+        often = sum(name.name in {a, b} for side in finder.sides for name in names_in(side))
+        if often == 1:
+            continue  # one name in one place is found there
         if not both and not finder.may_replace(*((a, b) if a in finder.spoken else (b, a))):
             continue
         swapped = _renamed(finder.sides, {a: b, b: a})
@@ -35,7 +38,7 @@ def exchanges(finder: Finder, excess: int = 0) -> Iterator[Hypothesis]:
             here, right = (a, b) if a in finder.spoken else (b, a)
             if both:
                 words = f"{a} and {b} are exchanged: each stands where the other should"
-                yield Hypothesis(Slip.SWAPPED, 1.1, swapped, words, name=a)
+                yield Hypothesis(Slip.SWAPPED, 1.1 if often == 2 else 1.3, swapped, words, name=a)
             else:
                 yield Hypothesis(Slip.PART, 1.15, swapped, f"{here} stands where {right} should", name=right)
         elif both:

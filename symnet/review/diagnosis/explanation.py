@@ -28,10 +28,10 @@ class Slip(Enum):
     EXTRA_BRANCH = "branch too many"
     NODE = "branch to another node"
     AMPLIFIER = "amplifier current forgotten"
-    OTHER_NODE = "equation of another node"
     PART = "wrong part"
     SWAPPED = "parts exchanged"
     RECIPROCAL = "upside down"
+    ROOT = "square root"
     PARALLEL = "series for parallel"
     TERM_FACTOR = "factor on a term"
     MISSING_TERM = "term missing"
@@ -40,6 +40,7 @@ class Slip(Enum):
     LOADING = "loading ignored"
     CONVENTION = "convention"
     NORMALISATION = "normalisation"
+    SEVERAL = "several slips"
     DIFFERENT = "something else"
 
 

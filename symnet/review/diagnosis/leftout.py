@@ -18,13 +18,14 @@ from symnet.expressions import Expression, names_in
 from symnet.review.algebra import Value
 from symnet.review.checked import value_of
 from symnet.review.diagnosis.explanation import Explanation, Slip
-from symnet.review.diagnosis.quotients import Quotient, quotient_of
+from symnet.review.diagnosis.quotients import quotient_of
 from symnet.review.limiting import Near
-from symnet.typeset.tree import Atom, power, times
+from symnet.typeset.tree import Atom, Quotient, power, times
 from symnet.typeset.writing import to_text
 
 if TYPE_CHECKING:
     from symnet.review.coefficients import Comparison
+    from symnet.review.diagnosis.quotients import Quotient as Pair
     from symnet.review.scope import Scope
 
 __all__ = ["LeftOut"]
@@ -43,16 +44,27 @@ class LeftOut:
     comparison: Comparison | None
 
     @cached_property
-    def quotients(self) -> tuple[Quotient, Quotient] | None:
+    def quotients(self) -> tuple[Pair, Pair] | None:
         """Both sides with the solution put in, as quotients; None where they are too long."""
         left, right = (quotient_of(self.scope, value_of(self.scope, side, self.of)) for side in self.sides)
         return (left, right) if left and right and left[0] and right[0] else None
 
-    @cached_property
-    def spoken(self) -> set[str]:
-        """The names in the line, those of its definitions included."""
+    def _closed(self) -> list[Expression]:
+        """The sides that hold parts and s only, no voltage or current."""
+        return [side for side in self.sides if not self._unknowns(side)]
+
+    def _unknowns(self, side: Expression) -> bool:
+        value = value_of(self.scope, side, self.of)
+        algebra = self.scope.solution.algebra
+        sides = (value.numerator, value.denominator)
+        held = any(":" in name for p in sides for m in p for name in algebra.exponents(m))
+        figures = any(self.scope.is_figure(name) or name in {"H", "D"} for name in self._spoken(side))
+        return held or figures
+
+    def _spoken(self, side: Expression) -> set[str]:
+        """The names in a side, those of its definitions included."""
         found: set[str] = set()
-        waiting = [name.name for side in self.sides for name in names_in(side)]
+        waiting = [name.name for name in names_in(side)]
         while waiting:
             name = waiting.pop()
             if name not in found:
@@ -79,14 +91,17 @@ class LeftOut:
 
     def explanations(self) -> Iterator[Explanation]:
         """What was left out, the fewest parts first; then the limits in which the line would hold."""
-        absent = [name for name in self.names if name not in self.spoken]
+        spoken = [self._spoken(side) for side in self._closed() or self.sides]
+        absent = [name for name in self.names if not all(name in said for said in spoken)]
+        if len(spoken) > 1 and not self._closed():
+            absent = [name for name in self.names if not any(name in said for said in spoken)]
         for count in range(1, min(_MOST_TOGETHER, len(absent)) + 1):
             ends = list(self._ends(absent, count, finite=True))
             if ends:
                 ends.sort(key=lambda way: not any(self._node_of(name) for name, _ in way))
                 yield self._left_out(ends)
                 return
-        present = [name for name in self.names if name in self.spoken]
+        present = [name for name in self.names if name not in absent]
         ends = list(self._ends(present, 1, finite=False))
         if ends and self._only_missing():
             yield self._loading(ends)
@@ -141,7 +156,7 @@ class LeftOut:
         else:
             words = f"{names} {verb} left out: the line holds only for {ways}"
             slip = Slip.LEFT_OUT
-        return Explanation(slip, words, tuple(self._missing()))
+        return Explanation(slip, words)
 
     def _loading(self, ends: Sequence[tuple[tuple[str, bool], ...]]) -> Explanation:
         ways = " or ".join(_written(way) for way in ends[:6])
@@ -153,7 +168,13 @@ class LeftOut:
 
     def _only_missing(self) -> bool:
         wrong = self.comparison.wrong if self.comparison is not None else ()
-        return bool(wrong) and all(c.missing and not c.extra and c.side == "denominator" for c in wrong)
+        return bool(wrong) and all(
+            c.missing
+            and not c.extra
+            and c.side == "denominator"
+            and not any(isinstance(tree, Quotient) for tree in c.missing)
+            for c in wrong
+        )
 
     def _missing_terms(self) -> list[str]:
         if self.comparison is None:
@@ -163,11 +184,6 @@ class LeftOut:
             for c in self.comparison.wrong
             for term in c.missing
         ]
-
-    def _missing(self) -> Iterator[str]:
-        terms = self._missing_terms()
-        if terms:
-            yield f"missing: {', '.join(terms)}"
 
 
 def _written(way: Sequence[tuple[str, bool]]) -> str:

@@ -15,7 +15,19 @@ from symnet.circuit.spelling import write_expression
 from symnet.expressions import Expression, Name, Number, Parallel, Power, Product, Sum, negative
 from symnet.review.rows import ends_of
 
-__all__ = ["Flow", "flows_at", "monomial", "scaled", "shown", "signed", "times", "turned", "voltage"]
+__all__ = [
+    "Flow",
+    "current_through",
+    "flows_at",
+    "monomial",
+    "scaled",
+    "shown",
+    "signed",
+    "times",
+    "turned",
+    "voltage",
+    "voltage_between",
+]
 
 _ONE: Final = Number(Fraction(1))
 
@@ -80,7 +92,7 @@ def times(expression: Expression, powers: Mapping[str, int]) -> Expression:
         return negative(times(expression.terms[0][1], powers))
     left = Counter(dict(powers))
     factors: list[tuple[int, Expression]] = []
-    for power, inner in expression.factors if isinstance(expression, Product) else [(1, expression)]:
+    for power, inner in _flat(expression, 1):
         name, exponent = _as_power(inner)
         total = power * exponent + left.get(name, 0)
         if name in left and (total > 0) == (power > 0) and total:
@@ -100,6 +112,15 @@ def times(expression: Expression, powers: Mapping[str, int]) -> Expression:
         if e:
             factors.insert(next(later, len(factors)) if e > 0 else len(factors), new)
     return _product(factors)
+
+
+def _flat(expression: Expression, power: int) -> Iterator[tuple[int, Expression]]:
+    """The factors of a product and of the products in it."""
+    if isinstance(expression, Product):
+        for inner, factor in expression.factors:
+            yield from _flat(factor, power * inner)
+    else:
+        yield power, expression
 
 
 def _place_of(name: str) -> int:
@@ -192,6 +213,15 @@ def flows_at(network: Network, node: str) -> Iterator[Flow]:
             yield Flow(
                 node, end if node == start else start, name, name, flow if node == start else negative(flow)
             )
+
+
+def current_through(network: Network, name: str) -> Expression | None:
+    """The current through one branch, from its start to its end; None for a coupled coil and for sources."""
+    part = network[name]
+    coupled = any(name in (each.first, each.second) for each in network.couplings)
+    if not isinstance(part, Branch) or coupled:
+        return None
+    return _through(network, Leaf(name), voltage_between(part.start, part.end))
 
 
 def voltage(node: str) -> Expression:

@@ -139,7 +139,7 @@ def _alike(one: Sequence[float], two: Sequence[float]) -> bool:
 
 
 def _scaled(truth: Ratio, claim: Ratio, scale: float) -> Explanation:
-    words = f"the shape is right, but not the frequency: the line is {1 / scale:.5g} times as high in frequency as the network"
+    words = f"the shape is right, but not the frequency: the line lies at {1 / scale:.5g} times the frequencies of the network"
     evidence = []
     for name, ratio in (("the line", claim), ("the network", truth)):
         crossings = _half_power(ratio)

@@ -18,7 +18,7 @@ from typing import TYPE_CHECKING, Final
 from symnet.circuit.parts import class_letter
 from symnet.circuit.series import is_hidden
 from symnet.exact.modular import PRIME
-from symnet.expressions import Expression, Name, Number, Parallel, Product, Sum, names_in, negative
+from symnet.expressions import Expression, Name, Number, Parallel, Product, Root, Sum, names_in, negative
 from symnet.quantities import NUMBER, SECOND, Dimension
 from symnet.review.diagnosis.explanation import Slip
 from symnet.review.diagnosis.pieces import flows_at, monomial, scaled, shown, signed, times, voltage
@@ -230,10 +230,35 @@ class Finder:
                 new = negative(times(expression, powers))
                 words = f"{text} should be {shown(new)}: a factor {shown(monomial(powers))} and a sign"
                 yield Hypothesis(Slip.TERM_FACTOR, 2.5 + small, self._with(place, new), words, place.path)
+        for new, words in self._roots(place):
+            yield Hypothesis(Slip.ROOT, 1.7 + small, self._with(place, new), words, place.path)
         if place.wanted * place.value % PRIME == 1 and isinstance(expression, Product | Sum):
-            new = _upside_down(expression)
-            words = f"{text} is upside down: it should be {shown(new)}"
-            yield Hypothesis(Slip.RECIPROCAL, 1.5 + small, self._with(place, new), words, place.path)
+            yield self._upside_down(place, 1.5 + small)
+
+    def _upside_down(self, place: Place, cost: float) -> Hypothesis:
+        """A piece that is one over what it should be; a factor goes to the other side of the fraction bar."""
+        expression, text = place.expression, shown(place.expression)
+        if isinstance(place.parent, Product) and len(place.parent.factors) > 1:
+            k = place.path[-1]
+            power = place.parent.factors[k][0]
+            moved = expression.factors if isinstance(expression, Product) else ((1, expression),)
+            turned = tuple((-power * inner, factor) for inner, factor in moved)
+            factors = (*place.parent.factors[:k], *turned, *place.parent.factors[k + 1 :])
+            sides = put(self.sides, place.path[:-1], Product(factors))
+            words = f"{text} stands {'above' if power > 0 else 'below'} the fraction bar and belongs {'below' if power > 0 else 'above'} it"
+            return Hypothesis(Slip.RECIPROCAL, cost, sides, words, place.path[:-1])
+        new = _upside_down(expression)
+        words = f"{text} is upside down: it should be {shown(new)}"
+        return Hypothesis(Slip.RECIPROCAL, cost, self._with(place, new), words, place.path)
+
+    @staticmethod
+    def _roots(place: Place) -> Iterator[tuple[Expression, str]]:
+        """A square root that was forgotten, or one too many, of a whole side."""
+        expression = place.expression
+        if place.parent is None and place.wanted**2 % PRIME == place.value:
+            yield Root(expression), f"a square root is missing: it should be {shown(Root(expression))}"
+        if isinstance(expression, Root) and place.value**2 % PRIME == place.wanted:
+            yield expression.base, f"{shown(expression)} should be {shown(expression.base)}, without the root"
 
     def _factor(self, place: Place, factor: Fraction, small: float) -> Hypothesis:
         expression, text = place.expression, shown(place.expression)
@@ -309,8 +334,7 @@ class Finder:
         for other in self._like(here):
             if other != here and self._worth(other) == place.wanted and self.may_replace(here, other):
                 is_node = here in self.point.scope.network.nodes
-                what = "the voltage" if is_node else "the part"
-                words = f"{here} stands where {what} {other} should"
+                words = f"{here} stands where {'the voltage ' if is_node else ''}{other} should"
                 slip = Slip.NODE if is_node else Slip.PART
                 yield Hypothesis(slip, 1.2, self._with(place, Name(other)), words, place.path, other)
 
