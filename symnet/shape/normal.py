@@ -15,7 +15,7 @@ values are known. w0 and tau take a root, so they presume that a_0/a_n is positi
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from fractions import Fraction
 from typing import Final
 
@@ -24,7 +24,7 @@ from symnet.quantities import HERTZ, SECOND, Dimension
 from symnet.shape.bands import Band, band_of
 from symnet.shape.closed import Closed, Coefficient, Figure, figure, nth_root, one, power_product, quotient
 from symnet.shape.plain import Pair, Plain, Response, plain, sign
-from symnet.shape.stability import Stability, stability_of
+from symnet.shape.stability import Stability, stability, stability_of
 from symnet.typeset.displayed import Displayed
 
 __all__ = ["CONVENTIONS", "Gain", "NormalForm", "normalise"]
@@ -141,7 +141,7 @@ def normalise(H: Response) -> NormalForm:
     (1.0, 2.0, 2.0, 1.0)
     """
     h = plain(H)
-    return _normal_form(h)
+    return replace(_normal_form(h), stability=stability(H))
 
 
 def _normal_form(h: Plain) -> NormalForm:

@@ -9,6 +9,7 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+import symnet as sn
 from symnet.circuit.build import network
 from symnet.exact.derive import derive
 from symnet.exact.ratio import Ratio
@@ -257,3 +258,17 @@ def test_ladder_of_one_kind_of_store_is_stable_at_any_order() -> None:
     found = stability(derive(network(f"in -- {chain}; drive in; read n6\n{shunts}")))
     assert found.verdict == "stable"
     assert found.reason == "a network of positive R and C alone has its poles on the negative real axis"
+
+
+def test_a_mode_on_the_jw_axis_makes_the_whole_marginal_also_where_only_values_hide_it() -> None:
+    """A lossless tank that the read does not see; a twin-T notch with its foot carried all the way, k = 1."""
+    tank = sn.network(
+        "in -- R1 = 1k -- out -- R2 = 1k -- gnd; x -- L1 = 1m -- gnd; x -- C1 = 1n -- gnd\n"
+        "push into x = g*in; g = 1 mS; drive in; read out"
+    )
+    notch = sn.network("X1: twin_t_notch(in=in, out=out, R=1k, C=1n, k=1); drive in; read out")
+    for each in (tank, notch):
+        found = sn.stability(sn.derive(each))
+        assert found.verdict == "marginal"
+        assert sn.normalise(sn.derive(each)).stability == found
+        assert "but a mode that it hides" in found.reason
