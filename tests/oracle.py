@@ -25,6 +25,7 @@ import re
 from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
+from functools import cache
 from typing import Any, TypeAlias
 
 import mpmath
@@ -338,8 +339,14 @@ def element_modulo(element: Any, point: Sequence[int], prime: int) -> int:
     return int(total.sum()) % prime
 
 
-def polynomials(drawing: Drawing, symbols: Sequence[str]) -> tuple[Any, Any]:
-    """Numerator and denominator of H by sympy's determinant of the tableau, as elements of ZZ[s, symbols].
+def polynomials(
+    drawing: Drawing,
+    symbols: Sequence[str],
+    determinant: Callable[[list[list[Any]], Any], Any] | None = None,
+) -> tuple[Any, Any]:
+    """Numerator and denominator of H by the determinant of the tableau, expanded in sympy's ring ZZ[s, symbols].
+
+    ``determinant`` is how it is found: :func:`expanded_determinant` or :func:`sympys_determinant`.
 
     Every row is multiplied by its own denominators first; the pair is not reduced to lowest terms. The
     numerator is the determinant of the matrix bordered by the right-hand side and the read row.
@@ -350,7 +357,8 @@ def polynomials(drawing: Drawing, symbols: Sequence[str]) -> tuple[Any, Any]:
     matrix, rhs, read = tableau(drawing, names, lambda x: field(x.numerator) / field(x.denominator))
     bordered = [_cleared([*row, -b], over) for row, b in zip(matrix, rhs, strict=True)]
     bordered = _without_unit_pivots([*bordered, _cleared([*read, field(0)], over)])
-    return _determinant(bordered, over), _determinant([row[:-1] for row in bordered[:-1]], over)
+    find = expanded_determinant if determinant is None else determinant
+    return find(bordered, over), find([row[:-1] for row in bordered[:-1]], over)
 
 
 def _without_unit_pivots(rows: list[list[Any]]) -> list[list[Any]]:
@@ -383,11 +391,32 @@ def _cleared(row: Sequence[Any], over: Any) -> list[Any]:
     return [(entry * scale).numer for entry in row]
 
 
-def _determinant(rows: list[list[Any]], over: Any) -> Any:
-    """The last coefficient of sympy's characteristic polynomial (Berkowitz, no division), up to a sign by size.
+def expanded_determinant(rows: list[list[Any]], over: Any) -> Any:
+    """The determinant of ring elements, expanded along the rows, every minor remembered by its columns.
 
-    The same as ``DomainMatrix.det``, whose elimination divides intermediate polynomials and takes up to forty
-    times as long on such matrices.
+    Nothing cancels but what cancels in a minor. :func:`sympys_determinant`, which judges this one on a share of the
+    networks, multiplies out powers of the matrix and takes fifty times as long.
+    """
+    size = len(rows)
+
+    @cache
+    def minor(row: int, columns: tuple[int, ...]) -> Any:
+        if row == size:
+            return over.one
+        total = over.zero
+        for place, column in enumerate(columns):
+            if rows[row][column]:
+                term = rows[row][column] * minor(row + 1, columns[:place] + columns[place + 1 :])
+                total = total - term if place % 2 else total + term
+        return total
+
+    return minor(0, tuple(range(size)))
+
+
+def sympys_determinant(rows: list[list[Any]], over: Any) -> Any:
+    """The same by sympy: the last coefficient of its characteristic polynomial, up to a sign by size.
+
+    (Berkowitz, no division; the elimination of ``DomainMatrix.det`` divides intermediate polynomials.)
     """
     size = len(rows)
     if not size:

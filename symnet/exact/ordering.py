@@ -64,12 +64,22 @@ def frontier_order(size: int, pieces: Sequence[Piece]) -> list[int]:
 
 def order_and_cost(size: int, pieces: Sequence[Piece]) -> tuple[list[int], int]:
     """That order, and about how many nodes the diagram will have: up to three times as many as it then has."""
-    forced, touched = _forced(size, pieces)
+    forced, touched, grounded = _forced(size, pieces)
     if not touched:
         return forced, len(forced)
 
     def cheapest(*orders: list[int]) -> tuple[int, list[int]]:
-        return min((_cost(size, touched, order), order) for order in orders)
+        """Of equal ones that which comes to gnd last: until then nothing is merged with it (balanced ladders)."""
+        priced = (
+            (
+                _cost(size, touched, order),
+                -next((level for level, index in enumerate(order) if index in grounded), len(order)),
+                order,
+            )
+            for order in orders
+        )
+        cost, _, order = min(priced)
+        return cost, order
 
     sites = _breadth_first(touched)
     cost, best = cheapest(_by_sites(touched, sites), _by_sites(touched, sites[::-1]))
@@ -81,8 +91,8 @@ def order_and_cost(size: int, pieces: Sequence[Piece]) -> tuple[list[int], int]:
     return forced + best, cost
 
 
-def _forced(size: int, pieces: Sequence[Piece]) -> tuple[list[int], _Touched]:
-    """The pieces that every tree takes or none can, and what the others touch when those are taken.
+def _forced(size: int, pieces: Sequence[Piece]) -> tuple[list[int], _Touched, set[int]]:
+    """The pieces that every tree takes or none can, what the others touch when those are taken, and which touch gnd.
 
     Rows have their own numbers and gnd among the rows is 2*size; columns follow at ``size``, their gnd at 2*size + 1.
     """
@@ -135,11 +145,9 @@ def _forced(size: int, pieces: Sequence[Piece]) -> tuple[list[int], _Touched]:
             touching[gone] = set()
             waiting.append(kept)
     done = set(order)
-    return order, {
-        index: tuple(sorted({of(end) for end in ends[index]} - set(grounds)))
-        for index in range(len(pieces))
-        if index not in done
-    }
+    reached = {index: {of(end) for end in ends[index]} for index in range(len(pieces)) if index not in done}
+    touched = {index: tuple(sorted(sites.difference(grounds))) for index, sites in reached.items()}
+    return order, touched, {index for index, sites in reached.items() if not sites.isdisjoint(grounds)}
 
 
 def _by_sites(touched: _Touched, sites: Sequence[int]) -> list[int]:

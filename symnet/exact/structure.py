@@ -256,22 +256,22 @@ def unchained(diagram: Diagram) -> tuple[Diagram, ...]:
 
 
 class _Places:
-    """Numbers of the vertices of a minor, as they are asked for."""
+    """Numbers of the vertices of a minor: one for each piece of the tree that is kept, in the order of what it hangs up."""
 
     def __init__(self, forest: Forest, kept: frozenset[int]) -> None:
         self._forest = forest
         self._kept = kept
         self._into: dict[int, int] = {}
-        self._numbers: dict[int, int] = {}
+        self._numbers = {v: number for number, v in enumerate(sorted([forest.child[k] for k in kept]))}
 
     def __call__(self, vertex: int | None) -> int | None:
         """The number of the vertex into which this one is contracted; None for gnd."""
         if vertex is None:
             return None
         if vertex >= len(self._forest.piece) - 1:  # that of the border
-            return self._numbers.setdefault(vertex, len(self._numbers))
+            return len(self._numbers)
         into = self._contracted(vertex)
-        return None if into < 0 else self._numbers.setdefault(into, len(self._numbers))
+        return None if into < 0 else self._numbers[into]
 
     def _contracted(self, vertex: int) -> int:
         """The next vertex upwards that hangs on a piece that is kept, -1 where there is none."""
