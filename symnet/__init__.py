@@ -63,6 +63,8 @@ if TYPE_CHECKING:
     from symnet.shape.sections import sections
     from symnet.shape.split import split_poles
     from symnet.shape.stability import stability
+    from symnet.values.choosing import choose
+    from symnet.values.preferred import preferred
 
 __version__ = "0.1.0"
 
@@ -76,6 +78,7 @@ __all__ = [
     "butterworth",
     "capacitor",
     "chebyshev",
+    "choose",
     "common_mode",
     "compare",
     "derive",
@@ -102,6 +105,7 @@ __all__ = [
     "normalise",
     "opamp",
     "phase",
+    "preferred",
     "prototypes",
     "push",
     "read",
@@ -153,6 +157,8 @@ _WHERE = {
     "symnet.shape.sections": "sections",
     "symnet.shape.split": "split_poles",
     "symnet.shape.stability": "stability",
+    "symnet.values.choosing": "choose",
+    "symnet.values.preferred": "preferred",
 }
 
 #: public names that are modules

@@ -20,6 +20,7 @@ from symnet.exact.scaling import Scaling
 from symnet.exact.transfer import Transfer
 from symnet.present.blocks import Block, Formula, Table
 from symnet.present.brief import Brief
+from symnet.present.choosing import choice_blocks, preferred_blocks
 from symnet.present.difference import comparison_blocks
 from symnet.present.dominant import dominant_blocks, split_blocks
 from symnet.present.explain import Explanation
@@ -61,6 +62,8 @@ from symnet.shape.stability import Stability
 from symnet.shape.stated import Conditions
 from symnet.shape.verdict import Recognition
 from symnet.typeset.displayed import Bundle, formats
+from symnet.values.choosing_result import Choice
+from symnet.values.preferred import Preferred
 
 __all__ = ["bundle"]
 
@@ -225,3 +228,13 @@ def _locus(value: Locus) -> Bundle:
 @formats(RealOpAmps)
 def _real_opamps(value: RealOpAmps) -> Bundle:
     return bundle(real_opamps_blocks(value))
+
+
+@formats(Preferred)
+def _preferred(value: Preferred) -> Bundle:
+    return bundle(preferred_blocks(value))
+
+
+@formats(Choice)
+def _choice(value: Choice) -> Bundle:
+    return bundle(choice_blocks(value))
