@@ -33,6 +33,7 @@ Indices: TypeAlias = NDArray[np.int64]  # combinations x parts: places in the li
 #: Up to so many combinations every one of them is computed.
 MOST_ENUMERATED: Final = 100_000
 _CHUNK: Final = 32_768
+_FIRST: Final = 2048  # of an enumeration: what is then known rules out most of the others
 _BOXES: Final = 2048  # halved in one step
 _SAME: Final = 1e-9  # relative: figures that agree so far are the same response
 _MOST_EQUAL: Final = 4000
@@ -98,7 +99,7 @@ class _Pool:
             return
         figures = self.space.at(places)
         self.evaluations += len(places)
-        near = self.space.aim.least(figures, figures) <= self.threshold * (1 + _SAME)
+        near = self.space.aim.screen(figures) <= self.threshold * (1 + _SAME)
         self.add(places[near], figures[:, near])
 
     def add(self, places: Indices, figures: Figures) -> None:
@@ -109,6 +110,9 @@ class _Pool:
         kept = errors <= self.threshold * (1 + _SAME)
         places = np.concatenate([self.places, places[kept]])
         errors = np.concatenate([self.errors, errors[kept]])
+        if len(errors) > 2 * _MOST_EQUAL:
+            few = np.argpartition(errors, 2 * _MOST_EQUAL)[: 2 * _MOST_EQUAL]
+            places, errors = places[few], errors[few]
         _, first = np.unique(places, axis=0, return_index=True)
         order = first[np.argsort(errors[first], kind="stable")]
         places, errors = places[order], errors[order]
@@ -141,10 +145,12 @@ def _enumerate(space: Space, pool: _Pool) -> None:
     shape = [len(values) for values in space.lists]
     total = space.combinations
     with Progress("choosing values", "combinations", total) as at:
-        for start in range(0, total, _CHUNK):
-            flat = np.arange(start, min(start + _CHUNK, total))
+        start, step = 0, _FIRST
+        while start < total:
+            flat = np.arange(start, min(start + step, total))
             pool.take(np.stack(np.unravel_index(flat, shape), axis=1).astype(np.int64))
-            at(start)
+            start, step = start + step, _CHUNK
+            at(min(start, total))
 
 
 # -- a good start ---------------------------------------------------------------------------------------------------
@@ -156,7 +162,7 @@ def _start(space: Space, pool: _Pool) -> None:
     def take(places: Indices) -> Floats:
         figures = space.at(places)
         pool.evaluations += len(places)
-        near = np.nan_to_num(space.aim.least(figures, figures), nan=np.inf)
+        near = space.aim.screen(figures)
         promising = near <= pool.threshold * (1 + _SAME)
         pool.add(places[promising], figures[:, promising])
         return near  # the objective but for a factor, and much cheaper where there are roots to find

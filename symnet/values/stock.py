@@ -15,7 +15,7 @@ from typing import Final
 
 from symnet.circuit.parts import CLASS_LETTERS
 from symnet.errors import Fault, LimitError, NotationError, Span, SymnetError
-from symnet.quantities import NUMBER, Dimension, read_quantity
+from symnet.quantities import CODE, NUMBER, OHM, Dimension, read_quantity
 from symnet.values.preferred import Entry, Preferred
 
 __all__ = ["load_stock", "read_stock"]
@@ -117,7 +117,9 @@ def _header(text: str, rows: Iterator[list[_Cell]]) -> tuple[list[_Cell], Mappin
 
 def _entry(cells: list[_Cell], columns: Mapping[str, int], label: str) -> tuple[Dimension, Entry]:
     cell = cells[columns["value"]]
-    expected = None
+    expected = (
+        OHM if "K" in cell.text and CODE.fullmatch(cell.text) else None
+    )  # K marks resistors (IEC 60062)
     if "kind" in columns:
         kind = cells[columns["kind"]]
         expected = _KINDS.get(kind.text.upper())
