@@ -15,6 +15,7 @@ from typing import TYPE_CHECKING, Final
 
 from symnet.errors import SymnetError
 from symnet.expressions import Expression, Name, Number, Product, children
+from symnet.review.checked import value_of
 from symnet.review.diagnosis.explanation import Explanation, Slip
 from symnet.review.diagnosis.pieces import scaled, shown
 from symnet.review.diagnosis.places import Path, put, spliced
@@ -51,6 +52,7 @@ _TAKEN: Final = {
     "zeta": ("Q",),
 }
 _MOST_QUOTIENTS: Final = 12
+_MOST_TERMS: Final = 20  # of a claim above or below its fraction bar
 
 
 @dataclass(eq=False)
@@ -74,6 +76,14 @@ class Figures:
             return self.judge.text[claim.span.start : claim.span.end]
         return shown(claim)
 
+    def _is_long(self, claim: Expression) -> bool:
+        """Whether every test of the claim would take its time: it is squared, and multiplied with its like."""
+        try:
+            value = value_of(self.judge.scope, claim, self.statement.of)
+            return max(len(value.numerator), len(value.denominator)) > _MOST_TERMS
+        except SymnetError:
+            return True
+
     def _true(self, left: Expression, right: Expression) -> bool:
         """Whether a line of its own would hold."""
         statement = Equation((left, right), of=self.statement.of)
@@ -88,7 +98,7 @@ class Figures:
     def explanations(self) -> Iterator[Explanation]:
         """The conventions in which the claim is true."""
         figure, claim = self.figure, self.statement.sides[-1]
-        if not figure:
+        if not figure or self._is_long(claim):
             return
         for other in _TAKEN[figure]:
             if self._true(Name(other), claim):
@@ -109,6 +119,8 @@ class Figures:
         """The line as an equation of values; f3dB as f0 where the two are one, and None where they are not."""
         if not self.figure or not is_frequency_claim(self.judge, self.statement):
             return self.statement
+        if self._is_long(self.statement.sides[-1]):
+            return None
         other = {"f3dB": "f0", "w3dB": "w0"}.get(self.figure)
         if other is None or not self._true(Name(self.figure), Name(other)):
             return None

@@ -62,6 +62,13 @@ _SIMPLE: Final = {
 
 def diagnose(judge: Judge, rows: Rows, judgement: Judgement) -> Diagnosis | None:
     """What is wrong with a line that does not hold; None where nothing was found."""
+    try:
+        return _diagnosed(judge, rows, judgement)
+    except SymnetError:
+        return None  # a figure that some hypothesis does not have, or too long: the verdict stands without it
+
+
+def _diagnosed(judge: Judge, rows: Rows, judgement: Judgement) -> Diagnosis | None:
     line, statement = judgement.line, judgement.line.statement
     match statement:
         case Family(value=value, name=name, order=order):
