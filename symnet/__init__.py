@@ -19,6 +19,7 @@ if TYPE_CHECKING:
     from symnet.circuit.build import (
         admittance,
         capacitor,
+        define,
         drive,
         hold,
         impedance,
@@ -26,6 +27,7 @@ if TYPE_CHECKING:
         load,
         network,
         opamp,
+        place,
         push,
         read,
         resistor,
@@ -81,6 +83,7 @@ __all__ = [
     "choose",
     "common_mode",
     "compare",
+    "define",
     "derive",
     "derive_all",
     "dominant",
@@ -105,6 +108,7 @@ __all__ = [
     "normalise",
     "opamp",
     "phase",
+    "place",
     "preferred",
     "prototypes",
     "push",
@@ -124,7 +128,7 @@ __all__ = [
 #: module -> the public names that it defines
 _WHERE = {
     "symnet.carry.export": "export",
-    "symnet.circuit.build": "admittance capacitor drive hold impedance inductor load network opamp push read resistor",
+    "symnet.circuit.build": "admittance capacitor define drive hold impedance inductor load network opamp place push read resistor",
     "symnet.circuit.network": "Network",
     "symnet.errors": "SymnetError",
     "symnet.exact.derive": "derive derive_all",

@@ -5,10 +5,13 @@ A constructor gives a Network with one piece in it; :func:`network` joins pieces
 
 from __future__ import annotations
 
+from collections.abc import Mapping, Sequence
+from dataclasses import replace
 from os import PathLike
 from pathlib import Path
 from typing import Final
 
+from symnet.circuit.devices import device_names
 from symnet.circuit.network import Network, ValueLike, read_network, value_for
 from symnet.circuit.parts import (
     CLASS_LETTERS,
@@ -17,17 +20,21 @@ from symnet.circuit.parts import (
     CurrentDrive,
     CurrentLaw,
     OpAmp,
+    Value,
     VoltageDrive,
     VoltageLaw,
     class_letter,
 )
-from symnet.circuit.reading import read_expression, read_reading
-from symnet.errors import Fault, LimitError, NotationError
+from symnet.circuit.reading import read_expression, read_reading, read_sections, shipped_section
+from symnet.circuit.sections import Instance, Section
+from symnet.circuit.words import node_fault
+from symnet.errors import Fault, LimitError, NotationError, nearest
 from symnet.expressions import Expression
 
 __all__ = [
     "admittance",
     "capacitor",
+    "define",
     "drive",
     "hold",
     "impedance",
@@ -35,6 +42,7 @@ __all__ = [
     "load",
     "network",
     "opamp",
+    "place",
     "push",
     "read",
     "resistor",
@@ -155,6 +163,87 @@ def hold(name: str, plus: str, value: str, minus: str = GROUND) -> Network:
 def push(name: str, start: str, end: str, value: str) -> Network:
     """A current law: the current from start to end (through the source) equals ``value`` in ampere."""
     return Network(parts=(CurrentLaw(name, start, end, _expression(value)),))
+
+
+def define(
+    name: str, terminals: str | Sequence[str], inside: str | Network, **parameters: ValueLike
+) -> Section:
+    """A section as ``define ... done`` draws it, to be placed with :func:`place`.
+
+    ``terminals`` are nodes of ``inside``, a text or a network without drives and reads; ``parameters`` its names
+    that each place may give a value, with their defaults, None for none. Raises NotationError with every fault.
+
+    >>> import symnet as sn
+    >>> rc = sn.define("rc", "in out", "in -- R -- out -- C -- gnd", R=None, C="10 nF")
+    >>> sn.network(sn.place("A1", rc, {"in": "a", "out": "b"}, R="2 kohm")).part_names
+    ('A1.R', 'A1.C')
+    """
+    nodes = terminals.replace(",", " ").split() if isinstance(terminals, str) else list(terminals)
+    drawn = inside if isinstance(inside, str) else inside.to_text()
+    given = ", ".join(parameters)
+    header = f"define {name}({', '.join(nodes)}{f'; {given}' if given else ''})"
+    section = read_sections(f"{header}\n{drawn}\ndone")[name]
+    free = dict(section.drawing.free)
+    values = tuple(
+        (word, None if value is None else value_for(word, value, free.get(word)))
+        for word, value in parameters.items()
+    )
+    return replace(section, parameters=values)
+
+
+def place(name: str, section: Section | str, nodes: Mapping[str, str], **values: ValueLike) -> Network:
+    """A section in its place: ``nodes`` says to which node each terminal is connected, ``values`` what is given.
+
+    ``section`` is what :func:`define` gives, or the name of a device or section that ships with symnet; None as a
+    value leaves a symbol. Raises NotationError for terminals and parameters that it has not or that are missing.
+
+    >>> import symnet as sn
+    >>> net = sn.network(
+    ...     sn.resistor("R1", "in", "m"),
+    ...     sn.resistor("R2", "m", "out"),
+    ...     sn.place("U1", "opamp", {"plus": "gnd", "minus": "m", "out": "out"}, gbw="1 MHz"),
+    ...     sn.drive("in"),
+    ...     sn.read("out"),
+    ... )
+    >>> print(sn.derive(net))
+    out/in = -(R2/R1)/(1 + s*(1 + R2/R1)/U1.gbw)
+    """
+    if isinstance(section, str):
+        found = shipped_section(section, frozenset(values))
+        if found is None:
+            close = nearest(section, device_names())
+            hint = f"did you mean {close[0]}?" if close else f"there are {', '.join(device_names()[:12])}"
+            raise NotationError(Fault(f"{section} is no device or section that ships with symnet", hint))
+        section = found
+    known = dict(section.parameters)
+    strange = [word for word in (*nodes, *values) if word not in section.terminals and word not in known]
+    missing = [terminal for terminal in section.terminals if terminal not in nodes]
+    if strange or missing:
+        said = f"{name} has no {strange[0]}" if strange else f"{name} has no node at {' and '.join(missing)}"
+        listed = f"terminals {', '.join(section.terminals)}; parameters {', '.join(known) or 'none'}"
+        raise NotationError(Fault(said, listed, parts=(name,)))
+    wrong = [node_fault(node) for node in nodes.values()]
+    faults = [Fault(*each) for each in wrong if each is not None]
+    if faults:
+        raise NotationError(faults)
+    free = dict(section.drawing.free)
+    arguments: list[tuple[str, Value | None]] = []
+    for word in known:
+        given = values.get(word)
+        if given is not None:
+            arguments.append((word, value_for(f"{name}.{word}", given, free.get(word))))
+        elif word in values:
+            arguments.append((word, None))
+    instance = Instance(
+        name, section, tuple(nodes[terminal] for terminal in section.terminals), tuple(arguments)
+    )
+    return Network(
+        parts=instance.parts(),
+        values=instance.values(),
+        free=instance.free(),
+        couplings=instance.couplings(),
+        instances=(instance,),
+    )
 
 
 def drive(plus: str, minus: str = GROUND, name: str | None = None, *, current: bool = False) -> Network:

@@ -80,7 +80,7 @@ def read_drawing(text: str) -> Drawing:
     must_be_text(text)
     lines, broken = logical_lines(text)
     main, definitions = _gathered(lines, broken)
-    known = Definitions(definitions, _shipped)
+    known = Definitions(definitions, shipped_section)
     known.doubtful |= main.doubtful
     known.make_all()
     net = known.drawing(main.draft, text)
@@ -96,14 +96,14 @@ def read_sections(text: str, origin: str = "") -> dict[str, Section]:
     """The sections that a text of definitions holds; NotationError with all its faults."""
     lines, broken = logical_lines(text)
     main, definitions = _gathered(lines, broken)
-    known = Definitions(definitions, _shipped)
+    known = Definitions(definitions, shipped_section)
     made = known.make_all()
     raise_all(main.faults + known.faults, text)
     return {name: replace(section, origin=origin) for name, section in made.items()}
 
 
 @lru_cache(maxsize=64)
-def _shipped(kind: str, given: frozenset[str]) -> Section | None:
+def shipped_section(kind: str, given: frozenset[str]) -> Section | None:
     """The section that ships with symnet under this name, in the form that these arguments choose."""
     found = device_source(kind, given)
     return read_sections(found[0], origin=found[1])[kind] if found is not None else None

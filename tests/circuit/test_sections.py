@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+
 import pytest
 
 import symnet as sn
@@ -123,3 +125,50 @@ def test_the_properties_of_a_device_may_be_given_in_hertz() -> None:
     assert value.expression == Number(TWO_PI * 10**6, HERTZ)
     assert "gbw=1 MHz" in network.to_text()
     assert "gbw=3 MHz" in network.with_values({"U1.gbw": "3 MHz"}).to_text()
+
+
+def test_sections_in_python_are_those_of_the_text() -> None:
+    rc = sn.define("rc", "in out", "in -- R -- out -- C -- gnd", R=None, C="10 nF")
+    pair = sn.define(
+        "pair",
+        ["in", "out"],
+        "in -- Ra -- x -- Rb -- out\nRb = 2*Ra",
+        Ra=None,
+    )
+    built = sn.network(
+        sn.place("A1", rc, {"in": "in", "out": "a"}, R="2 kohm"),
+        sn.place("A2", pair, {"in": "a", "out": "out"}, Ra="5 kohm"),
+        sn.place("A3", rc, {"in": "out", "out": "b"}, C=None),
+        sn.drive("in"),
+        sn.read("b"),
+    )
+    typed = sn.network("""
+        define rc(in, out; R, C = 10 nF)
+          in -- R -- out -- C -- gnd
+        done
+        define pair(in, out; Ra)
+          in -- Ra -- x -- Rb -- out
+          Rb = 2*Ra
+        done
+        A1: rc(in=in, out=a, R=2 kohm); A2: pair(in=a, out=out, Ra=5 kohm); A3: rc(in=out, out=b, C)
+        drive in; read b
+    """)
+    assert built == typed
+    assert sn.network(built.to_text()) == built
+
+
+@pytest.mark.parametrize(
+    ("made", "said"),
+    [
+        (lambda: sn.define("rc", "in", "in -- R1 -- C1 -- gnd"), "C1 stands where a node must stand"),
+        (lambda: sn.define("rc", "in out", "in -- R1 -- gnd"), "connected to out"),
+        (lambda: sn.place("A", "opam", {}), "did you mean opamp"),
+        (lambda: sn.place("A", "gyrator", {"p1": "a"}), "no node at p2 and q1 and q2"),
+        (lambda: sn.place("A", "nic", {"a": "x", "b": "y"}, m="2"), "A has no m"),
+        (lambda: sn.place("A", "nic", {"a": "R1", "b": "y"}), "R1 stands where a node must stand"),
+        (lambda: sn.place("A", "crystal", {"a": "x", "b": "y"}, Rm="5 nF"), "in ohm"),
+    ],
+)
+def test_a_section_in_python_that_cannot_be(made: Callable[[], object], said: str) -> None:
+    with pytest.raises(NotationError, match=said):
+        made()

@@ -51,6 +51,18 @@ PLACED = {
     ),
     "gyr-1op": ("follower_inductor(a=in, RL=RL, R=R, C=C)", CURRENT),
     "nic": ("negative_resistance(a=in, R=R, Ra=r, Rb=r)", CURRENT),
+    "sk-lp-opamp-gain": (
+        "positive_feedback_lowpass(in=in, out=out, R1=R1, R2=R2, C1=C1, C2=C2, K=1 + R4/R3); free R3, R4",
+        VOLTAGE,
+    ),
+    "sk-loaded-source": ("unity_lowpass(in=g, out=out, R1=R1, R2=R2, C1=C1, C2=C2); in -- Rg -- g", VOLTAGE),
+    "howland": ("voltage_to_current(in=in, out=out, Ra=r, Rb=r, Rc=r, Rd=r); out -- RL -- gnd", VOLTAGE),
+    "inv-gbw": ("opamp(plus=gnd, minus=m, out=out, gbw=wt); in -- R1 -- m -- R2 -- out", VOLTAGE),
+    "cfa": (
+        "cfa(plus=in, minus=m, out=out, Rt=Rt, Ct=Ct); m -- Rg -- gnd; m -- Rf -- out; free Rt, Ct",
+        VOLTAGE,
+    ),
+    "xfmr-load": ("transformer(p1=in, p2=gnd, s1=a, s2=gnd, n=n); a -- RL -- gnd", CURRENT),
     "diff-amp": ("difference_amplifier(a=in, b=in, out=out, R1=R1, R2=R2, R3=R3, R4=R4)", VOLTAGE),
 }
 
@@ -100,9 +112,10 @@ NAMES = [
 
 
 def placed(section: str, sentences: str) -> sn.Network:
-    inside = section.partition("(")[2]
+    inside = section.partition("(")[2].partition(")")[0] + ")"
     used = [name for name in NAMES if any(f"{sign}{name}{end}" in inside for sign in "=*(" for end in ",)")]
-    return sn.network(f"X1: {section}; {sentences}; free {', '.join(used)}")
+    declared = f"; free {', '.join(used)}" if used else ""
+    return sn.network(f"X1: {section}; {sentences}{declared}")
 
 
 @pytest.mark.parametrize("case", PLACED)
