@@ -85,7 +85,9 @@ class Root:
         )
 
 
-def roots(coefficients: Sequence[Fraction | int], digits: int = 17) -> tuple[Root, ...]:
+def roots(
+    coefficients: Sequence[Fraction | int], digits: int = 17, *, closed: bool = True
+) -> tuple[Root, ...]:
     """Every root of a0 + a1*s + ... + an*s^n, repeated roots once with their multiplicity.
 
     Real and imaginary part of each root, where they are not exactly zero, carry a proven relative error below
@@ -97,6 +99,8 @@ def roots(coefficients: Sequence[Fraction | int], digits: int = 17) -> tuple[Roo
         Exact coefficients in ascending powers; zeros above the degree are allowed.
     digits
         Decimal digits proven, 17 is full double precision; at most 1000.
+    closed
+        Whether closed forms are looked for, which takes more digits of every root than doubles need.
 
     Returns
     -------
@@ -125,11 +129,11 @@ def roots(coefficients: Sequence[Fraction | int], digits: int = 17) -> tuple[Roo
     """
     if not 1 <= digits <= _MOST_DIGITS:
         raise LimitError(Fault(f"{digits} digits of a root; between 1 and {_MOST_DIGITS} can be asked for."))
-    return _roots(dense.primitive([Fraction(c) for c in coefficients])[1], digits)
+    return _roots(dense.primitive([Fraction(c) for c in coefficients])[1], digits, closed)
 
 
 @lru_cache(maxsize=512)
-def _roots(polynomial: Integers, digits: int) -> tuple[Root, ...]:
+def _roots(polynomial: Integers, digits: int, closed: bool) -> tuple[Root, ...]:
     if not polynomial:
         raise UndefinedError(Fault("Every number is a root of the polynomial 0.", "Is H = 0?"))
     if len(polynomial) - 1 > _MOST_DEGREE:
@@ -141,7 +145,10 @@ def _roots(polynomial: Integers, digits: int) -> tuple[Root, ...]:
             if len(piece) == 2:
                 found.append(_rational_root(Fraction(-piece[0], piece[1]), multiplicity))
             else:
-                found.extend(_as_roots(piece, isolate(piece, in_square, digits), in_square, multiplicity))
+                points = isolate(piece, in_square, digits)
+                everyone = [image for point in points for image in images(point, in_square)]
+                forms = closed_forms(piece, points, in_square) if closed else [None] * len(everyone)
+                found.extend(_as_root(*pair, multiplicity) for pair in zip(everyone, forms, strict=True))
     found.sort(key=_order)
     if at_origin:
         zero = Fraction(0)
@@ -182,19 +189,14 @@ def _rational_root(value: Fraction, multiplicity: int) -> Root:
     return Root(z, multiplicity, radius, value, Fraction(0), 0.0, Surd(value))
 
 
-def _as_roots(p: Integers, points: list[Point], in_square: bool, multiplicity: int) -> list[Root]:
-    found: list[Root] = []
-    everyone = [image for point in points for image in images(point, in_square)]
-    for point, surd in zip(everyone, closed_forms(p, points, in_square), strict=True):
-        if surd is not None and not surd.sign:
-            found.append(_rational_root(surd.rational, multiplicity))
-            continue
-        unit = 1 << point.shift
-        real, imag = Fraction(point.x, unit), Fraction(point.y, unit)
-        if surd is not None and imag:
-            real = surd.rational
-        value = complex(double(real), double(imag))
-        bound = power_of_two(point.log_radius)
-        radius = (bound + abs(value) * _DOUBLE) * (1 + 8 * _DOUBLE)
-        found.append(Root(value, multiplicity, radius, real, imag, bound, surd))
-    return found
+def _as_root(point: Point, surd: Surd | None, multiplicity: int) -> Root:
+    if surd is not None and not surd.sign:
+        return _rational_root(surd.rational, multiplicity)
+    unit = 1 << point.shift
+    real, imag = Fraction(point.x, unit), Fraction(point.y, unit)
+    if surd is not None and imag:
+        real = surd.rational
+    value = complex(double(real), double(imag))
+    bound = power_of_two(point.log_radius)
+    radius = (bound + abs(value) * _DOUBLE) * (1 + 8 * _DOUBLE)
+    return Root(value, multiplicity, radius, real, imag, bound, surd)

@@ -10,12 +10,14 @@ from typing import TYPE_CHECKING, Final
 from symnet.present.blocks import Block, Line, Paragraph, Table
 from symnet.present.formulas import amount
 from symnet.quantities import HERTZ, SECOND
+from symnet.shape.candidate import limits
 from symnet.shape.families.prototype import ALL_PASS, LOW_PASS, UNIT_DELAY
 from symnet.typeset.numbers import Written, plain_number
 
 if TYPE_CHECKING:
+    from symnet.shape.candidate import Candidate
     from symnet.shape.families.prototype import Reference
-    from symnet.shape.verdict import Candidate, Recognition
+    from symnet.shape.verdict import Recognition
 
 __all__ = ["recognition_blocks"]
 
@@ -41,6 +43,7 @@ def recognition_blocks(found: Recognition) -> tuple[Block, ...]:
         shown = found.candidates[:MOST_CANDIDATES]
         rows = tuple(_candidate_row(found, candidate, zeros=zeros) for candidate in shown)
         blocks.append(Table(("candidate", *columns, ""), rows, len(found.candidates) - len(shown)))
+        blocks.append(Paragraph(limits(all_pass=found.band == ALL_PASS)))
         blocks += _changes(found)
     if found.own:
         blocks.append(_references(found))
@@ -52,11 +55,13 @@ def recognition_blocks(found: Recognition) -> tuple[Block, ...]:
 
 def _candidate_row(found: Recognition, candidate: Candidate, *, zeros: bool) -> tuple[Line, ...]:
     if candidate is found.match:
-        role = f"match, exact: {candidate.exact}" if candidate.exact else f"match by {_criteria(candidate)}"
+        role = f"match, exact: {candidate.exact}" if candidate.exact else f"match by {candidate.criteria}"
     elif candidate in found.ties:
         role = "fits as well"
+    elif candidate.matches:
+        role = f"fits too, by {candidate.criteria}"
     else:
-        role = f"fits too, by {_criteria(candidate)}" if candidate.matches else "runner-up"
+        role = "nearest" if candidate is found.candidates[0] else "runner-up"
     figures = [f"{_bound(candidate.pole_error_percent)} %"]
     if zeros:
         figures.append(f"{_bound(candidate.zero_error_percent)} %")
@@ -64,11 +69,6 @@ def _candidate_row(found: Recognition, candidate: Candidate, *, zeros: bool) -> 
         figures.append(f"{_bound(candidate.response_error_db)} dB")
     figures.append(f"{_bound(candidate.delay_error_percent)} %")
     return (candidate.name, *(Written(text, text.replace("%", r"\%"), text) for text in figures), role)
-
-
-def _criteria(candidate: Candidate) -> str:
-    met = [("response", candidate.meets_response), ("poles", candidate.meets_poles)]
-    return " and ".join(name for name, is_met in met if is_met)
 
 
 def _changes(found: Recognition) -> Iterator[Block]:

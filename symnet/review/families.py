@@ -25,8 +25,8 @@ if TYPE_CHECKING:
     from symnet.exact.ratio import Ratio
     from symnet.expressions import Expression
     from symnet.review.judge import Judge
+    from symnet.shape.candidate import Candidate
     from symnet.shape.families import Family as CatalogueFamily
-    from symnet.shape.verdict import Candidate
 
 __all__ = ["judge_family"]
 

@@ -12,20 +12,19 @@ import math
 from collections.abc import Sequence
 from dataclasses import replace
 from fractions import Fraction
-from typing import Final
 
 from symnet.exact.ratio import Ratio
 from symnet.quantities import SECOND, engineering
-from symnet.shape.families.prototype import ALL_PASS, UNIT_DELAY, W0, Prototype, Reference
+from symnet.shape.candidate import Candidate, hertz
+from symnet.shape.families.prototype import ALL_PASS, UNIT_DELAY, W0, Reference
 from symnet.shape.pairing import distance_of_roots
+from symnet.shape.placing import AS_FREQUENCY
 from symnet.shape.ranking import candidates, ranked
 from symnet.shape.thresholds import ZEROS_PERCENT
 from symnet.shape.undoing import views
-from symnet.shape.verdict import Candidate, Recognition, hertz
+from symnet.shape.verdict import Recognition
 
 __all__ = ["all_pass", "is_all_pass"]
-
-_DELAY: Final = "T, the group delay at DC, as the frequency 1/T"
 
 
 def is_all_pass(poles: Sequence[complex], zeros: Sequence[complex]) -> bool:
@@ -56,7 +55,7 @@ def all_pass(h: Ratio, poles: tuple[complex, ...], zeros: tuple[complex, ...]) -
     delay = -2 * math.fsum((1 / p).real for p in poles)
     own = (
         Reference.named(W0, w0),
-        Reference(UNIT_DELAY, 1 / delay, _DELAY),
+        Reference(UNIT_DELAY, 1 / delay, AS_FREQUENCY),
     )
     said = f"T = {engineering(Fraction(delay), SECOND, digits=5)} of delay at DC"
     kind = "all-pass" if mirrored else "nearly an all-pass"
@@ -80,29 +79,14 @@ def all_pass(h: Ratio, poles: tuple[complex, ...], zeros: tuple[complex, ...]) -
 
 
 def _pade(best: Candidate) -> str:
-    n = best.prototype.order
+    n = best.member.order
     return (
         f" (the Pade approximant of a delay, {n} poles and {n} zeros)" if best.family.name == "Bessel" else ""
     )
 
 
 def _turned(c: Candidate) -> Candidate:
-    p = c.prototype
-    turned: Prototype = replace(
-        p,
-        zeros=tuple(-r.conjugate() for r in p.poles),
-        band=ALL_PASS,
-        gain=1.0,
-        references=tuple(
-            replace(r, w=r.w / 2, label=_DELAY) if r.name == UNIT_DELAY else r
-            for r in p.references
-            if r.name in {W0, UNIT_DELAY}
-        ),
-        equation="",
-        exact=None,
-        refined=None,
-    )
-    return replace(c, prototype=turned)
+    return replace(c, member=replace(c.member, band=ALL_PASS))
 
 
 def _section(p: complex) -> tuple[str, str]:

@@ -6,7 +6,7 @@ import numpy as np
 
 from symnet.shape.families.curves import HALF_POWER_DB
 from symnet.shape.families.prototype import CENTRE, LOW_PASS, W0, W3DB, Reference
-from symnet.shape.matching import level
+from symnet.shape.fitting import level
 from symnet.shape.undoing import View, w_of
 
 __all__ = ["level_at_1", "own_references"]

@@ -50,7 +50,7 @@ def paired(roots: Sequence[complex], wanted: Sequence[complex]) -> list[int]:
 
 
 def _smallest_bound(distances: NDArray[np.float64], low: float, high: float) -> float:
-    levels = np.unique(distances[(distances >= low) & (distances <= high)])
+    levels: list[float] = sorted(set(distances[(distances >= low) & (distances <= high)].tolist()))
     first, last = 0, len(levels) - 1
     while first < last:
         middle = (first + last) // 2
@@ -58,7 +58,7 @@ def _smallest_bound(distances: NDArray[np.float64], low: float, high: float) -> 
             last = middle
         else:
             first = middle + 1
-    return float(levels[first])
+    return levels[first]
 
 
 def _partners(allowed: NDArray[np.bool_]) -> list[int] | None:

@@ -14,30 +14,34 @@ import math
 from collections.abc import Sequence
 from decimal import Decimal
 from fractions import Fraction
-from typing import TYPE_CHECKING, Any, TypeAlias
+from typing import TYPE_CHECKING, Any, Final, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
 
 from symnet.errors import Fault, NotationError
 from symnet.exact.ratio import Ratio
-from symnet.exact.roots import Root, roots
+from symnet.exact.roots import roots
 from symnet.shape.allpass import all_pass, is_all_pass
+from symnet.shape.candidate import Candidate, hertz
 from symnet.shape.cascades import equal_sections, halves
 from symnet.shape.families.family import LARGEST_ORDER
 from symnet.shape.families.prototype import BAND_PASS, HIGH_PASS, LOW_PASS
 from symnet.shape.frequencies import level_at_1, own_references
 from symnet.shape.ranking import candidates
 from symnet.shape.shelving import shelf
-from symnet.shape.thresholds import POLES_PERCENT, TOLD_APART, ZEROS_PERCENT
+from symnet.shape.thresholds import POLES_PERCENT, SETTLED, ZEROS_PERCENT
 from symnet.shape.undoing import View, views
-from symnet.shape.verdict import Candidate, Recognition, hertz
+from symnet.shape.verdict import Recognition, ties
 
 if TYPE_CHECKING:
     from symnet.exact.transfer import Transfer
     from symnet.shape.stated import Conditions
 
 __all__ = ["Candidate", "Recognition", "recognise"]
+
+#: Notes that are told beside the verdict, not in it.
+_APART: Final = {"equal sections"}
 
 Number: TypeAlias = int | float | Fraction | Decimal | str
 
@@ -195,17 +199,17 @@ def _on_numbers(h: Ratio) -> Recognition:
     refusal = _not_compared(h, order)
     if refusal:
         return Recognition(refusal, order)
-    poles, zeros = _values(roots(h.den)), _values(roots(h.num))
+    poles, zeros = _values(h.den), _values(h.num)
     if is_all_pass(poles, zeros):
         return all_pass(h, poles, zeros)
     both_ends = len(zeros) == order and all(zeros)
-    if both_ends and any(100 * abs(z.real) > ZEROS_PERCENT * abs(z) for z in zeros):
+    if both_ends and any(map(_is_off_axis, zeros)):
         return shelf(h, poles, zeros)
     seen = []
     for view in views(poles, zeros):
-        if view.order <= LARGEST_ORDER:
+        if view.order <= LARGEST_ORDER and not any(map(_is_off_axis, view.zeros.tolist())):
             seen.append((view, _candidates(view, h)))
-            if seen[-1][1] and seen[-1][1][0].nearness <= TOLD_APART:
+            if seen[-1][1] and seen[-1][1][0].nearness <= SETTLED:
                 break
     seen = [(view, found) for view, found in seen if found or (view.order == 1 and not len(view.low_zeros))]
     if not seen:
@@ -230,6 +234,10 @@ def _on_numbers(h: Ratio) -> Recognition:
     return Recognition(verdict, order, view.band, found, q, own, level, notes, view.misfit_percent, poles)
 
 
+def _is_off_axis(zero: complex) -> bool:
+    return 100 * abs(zero.real) > ZEROS_PERCENT * abs(zero)
+
+
 def _candidates(view: View, h: Ratio) -> tuple[Candidate, ...]:
     return candidates(view, h.den) if view.order > 1 else ()
 
@@ -239,8 +247,8 @@ def _nearness(seen: tuple[View, tuple[Candidate, ...]]) -> tuple[bool, float]:
     return (not found[0].matches, found[0].nearness) if found else (False, 0.0)
 
 
-def _values(found: Sequence[Root]) -> tuple[complex, ...]:
-    return tuple(root.value for root in found for _ in range(root.multiplicity))
+def _values(ascending: Sequence[Fraction]) -> tuple[complex, ...]:
+    return tuple(root.value for root in roots(ascending, closed=False) for _ in range(root.multiplicity))
 
 
 def _not_compared(h: Ratio, order: int) -> str:
@@ -258,7 +266,7 @@ def _not_compared(h: Ratio, order: int) -> str:
             f"improper: H grows with s^{len(h.num) - 1 - order} towards high frequencies, "
             "which no filter family does"
         )
-    for root in roots(h.den):
+    for root in roots(h.den, closed=False):
         if root.value == 0:
             return "a pole at s = 0 (an integrator): no filter family has one"
         if root.value.real >= 0:
@@ -271,7 +279,8 @@ def _without_family(poles: tuple[complex, ...], zeros: tuple[complex, ...]) -> R
     """What kind of response it is that no family of the catalogue has."""
     order, origin = len(poles), sum(1 for z in zeros if not z)
     infinity = order - len(zeros)
-    finite = len(zeros) - origin
+    finite = [z for z in zeros if z]
+    off = [z for z in finite if _is_off_axis(z)]
     if order > LARGEST_ORDER:
         kind = f"order {order}: shapes are compared up to order {LARGEST_ORDER}"
         return Recognition(kind, order, poles=poles)
@@ -282,7 +291,13 @@ def _without_family(poles: tuple[complex, ...], zeros: tuple[complex, ...]) -> R
         if order % 2 == 0 and origin == infinity:
             kind = f"a band-pass ({ends})"
     else:
-        kind = f"a {band} with {_times(finite)} at finite frequencies other than 0"
+        kind = f"a {band} with {_times(len(finite))} at finite frequencies other than 0"
+    if off:
+        where = ", ".join(_point(z) for z in off if z.imag >= 0)
+        kind += f", off the jw axis ({where}): none of these, whose finite zeros all lie on it"
+        alone = _of_poles(poles, len(poles) if band == HIGH_PASS else 0)
+        said = f"{kind}; D(s) alone would be {alone.verdict}" if band != BAND_PASS else kind
+        return Recognition(said, order, band, poles=poles, own=alone.own[:1])
     notes = _product_notes(poles, zeros) if band == BAND_PASS and not finite else ()
     verdict = (
         f"{kind}: {notes[0][1]}" if notes else f"{kind}: none of these families has members of this kind"
@@ -367,15 +382,24 @@ def _verdict(
     quality = "" if q is None or view.is_two_sided else f"; Q = {q:.4g}"
     where = _where(best) if view.is_two_sided else ""
     if not best.matches:
-        extra = "".join(f"; {label}: {text}" for label, text in notes if label != "equal sections")
+        extra = "".join(f"; {label}: {text}" for label, text in notes if label not in _APART)
         return f"none of these; nearest is {best.name}: {best.distance}{where}{quality}{extra}"
+    also = "".join(f"; exactly {c.name}" for c in found[1:] if c.exact and c.is_tested)
+    if quality:
+        also += "".join(f"; of that Q: {c.name}" for c in found[1:] if c.exact and not c.is_tested)
     if best.exact and best.is_tested:
-        also = "".join(f"; exactly {c.name}" for c in found[1:] if c.exact and c.is_tested)
         return f"{best.name}, exactly{where}{quality}{also}"
     if best.exact:
         return f"{best.name}{where}{quality}, for which some {best.prototype.settings[0].name} can always be found"
-    also = "".join(f"; exactly {c.name}" for c in found[1:] if c.exact and c.is_tested)
-    return f"nearest: {best.name}; {best.distance}{where}{quality}{also}"
+    tied = "".join(f"; cannot be told from {c.name}: {c.distance}" for c in ties(found))
+    return f"nearest: {best.name}; {best.distance}; {_by(best)}{where}{quality}{also}{tied}"
+
+
+def _by(best: Candidate) -> str:
+    """Which criterion decided."""
+    if best.meets_response and best.meets_poles:
+        return "a match by response and by poles"
+    return "a match by response, not by poles" if best.meets_response else "a match by poles, not by response"
 
 
 def _where(best: Candidate) -> str:

@@ -11,7 +11,8 @@ from collections.abc import Sequence
 from fractions import Fraction
 
 from symnet.exact.ratio import Ratio
-from symnet.shape.verdict import Recognition, hertz
+from symnet.shape.candidate import hertz
+from symnet.shape.verdict import Recognition
 
 __all__ = ["decibels", "shelf"]
 

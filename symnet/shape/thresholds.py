@@ -21,6 +21,7 @@ __all__ = [
     "RESPONSE_DB",
     "ROUNDING",
     "SAME_SHAPE_PERCENT",
+    "SETTLED",
     "SIMPLER_POLES",
     "SIMPLER_RATIO",
     "SIMPLER_RESPONSE",
@@ -28,6 +29,10 @@ __all__ = [
     "TOLD_APART",
     "ZEROS_PERCENT",
 ]
+
+#: A family this near by response, in units of the limits (0.1 % of the poles, 0.002 dB), is what is meant: tables of
+#: four digits come nearer. No other is then looked for by its poles.
+SETTLED: Final = 0.02
 
 #: "Exactly", where exact arithmetic does not decide: poles and zeros within this, far above the rounding of doubles and
 #: far below any printed digits.
@@ -65,7 +70,7 @@ ZEROS_PERCENT: Final = 5.0
 #: where the one with more is nearer than the third, it is what is meant.
 SIMPLER_RESPONSE: Final = 0.7
 SIMPLER_RATIO: Final = 1.3
-#: But not where its poles are further off than this many times those of the other.
+#: But not where its poles are further off than this many times those of the other, unless both are one shape.
 SIMPLER_POLES: Final = 2.0
 TOLD_APART: Final = 0.003
 #: Where a family has as many parameters as the shape has numbers (order 2), a simpler one within this is meant.
@@ -74,8 +79,8 @@ AS_GOOD_AS_SIMPLER: Final = 0.03
 #: Two matches with equally many parameters whose response errors differ by less than this factor are called a tie.
 TIE_RATIO: Final = 1.5
 
-#: A fitted parameter at the end of its range whose poles are this near to those of a family with fewer parameters is
-#: that family, and is said once.
+#: Two members whose poles are this near to each other are one shape. A fitted parameter at the end of its range where
+#: the shape is that of a family with fewer parameters is that family, and is said once.
 SAME_SHAPE_PERCENT: Final = 1.5
 
 #: A reference that lies this near to 1 rad/s is what the coefficients are normalised to (tables print 5 digits).

@@ -6,7 +6,10 @@ DEVELOPERS.md. The suite runs a smaller share of the same draws (``test_confusio
 A prototype is drawn evenly over the families of an order from 3 to 8, its parameters evenly between the values that
 tables offer. Shaking multiplies each pole, its conjugate alike, by 1 + r e^(jt), r the shake and t evenly drawn (a real
 pole by 1 +- r); finite zeros keep their place on the jw axis and move by a factor 1 +- r. "Apart" counts draws in which
-the nearest member of any other family is more than twice the shake away in its poles (or its zeros).
+the nearest member of any other family is more than twice the shake away: in the pole error as recognition reports it
+(largest relative distance of a pair of poles, or of zeros, each set divided by its own w0), the smaller one of the
+members that response and poles choose. The shake is a distance in the same measure, and matches by poles are ranked in
+it.
 
 A random polynomial of order n has (n - k)/2 pairs of poles, k of 0 to 2 real poles to make the order; magnitudes are
 log-uniform within a factor of 4, the Q of pairs log-uniform between 0.5 and 10. All are stable.
@@ -24,7 +27,7 @@ import numpy as np
 
 from symnet.shape.families import CATALOGUE, Prototype
 from symnet.shape.families.family import Family, build
-from symnet.shape.matching import fits
+from symnet.shape.matching import fits, fits_by_poles
 from symnet.shape.recognise import Recognition, recognise
 from symnet.shape.undoing import views
 
@@ -97,7 +100,7 @@ def shaken(prototype: Prototype, r: float, rng: np.random.Generator) -> tuple[li
 def nearest_other(prototype: Prototype) -> float:
     """The smallest distance in poles and zeros to a member of another family, as a fraction."""
     view = next(v for v in views(prototype.poles, prototype.zeros) if v.band == "low-pass")
-    found = [*fits(view), *fits(view, by_poles=True)]
+    found = [*fits(view), *fits_by_poles(view)]
     apart = [
         max(f.pole_error_percent, f.zero_error_percent) / 100
         for f in found

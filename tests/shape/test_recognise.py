@@ -24,6 +24,7 @@ from symnet.shape.families.curves import attenuation
 from symnet.shape.families.family import Family
 from symnet.shape.families.legendre import legendre
 from symnet.shape.families.linear_phase import linear_phase
+from symnet.shape.families.transitional_gaussian import gaussian_to_6db, gaussian_to_12db
 from symnet.shape.matching import fits
 from symnet.shape.members import families_of
 from symnet.shape.pairing import distance_of_roots
@@ -206,16 +207,23 @@ class TestPublishedNetworks:
         assert found.match.pole_error_percent == pytest.approx(18.6, abs=0.2)
         assert found.match.response_error_db < 0.001
         assert "poles within 19 %" in found.verdict
+        assert "a match by response, not by poles" in found.verdict
         assert "pass band within" in found.verdict
 
     @pytest.mark.parametrize("case", LABELLED, ids=lambda c: c.id)
     def test_another_approximation_of_the_label_is_near(self, case: Ladder) -> None:
-        """Within 0.1 dB and 6 % of the delay of what the label says, among the nearest three; never exactly."""
+        """A finding: seven ladders printed as Gaussian to 6 or 12 dB are not what pole tables of that name define.
+
+        They get the label that their numbers have, which is none or that of a match by response alone; what is printed
+        over them is within 0.1 dB and 6 % of the delay, among the nearest three, with poles that are further off than
+        four digits can make them; never exactly.
+        """
         found = verdict(numeric(case))
         near = [c for c in found.candidates[:3] if c.prototype.family == APPROXIMATED[case.family]]
         assert near
         assert near[0].response_error_db < 0.1
         assert near[0].delay_error_percent < 6
+        assert near[0].pole_error_percent > 1
         assert "exactly" not in found.verdict
 
     @pytest.mark.parametrize("row", [r for r in published.POLES if r.order > 1], ids=lambda r: r.id)
@@ -380,6 +388,21 @@ class TestOrders1And2:
         assert ("Butterworth, order 2, low-pass", True) in others
         assert ("Bessel, order 2, low-pass", False) in others
 
+    def test_the_verdict_says_which_parameter_gives_that_q(self) -> None:
+        """Q = 0.6 by 1/Q = 2 zeta: a blend of Butterworth and Bessel has it, whatever else comes near."""
+        found = verdict([1, 1 / 0.6, 1])
+        assert "; Q = 0.6; of that Q: Butterworth-Thomson, order 2, m 0.76" in found.verdict
+
+    def test_ties_are_said(self) -> None:
+        """Half way between Gaussian to 6 dB and to 12 dB of order 3 there is no telling which."""
+        both = [
+            sorted(family(3).scaled("w0", 1.0).poles, key=lambda p: (p.imag, p.real))
+            for family in (gaussian_to_6db, gaussian_to_12db)
+        ]
+        found = verdict(of_poles([(p + q) / 2 for p, q in zip(*both, strict=True)]))
+        assert len(found.ties) == 1
+        assert f"; cannot be told from {found.ties[0].name}: poles within" in found.verdict
+
     @pytest.mark.parametrize(
         ("d", "family", "q"), [([3, 3, 1], "Bessel", 0.57735), ([1, 2**0.5, 1], "Butterworth", 0.70711)]
     )
@@ -400,6 +423,8 @@ class TestNotCompared:
             ([1], [1, -1, 1], "unstable: a pole in the right half plane, at s = 0.5 +- j0.866 rad/s"),
             ([1], [1, 0, 1], "unstable: a pole on the jw axis"),
             ([1, 1], [1, 4, 5, 3], "a low-pass with one zero at finite frequencies"),
+            ([3, 2, 1], [1, 4, 5, 3], "off the jw axis (s = -1 +- j1.414 rad/s): none of these"),
+            ([10, 1], [1, 2, 2, 1], "D(s) alone would be Butterworth, order 3, low-pass, exactly"),
             (
                 [0, 1],
                 [1, 4, 5, 3],
@@ -435,7 +460,7 @@ class TestMatching:
 
     @pytest.mark.parametrize("family", CATALOGUE, ids=lambda f: f.name)
     def test_fit_is_a_minimum(self, family: Family) -> None:
-        """No scale near the fitted one gives a smaller sum of squares over the pass band of H."""
+        """No scale near the fitted one gives a sum of squares over the pass band that is smaller by a few per cent."""
         poles = [-0.3 + 1j, -0.3 - 1j, -0.7 + 0j]
         (view,) = views(poles, [])
         if family not in families_of(3, 0):
@@ -447,7 +472,7 @@ class TestMatching:
             own = attenuation(w * scale, result.prototype.poles)
             return float(((own - attenuation(w, poles)) ** 2).sum())
 
-        assert squares(1.0) <= min(squares(0.999), squares(1.001))
+        assert squares(1.0) <= 1.03 * min(squares(k) for k in np.linspace(0.8, 1.25, 451).tolist())
 
     def test_no_half_power_frequency(self) -> None:
         """A response that never falls by 3 dB is not compared with any."""

@@ -46,9 +46,14 @@ def attenuation(
 
 def _log_of_squares(w: Floats, roots: Sequence[complex] | NDArray[np.complex128]) -> Floats:
     r = np.asarray(roots, dtype=complex)
-    squares = (r.real**2 + (np.asarray(w)[..., None] - r.imag) ** 2) / (r.real**2 + r.imag**2)
+    squares = np.asarray(w)[..., None] - r.imag
+    squares *= squares
+    squares += r.real**2
+    squares /= r.real**2 + r.imag**2
     with np.errstate(divide="ignore"):
-        total: Floats = np.log(squares).sum(axis=-1)
+        total: Floats = np.zeros(squares.shape[:-1])
+        for first in range(0, len(r), 8):  # a product of so many stays in the range of doubles
+            total += np.log(squares[..., first : first + 8].prod(axis=-1))
     return total
 
 
@@ -84,12 +89,14 @@ def last_crossing(
         return None
     low, high = float(grid[below[-1]]), float(grid[below[-1] + 1])
     w = math.sqrt(low * high) if low > 0 else high / 2
+    plus, minus = _squared(p), _squared(zeros)
     for _ in range(80):
-        excess = float(attenuation(np.asarray(w), poles, zeros)) - level_db
+        up, rise = _at(w, plus)
+        down, fall = _at(w, minus)
+        excess = _DB_PER_NEPER_SQUARED * (up - down) - level_db
         low, high = (low, w) if excess > 0 else (w, high)
-        slope = _slope(w, poles, zeros)
-        step = excess / slope if slope else math.inf
-        new = w - step
+        slope = _DB_PER_NEPER_SQUARED * (rise - fall)
+        new = w - excess / slope if slope else -math.inf
         if not low < new < high:
             new = (low + high) / 2
         if abs(new - w) <= 2e-16 * w:
@@ -98,15 +105,17 @@ def last_crossing(
     return w
 
 
-def _slope(
-    w: float,
-    poles: Sequence[complex] | NDArray[np.complex128],
-    zeros: Sequence[complex] | NDArray[np.complex128],
-) -> float:
-    """The derivative of the attenuation in dB per rad/s."""
+def _squared(roots: Sequence[complex] | NDArray[np.complex128]) -> list[tuple[float, float, float]]:
+    """Of each root the square of its real part, its imaginary part and its squared magnitude."""
+    return [(r.real * r.real, r.imag, r.real * r.real + r.imag * r.imag) for r in map(complex, roots)]
 
-    def part(roots: Sequence[complex] | NDArray[np.complex128]) -> float:
-        r = np.asarray(roots, dtype=complex)
-        return float((2 * (w - r.imag) / (r.real**2 + (w - r.imag) ** 2)).sum())
 
-    return _DB_PER_NEPER_SQUARED * (part(poles) - (part(zeros) if len(zeros) else 0.0))
+def _at(w: float, roots: list[tuple[float, float, float]]) -> tuple[float, float]:
+    """The sum of ln |1 - jw/r|^2 and its derivative by w; in plain numbers, where arrays would take longer."""
+    total = slope = 0.0
+    for real_squared, imag, size in roots:
+        away = w - imag
+        square = real_squared + away * away or 5e-324  # on a zero of the jw axis
+        total += math.log(square / size)
+        slope += 2 * away / square
+    return total, slope
