@@ -117,8 +117,9 @@ def _stands_before(simpler: Candidate, other: Candidate) -> bool:
         return simpler.nearness <= AS_GOOD_AS_SIMPLER
     if other.nearness <= TOLD_APART:
         return simpler.nearness <= SIMPLER_RATIO * other.nearness
-    told_by_poles = (
-        other.freedom > 1 and simpler.pole_error_percent > SIMPLER_POLES * other.pole_error_percent
+    told_by_poles = other.freedom > 1 and (
+        simpler.pole_error_percent > SIMPLER_POLES * other.pole_error_percent
+        or (other.meets_poles and not simpler.meets_poles)
     )
     if told_by_poles and not _are_one_shape(simpler, other):
         return False
