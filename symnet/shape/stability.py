@@ -54,6 +54,7 @@ _RANK: Final[tuple[Verdict, ...]] = ("stable", "marginal", "conditional", "undec
 _PASSIVE: Final = (
     "a network of positive R, L and C alone has no pole in the right half plane, whatever the values"
 )
+_LONGEST_REPR: Final = 300  # characters; all of it is in the text
 _MOST_PROVEN: Final = 12  # terms of a discriminant that is written out
 
 
@@ -88,7 +89,11 @@ class Stability(Displayed):
         return f"{self.verdict}: {self.reason}{': ' if listed else ''}{listed}"
 
     def __repr__(self) -> str:
-        return f"<{self}>"
+        shown = str(self)
+        if len(shown) > _LONGEST_REPR:
+            shown = f"{self.verdict}: {self.reason[:_LONGEST_REPR]}"
+            shown += f" ({len(self.relations)} conditions, see .relations)" if self.relations else ""
+        return f"<{shown}>"
 
 
 def stability(H: Response) -> Stability:

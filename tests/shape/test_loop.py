@@ -237,6 +237,32 @@ def test_kept_symbols() -> None:
         loop_gain(photodiode("2 pF"), "U1", symbols="Cx")
 
 
+RING = """
+    # two integrators and an inverter in a ring (invented)
+    in -- R1 -- a -- C1 || R2 -- x;  U1: opamp(plus=gnd, minus=a, out=x)
+    x -- R3 -- b -- C2 -- y;  U2: opamp(plus=gnd, minus=b, out=y)
+    y -- R4 -- c -- R5 -- z;  U3: opamp(plus=gnd, minus=c, out=z)
+    z -- R6 -- a;  drive in;  read y
+    R1, R3, R4, R5, R6 = 10k;  R2 = 20k;  C1, C2 = 1.59n
+"""
+
+
+@pytest.mark.parametrize("name", ["U1", "U2", "U3"])
+def test_each_of_three_op_amps_has_its_own_loop(name: str) -> None:
+    """Far above the filter each op amp sees its own feedback only: U1, U2 all of its output, U3 one half of it."""
+    network = sn.network(RING)
+    for opamp in ("U1", "U2", "U3"):
+        network = network.with_opamp(opamp, gbw="1 MHz")
+    loop = loop_gain(network, name)
+    (crossover,) = loop.crossovers()
+    assert crossover.f == pytest.approx(0.5e6 if name == "U3" else 1e6, rel=1e-3)
+    assert loop.phase_margin() == pytest.approx(90, abs=1.5)
+    # all three have the same determinant D: the zeros of every 1 + T are the poles of the network
+    poles = sorted((pole.value.real, pole.value.imag) for pole in sn.derive(network).numeric().poles())
+    zeros = sorted((zero.value.real, zero.value.imag) for zero in loop.difference.numeric().zeros())
+    assert [pytest.approx(place, rel=1e-9) for place in zeros] == poles
+
+
 # -- against the oracle ----------------------------------------------------------------------------------------
 
 

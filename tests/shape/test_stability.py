@@ -272,3 +272,11 @@ def test_a_mode_on_the_jw_axis_makes_the_whole_marginal_also_where_only_values_h
         assert found.verdict == "marginal"
         assert sn.normalise(sn.derive(each)).stability == found
         assert "but a mode that it hides" in found.reason
+
+
+def test_repr_stays_short_where_conditions_are_long() -> None:
+    net = network(HANGING["three sections around an inverting gain"])
+    found = stability(derive(net))
+    assert len(str(found)) > 300
+    assert len(repr(found)) < 400
+    assert "conditions, see .relations" in repr(found)
