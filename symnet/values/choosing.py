@@ -9,7 +9,7 @@ compared by what they do (:mod:`symnet.values.choosing_aim`), all of them or by 
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterable, Mapping, Sequence
+from collections.abc import Callable, Iterable, Iterator, Mapping, Sequence
 from dataclasses import replace
 from fractions import Fraction
 from functools import partial
@@ -44,6 +44,8 @@ List: TypeAlias = "str | Preferred"
 _Outcomes: TypeAlias = Callable[[Sequence[Fraction]], tuple[Outcome, ...]]
 
 _USUAL: Final = {"R": ("E24", "1 kohm", "100 kohm"), "C": ("E6", "1 nF", "100 nF")}
+_FAR: Final = 0.2  # an error beyond which the limits of the lists are doubted
+_FAR_DB: Final = 2.0
 _MOST_ALIKE: Final = 6
 
 
@@ -147,10 +149,18 @@ def choose(
         found.least,
         found.complete,
         found.how,
-        ()
-        if any(model.linear)
-        else ("no bound over ranges of values: a coefficient of H can change its sign",),
+        tuple(_notes(model, aim.objective, best.error)),
     )
+
+
+def _notes(model: Model, objective: Objective, error: float) -> Iterator[str]:
+    if not all(model.linear):
+        names = ", ".join(
+            name for name, bounded in zip(model.names, model.linear, strict=True) if not bounded
+        )
+        yield f"No bound over a range of values of {names}: tied to others, or beside a coefficient that changes its sign."
+    if error > (_FAR_DB if objective == "dB" else _FAR):
+        yield "No combination of these lists comes near the target: do their limits leave out what is needed?"
 
 
 # -- which parts, from which lists ----------------------------------------------------------------------------------

@@ -57,6 +57,16 @@ class Model:
             return cls(H, names, lambda arrays: coefficient_arrays(H, arrays), (z_raw, m_raw), layout, linear)
         return cls(H, names, lambda arrays: _by_terms(H, arrays), (z, m), layout, linear)
 
+    def roots(self) -> tuple[tuple[complex, ...], tuple[complex, ...]]:
+        """Poles and zeros away from the origin for the values that H has, those that cancel for them included."""
+        n, d = self.coefficients({name: np.array([float(self.H.values[name])]) for name in self.names})
+        sides = []
+        for side, first, degree in zip((d, n), self.origin[::-1], self.layout[1::-1], strict=True):
+            tau = (side[first, 0] / side[first + degree, 0]) ** (1 / degree) if degree else 1.0
+            c = side[first : first + degree + 1, 0] * tau ** np.arange(degree + 1)
+            sides.append(tuple(complex(root) * tau for root in np.roots(c[::-1])))
+        return sides[0], sides[1]
+
     def figures(self, aim: Aim, values: Sequence[Floats]) -> Figures:
         """The figures of the aim for arrays of values, one for each name."""
         n, d = self.coefficients(dict(zip(self.names, values, strict=True)))

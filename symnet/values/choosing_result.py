@@ -121,6 +121,8 @@ class Choice(Displayed):
 
     def written(self, error: float) -> str:
         """An error in the unit of the objective."""
+        if error < 1e-12:
+            error = 0.0
         if self.objective == "dB":
             return f"{engineering(Fraction(error), digits=3)} dB"
         return f"{engineering(Fraction(100 * error), digits=3)} %"

@@ -64,6 +64,8 @@ def aim_of(model: Model, wanted: Wanted) -> Aim:
     else:
         h = model.H if target is None else target
         poles, zeros, gain = _of_ratio(h if isinstance(h, Ratio) else h.numeric(), z - m)
+        if target is None and (len(poles), len(zeros)) != (bottom, top):
+            poles, zeros = model.roots()  # a pole and a zero of these very values cancel, which no others do
     if (len(poles), len(zeros)) != (bottom, top):
         raise NotationError(
             Fault(

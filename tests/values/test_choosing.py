@@ -267,6 +267,68 @@ class TestWhatIsChosen:
         assert [part.entry.labels for part in choice.best.parts] == [("R-1",), ("R-2",), ("C-1",), ("C-2",)]
         assert dict(choice.lists)["R1"].name == "drawer.csv"
 
+    def test_lists_that_leave_out_what_is_needed_are_doubted(self) -> None:
+        far = sn.choose(TWO_POLE, f0="10 MHz", Q=2)
+        assert far.optimal
+        assert any("do their limits leave out" in note for note in far.notes)
+        assert not sn.choose(TWO_POLE, f0="1 kHz", Q=2).notes
+
+    def test_what_is_tied_is_searched_without_bounds_and_said_so(self) -> None:
+        tied = sn.choose(TWO_POLE.add("R2 = R1"), f0="1 kHz", Q=2, R="E96", C="E12")
+        assert any("of R1: tied" in note for note in tied.notes)
+        r, c = members("E96", 1e3, 1e5), members("E12", 1e-9, 1e-7)
+        grid = np.meshgrid(r, c, c, indexing="ij")
+        f0, q = figures_of_two_pole(grid[0], grid[0], grid[1], grid[2])
+        error = np.maximum(np.abs(f0 / 1000 - 1), np.abs(q / 2 - 1))
+        assert tied.how == "branch and bound"
+        assert tied.complete
+        assert tied.error == pytest.approx(error.min(), rel=1e-9)
+
+    def test_a_balanced_network_is_a_target_though_a_pole_and_a_zero_cancel(self) -> None:
+        twin = sn.network("""
+            in -- R1 -- a -- R2 -- out; a -- C3 -- gnd; in -- C1 -- b -- C2 -- out; b -- R3 -- gnd
+            drive in; read out; R1, R2 = 10 kohm; R3 = 5 kohm; C1, C2 = 10 nF; C3 = 20 nF
+        """)
+        choice = sn.choose(twin, keep="R1 R2 C1 C2", R="E24", C="E24")
+        assert {name: str(value) for name, value in choice.values.items()} == {
+            "C3": "20 nF",
+            "R3": "5.1 kohm",
+        }
+        poles = sn.derive(choice.network).numeric().poles()
+        assert len(poles) == 3
+
+    def test_numbers_of_zeros_and_high_pass(self) -> None:
+        high = sn.network(
+            "in -- C1 -- x -- C2 -- p; x -- R1 -- out; p -- R2 -- gnd; drive in; read out;"
+            "U1: opamp(plus=p, minus=out, out=out)"
+        )
+        capacitors = "E6, 100 nF .. 1 uF"
+        by_figures = sn.choose(high, f0="100 Hz", Q=0.5**0.5, C=capacitors)
+        by_poles = sn.choose(high, sn.butterworth(2).at(f3dB="100 Hz").high_pass(), C=capacitors)
+        assert by_figures.values == by_poles.values
+        (crossing,) = sn.f3db(sn.derive(by_poles.network))
+        assert crossing.f == pytest.approx(100, rel=1e-3)
+
+    def test_finite_zeros_count(self) -> None:
+        ladder = sn.network(
+            "in -- Rs -- a -- L2 || C2 -- out; a -- C1 -- gnd; out -- C3 || RL -- gnd;"
+            "drive in; read out; Rs, RL = 50 ohm"
+        )
+        target = sn.elliptic(3, "0.1 dB", "30 dB").at(f3dB="10 MHz")
+        capacitors = "E24, 30 pF .. 1 nF"
+        with pytest.raises(SymnetError, match="in F"):
+            sn.choose(ladder, target, keep="Rs RL", C=capacitors, L="E12, 100 nF .. 10 uF")
+        choice = sn.choose(ladder, target, keep="Rs RL", C=capacitors, L="E12, 100 nH .. 10 uH")
+        assert choice.optimal
+        H = sn.derive(choice.network).numeric()
+        wanted, zeros = np.array(target.poles), np.array(target.zeros)
+        got_poles = np.array([root.value for root in H.poles()])
+        got_zeros = np.array([root.value for root in H.zeros()])
+        off = [np.min(np.abs(got_poles[:, None] / wanted - 1), axis=0).max()]
+        off.append(np.min(np.abs(got_zeros[:, None] / zeros - 1), axis=0).max())
+        assert max(off) == pytest.approx(choice.error, rel=1e-6)
+        assert any(outcome.name == "f of zero 1" for outcome in choice.best.outcomes)
+
     def test_a_hidden_mode_does_not_count(self) -> None:
         bridge = sn.network("in -- R1 -- out -- C1 -- gnd; in -- R2 -- y -- C2 -- gnd; drive in; read out")
         choice = sn.choose(bridge, f0="1 kHz")
