@@ -213,6 +213,8 @@ class _Diagnosing:
                 if at_node and hypothesis.name
                 else (hypothesis.slip.value, hypothesis.sentence)
             )
+            if len(hypothesis.path) == 1 and not hypothesis.name:
+                key = hypothesis.slip.value, "side"  # the left side turned is the right side turned
             if key in told or hypothesis.sides in lines:
                 continue
             tested += 1
