@@ -266,7 +266,12 @@ def _value_in_chain(clue: Clue) -> Said | None:
     last = max(k for k, word in enumerate(clue.words[: clue.index]) if word.text == "=")
     if any(word.text in _CHAIN for word in clue.words[last : clue.index]):
         return None
-    part = clue.words[last - 1].text
+    part, other = clue.words[last - 1].text, clue.text(1)
+    if clue.text() in {"||", "+"} and other[:1] in {*"RLCZY"} and clue.text(2) == "=":
+        group = f"{part} {clue.text()} {other}"
+        return Said(
+            "a value stands behind one part of a chain", f"write {group}, and the values apart: {part} = ..."
+        )
     message = "inside a chain a value is one quantity or one name"
     return Said(message, f"give an expression in a statement of its own: {part} = ...")
 

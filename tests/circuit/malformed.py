@@ -237,6 +237,15 @@ line 1, column 9: = is missing between C1 and 22
     write C1 = 22 nF""",
     ),
     (
+        "two parts with values in one link",
+        "a -- R1 = 470k || C1 = 330p -- gnd",
+        """\
+line 1, column 16: a value stands behind one part of a chain
+    a -- R1 = 470k || C1 = 330p -- gnd
+                   ^^
+    write R1 || C1, and the values apart: R1 = ...""",
+    ),
+    (
         "an expression inside a chain",
         "a -- C1 = 2*C2 -- gnd",
         """\
