@@ -7,8 +7,8 @@ high orders element values of four digits leave it alone and move the poles by a
 
 So candidates that match by poles stand first, ordered by their poles; then those that match by response alone, ordered
 by response; then those that do not match. Both figures are always shown, and the verdict says which criterion was met.
-Ranking by response alone was tried: it hands prototypes with poles shaken by 1 % to whichever family happens to have the
-same pass band (DEVELOPERS.md has the counts).
+Ranking by the better of the two figures was measured as well: of 2 185 shaken prototypes that no other family was near
+to, ten were named after one that happens to have the same pass band; now none is (DEVELOPERS.md).
 """
 
 from __future__ import annotations
