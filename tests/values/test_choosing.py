@@ -57,7 +57,7 @@ def full_enumeration(r: Floats, c: Floats) -> list[tuple[float, tuple[float, ...
 
 
 class TestN16:
-    """Preferred values together: 1 kHz, Q = 2, E24 resistors, E6 capacitors (../shared figures as printed there)."""
+    """Preferred values together: 1 kHz, Q = 2, E24 resistors, E6 capacitors. Values and figures are those of need N16."""
 
     @pytest.fixture(scope="class")
     @staticmethod
