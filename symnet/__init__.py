@@ -46,6 +46,7 @@ if TYPE_CHECKING:
     from symnet.present.brief import brief
     from symnet.present.explain import explain
     from symnet.response.frequency import group_delay, phase
+    from symnet.response.noise import noise
     from symnet.response.time import step
     from symnet.review.verify import verify
     from symnet.shape import prototypes
@@ -105,6 +106,7 @@ __all__ = [
     "locus",
     "loop_gain",
     "network",
+    "noise",
     "normalise",
     "opamp",
     "phase",
@@ -144,6 +146,7 @@ _WHERE = {
     "symnet.present.explain": "explain",
     "symnet.response.frequency": "group_delay phase",
     "symnet.response.time": "step",
+    "symnet.response.noise": "noise",
     "symnet.review.verify": "verify",
     "symnet.shape.difference": "compare",
     "symnet.shape.dominant": "dominant",

@@ -73,6 +73,7 @@ WORDS = {
     "locus",
     "loop_gain",
     "network",
+    "noise",
     "normalise",
     "opamp",
     "phase",

@@ -31,7 +31,15 @@ if TYPE_CHECKING:
     from symnet.exact.quotient import Quotient
     from symnet.expressions import Expression
 
-__all__ = ["Confirmation", "UnconfirmedError", "confirm", "random_point", "solve_at", "undetermined"]
+__all__ = [
+    "Confirmation",
+    "UnconfirmedError",
+    "confirm",
+    "random_point",
+    "read_at",
+    "solve_at",
+    "undetermined",
+]
 
 _MOST_TRIES: Final = 4
 #: Terms up to which the polynomials as written out are compared, and not the diagrams they come from.
@@ -151,15 +159,33 @@ def solve_at(
     network: Network, naming: Naming, drive: int, trial: int
 ) -> tuple[Stamped, Callable[[int], int]] | None:
     """The equations at that random point and what each unknown is for one drive of value 1; None where singular."""
+    return _solved(network, naming, random_point(naming, trial), {network.drive_names[drive]: 1})
+
+
+def read_at(
+    network: Network, naming: Naming, read: Expression, point: list[int], drives: Mapping[str, int]
+) -> int | None:
+    """What is read, modulo the prime, when these drives have these values all at once; None where singular."""
+    solved = _solved(network, naming, point, drives)
+    if solved is None:
+        return None
+    system, solution = solved
+    total: int = sum(weight.value * solution(k) for k, weight in system.weights(read).items())
+    return total % PRIME
+
+
+def _solved(
+    network: Network, naming: Naming, point: list[int], drives: Mapping[str, int]
+) -> tuple[Stamped, Callable[[int], int]] | None:
     try:
-        system = _at(network, naming, random_point(naming, trial))
+        system = _at(network, naming, point)
     except ZeroDivisionError:
         return None
     size = len(system.unknowns)
-    column = system.sources[network.drive_names[drive]]
     rows = [{k: e.value for k, e in row.items() if e.value} for row in system.matrix]
-    for k, value in column.items():
-        rows[k][size] = value.value
+    for name, strength in drives.items():
+        for k, value in system.sources[name].items():
+            rows[k][size] = (rows[k].get(size, 0) + strength * value.value) % PRIME
     pivots = _eliminate(rows, size)
     if len(pivots) < size:
         return None

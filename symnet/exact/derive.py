@@ -16,6 +16,7 @@ from symnet.exact.determinant import Determinant
 from symnet.exact.hidden import Aside, Reason
 from symnet.exact.matrices import Matrix
 from symnet.exact.modular import PRIME
+from symnet.exact.naming import Naming
 from symnet.exact.pieces import Pieces, named_currents
 from symnet.exact.polynomials import ONE, Terms, negated
 from symnet.exact.quotient import Quotient
@@ -25,7 +26,16 @@ from symnet.exact.trees import ZERO, Diagram, Piece
 from symnet.expressions import Expression, Name, dimension_of, names_in
 from symnet.quantities import AMPERE, VOLT, Dimension
 
-__all__ = ["derive", "derive_all", "derive_from", "determinant_of", "quotient_of"]
+__all__ = [
+    "derive",
+    "derive_all",
+    "derive_from",
+    "determinant_of",
+    "dimension_of_read",
+    "driven_by",
+    "quotient_of",
+    "read_of",
+]
 
 
 def derive(
@@ -61,7 +71,7 @@ def derive(
     10000*s*C1 + 2
     """
     if drive is not None:
-        network, chosen = _driven_by(network, drive)
+        network, chosen = driven_by(network, drive)
     elif len(network.drives) > 1:
         names = ", ".join(network.drive_names)
         raise WiringError(
@@ -70,7 +80,7 @@ def derive(
                 "say which: derive(net, drive=...), or derive_all(net) for one H each",
             )
         )
-    reads = network.reads if read is None else (_read(network, read),)
+    reads = network.reads if read is None else (read_of(network, read),)
     if len(reads) > 1:
         raise WiringError(
             Fault(
@@ -105,7 +115,7 @@ def derive_all(
     if isinstance(symbols, str):
         symbols = symbols.replace(",", " ").split()
     kept = None if symbols is None else frozenset(symbols)
-    wanted = network.reads if reads is None else tuple(_read(network, read) for read in reads)
+    wanted = network.reads if reads is None else tuple(read_of(network, read) for read in reads)
     if not network.drives or not wanted:
         derive(network)  # says what is missing
     check_drives(network)
@@ -250,7 +260,8 @@ def _whole(pieces: Pieces, structure: Structure) -> Determinant:
     return Determinant(pieces.naming.generators, structure.whole, pieces.take, pieces.leave)
 
 
-def _read(network: Network, text: str) -> Expression:
+def read_of(network: Network, text: str) -> Expression:
+    """What a text such as ``a - b`` or ``i_R1`` reads; NotationError where the network has no such name."""
     from symnet.circuit.reading import read_reading
 
     expression = read_reading(text)
@@ -264,7 +275,7 @@ def _read(network: Network, text: str) -> Expression:
     return expression
 
 
-def _driven_by(network: Network, text: str) -> tuple[Network, Drive]:
+def driven_by(network: Network, text: str) -> tuple[Network, Drive]:
     """The network with the drive that ``text`` names or describes, added if it is not there yet."""
     from symnet.circuit.writing import write_drive
 
@@ -290,14 +301,19 @@ def _label(network: Network, drive: Drive, read: Expression) -> str:
 
 
 def _dimension(pieces: Pieces, drive: Drive, read: Expression) -> Dimension:
+    top = dimension_of_read(pieces.naming, pieces.network, read)
+    return top / (AMPERE if isinstance(drive, CurrentDrive) else VOLT)
+
+
+def dimension_of_read(naming: Naming, network: Network, read: Expression) -> Dimension:
+    """The dimension of a read: volt for a voltage, ampere for a current."""
     known: dict[str, Dimension] = {}
-    for node in (*pieces.network.nodes, GROUND):
+    for node in (*network.nodes, GROUND):
         known[node] = known[f"v_{node}"] = VOLT
-    for name in (*pieces.network.part_names, *pieces.network.drive_names):
+    for name in (*network.part_names, *network.drive_names):
         known[f"i_{name}"], known[f"v_{name}"] = AMPERE, VOLT
     if any(name.name not in known for name in names_in(read)):  # only then are those of all names inferred
-        for word, dimension in pieces.naming.dimensions.items():
+        for word, dimension in naming.dimensions.items():
             if dimension is not None:
                 known.setdefault(word, dimension)
-    top = dimension_of(read, known) or VOLT
-    return top / (AMPERE if isinstance(drive, CurrentDrive) else VOLT)
+    return dimension_of(read, known) or VOLT

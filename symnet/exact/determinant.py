@@ -28,7 +28,15 @@ from symnet.exact.trees import ONE as _NO_ROWS
 from symnet.exact.trees import Diagram, too_wide
 from symnet.exact.unfolding import unfold
 
-__all__ = ["MOST_TERMS", "Determinant", "count_in_words", "numeric_pair", "pair_modulo", "too_long"]
+__all__ = [
+    "MOST_TERMS",
+    "Determinant",
+    "coefficients_at",
+    "count_in_words",
+    "numeric_pair",
+    "pair_modulo",
+    "too_long",
+]
 
 #: Paths of a diagram that are still written out as terms.
 MOST_TERMS: Final = 500_000
@@ -153,12 +161,12 @@ class Determinant:
         """The coefficients, ascending in s, for these values of the names; [] where they make it zero."""
         takes, leaves, scale = [], [], 1
         for take, leave in zip(self.take, self.leave, strict=True):
-            taken, left = _coefficients(take, values), _coefficients(leave, values)
+            taken, left = coefficients_at(take, values), coefficients_at(leave, values)
             common = lcm(*(c.denominator for c in (*taken, *left)))
             takes.append([int(c * common) for c in taken])
             leaves.append([int(c * common) for c in left])
             scale *= common
-        factor = _coefficients(self.factor, values)
+        factor = coefficients_at(self.factor, values)
         common = lcm(*(c.denominator for c in factor))
         found = _polynomial(self.form, takes, leaves, [int(c * common) for c in factor])
         return [Fraction(c, scale * common) for c in found]
@@ -210,12 +218,12 @@ def numeric_pair(n: Determinant, d: Determinant, values: Sequence[Fraction]) -> 
     """
     takes, leaves, scales = [], [], []
     for take, leave in zip(n.take, n.leave, strict=True):
-        taken, left = _coefficients(take, values), _coefficients(leave, values)
+        taken, left = coefficients_at(take, values), coefficients_at(leave, values)
         scale = lcm(*(c.denominator for c in (*taken, *left)))
         takes.append([int(c * scale) for c in taken])
         leaves.append([int(c * scale) for c in left])
         scales.append(scale)
-    n_factor, d_factor = (_coefficients(factor, values) for factor in (n.factor, d.factor))
+    n_factor, d_factor = (coefficients_at(factor, values) for factor in (n.factor, d.factor))
     common = lcm(*(c.denominator for c in (*n_factor, *d_factor)))
     own = len(d.take)
     extra = prod(scales[own:]) * common
@@ -224,7 +232,7 @@ def numeric_pair(n: Determinant, d: Determinant, values: Sequence[Fraction]) -> 
     return top, bottom
 
 
-def _coefficients(terms: Terms, values: Sequence[Fraction]) -> list[Fraction]:
+def coefficients_at(terms: Terms, values: Sequence[Fraction]) -> list[Fraction]:
     """The coefficients, ascending in s, of a weight at these values."""
     out: list[Fraction] = [Fraction(0)]
     for coefficient, powers in terms:

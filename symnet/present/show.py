@@ -27,6 +27,7 @@ from symnet.present.explain import Explanation
 from symnet.present.locus import locus_blocks, real_opamps_blocks
 from symnet.present.loop import loop_blocks, stability_blocks
 from symnet.present.network import network_blocks
+from symnet.present.noise import formula_blocks, noise_blocks
 from symnet.present.ports import element_blocks, extremes_blocks, matrix_blocks, modes_blocks, two_port_blocks
 from symnet.present.recognition import recognition_blocks
 from symnet.present.response import half_power_rows, step_blocks
@@ -44,6 +45,8 @@ from symnet.present.scaling import scaling_blocks
 from symnet.present.shapes import form_blocks, normal_blocks, sections_blocks
 from symnet.present.writers import formula_latex, html, latex, markdown, text
 from symnet.quantities import NUMBER
+from symnet.response.noise import Noise
+from symnet.response.noise_formula import NoiseFormula
 from symnet.response.time import StepResponse
 from symnet.review.verdicts import Review
 from symnet.shape.difference import Comparison
@@ -238,3 +241,13 @@ def _preferred(value: Preferred) -> Bundle:
 @formats(Choice)
 def _choice(value: Choice) -> Bundle:
     return bundle(choice_blocks(value))
+
+
+@formats(Noise)
+def _noise(value: Noise) -> Bundle:
+    return bundle(noise_blocks(value))
+
+
+@formats(NoiseFormula)
+def _noise_formula(value: NoiseFormula) -> Bundle:
+    return bundle(formula_blocks(value))

@@ -15,7 +15,6 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Sequence
-from fractions import Fraction
 from typing import TYPE_CHECKING, Any, TypeAlias
 
 import numpy as np
@@ -24,6 +23,7 @@ from numpy.typing import NDArray
 from symnet.errors import Fault, UndefinedError
 from symnet.exact.ratio import Ratio
 from symnet.exact.roots import Root
+from symnet.response.axis import added, product, squared, turning
 
 if TYPE_CHECKING:
     from symnet.exact.transfer import Transfer
@@ -32,7 +32,6 @@ __all__ = [
     "decibels",
     "delay_over_square",
     "group_delay",
-    "halves",
     "in_numbers",
     "phase",
     "squared_magnitude",
@@ -56,7 +55,7 @@ def squared_magnitude(H: Transfer | Ratio) -> Ratio:
     (Fraction(1, 1), Fraction(0, 1), Fraction(0, 1), Fraction(1, 1))
     """
     h = in_numbers(H)
-    return Ratio.of(_squared(*halves(h.num)), _squared(*halves(h.den)))
+    return Ratio.of(squared(h.num), squared(h.den))
 
 
 def delay_over_square(H: Transfer | Ratio) -> Ratio:
@@ -65,6 +64,7 @@ def delay_over_square(H: Transfer | Ratio) -> Ratio:
     For P(jw) = E + jwO the derivative of the phase is (E (O + 2x O') - 2x O E')/(E^2 + x O^2). Jumps at zeros and poles
     on the jw axis are left out. Raises UndefinedError for H = 0.
 
+    >>> from fractions import Fraction
     >>> delay = delay_over_square(Ratio.of([1], [15, 15, 6, 1]))     # Bessel 3, unit delay
     >>> delay.at(Fraction(0)), round(float(delay.at(Fraction(4))), 4)
     (Fraction(1, 1), 0.8867)
@@ -72,10 +72,10 @@ def delay_over_square(H: Transfer | Ratio) -> Ratio:
     h = in_numbers(H)
     if h.is_zero:
         raise UndefinedError(Fault("H = 0 has no phase and no delay.", "Is the read connected to the drive?"))
-    top, bottom = _turning(h.den)
-    other_top, other_bottom = _turning(h.num)
+    top, bottom = turning(h.den)
+    other_top, other_bottom = turning(h.num)
     return Ratio.of(
-        _sum(_product(top, other_bottom), _product(other_top, bottom), -1), _product(bottom, other_bottom)
+        added(product(top, other_bottom), product(other_top, bottom), -1), product(bottom, other_bottom)
     )
 
 
@@ -165,47 +165,3 @@ def _turn(a: float, b: float, w: Floats) -> Floats:
     if a == 0:
         return np.zeros(w.shape)
     return (1 / a) / (1 + ((w - b) / a) ** 2)
-
-
-# -- exact polynomials in x = w^2 ------------------------------------------------------------------------------
-
-_Polynomial: TypeAlias = list[Fraction]
-
-
-def halves(coefficients: Sequence[Fraction]) -> tuple[_Polynomial, _Polynomial]:
-    """E and O of P(jw) = E(x) + j w O(x)."""
-    even = [c * (-1) ** k for k, c in enumerate(coefficients[0::2])]
-    odd = [c * (-1) ** k for k, c in enumerate(coefficients[1::2])]
-    return even, odd
-
-
-def _squared(even: _Polynomial, odd: _Polynomial) -> _Polynomial:
-    return _sum(_product(even, even), [Fraction(0), *_product(odd, odd)])
-
-
-def _turning(coefficients: Sequence[Fraction]) -> tuple[_Polynomial, _Polynomial]:
-    """The derivative of the phase of P(jw) by w, as numerator and denominator in x."""
-    even, odd = halves(coefficients)
-    odd_slope, even_slope = ([k * c for k, c in enumerate(p)][1:] for p in (odd, even))
-    twice = [Fraction(0), *(2 * c for c in odd_slope)]
-    first = _product(even, _sum(odd, twice))
-    second = [Fraction(0), *(2 * c for c in _product(odd, even_slope))]
-    return _sum(first, second, -1), _squared(even, odd)
-
-
-def _sum(p: Sequence[Fraction], q: Sequence[Fraction], factor: int = 1) -> _Polynomial:
-    total = [*p, *([Fraction(0)] * (len(q) - len(p)))]
-    for k, c in enumerate(q):
-        total[k] += factor * c
-    return total
-
-
-def _product(p: Sequence[Fraction], q: Sequence[Fraction]) -> _Polynomial:
-    if not p or not q:
-        return []
-    total = [Fraction(0)] * (len(p) + len(q) - 1)
-    for i, a in enumerate(p):
-        if a:
-            for k, b in enumerate(q):
-                total[i + k] += a * b
-    return total

@@ -30,7 +30,8 @@ from symnet.exact.readable.forms import readable
 from symnet.exact.roots import Root as Place
 from symnet.exact.roots import roots
 from symnet.quantities import HERTZ
-from symnet.response.frequency import halves, squared_magnitude
+from symnet.response.axis import halves
+from symnet.response.frequency import squared_magnitude
 from symnet.shape.closed import Closed, Figure, power_product
 from symnet.shape.figures import frequency_of_square, signs_around
 from symnet.shape.positive import sign_of

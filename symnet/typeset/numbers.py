@@ -37,6 +37,8 @@ _LARGEST_PREFIX: Final[dict[str, int]] = {
     "S": 3,
     "V": 6,
     "A": 6,
+    "V/rtHz": 6,
+    "A/rtHz": 6,
     "W": 9,
     "Hz": 12,
     "rad/s": 12,
@@ -92,7 +94,7 @@ def plain_number(value: Real, digits: int = DIGITS, *, pad: bool = False) -> Wri
 
 
 def quantity(value: Real, unit: str, digits: int = DIGITS, *, pad: bool = False) -> Written:
-    r"""A number with its unit, with a prefix where the unit takes one (ohm, F, H, S, V, A, W, Hz, rad/s, s).
+    r"""A number with its unit, with a prefix where the unit takes one (ohm, F, H, S, V, A, W, Hz, rad/s, s, V/rtHz).
 
     Other units (dB, deg, %, 1/s, V/V) are written beside the plain number. Raises
     :class:`~symnet.errors.UndefinedError` for a float that is no number.
@@ -211,12 +213,14 @@ def _beside(number: Written, prefix: str, unit: str) -> Written:
         return number
     if unit == "deg":
         return Written(f"{number.text} deg", rf"{number.latex}^{{\circ}}", f"{number.html}°")
-    # In a typeset unit, ohm and micro have their signs.
+    # In a typeset unit, ohm, micro and the root have their signs.
     micro = prefix == "u"
     plain = _POWER_IN_UNIT.sub("", unit)
     power = unit[len(plain) + 1 :] if plain != unit else ""
-    latex = (r"\mu " if micro else prefix) + escape_latex(plain).replace("ohm", r"\Omega ").strip()
-    html = ("µ" if micro else prefix) + escape_html(plain).replace("ohm", "Ω")
+    latex = (r"\mu " if micro else prefix) + escape_latex(plain).replace("ohm", r"\Omega ").replace(
+        "rtHz", r"\sqrt{Hz}"
+    ).strip()
+    html = ("µ" if micro else prefix) + escape_html(plain).replace("ohm", "Ω").replace("rtHz", "√Hz")
     if power:
         latex, html = f"{latex}^{{{power}}}", f"{html}<sup>{power}</sup>"
     return Written(

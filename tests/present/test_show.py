@@ -45,6 +45,11 @@ RESULTS: dict[str, Any] = {
     "real op amps": sn.real_opamps(NET, gain="100k", gbw="1 MHz", Rout="100 ohm"),
     "stability": sn.stability(H),
     "stability in symbols": sn.stability(sn.derive(POSITIVE)),
+    "noise": sn.noise(NET, "p", signal="1 V at 1 kHz"),
+    "noise of an op amp in a band": sn.noise(
+        NET, U1="en = 5 nV/rtHz, in = 1 pA/rtHz, corner = 100 Hz", band="0.1 Hz to 20 kHz"
+    ),
+    "noise in symbols": sn.noise(SYMBOLS, "p"),
     "brief": sn.brief(NET),
     "review": sn.verify(NET, "node x: (x - in)/R1 + s*C1*x = 0; p = out; out/in = 1/(1 + s*R1*C1); R1 = R2"),
     "review in symbols": sn.verify(SYMBOLS, "R1 = R2; out/in = 1/(1 + s*C2*(R1 + R2) + s^2*R1*R2*C1*C2)"),
