@@ -42,7 +42,7 @@ if TYPE_CHECKING:
 
 __all__ = ["Superposition", "slopes", "superposition"]
 
-_MOST_TERMS: Final = 20_000
+_MOST_TERMS: Final = 2000
 _MOST_TRIES: Final = 4
 
 
