@@ -18,11 +18,12 @@ from typing import Any, Final
 
 import mpmath
 
-from symnet.errors import UndefinedError
+from symnet.errors import LimitError, UndefinedError
 
 __all__ = ["LadderSet", "doubly_terminated", "singly_terminated"]
 
 DIGITS: Final = 120
+_ORDER: Final = 20  # 2^10 shares where all zeros of reflection are complex
 _SAME: Final = 40  # digits in which two numbers agree that are taken as equal: double roots keep 60
 
 
@@ -48,14 +49,20 @@ def doubly_terminated(
     """All ladders between ``source`` and ``load`` (ohm) with H(s) = H(0) D(0)/D(s), smallest spread first.
 
     F(s) F(-s) = D(s) D(-s) - 4 Rs RL/(Rs + RL)^2 D(0)^2. ``denominator`` is D, ascending, of whole
-    numbers, fractions or mpmath numbers; so are the resistors. Order 10 tries at most 2^10 shares.
+    numbers, fractions or mpmath numbers; so are the resistors.
 
-    Raises :class:`~symnet.errors.UndefinedError` where no such ladder exists, with the reason.
+    Raises :class:`~symnet.errors.UndefinedError` where no such ladder exists, with the reason, and
+    :class:`~symnet.errors.LimitError` beyond order 20, where the shares are too many to try.
 
     >>> found = doubly_terminated([1, 2, 2, 1], source=1, load=1, series_first=True)
     >>> [[round(g, 6) for g in one.elements] for one in found]
     [[1.0, 2.0, 1.0]]
     """
+    if len(denominator) - 1 > _ORDER:
+        raise LimitError(
+            f"Order {len(denominator) - 1} has too many shares of its reflection zeros to try them all; "
+            f"the limit is order {_ORDER}."
+        )
     with mpmath.workdps(DIGITS):
         d = [_number(c) / _number(denominator[0]) for c in denominator]
         source, load = _number(source), _number(load)

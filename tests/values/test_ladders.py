@@ -9,7 +9,7 @@ import mpmath
 import pytest
 
 import symnet as sn
-from symnet.errors import UndefinedError
+from symnet.errors import LimitError, UndefinedError
 from symnet.values.ladders import LadderSet, doubly_terminated, singly_terminated
 from tests.reference.cases import Ladder
 from tests.reference.test_element_tables import EXACT_SCALE, SCALE, printed, prototype
@@ -109,3 +109,8 @@ def test_with_unequal_resistors_it_may_rise() -> None:
 def test_a_denominator_with_roots_on_the_right_is_none_of_a_ladder() -> None:
     with pytest.raises(UndefinedError, match="roots on the right"):
         singly_terminated((1, 1, 1, 2), load=1)
+
+
+def test_beyond_order_20_the_shares_are_too_many() -> None:
+    with pytest.raises(LimitError, match="Order 21"):
+        doubly_terminated((1,) * 22, source=1, load=1, series_first=True)
