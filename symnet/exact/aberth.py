@@ -18,6 +18,8 @@ from dataclasses import dataclass
 from itertools import pairwise
 from typing import Final
 
+import numpy as np
+
 from symnet.errors import Fault, LimitError
 from symnet.exact.doubles import scaled
 
@@ -25,6 +27,11 @@ __all__ = ["Approximations", "approximate", "repulsion"]
 
 _WIDEST: Final = 900.0  # log2 of the ratio of sizes of roots that doubles can hold in one iteration
 _DOUBLE: Final = 2.0**-53
+
+# Eigenvalues of the companion matrix are quicker and nearer starts for a polynomial of moderate degree whose roots
+# are of one size; beyond, they lose the small roots first.
+_MOST_EIGENVALUES: Final = 30
+_NARROW: Final = 20.0  # log2
 
 
 @dataclass(frozen=True, slots=True)
@@ -68,8 +75,8 @@ def approximate(p: Sequence[int]) -> Approximations:
                 "Check the units of the values.",
             )
         )
-    # The odd turn keeps the starts off every axis of symmetry, where an iteration could be caught.
-    starts = tuple(
+    starts = _by_eigenvalues(p, scale, edges) or tuple(
+        # The odd turn keeps the starts off every axis of symmetry, where an iteration could be caught.
         cmath.rect(2.0**size, 2 * math.pi * (i / (m - k) + k / degree) + 0.7)
         for k, m, size in edges
         for i in range(m - k)
@@ -77,6 +84,20 @@ def approximate(p: Sequence[int]) -> Approximations:
     # |root| <= 2*max|a_(n-k)/a_n|^(1/k) (Fujiwara 1916), and likewise for 1/root.
     ring = Approximations(starts, scale, 2.0 ** edges[0][2] / 2, 2.0 ** edges[-1][2] * 2)
     return Approximations(tuple(_iterate(p, ring)), scale, ring.low, ring.high)
+
+
+def _by_eigenvalues(
+    p: Sequence[int], scale: int, edges: Sequence[tuple[int, int, float]]
+) -> tuple[complex, ...]:
+    """The eigenvalues of the companion matrix, as starts, where degree and spread let them be near; else nothing."""
+    degree = len(p) - 1
+    if not 3 <= degree <= _MOST_EIGENVALUES or max(abs(size) for _, _, size in edges) > _NARROW:
+        return ()
+    top = max(c.bit_length() + k * scale for k, c in enumerate(p))
+    row = [scaled(c, k * scale - top) for k, c in enumerate(p)]
+    found = tuple(map(complex, np.roots(row[::-1])))
+    good = len(found) == degree == len(set(found)) and all(found) and all(map(cmath.isfinite, found))
+    return found if good else ()
 
 
 def _below(a: tuple[int, float], b: tuple[int, float], c: tuple[int, float]) -> bool:
