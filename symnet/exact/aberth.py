@@ -28,8 +28,8 @@ __all__ = ["Approximations", "approximate", "repulsion"]
 _WIDEST: Final = 900.0  # log2 of the ratio of sizes of roots that doubles can hold in one iteration
 _DOUBLE: Final = 2.0**-53
 
-# Eigenvalues of the companion matrix are quicker and nearer starts for a polynomial of moderate degree whose roots
-# are of one size; beyond, they lose the small roots first.
+# For a polynomial of moderate degree whose roots are of one size the eigenvalues of the companion matrix are had
+# sooner, conjugates as exact pairs; beyond, they lose the small roots first.
 _MOST_EIGENVALUES: Final = 30
 _NARROW: Final = 20.0  # log2
 
@@ -75,21 +75,25 @@ def approximate(p: Sequence[int]) -> Approximations:
                 "Check the units of the values.",
             )
         )
-    starts = _by_eigenvalues(p, scale, edges) or tuple(
-        # The odd turn keeps the starts off every axis of symmetry, where an iteration could be caught.
+    # |root| <= 2*max|a_(n-k)/a_n|^(1/k) (Fujiwara 1916), and likewise for 1/root.
+    low, high = 2.0 ** edges[0][2] / 2, 2.0 ** edges[-1][2] * 2
+    near = _by_eigenvalues(p, scale, edges)
+    if near:
+        return Approximations(near, scale, low, high)
+    # The odd turn keeps the starts off every axis of symmetry, where an iteration could be caught.
+    starts = tuple(
         cmath.rect(2.0**size, 2 * math.pi * (i / (m - k) + k / degree) + 0.7)
         for k, m, size in edges
         for i in range(m - k)
     )
-    # |root| <= 2*max|a_(n-k)/a_n|^(1/k) (Fujiwara 1916), and likewise for 1/root.
-    ring = Approximations(starts, scale, 2.0 ** edges[0][2] / 2, 2.0 ** edges[-1][2] * 2)
-    return Approximations(tuple(_iterate(p, ring)), scale, ring.low, ring.high)
+    ring = Approximations(starts, scale, low, high)
+    return Approximations(tuple(_iterate(p, ring)), scale, low, high)
 
 
 def _by_eigenvalues(
     p: Sequence[int], scale: int, edges: Sequence[tuple[int, int, float]]
 ) -> tuple[complex, ...]:
-    """The eigenvalues of the companion matrix, as starts, where degree and spread let them be near; else nothing."""
+    """The eigenvalues of the companion matrix where degree and spread let them be near; else nothing."""
     degree = len(p) - 1
     if not 3 <= degree <= _MOST_EIGENVALUES or max(abs(size) for _, _, size in edges) > _NARROW:
         return ()

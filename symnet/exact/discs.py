@@ -81,7 +81,7 @@ def _separate(
 ) -> list[Point]:
     """The points moved by Aberth's iteration until their discs do not overlap; those that stand alone stay."""
     points = list(points)
-    steps = [newton.step(point, bits, _ENOUGH) for point in points]
+    steps = _steps(newton, points, bits)
     z = np.array([point.as_complex(near.scale) for point in points])
     for _ in range(_MOST_SWEEPS):
         moved = False
@@ -101,6 +101,22 @@ def _separate(
         if not moved:  # either all discs are apart, or nothing moves at this precision
             break
     return points
+
+
+def _steps(newton: Newton, points: list[Point], bits: int) -> list[Step | None]:
+    """Newton's step at every point; of two that are each other's conjugate only one is asked."""
+    steps: list[Step | None] = []
+    known: dict[tuple[int, int, int], int] = {}
+    for k, point in enumerate(points):
+        twin = known.get((point.x, -point.y, point.shift)) if point.y else None
+        if twin is None:
+            known[point.x, point.y, point.shift] = k
+            steps.append(newton.step(point, bits, _ENOUGH))
+            continue
+        point.log_radius, point.lost = points[twin].log_radius, points[twin].lost
+        step = steps[twin]
+        steps.append(None if step is None else (step[0], -step[1], step[2]))
+    return steps
 
 
 def _repelled(points: list[Point], z: Complexes, i: int, step: Step | None, scale: int) -> complex:

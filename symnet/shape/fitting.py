@@ -39,7 +39,8 @@ _SHORTEST: Final = 1e-3  # of a Gauss-Newton step, before the point is taken as 
 _WORTH_A_STEP: Final = 1e-7
 _FAR_DB: Final = 2 * RESPONSE_DB
 _WORTH_FAR: Final = 1e-2
-_ROUNDING_DB: Final = 1e-12  # of a residual
+#: Of a residual: rounding; with two parameters, where members are made to ten digits, what those leave.
+_ROUNDING_DB: Final = (1e-12, 1e-9)
 _DB: Final = 10 / math.log(10)
 
 
@@ -232,9 +233,11 @@ class ByResponse:
             low[:, k + 1], high[:, k + 1] = -_WIDEST, _WIDEST
         r = self._residual(self.x, self.poles, self.zeros)
         cost = np.einsum("fr,fr->f", r, r)
-        least, far = (r.shape[1] * db**2 for db in (_ROUNDING_DB, _FAR_DB))
+        single = np.asarray(self.own) < 2
+        least = r.shape[1] * np.where(single, *_ROUNDING_DB) ** 2
+        far = r.shape[1] * _FAR_DB**2
         normal = np.zeros((len(r), self.x.shape[1], self.x.shape[1]))
-        active, single = np.arange(len(r)), np.asarray(self.own) < 2
+        active = np.arange(len(r))
         before = self.x.copy(), self.poles.copy(), self.zeros.copy()
         for _ in range(_MOST_STEPS):
             self._turn(active.tolist(), before)
@@ -249,13 +252,13 @@ class ByResponse:
             promised = (downhill * full).sum(axis=1)
             hopeless = single[active] & (cost[active] > far)
             worth = np.where(hopeless, _WORTH_FAR, _WORTH_A_STEP) * cost[active]
-            going = (promised > worth) & (cost[active] > least)
+            going = promised > worth
             active, full = active[going], full[going]
             if not len(active):
                 break
             before, sums = (self.x.copy(), self.poles.copy(), self.zeros.copy()), cost[active]
             self._try(active, full, (low, high), r, cost)
-            active = active[cost[active] < sums]
+            active = active[(cost[active] < sums) & (cost[active] > least[active])]
             if not len(active):
                 break
         spread: Floats = np.zeros((len(cost), k))

@@ -37,7 +37,7 @@ Floats: TypeAlias = NDArray[np.float64]
 Complexes: TypeAlias = NDArray[np.complex128]
 
 #: Members along each parameter in the table of starts, for 0, 1 and 2 parameters.
-_POINTS: Final = (1, 33, 9)
+_POINTS: Final = (1, 33, 17)
 #: Of squared magnitudes given by their natural logarithm.
 _DB: Final = 10 / np.log(10)
 
