@@ -267,7 +267,8 @@ def _value_in_chain(clue: Clue) -> Said | None:
     if any(word.text in _CHAIN for word in clue.words[last : clue.index]):
         return None
     part, other = clue.words[last - 1].text, clue.text(1)
-    if clue.text() in {"||", "+"} and other[:1] in {*"RLCZY"} and clue.text(2) == "=":
+    another = other[:1] in {*"RLCZY"} and (clue.text(2) == "=" or other[:1] != part[:1])
+    if clue.text() in {"||", "+"} and another:
         group = f"{part} {clue.text()} {other}"
         return Said(
             "a value stands behind one part of a chain", f"write {group}, and the values apart: {part} = ..."

@@ -246,6 +246,15 @@ line 1, column 16: a value stands behind one part of a chain
     write R1 || C1, and the values apart: R1 = ...""",
     ),
     (
+        "a part with a value beside one without",
+        "m -- R2 = 9.1k || C2 -- y",
+        """\
+line 1, column 16: a value stands behind one part of a chain
+    m -- R2 = 9.1k || C2 -- y
+                   ^^
+    write R2 || C2, and the values apart: R2 = ...""",
+    ),
+    (
         "an expression inside a chain",
         "a -- C1 = 2*C2 -- gnd",
         """\
