@@ -49,9 +49,10 @@ class Approximations:
         return step if kept else here * complex(0.4, -0.8)
 
 
-def approximate(p: Sequence[int]) -> Approximations:
+def approximate(p: Sequence[int], *, quick: bool = False) -> Approximations:
     """All roots of p, whose first and last coefficient must not be zero, about as well as doubles can.
 
+    ``quick`` takes eigenvalues, conjugates as exact pairs, and gives no points where they would not be near.
     Raises :class:`~symnet.errors.LimitError` for roots more than 270 decades apart.
 
     >>> a = approximate((10, -11, 1))
@@ -77,9 +78,8 @@ def approximate(p: Sequence[int]) -> Approximations:
         )
     # |root| <= 2*max|a_(n-k)/a_n|^(1/k) (Fujiwara 1916), and likewise for 1/root.
     low, high = 2.0 ** edges[0][2] / 2, 2.0 ** edges[-1][2] * 2
-    near = _by_eigenvalues(p, scale, edges)
-    if near:
-        return Approximations(near, scale, low, high)
+    if quick:
+        return Approximations(_by_eigenvalues(p, scale, edges), scale, low, high)
     # The odd turn keeps the starts off every axis of symmetry, where an iteration could be caught.
     starts = tuple(
         cmath.rect(2.0**size, 2 * math.pi * (i / (m - k) + k / degree) + 0.7)

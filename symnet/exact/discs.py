@@ -47,18 +47,23 @@ def isolate(p: Integers, in_square: bool, digits: int) -> list[Point]:
     ``in_square`` says that p is a polynomial in s^2. p must be square-free with p(0) != 0. Each coordinate that is
     not exactly zero has a relative error below 10^-digits.
     """
-    near = approximate(p)
     newton = Newton(p)
+    quick = approximate(p, quick=True)
+    points = [_point(z, quick.scale, _FIRST_BITS) for z in quick.points]
+    _steps(newton, points, _FIRST_BITS)
+    if points and not _crowded(points, quick.scale):  # else their symmetry could hold the iteration fast
+        found = _proven(p, newton, points, quick.scale, in_square=in_square, digits=digits)
+        if found is not None:
+            return found
+    near = approximate(p)
     points = [_point(z, near.scale, _FIRST_BITS) for z in near.points]
     bits = _FIRST_BITS
     while bits <= _MOST_BITS:
         with Progress("finding roots", "roots apart", len(points)) as at:
             points = _separate(newton, points, near, bits, at)
-        chosen = _symmetric(points, in_square)
-        proven = [good for point in chosen if (good := refine(newton, point, digits)) is not None]
-        everyone = [image for point in proven for image in images(point, in_square)]
-        if len(everyone) == len(p) - 1 and not _crowded(everyone, near.scale):
-            return proven
+        found = _proven(p, newton, points, near.scale, in_square=in_square, digits=digits)
+        if found is not None:
+            return found
         bits *= 2
     raise LimitError(
         Fault(
@@ -66,6 +71,16 @@ def isolate(p: Integers, in_square: bool, digits: int) -> list[Point]:
             "Check the values of the parts: some of them are nearly, but not quite, such that poles coincide.",
         )
     )
+
+
+def _proven(
+    p: Integers, newton: Newton, points: list[Point], scale: int, *, in_square: bool, digits: int
+) -> list[Point] | None:
+    """One point of each set of mirror images, refined; None unless all roots are there, each in a disc of its own."""
+    chosen = _symmetric(points, in_square)
+    proven = [good for point in chosen if (good := refine(newton, point, digits)) is not None]
+    everyone = [image for point in proven for image in images(point, in_square)]
+    return proven if len(everyone) == len(p) - 1 and not _crowded(everyone, scale) else None
 
 
 def _point(z: complex, scale: int, bits: int) -> Point:

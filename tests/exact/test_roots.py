@@ -309,3 +309,17 @@ def test_law_discs_hold_the_true_roots(quadratics: list[tuple[int, int, int]]) -
 def test_sizes_rise() -> None:
     found = roots(with_roots([3, -1, 7, Fraction(1, 2), -20]))
     assert all(abs(a.value) <= abs(b.value) for a, b in pairwise(found))
+
+
+def test_roots_that_nearly_meet_on_the_real_axis_are_told_apart() -> None:
+    """(s - 1)^2 = e^2 and (s - 1)^2 = -e^2, e = 1e-13: starts that are mirror images must not hold them together."""
+    e = Fraction(1, 10**13)
+    for sign in (1, -1):
+        p = [1 - sign * e**2, Fraction(-2), Fraction(1)]
+        q = [p[0] * 3, p[0] + 3 * p[1], p[1] + 3 * p[2], p[2]]  # and a root at -3
+        found = roots(q)
+        assert len(found) == 3
+        near = [root for root in found if root.value.real > 0]
+        assert all(root.is_real == (sign > 0) for root in near)
+        apart = near[0].real - near[1].real if sign > 0 else near[0].imag - near[1].imag
+        assert abs(abs(float(apart)) - 2e-13) < 1e-20
