@@ -50,7 +50,7 @@ def isolate(p: Integers, in_square: bool, digits: int) -> list[Point]:
     newton = Newton(p)
     quick = approximate(p, quick=True)
     points = [_point(z, quick.scale, _FIRST_BITS) for z in quick.points]
-    _steps(newton, points, _FIRST_BITS)
+    _steps(newton, points, _FIRST_BITS)  # puts a disc about each
     if points and not _crowded(points, quick.scale):  # else their symmetry could hold the iteration fast
         found = _proven(p, newton, points, quick.scale, in_square=in_square, digits=digits)
         if found is not None:

@@ -36,7 +36,7 @@ from functools import cached_property
 from symnet.errors import LimitError
 from symnet.exact.forests import Ends, Forest, Runs
 from symnet.exact.matrices import Matrix
-from symnet.exact.trees import ZERO, Diagram, Piece, build
+from symnet.exact.trees import ZERO, Diagram, Piece, build, permutation_sign
 
 __all__ = ["Minor", "Structure", "chained", "structure_of", "unchained"]
 
@@ -114,7 +114,9 @@ class Structure:
     def parity(self) -> int:
         """That of the rows and of the columns to which the tree leads, together."""
         tree = sorted(self.tree)
-        return _parity([self._rows.child[k] for k in tree]) * _parity([self._columns.child[k] for k in tree])
+        return permutation_sign([self._rows.child[k] for k in tree]) * permutation_sign(
+            [self._columns.child[k] for k in tree]
+        )
 
     @cached_property
     def _built(self) -> tuple[tuple[Diagram | Matrix, int], ...]:
@@ -171,7 +173,7 @@ class Structure:
             ]
         )
         tree = tuple([place for place, k in enumerate(kept) if k in chosen])
-        parity = _parity([row(self._rows.child[kept[k]]) or 0 for k in tree]) * _parity(
+        parity = permutation_sign([row(self._rows.child[kept[k]]) or 0 for k in tree]) * permutation_sign(
             [column(self._columns.child[kept[k]]) or 0 for k in tree]
         )
         return Minor(len(tree) + bool(border), pieces, tree, parity)
@@ -375,18 +377,3 @@ def _components(arcs: Sequence[Sequence[int]]) -> list[list[int]]:
                 elif index[at] < index[path[-1][0]]:
                     index[path[-1][0]] = index[at]
     return out
-
-
-def _parity(places: Sequence[int]) -> int:
-    """+1 for an even permutation of 0..n-1, -1 for an odd one."""
-    seen = [False] * len(places)
-    parity = 1
-    for start in range(len(places)):
-        at, length = start, 0
-        while not seen[at]:
-            seen[at] = True
-            at = places[at]
-            length += 1
-        if length and length % 2 == 0:
-            parity = -parity
-    return parity

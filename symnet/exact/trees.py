@@ -42,7 +42,7 @@ if TYPE_CHECKING:
     import numpy as np
     from numpy.typing import NDArray
 
-__all__ = ["MOST_NODES", "ONE", "ZERO", "Diagram", "Level", "Piece", "build", "too_wide"]
+__all__ = ["MOST_NODES", "ONE", "ZERO", "Diagram", "Level", "Piece", "build", "permutation_sign", "too_wide"]
 
 #: Nodes beyond which no diagram is built on: at about 200 bytes for each while it is built, 40 MB.
 MOST_NODES: Final = 200_000
@@ -422,7 +422,7 @@ class _Side:
         number = [0] * size
         for n, end in enumerate(by_leaving):
             number[end] = n
-        self.parity = _parity(by_leaving)
+        self.parity = permutation_sign(by_leaving)
         self.base = base
         self.start = chr(base + size)
         self.ends = [
@@ -455,7 +455,7 @@ class _Side:
         return *places, "".join([chr(self.base + end) for end in leaving])
 
 
-def _parity(permutation: list[int]) -> int:
+def permutation_sign(permutation: Sequence[int]) -> int:
     """+1 for an even permutation of 0..n-1, -1 for an odd one."""
     seen = [False] * len(permutation)
     parity = 1

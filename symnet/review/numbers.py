@@ -14,12 +14,14 @@ from symnet.exact.ratio import Ratio
 from symnet.review.rounding import approximations
 
 if TYPE_CHECKING:
+    from collections.abc import Mapping
+
     from symnet.exact.readable.packed import Polynomial
     from symnet.expressions import Expression
-    from symnet.review.algebra import Value
+    from symnet.review.algebra import Algebra, Value
     from symnet.review.scope import Scope
 
-__all__ = ["coefficients", "ratio_of"]
+__all__ = ["coefficients", "coefficients_at", "ratio_of"]
 
 
 def ratio_of(scope: Scope, value: Value, where: Expression) -> Ratio:
@@ -34,22 +36,30 @@ def ratio_of(scope: Scope, value: Value, where: Expression) -> Ratio:
 def coefficients(scope: Scope, polynomial: Polynomial, where: Expression) -> list[Fraction]:
     """The coefficients of s^0, s^1, ... of a polynomial whose names all have numbers."""
     algebra = scope.solution.algebra
-    known = approximations(algebra)
+    try:
+        return coefficients_at(algebra, polynomial, approximations(algebra))
+    except KeyError as missing:
+        name = str(missing.args[0])
+    if name.startswith("root"):
+        raise MissingValueError(
+            Fault("this is not a real number", "w and f stand for s/j: write s", where.span)
+        )
+    what = name.partition(":")[2] or name
+    raise MissingValueError(Fault(f"no value for {what}", f"give one: {what} = ...", where.span))
+
+
+def coefficients_at(
+    algebra: Algebra, polynomial: Polynomial, known: Mapping[str, Fraction]
+) -> list[Fraction]:
+    """The coefficients of s^0, s^1, ... at these values of the names; KeyError with the first name that has none."""
     out: list[Fraction] = [Fraction(0)]
     for monomial, coefficient in polynomial.items():
         term, degree = Fraction(coefficient), 0
         for name, exponent in algebra.exponents(monomial).items():
             if name == "s":
                 degree = exponent
-            elif name in known:
-                term *= known[name] ** exponent
-            elif name.startswith("root"):
-                raise MissingValueError(
-                    Fault("this is not a real number", "w and f stand for s/j: write s", where.span)
-                )
             else:
-                what = name.partition(":")[2] or name
-                raise MissingValueError(Fault(f"no value for {what}", f"give one: {what} = ...", where.span))
+                term *= known[name] ** exponent
         out += [Fraction(0)] * (degree + 1 - len(out))
         out[degree] += term
     return out

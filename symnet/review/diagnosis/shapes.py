@@ -18,6 +18,7 @@ from symnet.quantities import HERTZ, engineering
 from symnet.review.checked import value_of
 from symnet.review.diagnosis.explanation import Explanation, Slip
 from symnet.review.diagnosis.quotients import Quotient, quotient_of, reduced
+from symnet.review.numbers import coefficients_at
 from symnet.review.rounding import approximations
 from symnet.shape.figures import f3db
 from symnet.shape.recognise import recognise
@@ -61,24 +62,9 @@ def ratio_at(scope: Scope, sides: Quotient, values: dict[str, Fraction]) -> Rati
     """A quotient of polynomials at these values of the names; None for roots of names and where it is 0/0."""
     algebra = scope.solution.algebra
     known = {**approximations(algebra), **values}
-    rows = []
-    for side in sides:
-        row = [Fraction(0)]
-        for monomial, coefficient in side.items():
-            term, degree = Fraction(coefficient), 0
-            for name, exponent in algebra.exponents(monomial).items():
-                if name == "s":
-                    degree = exponent
-                elif name in known:
-                    term *= known[name] ** exponent
-                else:
-                    return None
-            row += [Fraction(0)] * (degree + 1 - len(row))
-            row[degree] += term
-        rows.append(row)
     try:
-        return Ratio.of(*rows)
-    except SymnetError:
+        return Ratio.of(*(coefficients_at(algebra, side, known) for side in sides))
+    except (KeyError, SymnetError):
         return None
 
 
